@@ -1,0 +1,352 @@
+//! The shop book: supplies, tube types, rule sets, rates and allowances, kept by the user.
+//!
+//! Entries are as typed, possibly incomplete or contradictory; the rooms [`crate::supply`] and
+//! [`crate::tube`] check them. A figure that is not known is absent, never zero.
+
+mod sheet;
+mod starter;
+
+use rust_decimal::Decimal;
+use serde::{Deserialize, Serialize};
+
+use crate::rules::RuleSet;
+
+pub use sheet::{Sheet, read_supplies, read_tubes, write_supplies, write_tubes};
+pub use starter::starter;
+
+/// What the `tubewright` field of a book file says.
+pub const KIND: &str = "book";
+/// The version of the book file written by this program.
+pub const VERSION: u32 = 1;
+
+/// The shop.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct Book {
+    /// Always [`KIND`]; tells a book file from a job file.
+    pub tubewright: String,
+    /// File version, [`VERSION`] when written by this program.
+    pub version: u32,
+    /// Name of the shop or of the book.
+    pub name: String,
+    /// Anything worth keeping; an invented book says so here.
+    #[serde(default)]
+    pub note: String,
+    /// Supplies the shop can use.
+    #[serde(default)]
+    pub supplies: Vec<SupplyEntry>,
+    /// Tube types the shop bends.
+    #[serde(default)]
+    pub tubes: Vec<TubeEntry>,
+    /// Rule sets a job can be held against.
+    #[serde(default)]
+    pub rule_sets: Vec<RuleSet>,
+    /// Prices.
+    #[serde(default)]
+    pub rates: Rates,
+    /// Glass beyond what is lit.
+    #[serde(default)]
+    pub allowances: Allowances,
+    /// When a circuit is called well loaded.
+    #[serde(default)]
+    pub loading: Loading,
+}
+
+impl Default for Book {
+    fn default() -> Self {
+        Self {
+            tubewright: KIND.to_owned(),
+            version: VERSION,
+            name: "Shop book".to_owned(),
+            note: String::new(),
+            supplies: Vec::new(),
+            tubes: Vec::new(),
+            rule_sets: Vec::new(),
+            rates: Rates::default(),
+            allowances: Allowances::default(),
+            loading: Loading::default(),
+        }
+    }
+}
+
+/// How a supply limits its current.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[serde(rename_all = "kebab-case")]
+pub enum SupplyKind {
+    /// Iron leakage transformer.
+    #[default]
+    Iron,
+    /// Electronic (high-frequency) supply.
+    Electronic,
+}
+
+/// What of the output is joined to earth.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[serde(rename_all = "kebab-case")]
+pub enum OutputEarthing {
+    /// The mid-point of the output is earthed; one string between the two leads.
+    #[default]
+    MidPoint,
+    /// The mid-point is earthed and brought out; two strings, each from a lead to the mid-point.
+    MidPointReturn,
+    /// One end of the output is earthed.
+    OneEnd,
+    /// Nothing is earthed.
+    Isolated,
+}
+
+/// How wet a place is, driest first.
+#[derive(
+    Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Default, Serialize, Deserialize,
+)]
+#[serde(rename_all = "kebab-case")]
+pub enum Dampness {
+    /// Indoors, dry.
+    #[default]
+    Dry,
+    /// Sheltered, at times moist.
+    Damp,
+    /// Rain reaches it.
+    Wet,
+}
+
+/// A supply as its nameplate says, in the shop's own words.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize)]
+#[serde(deny_unknown_fields, default)]
+pub struct SupplyEntry {
+    /// The shop's name for it.
+    pub name: String,
+    /// Iron or electronic.
+    pub kind: SupplyKind,
+    /// Mains volts it is made for.
+    pub input_volts: Option<f64>,
+    /// Mains frequency it is made for.
+    pub input_hertz: Option<f64>,
+    /// Rated input in volt-amperes.
+    pub input_va: Option<f64>,
+    /// No-load output volts, rms, lead to lead.
+    pub no_load_volts: Option<f64>,
+    /// Short-circuit output current.
+    pub short_circuit_ma: Option<f64>,
+    /// Rated output current, where the plate gives one beside the short-circuit current.
+    pub rated_ma: Option<f64>,
+    /// Electronic supplies: output volts at the rated current.
+    pub rated_load_volts: Option<f64>,
+    /// What of the output is earthed.
+    pub earthing: OutputEarthing,
+    /// Whether it switches off on an earth fault of the output.
+    pub earth_fault_protection: bool,
+    /// Trip current of that protection.
+    pub trip_ma: Option<f64>,
+    /// Trip time of that protection.
+    pub trip_seconds: Option<f64>,
+    /// Whether it switches off when the string is open.
+    pub open_circuit_protection: bool,
+    /// Output frequency; an iron supply's is that of the mains.
+    pub output_hertz: Option<f64>,
+    /// The plate's least running volts, as a share of no-load volts in percent.
+    pub least_load_percent: Option<f64>,
+    /// The plate's greatest running volts, as a share of no-load volts in percent.
+    pub most_load_percent: Option<f64>,
+    /// The wettest place it is made for.
+    pub place: Dampness,
+    /// Price of one, in the book's currency.
+    pub price: Option<Decimal>,
+    /// How many are on the shelf.
+    pub stock: Option<u32>,
+    /// Anything else.
+    pub note: String,
+}
+
+/// The gas, as far as its electrical behaviour goes.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[serde(rename_all = "kebab-case")]
+pub enum Gas {
+    /// Neon, in clear or coloured glass.
+    #[default]
+    Neon,
+    /// Argon, or argon and neon, with mercury; coated or clear glass.
+    ArgonMercury,
+}
+
+/// A tube type. Electrical figures left out are taken from the default model and said to be.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize)]
+#[serde(deny_unknown_fields, default)]
+pub struct TubeEntry {
+    /// The shop's name for it.
+    pub name: String,
+    /// Its gas.
+    pub gas: Gas,
+    /// Outer diameter of the glass.
+    pub outer_mm: Option<f64>,
+    /// Wall of the glass; 1 mm when not given.
+    pub wall_mm: Option<f64>,
+    /// Colour to draw it in, `#rrggbb`.
+    pub colour: String,
+    /// Least current it runs steadily at.
+    pub least_ma: Option<f64>,
+    /// Greatest current its glass and electrodes stand.
+    pub most_ma: Option<f64>,
+    /// Running volts per metre at the reference current.
+    pub volts_per_m: Option<f64>,
+    /// The reference current; 25 mA when not given.
+    pub at_ma: Option<f64>,
+    /// How volts fall with current: volts go as current to the power of minus this.
+    pub exponent: Option<f64>,
+    /// Volts lost at one pair of electrodes.
+    pub pair_volts: Option<f64>,
+    /// Factor on volts per metre below 0 °C.
+    pub cold_factor: Option<f64>,
+    /// Price of a metre of this glass, in the book's currency.
+    pub price_per_m: Option<Decimal>,
+    /// Where the figures came from, in the shop's words.
+    pub source: String,
+}
+
+/// Prices and minutes for the first sum.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields, default)]
+pub struct Rates {
+    /// Currency, as written before a figure.
+    pub currency: String,
+    /// One electrode.
+    pub electrode: Decimal,
+    /// An hour of labour.
+    pub labour_hour: Decimal,
+    /// Minutes of bending and processing for each piece.
+    pub minutes_per_piece: Decimal,
+    /// Minutes of bending for each metre of glass.
+    pub minutes_per_m: Decimal,
+    /// Minutes of wiring for each circuit.
+    pub minutes_per_circuit: Decimal,
+    /// Markup on the whole, percent.
+    pub markup_percent: Decimal,
+    /// Tax on top, percent.
+    pub tax_percent: Decimal,
+}
+
+impl Default for Rates {
+    fn default() -> Self {
+        Self {
+            currency: "€".to_owned(),
+            electrode: Decimal::ZERO,
+            labour_hour: Decimal::ZERO,
+            minutes_per_piece: Decimal::ZERO,
+            minutes_per_m: Decimal::ZERO,
+            minutes_per_circuit: Decimal::ZERO,
+            markup_percent: Decimal::ZERO,
+            tax_percent: Decimal::ZERO,
+        }
+    }
+}
+
+/// Glass beyond what is lit. Defaults are common practice, no source.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields, default)]
+pub struct Allowances {
+    /// Glass for each electrode's tail.
+    pub tail_mm: f64,
+    /// Glass broken or cut off, percent of the glass bent.
+    pub waste_percent: f64,
+    /// Longest piece of glass, lit and hidden parts, that the shop bends in one.
+    pub longest_piece_mm: f64,
+}
+
+impl Default for Allowances {
+    fn default() -> Self {
+        Self { tail_mm: 150.0, waste_percent: 10.0, longest_piece_mm: 2_400.0 }
+    }
+}
+
+/// The default loading windows, as shares of no-load volts. From the square-wave model and the
+/// reignition of the gases; a rating's own plate window replaces them.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields, default)]
+pub struct Loading {
+    /// Below this the string is underloaded: look.
+    pub look_below: f64,
+    /// Start of the target.
+    pub target_from: f64,
+    /// End of the target for strings with neon.
+    pub neon_target_to: f64,
+    /// Above this a string with neon: look.
+    pub neon_look_above: f64,
+    /// End of the target for mercury strings.
+    pub mercury_target_to: f64,
+    /// Above this a mercury string: look.
+    pub mercury_look_above: f64,
+    /// From here on: stop. Beyond 0.7595 the current has gaps.
+    pub stop_from: f64,
+    /// Volts needed to strike, as a multiple of running volts.
+    pub strike_factor: f64,
+}
+
+impl Default for Loading {
+    fn default() -> Self {
+        Self {
+            look_below: 0.35,
+            target_from: 0.50,
+            neon_target_to: 0.65,
+            neon_look_above: 0.70,
+            mercury_target_to: 0.70,
+            mercury_look_above: 0.75,
+            stop_from: 0.76,
+            strike_factor: 1.5,
+        }
+    }
+}
+
+/// Reads a book file.
+///
+/// # Errors
+/// A sentence saying what is wrong and where, for text that is not a book of a known version.
+pub fn read(text: &str) -> Result<Book, String> {
+    let text = without_mark(text);
+    check_kind(text, KIND, VERSION)?;
+    serde_json::from_str(text).map_err(|error| format!("This book file cannot be read: {error}."))
+}
+
+/// The book as the text of a file.
+pub fn write(book: &Book) -> String {
+    // Floats that are not finite cannot be typed or read in; JSON would write them as null.
+    serde_json::to_string_pretty(book).unwrap_or_default()
+}
+
+/// The text without the byte-order mark some editors put before it.
+pub(crate) fn without_mark(text: &str) -> &str {
+    text.trim_start_matches('\u{feff}')
+}
+
+/// Whether a text is JSON at all, of the wanted kind and of a version this program knows.
+pub(crate) fn check_kind(text: &str, kind: &str, version: u32) -> Result<(), String> {
+    #[derive(Deserialize)]
+    struct Head {
+        tubewright: Option<serde_json::Value>,
+        version: Option<serde_json::Value>,
+    }
+    let head: Head = serde_json::from_str(text).map_err(|error| {
+        format!("This is not a {kind} file: expected JSON written by this program, but {error}.")
+    })?;
+    match head.tubewright.as_ref().and_then(serde_json::Value::as_str) {
+        Some(found) if found == kind => {}
+        Some(found) => {
+            return Err(format!(
+                "Expected a {kind} file, but this is a {} file.",
+                crate::measure::quoted(found)
+            ));
+        }
+        None => {
+            return Err(format!(
+                "This is not a {kind} file: it has no “tubewright” field that says “{kind}”."
+            ));
+        }
+    }
+    match head.version.as_ref().and_then(serde_json::Value::as_u64) {
+        Some(found) if found == u64::from(version) => Ok(()),
+        Some(found) if found > u64::from(version) => Err(format!(
+            "This {kind} file has version {found}; this program knows versions up to {version}. \
+             Open it with a newer program."
+        )),
+        _ => Err(format!("This {kind} file says no version that was ever written (1 to {version}).")),
+    }
+}

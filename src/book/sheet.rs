@@ -1,0 +1,333 @@
+//! Supplies and tube types as spreadsheet files (CSV, RFC 4180), one line each.
+//!
+//! One table of columns for each list says how a cell is written and read; the file's first line
+//! names the columns, units in the names. Order is free, columns may be missing, a cell left empty
+//! is a figure not given.
+
+use rust_decimal::Decimal;
+
+use super::{Dampness, Gas, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry};
+use crate::measure::quoted;
+
+/// What a file held.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Sheet<T> {
+    /// Lines that could be read.
+    pub entries: Vec<T>,
+    /// A sentence for each line, cell or column that could not, with its place.
+    pub trouble: Vec<String>,
+}
+
+/// Reads supplies.
+///
+/// # Errors
+/// A sentence when the file as a whole is not such a list; single bad lines are `trouble`.
+pub fn read_supplies(bytes: &[u8]) -> Result<Sheet<SupplyEntry>, String> {
+    read(bytes, SUPPLY, "supplies", |supply| &supply.name)
+}
+
+/// Reads tube types.
+///
+/// # Errors
+/// A sentence when the file as a whole is not such a list; single bad lines are `trouble`.
+pub fn read_tubes(bytes: &[u8]) -> Result<Sheet<TubeEntry>, String> {
+    read(bytes, TUBE, "tube types", |tube| &tube.name)
+}
+
+/// Supplies as a file.
+pub fn write_supplies(supplies: &[SupplyEntry]) -> String {
+    write(supplies, SUPPLY)
+}
+
+/// Tube types as a file.
+pub fn write_tubes(tubes: &[TubeEntry]) -> String {
+    write(tubes, TUBE)
+}
+
+struct Column<T> {
+    name: &'static str,
+    get: fn(&T) -> String,
+    set: fn(&mut T, &Cell) -> Result<(), String>,
+}
+
+/// A cell that is not empty.
+struct Cell<'t> {
+    text: &'t str,
+    /// Whether the file's separator leaves the comma free to be a decimal comma.
+    decimal_comma: bool,
+}
+
+impl Cell<'_> {
+    fn figure(&self) -> String {
+        if self.decimal_comma { self.text.replace(',', ".") } else { self.text.to_owned() }
+    }
+
+    fn number(&self) -> Result<Option<f64>, String> {
+        match self.figure().parse::<f64>() {
+            Ok(value) if value.is_finite() => Ok(Some(value)),
+            _ => Err(format!("expected a number, but found {}", quoted(self.text))),
+        }
+    }
+
+    fn money(&self) -> Result<Option<Decimal>, String> {
+        self.figure()
+            .parse::<Decimal>()
+            .ok()
+            .filter(|price| !price.is_sign_negative())
+            .map(Some)
+            .ok_or_else(|| format!("expected a price such as 12.50, but found {}", quoted(self.text)))
+    }
+
+    fn count(&self) -> Result<Option<u32>, String> {
+        self.text
+            .parse()
+            .map(Some)
+            .map_err(|_| format!("expected a whole number, but found {}", quoted(self.text)))
+    }
+
+    fn yes(&self) -> Result<bool, String> {
+        match self.text.to_ascii_lowercase().as_str() {
+            "yes" | "true" | "1" => Ok(true),
+            "no" | "false" | "0" => Ok(false),
+            _ => Err(format!("expected yes or no, but found {}", quoted(self.text))),
+        }
+    }
+
+    fn word<W: Copy>(&self, words: &[(&str, W)]) -> Result<W, String> {
+        let found = self.text.to_ascii_lowercase();
+        words.iter().find(|(word, _)| *word == found).map(|&(_, value)| value).ok_or_else(|| {
+            let known: Vec<&str> = words.iter().map(|&(word, _)| word).collect();
+            format!("expected {}, but found {}", known.join(" or "), quoted(self.text))
+        })
+    }
+}
+
+fn said<W: Copy + PartialEq>(value: W, words: &[(&'static str, W)]) -> String {
+    words
+        .iter()
+        .find(|&&(_, known)| known == value)
+        .map_or_else(String::new, |&(word, _)| word.to_owned())
+}
+
+const KINDS: &[(&str, SupplyKind)] =
+    &[("iron", SupplyKind::Iron), ("electronic", SupplyKind::Electronic)];
+const EARTHINGS: &[(&str, OutputEarthing)] = &[
+    ("mid-point", OutputEarthing::MidPoint),
+    ("mid-point-return", OutputEarthing::MidPointReturn),
+    ("one-end", OutputEarthing::OneEnd),
+    ("isolated", OutputEarthing::Isolated),
+];
+const PLACES: &[(&str, Dampness)] =
+    &[("dry", Dampness::Dry), ("damp", Dampness::Damp), ("wet", Dampness::Wet)];
+const GASES: &[(&str, Gas)] = &[("neon", Gas::Neon), ("argon-mercury", Gas::ArgonMercury)];
+
+fn shown<T: ToString>(value: Option<T>) -> String {
+    value.map_or_else(String::new, |value| value.to_string())
+}
+
+fn yes_no(value: bool) -> String {
+    if value { "yes" } else { "no" }.to_owned()
+}
+
+macro_rules! column {
+    ($name:ident as text) => {
+        Column {
+            name: stringify!($name),
+            get: |entry| entry.$name.clone(),
+            set: |entry, cell| {
+                entry.$name = cell.text.to_owned();
+                Ok(())
+            },
+        }
+    };
+    ($name:ident as yes) => {
+        Column {
+            name: stringify!($name),
+            get: |entry| yes_no(entry.$name),
+            set: |entry, cell| cell.yes().map(|value| entry.$name = value),
+        }
+    };
+    ($name:ident as word $words:ident) => {
+        Column {
+            name: stringify!($name),
+            get: |entry| said(entry.$name, $words),
+            set: |entry, cell| cell.word($words).map(|value| entry.$name = value),
+        }
+    };
+    ($name:ident as $kind:ident) => {
+        Column {
+            name: stringify!($name),
+            get: |entry| shown(entry.$name),
+            set: |entry, cell| cell.$kind().map(|value| entry.$name = value),
+        }
+    };
+}
+
+const SUPPLY: &[Column<SupplyEntry>] = &[
+    column!(name as text),
+    column!(kind as word KINDS),
+    column!(input_volts as number),
+    column!(input_hertz as number),
+    column!(input_va as number),
+    column!(no_load_volts as number),
+    column!(short_circuit_ma as number),
+    column!(rated_ma as number),
+    column!(rated_load_volts as number),
+    column!(earthing as word EARTHINGS),
+    column!(earth_fault_protection as yes),
+    column!(trip_ma as number),
+    column!(trip_seconds as number),
+    column!(open_circuit_protection as yes),
+    column!(output_hertz as number),
+    column!(least_load_percent as number),
+    column!(most_load_percent as number),
+    column!(place as word PLACES),
+    column!(price as money),
+    column!(stock as count),
+    column!(note as text),
+];
+
+const TUBE: &[Column<TubeEntry>] = &[
+    column!(name as text),
+    column!(gas as word GASES),
+    column!(outer_mm as number),
+    column!(wall_mm as number),
+    column!(colour as text),
+    column!(least_ma as number),
+    column!(most_ma as number),
+    column!(volts_per_m as number),
+    column!(at_ma as number),
+    column!(exponent as number),
+    column!(pair_volts as number),
+    column!(cold_factor as number),
+    column!(price_per_m as money),
+    column!(source as text),
+];
+
+fn write<T>(entries: &[T], columns: &[Column<T>]) -> String {
+    let mut writer =
+        csv::WriterBuilder::new().terminator(csv::Terminator::CRLF).from_writer(Vec::new());
+    // Writing to memory does not fail.
+    let _ = writer.write_record(columns.iter().map(|column| column.name));
+    for entry in entries {
+        let _ = writer.write_record(columns.iter().map(|column| (column.get)(entry)));
+    }
+    writer.into_inner().ok().and_then(|bytes| String::from_utf8(bytes).ok()).unwrap_or_default()
+}
+
+fn read<T: Default>(
+    bytes: &[u8],
+    columns: &[Column<T>],
+    what: &str,
+    name: fn(&T) -> &String,
+) -> Result<Sheet<T>, String> {
+    let text = decoded(bytes)?;
+    let first = text.lines().next().unwrap_or_default();
+    let separator = [';', '\t', ',']
+        .into_iter()
+        .max_by_key(|separator| first.matches(*separator).count())
+        .unwrap_or(',');
+    let known = || columns.iter().map(|column| column.name).collect::<Vec<_>>().join(", ");
+    let mut reader = csv::ReaderBuilder::new()
+        .delimiter(u8::try_from(separator).unwrap_or(b','))
+        .flexible(true)
+        .trim(csv::Trim::All)
+        .from_reader(text.as_bytes());
+    let headers = reader
+        .headers()
+        .map_err(|error| format!("The file of {what} cannot be read: {error}."))?
+        .clone();
+    let mut trouble = Vec::new();
+    let chosen: Vec<Option<&Column<T>>> = headers
+        .iter()
+        .map(|header| {
+            let column = columns.iter().find(|column| column.name.eq_ignore_ascii_case(header));
+            if column.is_none() {
+                trouble.push(format!("Column {} is not known and was left out.", quoted(header)));
+            }
+            column
+        })
+        .collect();
+    if !chosen.iter().flatten().any(|column| column.name == "name") {
+        return Err(format!(
+            "This is not a list of {what}: its first line has no column “name”. The columns are: \
+             {}.",
+            known()
+        ));
+    }
+    let mut entries: Vec<T> = Vec::new();
+    for (number, record) in reader.records().enumerate() {
+        let line = number + 2;
+        let record = match record {
+            Ok(record) => record,
+            Err(error) => {
+                trouble.push(format!("Line {line} was left out: {error}."));
+                continue;
+            }
+        };
+        if record.iter().all(str::is_empty) {
+            continue;
+        }
+        if record.len() > chosen.len() {
+            trouble.push(format!(
+                "Line {line} was left out: it has {} cells where the first line names {} columns. \
+                 A text with a separator in it must stand in quotes.",
+                record.len(),
+                chosen.len()
+            ));
+            continue;
+        }
+        let mut entry = T::default();
+        let mut fine = true;
+        for (column, text) in chosen.iter().zip(&record) {
+            let Some(column) = column else { continue };
+            if text.is_empty() {
+                continue;
+            }
+            let cell = Cell { text, decimal_comma: separator != ',' };
+            if let Err(error) = (column.set)(&mut entry, &cell) {
+                trouble.push(format!(
+                    "Line {line} was left out: column {}, {error}.",
+                    column.name
+                ));
+                fine = false;
+                break;
+            }
+        }
+        if !fine {
+            continue;
+        }
+        if name(&entry).is_empty() {
+            trouble.push(format!("Line {line} was left out: it has no name."));
+        } else if entries.iter().any(|known| name(known) == name(&entry)) {
+            trouble.push(format!(
+                "Line {line} was left out: the name {} stands further up already.",
+                quoted(name(&entry))
+            ));
+        } else {
+            entries.push(entry);
+        }
+    }
+    if entries.is_empty() && trouble.is_empty() {
+        return Err(format!("The file of {what} has a first line but nothing under it."));
+    }
+    Ok(Sheet { entries, trouble })
+}
+
+/// Text of a file: UTF-8 with or without a mark, else Latin-1.
+fn decoded(bytes: &[u8]) -> Result<String, String> {
+    const MOST_BYTES: usize = 4_000_000;
+    if bytes.len() > MOST_BYTES {
+        return Err(format!("The file is larger than {} MB.", MOST_BYTES / 1_000_000));
+    }
+    if bytes.starts_with(&[0xff, 0xfe]) || bytes.starts_with(&[0xfe, 0xff]) || bytes.contains(&0) {
+        return Err(
+            "The file is not plain text in UTF-8 or Latin-1: save it as “CSV UTF-8”.".to_owned()
+        );
+    }
+    Ok(match std::str::from_utf8(bytes) {
+        Ok(text) => super::without_mark(text).to_owned(),
+        // Every byte is a Latin-1 character.
+        Err(_) => bytes.iter().map(|&byte| char::from(byte)).collect(),
+    })
+}

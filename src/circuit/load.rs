@@ -1,0 +1,158 @@
+//! The string as a load, and where it meets the supply's curve.
+
+use super::curve::{Curve, iron};
+use crate::book::Gas;
+use crate::measure::{Milliamps, Volts};
+use crate::takeoff::Piece;
+use crate::tube::TubeType;
+
+/// What a string of pieces in series asks for: `U(I) = pairs + Σ k I^-n`, I in milliamperes.
+#[derive(Debug, Clone, PartialEq, Default)]
+pub struct Load {
+    /// Volts of all electrode pairs.
+    pub pair_volts: f64,
+    /// Column constants by exponent: (n, k).
+    pub columns: Vec<(f64, f64)>,
+    /// Whether any of it is neon.
+    pub neon: bool,
+    /// Whether any of it is argon-mercury.
+    pub mercury: bool,
+    /// The least of its tubes' greatest currents, with the tube's name.
+    pub most: Option<(Milliamps, String)>,
+    /// The greatest of its tubes' least currents, with the tube's name.
+    pub least: Option<(Milliamps, String)>,
+}
+
+impl Load {
+    /// An empty string.
+    pub fn new() -> Self {
+        Self::default()
+    }
+
+    /// Adds a piece of a tube type.
+    pub fn add(&mut self, piece: &Piece, tube: &TubeType, cold: bool) {
+        self.pair_volts += tube.pair_volts;
+        let column = tube.column(piece.column(), cold);
+        match self.columns.iter_mut().find(|(n, _)| *n == tube.exponent) {
+            Some((_, k)) => *k += column,
+            None => self.columns.push((tube.exponent, column)),
+        }
+        match tube.gas {
+            Gas::Neon => self.neon = true,
+            Gas::ArgonMercury => self.mercury = true,
+        }
+        if let Some(most) = tube.most
+            && self.most.as_ref().is_none_or(|(known, _)| most < *known)
+        {
+            self.most = Some((most, tube.name.clone()));
+        }
+        if let Some(least) = tube.least
+            && self.least.as_ref().is_none_or(|(known, _)| least > *known)
+        {
+            self.least = Some((least, tube.name.clone()));
+        }
+    }
+
+    /// A string of pieces.
+    pub fn of<'p>(
+        pieces: impl IntoIterator<Item = (&'p Piece, &'p TubeType)>,
+        cold: bool,
+    ) -> Self {
+        let mut load = Self::new();
+        for (piece, tube) in pieces {
+            load.add(piece, tube, cold);
+        }
+        load
+    }
+
+    /// Running volts at a current in milliamperes.
+    pub fn volts(&self, current_ma: f64) -> f64 {
+        self.pair_volts
+            + self.columns.iter().map(|(n, k)| k * current_ma.powf(-n)).sum::<f64>()
+    }
+}
+
+/// Where a string runs on a supply.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub enum Operating {
+    /// It runs.
+    Runs {
+        /// String current.
+        current: Milliamps,
+        /// Running volts of the whole string.
+        running: Volts,
+        /// Power in the string, watts.
+        watts: f64,
+        /// Whether the current has gaps (flicker).
+        gaps: bool,
+    },
+    /// No steady point: the string asks for more than the supply gives at any current.
+    Overloaded {
+        /// What it would take at the supply's edge current.
+        wanted: Volts,
+        /// What the supply gives there.
+        given: Volts,
+    },
+}
+
+impl Operating {
+    /// Running volts, or the volts wanted when overloaded.
+    pub const fn volts(&self) -> Volts {
+        match self {
+            Self::Runs { running, .. } => *running,
+            Self::Overloaded { wanted, .. } => *wanted,
+        }
+    }
+}
+
+/// The largest stable operating point of a string on a curve.
+pub fn operate(load: &Load, curve: &Curve) -> Operating {
+    let (edge_volts, edge_current) = curve.edge();
+    let wanted = load.volts(edge_current.ma());
+    if wanted <= edge_volts.volts() {
+        // On the steady branch every crossing is stable, so there is one, and it lies between the
+        // edge current and the short-circuit current.
+        let short_ma = match *curve {
+            Curve::Iron { short_ma, .. } | Curve::Electronic { short_ma, .. } => short_ma,
+        };
+        let (mut low, mut high) = (edge_current.ma(), short_ma);
+        for _ in 0..60 {
+            let middle = f64::midpoint(low, high);
+            if curve.current(load.volts(middle)) >= middle { low = middle } else { high = middle }
+        }
+        let current = f64::midpoint(low, high);
+        return runs(load, curve, current, false);
+    }
+    if let Curve::Iron { no_load, short_ma } = *curve {
+        // With gaps: step down from the edge current; the first crossing is the largest.
+        const STEPS: u32 = 400;
+        let excess = |current: f64| iron(load.volts(current) / no_load).rms * short_ma - current;
+        let at = |step: u32| edge_current.ma() * f64::from(STEPS - step) / f64::from(STEPS);
+        for step in 1..STEPS {
+            if excess(at(step)) >= 0.0 {
+                let (mut low, mut high) = (at(step), at(step - 1));
+                for _ in 0..60 {
+                    let middle = f64::midpoint(low, high);
+                    if excess(middle) >= 0.0 { low = middle } else { high = middle }
+                }
+                return runs(load, curve, f64::midpoint(low, high), true);
+            }
+        }
+    }
+    Operating::Overloaded { wanted: Volts::from_volts(wanted), given: edge_volts }
+}
+
+fn runs(load: &Load, curve: &Curve, current: f64, gaps: bool) -> Operating {
+    let volts = load.volts(current);
+    let mean_ma = match *curve {
+        Curve::Iron { no_load, short_ma } => iron(volts / no_load).mean * short_ma,
+        // A high-frequency current is taken as square like the voltage: mean = rms.
+        Curve::Electronic { .. } => current,
+    };
+    Operating::Runs {
+        current: Milliamps::from_ma(current),
+        running: Volts::from_volts(volts),
+        watts: volts * mean_ma / 1000.0,
+        gaps,
+    }
+}

@@ -1,0 +1,16 @@
+//! Lengths, volts and milliamperes: the types, reading what a person typed, and showing it again.
+//!
+//! Typed lengths are read as exact rationals (`17 5/8 in` is 17 5/8 x 25.4 mm, no rounding) and
+//! become floating millimetres only when a figure is worked out from them.
+
+mod limits;
+mod quantity;
+mod read;
+mod show;
+
+pub use limits::{
+    COUNT, LETTER_HEIGHT_MM, Limit, PIECES, PIECE_LENGTH_MM, ROWS, TEXT_CHARACTERS,
+};
+pub use quantity::{Length, Milliamps, Volts};
+pub use read::{ExactLength, LengthUnit, ReadError, length, milliamps, quoted, volts, with_units};
+pub use show::{Units, glass, grouped, length_exact, length_shown, milliamps_shown, volts_shown};

@@ -1,0 +1,515 @@
+//! Reading what a person typed: `450`, `450 mm`, `1.2 m`, `1' 6 1/2"`, `17 5/8 in`,
+//! `3 x 180 + 2 x 95`.
+//!
+//! ```text
+//! sum      = product { "+" product }
+//! product  = factor { "x" factor }            at most one factor carries a unit
+//! factor   = number [ unit ]
+//!          | number feet [ "-" ] number [ inches ]
+//! number   = digits [ "." digits ] | [ digits ( " " | "-" ) ] digits "/" digits
+//! ```
+//!
+//! A product without any unit takes the unit the field is set to, on its last factor.
+
+use core::fmt;
+
+use num_rational::Ratio;
+use num_traits::{CheckedAdd, CheckedMul, Zero};
+
+use super::Length;
+
+type Exact = Ratio<i128>;
+
+/// More digits than any real length has; keeps the exact arithmetic far from overflow.
+const MOST_DIGITS: usize = 12;
+/// More characters than any field needs.
+const MOST_CHARACTERS: usize = 200;
+
+/// A length exactly as typed, in millimetres as a fraction.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+pub struct ExactLength(Exact);
+
+impl ExactLength {
+    /// The fraction in millimetres, numerator and denominator.
+    pub fn mm_fraction(self) -> (i128, i128) {
+        (*self.0.numer(), *self.0.denom())
+    }
+
+    /// The nearest floating figure.
+    pub fn length(self) -> Length {
+        Length::from_mm(nearest(self.0))
+    }
+}
+
+/// The unit a bare number takes.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+pub enum LengthUnit {
+    /// Millimetres.
+    #[default]
+    Millimetres,
+    /// Inches.
+    Inches,
+}
+
+impl LengthUnit {
+    const fn word(self) -> &'static str {
+        match self {
+            Self::Millimetres => "mm",
+            Self::Inches => "in",
+        }
+    }
+}
+
+/// Why a text could not be read: what was expected, what stands there, and where.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct ReadError {
+    text: String,
+    at: usize,
+    expected: String,
+    hint: Option<String>,
+}
+
+impl ReadError {
+    fn new(text: &str, at: usize, expected: impl Into<String>) -> Self {
+        Self { text: text.to_owned(), at, expected: expected.into(), hint: None }
+    }
+
+    fn hint(mut self, hint: impl Into<String>) -> Self {
+        self.hint = Some(hint.into());
+        self
+    }
+
+    /// Place of the trouble, in characters from the start of the text, starting at 0.
+    pub fn at(&self) -> usize {
+        self.at
+    }
+}
+
+impl fmt::Display for ReadError {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let rest: String = self.text.chars().skip(self.at).collect();
+        write!(f, "expected {}", self.expected)?;
+        if rest.is_empty() {
+            write!(f, ", but the text ends")?;
+        } else {
+            write!(f, ", but found {}", quoted(&rest))?;
+        }
+        write!(f, " at character {} of {}", self.at + 1, quoted(&self.text))?;
+        if let Some(hint) = &self.hint {
+            write!(f, "; {hint}")?;
+        }
+        Ok(())
+    }
+}
+
+impl core::error::Error for ReadError {}
+
+/// Text from outside, safe to show in a sentence: quoted, control characters escaped, cut at 24.
+pub fn quoted(text: &str) -> String {
+    const MOST: usize = 24;
+    let mut out = String::from("“");
+    for (i, c) in text.chars().enumerate() {
+        if i == MOST {
+            out.push('…');
+            break;
+        }
+        if c.is_control() {
+            out.extend(c.escape_default());
+        } else {
+            out.push(c);
+        }
+    }
+    out.push('”');
+    out
+}
+
+/// Reads a length; a bare number takes `bare`.
+///
+/// # Errors
+/// A [`ReadError`] with the place in the text. The figure may be zero: limits are the caller's.
+pub fn length(text: &str, bare: LengthUnit) -> Result<ExactLength, ReadError> {
+    let (total, _) = Reader::new(text)?.sum(&LENGTH_WORDS, bare.word())?;
+    Ok(ExactLength(total))
+}
+
+/// The text with `bare` written out wherever a number had no unit, so that it reads the same
+/// wherever it is opened: `3 x 180` in millimetres becomes `3 x 180 mm`. A text that cannot be read
+/// comes back as it was.
+pub fn with_units(text: &str, bare: LengthUnit) -> String {
+    let mut out = String::new();
+    for (i, part) in text.split(';').enumerate() {
+        if i > 0 {
+            out.push(';');
+        }
+        let bare_ends =
+            Reader::new(part).and_then(|reader| reader.sum(&LENGTH_WORDS, bare.word()));
+        let mut ends = bare_ends.map(|(_, ends)| ends).unwrap_or_default().into_iter().peekable();
+        let count = part.chars().count();
+        for (at, c) in part.chars().enumerate() {
+            if ends.next_if_eq(&at).is_some() {
+                out.push(' ');
+                out.push_str(bare.word());
+            }
+            out.push(c);
+        }
+        if ends.next_if_eq(&count).is_some() {
+            out.push(' ');
+            out.push_str(bare.word());
+        }
+    }
+    out
+}
+
+/// Reads volts: `7500`, `7.5 kV`.
+pub fn volts(text: &str) -> Result<f64, ReadError> {
+    plain(text, &VOLT_WORDS, "V")
+}
+
+/// Reads milliamperes: `30`, `30 mA`, `0.03 A`.
+pub fn milliamps(text: &str) -> Result<f64, ReadError> {
+    plain(text, &MILLIAMP_WORDS, "mA")
+}
+
+fn plain(text: &str, words: &Words, bare: &str) -> Result<f64, ReadError> {
+    let (total, _) = Reader::new(text)?.sum(words, bare)?;
+    Ok(nearest(total))
+}
+
+/// The float beside a fraction: at most one rounding of each part and one of the quotient.
+#[allow(clippy::cast_precision_loss, reason = "the one place where exact becomes floating")]
+fn nearest(value: Exact) -> f64 {
+    *value.numer() as f64 / *value.denom() as f64
+}
+
+/// The unit words of a quantity, each with its size as a fraction of the base unit.
+struct Words {
+    /// Longest words first, so that `mm` is not read as `m`.
+    sizes: &'static [(&'static str, i128, i128)],
+    examples: &'static str,
+}
+
+// 1 in = 25.4 mm and 1 ft = 304.8 mm exactly (international yard and pound agreement, 1959;
+// NIST SP 811, appendix B.8).
+const LENGTH_WORDS: Words = Words {
+    sizes: &[
+        ("inches", 127, 5),
+        ("inch", 127, 5),
+        ("feet", 1524, 5),
+        ("foot", 1524, 5),
+        ("mm", 1, 1),
+        ("cm", 10, 1),
+        ("in", 127, 5),
+        ("ft", 1524, 5),
+        ("''", 127, 5),
+        ("m", 1000, 1),
+        ("\"", 127, 5),
+        ("″", 127, 5),
+        ("”", 127, 5),
+        ("'", 1524, 5),
+        ("′", 1524, 5),
+        ("’", 1524, 5),
+    ],
+    examples: "mm, cm, m, in or ft",
+};
+const FOOT: (i128, i128) = (1524, 5);
+const INCH: (i128, i128) = (127, 5);
+const VOLT_WORDS: Words =
+    Words { sizes: &[("kv", 1000, 1), ("v", 1, 1)], examples: "V or kV" };
+const MILLIAMP_WORDS: Words =
+    Words { sizes: &[("ma", 1, 1), ("a", 1000, 1)], examples: "mA or A" };
+
+/// A factor: its figure, already multiplied by its unit if it had one.
+struct Factor {
+    value: Exact,
+    unit: bool,
+    start: usize,
+    end: usize,
+}
+
+struct Reader<'t> {
+    text: &'t str,
+    chars: Vec<char>,
+    at: usize,
+}
+
+impl<'t> Reader<'t> {
+    fn new(text: &'t str) -> Result<Self, ReadError> {
+        let chars: Vec<char> = text.chars().collect();
+        if chars.len() > MOST_CHARACTERS {
+            return Err(ReadError::new(
+                text,
+                MOST_CHARACTERS,
+                format!("at most {MOST_CHARACTERS} characters"),
+            ));
+        }
+        Ok(Self { text, chars, at: 0 })
+    }
+
+    /// The total, and the places (in characters) after each number that took the bare unit.
+    fn sum(mut self, words: &Words, bare: &str) -> Result<(Exact, Vec<usize>), ReadError> {
+        let mut bare_ends = Vec::new();
+        let mut total = Exact::zero();
+        loop {
+            let start = self.at;
+            let product = self.product(words, bare, &mut bare_ends)?;
+            total = total
+                .checked_add(&product)
+                .ok_or_else(|| ReadError::new(self.text, start, "a smaller figure"))?;
+            self.skip_spaces();
+            if !self.take('+') {
+                break;
+            }
+        }
+        if self.at < self.chars.len() {
+            let error = ReadError::new(self.text, self.at, "“+”, “x” or the end");
+            return Err(if self.chars[self.at].is_alphabetic() {
+                error.hint(format!("units are {}", words.examples))
+            } else if self.chars[self.at].is_ascii_digit() {
+                error.hint("write feet and inches as 1' 6 1/2\", thousands without a space")
+            } else {
+                error
+            });
+        }
+        Ok((total, bare_ends))
+    }
+
+    fn product(
+        &mut self,
+        words: &Words,
+        bare: &str,
+        bare_ends: &mut Vec<usize>,
+    ) -> Result<Exact, ReadError> {
+        let mut factors = vec![self.factor(words)?];
+        loop {
+            self.skip_spaces();
+            if self.take('x') || self.take('X') || self.take('×') || self.take('*') {
+                factors.push(self.factor(words)?);
+            } else {
+                break;
+            }
+        }
+        let mut with_unit = factors.iter().filter(|factor| factor.unit);
+        if let (Some(_), Some(second)) = (with_unit.next(), with_unit.next()) {
+            return Err(ReadError::new(self.text, second.start, "a plain number")
+                .hint("only one figure of a product carries a unit, as in 3 x 180 mm"));
+        }
+        let mut size = Exact::from_integer(1);
+        if factors.iter().all(|factor| !factor.unit) {
+            let (_, numer, denom) =
+                words.sizes.iter().find(|(word, ..)| word.eq_ignore_ascii_case(bare)).copied()
+                    .unwrap_or(("", 1, 1));
+            size = Exact::new(numer, denom);
+            bare_ends.extend(factors.last().map(|factor| factor.end));
+        }
+        let start = factors.first().map_or(0, |factor| factor.start);
+        factors
+            .iter()
+            .try_fold(size, |product, factor| product.checked_mul(&factor.value))
+            .filter(|product| product.numer().abs() < 1_i128 << 90)
+            .ok_or_else(|| ReadError::new(self.text, start, "a smaller figure"))
+    }
+
+    fn factor(&mut self, words: &Words) -> Result<Factor, ReadError> {
+        self.skip_spaces();
+        let start = self.at;
+        if matches!(self.peek(), Some('-' | '−')) {
+            return Err(ReadError::new(self.text, start, "a figure above zero")
+                .hint("a length, voltage or current is never negative here"));
+        }
+        let number = self.number()?;
+        let end = self.at;
+        let Some((numer, denom)) = self.unit(words) else {
+            return Ok(Factor { value: number, unit: false, start, end });
+        };
+        let mut value = self.times(number, numer, denom, start)?;
+        if (numer, denom) == FOOT {
+            // Inches may follow feet, with or without a hyphen, with or without their mark.
+            let before = self.at;
+            self.skip_spaces();
+            if self.take('-') {
+                self.skip_spaces();
+            }
+            if self.peek().is_some_and(|c| c.is_ascii_digit() || vulgar(c).is_some()) {
+                let inches_start = self.at;
+                let inches = self.number()?;
+                let unit_start = self.at;
+                match self.unit(words) {
+                    None | Some(INCH) => {}
+                    Some(_) => {
+                        return Err(ReadError::new(self.text, unit_start, "inches after feet"));
+                    }
+                }
+                let inches = self.times(inches, INCH.0, INCH.1, inches_start)?;
+                value = value
+                    .checked_add(&inches)
+                    .ok_or_else(|| ReadError::new(self.text, start, "a smaller figure"))?;
+            } else {
+                self.at = before;
+            }
+        }
+        Ok(Factor { value, unit: true, start, end: self.at })
+    }
+
+    fn times(&self, value: Exact, numer: i128, denom: i128, at: usize) -> Result<Exact, ReadError> {
+        value
+            .checked_mul(&Exact::new(numer, denom))
+            .ok_or_else(|| ReadError::new(self.text, at, "a smaller figure"))
+    }
+
+    fn number(&mut self) -> Result<Exact, ReadError> {
+        let start = self.at;
+        if let Some(fraction) = self.peek().and_then(vulgar) {
+            self.at += 1;
+            return Ok(fraction);
+        }
+        let (whole, _) = self.digits()?;
+        if matches!(self.peek(), Some('.' | ',')) {
+            let comma = self.peek() == Some(',');
+            let point_at = self.at;
+            self.at += 1;
+            let (decimals, count) = self.digits()?;
+            if comma && count == 3 {
+                let typed: String = self.chars[start..self.at].iter().collect();
+                return Err(ReadError::new(self.text, point_at, "a point or no comma").hint(
+                    format!(
+                        "{typed} could be {} or {}",
+                        typed.replace(',', "."),
+                        typed.replace(',', "")
+                    ),
+                ));
+            }
+            if matches!(self.peek(), Some('.' | ',')) {
+                return Err(ReadError::new(self.text, self.at, "one decimal point only"));
+            }
+            let scale = 10_i128.pow(u32::try_from(count).unwrap_or(u32::MAX).min(12));
+            return Ok(Exact::new(whole * scale + decimals, scale));
+        }
+        if self.peek() == Some('/') {
+            return self.fraction(whole, start);
+        }
+        if let Some(fraction) = self.peek().and_then(vulgar) {
+            self.at += 1;
+            return Ok(Exact::from_integer(whole) + fraction);
+        }
+        // `6 1/2` and `6-1/2`: a fraction after the whole number, or nothing of this number.
+        let before = self.at;
+        if !self.take('-') {
+            self.skip_spaces();
+        }
+        if self.at > before {
+            if let Some(fraction) = self.peek().and_then(vulgar) {
+                self.at += 1;
+                return Ok(Exact::from_integer(whole) + fraction);
+            }
+            let fraction_start = self.at;
+            if self.peek().is_some_and(|c| c.is_ascii_digit())
+                && let Ok((over, _)) = self.digits()
+                && self.peek() == Some('/')
+            {
+                let fraction = self.fraction(over, fraction_start)?;
+                return Ok(Exact::from_integer(whole) + fraction);
+            }
+        }
+        self.at = before;
+        Ok(Exact::from_integer(whole))
+    }
+
+    fn fraction(&mut self, over: i128, start: usize) -> Result<Exact, ReadError> {
+        self.at += 1;
+        let under_at = self.at;
+        let (under, _) = self.digits()?;
+        if under == 0 {
+            return Err(ReadError::new(self.text, under_at, "a figure above zero under the bar"));
+        }
+        if matches!(self.peek(), Some('.' | ',' | '/')) {
+            return Err(ReadError::new(self.text, start, "a plain fraction such as 5/8"));
+        }
+        Ok(Exact::new(over, under))
+    }
+
+    /// A run of digits, its value and how many there were. Thin spaces may group them, as in the
+    /// figures this program shows.
+    fn digits(&mut self) -> Result<(i128, usize), ReadError> {
+        let start = self.at;
+        let mut value = 0_i128;
+        let mut count = 0;
+        while let Some(c) = self.peek() {
+            if let Some(digit) = c.to_digit(10) {
+                count += 1;
+                if count > MOST_DIGITS {
+                    return Err(ReadError::new(
+                        self.text,
+                        start,
+                        format!("at most {MOST_DIGITS} digits"),
+                    ));
+                }
+                value = value * 10 + i128::from(digit);
+            } else if !(count > 0
+                && matches!(c, '\u{2009}' | '\u{202f}')
+                && self.chars.get(self.at + 1).is_some_and(char::is_ascii_digit))
+            {
+                break;
+            }
+            self.at += 1;
+        }
+        if count == 0 {
+            return Err(ReadError::new(self.text, start, "a number such as 450"));
+        }
+        Ok((value, count))
+    }
+
+    fn unit(&mut self, words: &Words) -> Option<(i128, i128)> {
+        let before = self.at;
+        self.skip_spaces();
+        for &(word, numer, denom) in words.sizes {
+            let end = self.at + word.chars().count();
+            let Some(found) = self.chars.get(self.at..end) else { continue };
+            let same = found.iter().zip(word.chars()).all(|(a, b)| a.eq_ignore_ascii_case(&b));
+            // A word ends where its letters end: `min` is not `m`.
+            let ends = !word.chars().all(char::is_alphabetic)
+                || !self.chars.get(end).is_some_and(|c| c.is_alphabetic() && !is_times(*c));
+            if same && ends {
+                self.at = end;
+                return Some((numer, denom));
+            }
+        }
+        self.at = before;
+        None
+    }
+
+    fn peek(&self) -> Option<char> {
+        self.chars.get(self.at).copied()
+    }
+
+    fn take(&mut self, wanted: char) -> bool {
+        let found = self.peek() == Some(wanted);
+        self.at += usize::from(found);
+        found
+    }
+
+    fn skip_spaces(&mut self) {
+        while self.peek().is_some_and(char::is_whitespace) {
+            self.at += 1;
+        }
+    }
+}
+
+
+const fn is_times(c: char) -> bool {
+    matches!(c, 'x' | 'X')
+}
+
+/// The single-character fractions a tablet keyboard offers.
+fn vulgar(c: char) -> Option<Exact> {
+    let (over, under) = match c {
+        '½' => (1, 2),
+        '¼' => (1, 4),
+        '¾' => (3, 4),
+        '⅛' => (1, 8),
+        '⅜' => (3, 8),
+        '⅝' => (5, 8),
+        '⅞' => (7, 8),
+        _ => return None,
+    };
+    Some(Exact::new(over, under))
+}

@@ -1,0 +1,321 @@
+//! Whether a string fits a supply, decided without solving for its operating point.
+//!
+//! On the steady branch of a supply's curve a string has one crossing. It lies at or below running
+//! volts V* exactly when the string, at the current I* the supply gives at V*, takes at most V*. So
+//! each limit is one comparison at one known current, and sums over prefixes of the pieces give the
+//! string's volts there at once. `circuit::assess` says the same at length; a test holds the two
+//! together.
+
+use std::f64::consts::SQRT_2;
+use std::ops::Range;
+
+use super::split::Fit;
+use super::{Task, two_strings};
+use crate::book::{Gas, SupplyKind};
+use crate::circuit::{Basis, CONTINUOUS_TO, Curve, Window};
+use crate::rules::Grade;
+
+/// A fitting string.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Fitting {
+    /// None or look.
+    pub grade: Option<Grade>,
+    /// How far from the middle of the window's target, squared; of the worse string.
+    pub off_middle: f64,
+}
+
+/// A comparison at one current: the string's volts there against `volts`.
+#[derive(Debug, Clone)]
+struct Gate {
+    volts: f64,
+    /// current^-n for each exponent of the task.
+    powers: Vec<f64>,
+}
+
+/// A bound on the string's current.
+#[derive(Debug, Clone)]
+enum CurrentGate {
+    Always,
+    Never,
+    /// Holds when the string takes at least (for an upper bound) these volts.
+    At(Gate),
+}
+
+/// The gates of one supply for strings with or without neon.
+#[derive(Debug, Clone)]
+struct Loads {
+    over: Gate,
+    over_at_low_mains: Option<Gate>,
+    heavy: Option<Gate>,
+    light: Gate,
+    middle: Gate,
+}
+
+#[derive(Debug, Clone)]
+struct SupplyGates {
+    /// Index 0 without neon, 1 with.
+    loads: [Loads; 2],
+    /// By tube type of the task: upper bound at nominal and high mains, lower bound at nominal.
+    most: Vec<[CurrentGate; 2]>,
+    least: Vec<CurrentGate>,
+}
+
+/// All gates of a task.
+#[derive(Debug, Clone)]
+pub struct Gates {
+    /// Volts of electrode pairs of the first i pieces.
+    pairs: Vec<f64>,
+    /// Column constants of the first i pieces, by exponent.
+    columns: Vec<Vec<f64>>,
+    /// Neon pieces among the first i.
+    neon: Vec<usize>,
+    /// Tube type of each piece, as a place in the distinct list.
+    tube: Vec<usize>,
+    tubes: usize,
+    supplies: Vec<SupplyGates>,
+}
+
+impl Gates {
+    /// Prepares the gates of a task.
+    pub fn new(task: &Task) -> Self {
+        let mut exponents: Vec<f64> = Vec::new();
+        let mut names: Vec<&str> = Vec::new();
+        let mut distinct = Vec::new();
+        let mut tube = Vec::with_capacity(task.pieces.len());
+        for (_, kind) in task.pieces {
+            if !exponents.contains(&kind.exponent) {
+                exponents.push(kind.exponent);
+            }
+            let place = names.iter().position(|name| *name == kind.name).unwrap_or_else(|| {
+                names.push(&kind.name);
+                distinct.push(*kind);
+                names.len() - 1
+            });
+            tube.push(place);
+        }
+        let count = task.pieces.len() + 1;
+        let (mut pairs, mut neon) = (vec![0.0; count], vec![0; count]);
+        let mut columns = vec![vec![0.0; count]; exponents.len()];
+        for (i, (piece, kind)) in task.pieces.iter().enumerate() {
+            pairs[i + 1] = pairs[i] + kind.pair_volts;
+            neon[i + 1] = neon[i] + usize::from(kind.gas == Gas::Neon);
+            for (column, exponent) in columns.iter_mut().zip(&exponents) {
+                let more = if kind.exponent == *exponent {
+                    kind.column(piece.column(), task.cold)
+                } else {
+                    0.0
+                };
+                column[i + 1] = column[i] + more;
+            }
+        }
+        let supplies = task
+            .candidates
+            .iter()
+            .map(|candidate| {
+                let rating = &candidate.rating;
+                let part = if two_strings(rating) { 0.5 } else { 1.0 };
+                let at = |curve: Curve, volts: f64| Gate {
+                    volts,
+                    powers: {
+                        let current = curve.current(volts);
+                        exponents.iter().map(|n| current.powf(-n)).collect()
+                    },
+                };
+                let curve = |mains: f64| Curve::of(rating, part, mains);
+                let nominal = curve(1.0);
+                let loads = [false, true].map(|neon| {
+                    let window = Window::of(rating, neon, task.loading);
+                    let strike = |share: f64| share * SQRT_2 / task.loading.strike_factor;
+                    let basis = |curve: Curve| match (window.basis, curve) {
+                        (Basis::RatedLoad, Curve::Electronic { rated_volts, .. }) => rated_volts,
+                        _ => curve.no_load().volts(),
+                    };
+                    // Every limit that stops, as running volts of a curve.
+                    let stop = |curve: Curve| {
+                        (window.stop_from * basis(curve))
+                            .min(curve.edge().0.volts())
+                            .min(strike(1.0) * curve.no_load().volts())
+                    };
+                    let low = curve(1.0 - crate::circuit::MAINS_SPREAD);
+                    let heavy = (window.look_above * basis(nominal))
+                        .min(strike(crate::circuit::STRIKE_LOOK) * nominal.no_load().volts());
+                    let share = |share: f64| {
+                        at(nominal, (share * basis(nominal)).min(nominal.edge().0.volts()))
+                    };
+                    Loads {
+                        over: at(nominal, stop(nominal)),
+                        over_at_low_mains: (rating.kind == SupplyKind::Iron)
+                            .then(|| at(low, stop(low))),
+                        heavy: (heavy < nominal.edge().0.volts()).then(|| at(nominal, heavy)),
+                        light: share(window.look_below),
+                        middle: share(window.middle()),
+                    }
+                });
+                let bound = |curve: Curve, current: Option<f64>, upper: bool| {
+                    let Some(current) = current else { return CurrentGate::Always };
+                    let short = match curve {
+                        Curve::Iron { short_ma, .. } | Curve::Electronic { short_ma, .. } => {
+                            short_ma
+                        }
+                    };
+                    let (above, below) = if upper {
+                        (CurrentGate::Always, CurrentGate::Never)
+                    } else {
+                        (CurrentGate::Never, CurrentGate::Always)
+                    };
+                    if current >= short {
+                        return above;
+                    }
+                    match curve.volts_at(current) {
+                        Some(volts) => CurrentGate::At(at(curve, volts)),
+                        None => below,
+                    }
+                };
+                let high = curve(1.0 + crate::circuit::MAINS_SPREAD);
+                SupplyGates {
+                    loads,
+                    most: distinct
+                        .iter()
+                        .map(|kind| {
+                            let most = kind.most.map(crate::measure::Milliamps::ma);
+                            [bound(nominal, most, true), bound(high, most, true)]
+                        })
+                        .collect(),
+                    least: distinct
+                        .iter()
+                        .map(|kind| {
+                            bound(nominal, kind.least.map(crate::measure::Milliamps::ma), false)
+                        })
+                        .collect(),
+                }
+            })
+            .collect();
+        debug_assert!(CONTINUOUS_TO < 0.76, "the edge of an iron supply is its last steady point");
+        Self { pairs, columns, neon, tube, tubes: distinct.len(), supplies }
+    }
+
+    /// Volts of some pieces at a gate's current.
+    fn volts(&self, pieces: &Range<usize>, gate: &Gate) -> f64 {
+        let (i, j) = (pieces.start, pieces.end);
+        let columns = self.columns.iter().zip(&gate.powers);
+        self.pairs[j] - self.pairs[i]
+            + columns.map(|(column, power)| (column[j] - column[i]) * power).sum::<f64>()
+    }
+
+    /// Whether some pieces fit a supply.
+    pub fn fit(&self, task: &Task, pieces: Range<usize>, supply: usize) -> Fit<Fitting> {
+        if !two_strings(&task.candidates[supply].rating) {
+            return self.string(&pieces, supply);
+        }
+        if pieces.len() < 2 {
+            return match self.string(&pieces, supply) {
+                Fit::TooMuch => Fit::TooMuch,
+                _ => Fit::NotYet,
+            };
+        }
+        match self.halves(&pieces, supply) {
+            Some((_, fitting)) => Fit::Fits(fitting),
+            // Both halves together over twice a half's limit: one of them always is.
+            None => {
+                let neon = usize::from(self.neon[pieces.end] > self.neon[pieces.start]);
+                let over = &self.supplies[supply].loads[neon].over;
+                if self.volts(&pieces, over) > 2.0 * over.volts { Fit::TooMuch } else { Fit::NotYet }
+            }
+        }
+    }
+
+    /// Where the second string begins on a supply with a mid-point return.
+    pub(super) fn second_from(
+        &self,
+        task: &Task,
+        pieces: &Range<usize>,
+        supply: usize,
+    ) -> Option<usize> {
+        if !two_strings(&task.candidates[supply].rating) || pieces.len() < 2 {
+            return None;
+        }
+        self.halves(pieces, supply).map(|(from, _)| from).or_else(|| {
+            // Nothing fits: halve the volts as well as may be, to say by how much.
+            let over = &self.supplies[supply].loads[0].over;
+            (pieces.start + 1..pieces.end).min_by(|&a, &b| {
+                let off = |from: usize| {
+                    (self.volts(&(pieces.start..from), over) - self.volts(&(from..pieces.end), over))
+                        .abs()
+                };
+                off(a).total_cmp(&off(b))
+            })
+        })
+    }
+
+    /// The best halving: lightest grade, then best balance between the halves.
+    fn halves(&self, pieces: &Range<usize>, supply: usize) -> Option<(usize, Fitting)> {
+        let middle = &self.supplies[supply].loads[0].middle;
+        (pieces.start + 1..pieces.end)
+            .filter_map(|from| {
+                let (first, second) = (pieces.start..from, from..pieces.end);
+                let (Fit::Fits(a), Fit::Fits(b)) =
+                    (self.string(&first, supply), self.string(&second, supply))
+                else {
+                    return None;
+                };
+                let uneven = (self.volts(&first, middle) - self.volts(&second, middle)).abs();
+                let fitting = Fitting {
+                    grade: a.grade.max(b.grade),
+                    off_middle: a.off_middle.max(b.off_middle),
+                };
+                Some((from, fitting, uneven))
+            })
+            .min_by(|a, b| a.1.grade.cmp(&b.1.grade).then(a.2.total_cmp(&b.2)))
+            .map(|(from, fitting, _)| (from, fitting))
+    }
+
+    /// One string.
+    fn string(&self, pieces: &Range<usize>, supply: usize) -> Fit<Fitting> {
+        let neon = usize::from(self.neon[pieces.end] > self.neon[pieces.start]);
+        let gates = &self.supplies[supply];
+        let loads = &gates.loads[neon];
+        if self.volts(pieces, &loads.over) >= loads.over.volts {
+            return Fit::TooMuch;
+        }
+        let mut look = loads
+            .over_at_low_mains
+            .as_ref()
+            .is_some_and(|low| self.volts(pieces, low) >= low.volts)
+            || loads.heavy.as_ref().is_some_and(|heavy| self.volts(pieces, heavy) > heavy.volts)
+            || self.volts(pieces, &loads.light) < loads.light.volts;
+        // A string has few tube types; each is asked once.
+        let mut asked = 0_u64;
+        for &tube in &self.tube[pieces.clone()] {
+            let bit = 1_u64 << (tube % 64);
+            if self.tubes <= 64 && asked & bit != 0 {
+                continue;
+            }
+            asked |= bit;
+            let [nominal, high] = &gates.most[tube];
+            if !self.holds(pieces, nominal) {
+                return Fit::NotYet;
+            }
+            look |= !self.holds(pieces, high) || self.breaks(pieces, &gates.least[tube]);
+        }
+        let share = self.volts(pieces, &loads.middle) / loads.middle.volts - 1.0;
+        Fit::Fits(Fitting { grade: look.then_some(Grade::Look), off_middle: share * share })
+    }
+
+    /// Whether an upper bound on the current holds.
+    fn holds(&self, pieces: &Range<usize>, gate: &CurrentGate) -> bool {
+        match gate {
+            CurrentGate::Always => true,
+            CurrentGate::Never => false,
+            CurrentGate::At(gate) => self.volts(pieces, gate) >= gate.volts,
+        }
+    }
+
+    /// Whether a lower bound on the current is broken.
+    fn breaks(&self, pieces: &Range<usize>, gate: &CurrentGate) -> bool {
+        match gate {
+            CurrentGate::Always => false,
+            CurrentGate::Never => true,
+            CurrentGate::At(gate) => self.volts(pieces, gate) > gate.volts,
+        }
+    }
+}

@@ -1,0 +1,182 @@
+//! The plan: pieces in reading order split into circuits, and a supply for each, with the reasons.
+//!
+//! Exact over all splits into neighbouring pieces. Order of what is avoided and sought: pieces left
+//! without a supply; circuits that need a look; then the job's wish. Ties go to the better balance
+//! (each string near the middle of its window).
+
+mod gates;
+mod split;
+mod why;
+
+use std::ops::Range;
+
+use crate::book::{Loading, OutputEarthing};
+use crate::circuit::{Assessment, Load, assess};
+use crate::job::Wish;
+use crate::rules::Grade;
+use crate::supply::Rating;
+use crate::takeoff::Piece;
+use crate::tube::TubeType;
+
+pub use gates::Gates;
+pub use split::{Fit, Split, Summed, best_split};
+pub use why::{Neighbour, Rejection};
+
+/// A supply the plan may use.
+#[derive(Debug, Clone)]
+pub struct Candidate {
+    /// Place in the book's list of supplies.
+    pub entry: usize,
+    /// Its rating.
+    pub rating: Rating,
+    /// Whether the rule set or the site alone already ask for a look.
+    pub look: bool,
+}
+
+/// What the plan works from.
+#[derive(Debug, Clone, Copy)]
+pub struct Task<'a> {
+    /// Pieces with their tube types, in reading order.
+    pub pieces: &'a [(&'a Piece, &'a TubeType)],
+    /// Supplies that may be used.
+    pub candidates: &'a [Candidate],
+    /// Windows.
+    pub loading: &'a Loading,
+    /// What to strive for.
+    pub wish: Wish,
+    /// Whether the site is cold.
+    pub cold: bool,
+}
+
+/// A circuit of the plan.
+#[derive(Debug, Clone)]
+pub struct Circuit {
+    /// Its pieces, as a range of the task's pieces.
+    pub pieces: Range<usize>,
+    /// Where the second string begins, with a mid-point return.
+    pub second_from: Option<usize>,
+    /// Its supply, a place in the task's candidates.
+    pub candidate: usize,
+    /// The circuit worked up.
+    pub assessment: Assessment,
+    /// The next smaller supply and what it fails by.
+    pub smaller: Option<Neighbour>,
+    /// The next larger supply and what speaks against it.
+    pub larger: Option<Neighbour>,
+}
+
+/// Pieces that no supply can run, together or alone.
+#[derive(Debug, Clone)]
+pub struct LeftOver {
+    /// The pieces, as a range of the task's pieces.
+    pub pieces: Range<usize>,
+    /// The supply that comes nearest and what it fails by; None when there is no supply at all.
+    pub nearest: Option<Rejection>,
+    /// What would make it fit, in words.
+    pub would_fit: String,
+}
+
+/// The best plan.
+#[derive(Debug, Clone, Default)]
+pub struct Plan {
+    /// Circuits in reading order.
+    pub circuits: Vec<Circuit>,
+    /// Pieces without a supply.
+    pub left_over: Vec<LeftOver>,
+}
+
+/// The cost of a plan, compared in this order; sums of circuits' costs.
+type Cost = [u64; 6];
+
+/// Finds the best plan.
+pub fn plan(task: &Task) -> Plan {
+    let gates = Gates::new(task);
+    let left_out: Cost = [1, 0, 0, 0, 0, 0];
+    let Some(split) = best_split(
+        task.pieces.len(),
+        task.candidates.len(),
+        Some(left_out),
+        |pieces, supply| gates.fit(task, pieces, supply).map(|fit| cost(task, supply, fit)),
+    ) else {
+        return Plan::default();
+    };
+    let mut found = Plan::default();
+    let mut stranded: Option<Range<usize>> = None;
+    for (pieces, supply) in split.parts {
+        let Some(candidate) = supply else {
+            match &mut stranded {
+                Some(range) => range.end = pieces.end,
+                None => stranded = Some(pieces),
+            }
+            continue;
+        };
+        found.left_over.extend(stranded.take().map(|pieces| why::left_over(task, pieces)));
+        found.circuits.push(circuit(task, &gates, pieces, candidate));
+    }
+    found.left_over.extend(stranded.map(|pieces| why::left_over(task, pieces)));
+    found
+}
+
+/// What a fitting string costs, by the wish.
+fn cost(task: &Task, supply: usize, fit: gates::Fitting) -> Cost {
+    let candidate = &task.candidates[supply];
+    let looks = u64::from(fit.grade == Some(Grade::Look) || candidate.look);
+    let va = scaled(candidate.rating.rated_va, 10.0);
+    let price = match candidate.rating.price {
+        Some(price) => scaled(f64::try_from(price).unwrap_or(f64::MAX), 100.0),
+        // An unknown price is never the lowest.
+        None => UNKNOWN_PRICE,
+    };
+    let balance = scaled(fit.off_middle, 1e6);
+    match task.wish {
+        Wish::FewestSupplies => [0, looks, 1, va, price, balance],
+        Wish::LowestPrice => [0, looks, price, 1, va, balance],
+    }
+}
+
+/// More than any supply costs, small enough that thousands of them add up.
+const UNKNOWN_PRICE: u64 = 1 << 40;
+
+#[allow(
+    clippy::cast_possible_truncation,
+    clippy::cast_sign_loss,
+    reason = "clamped to a range that u64 holds"
+)]
+fn scaled(value: f64, by: f64) -> u64 {
+    (value * by).round().clamp(0.0, 1e12) as u64
+}
+
+fn circuit(task: &Task, gates: &Gates, pieces: Range<usize>, candidate: usize) -> Circuit {
+    let second_from = gates.second_from(task, &pieces, candidate);
+    let rating = &task.candidates[candidate].rating;
+    Circuit {
+        assessment: on(task, &pieces, second_from, rating),
+        smaller: why::smaller(task, gates, &pieces, candidate),
+        larger: why::larger(task, gates, &pieces, candidate),
+        pieces,
+        second_from,
+        candidate,
+    }
+}
+
+/// Some pieces on a rating, worked up in full.
+fn on(
+    task: &Task,
+    pieces: &Range<usize>,
+    second_from: Option<usize>,
+    rating: &Rating,
+) -> Assessment {
+    let load = |range: Range<usize>| Load::of(task.pieces[range].iter().copied(), task.cold);
+    match second_from {
+        Some(from) => {
+            let (first, second) = (load(pieces.start..from), load(from..pieces.end));
+            assess(&[&first, &second], rating, task.loading)
+        }
+        None => assess(&[&load(pieces.clone())], rating, task.loading),
+    }
+}
+
+
+const fn two_strings(rating: &Rating) -> bool {
+    matches!(rating.earthing, OutputEarthing::MidPointReturn)
+}

@@ -1,0 +1,138 @@
+//! Supplies: a rating that can be worked with, and what a rule set and a site say of it.
+//!
+//! Never invents a figure of a nameplate. What is not given and not needed stays unknown.
+
+mod finding;
+
+
+use rust_decimal::Decimal;
+
+use crate::book::{Dampness, OutputEarthing, SupplyEntry, SupplyKind};
+use crate::job::Site;
+use crate::measure::{Milliamps, Volts};
+use crate::rules::{Finding, RuleSet};
+
+pub(crate) use finding::blanks;
+
+/// A checked rating.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Rating {
+    /// Name in the book.
+    pub name: String,
+    /// Iron or electronic.
+    pub kind: SupplyKind,
+    /// No-load output volts, rms, lead to lead.
+    pub no_load: Volts,
+    /// Short-circuit output current.
+    pub short_circuit: Milliamps,
+    /// Rated output current; for iron, the short-circuit current where the plate gives no other.
+    pub rated: Milliamps,
+    /// Output volts at the rated current; electronic supplies only.
+    pub rated_load: Option<Volts>,
+    /// What of the output is earthed.
+    pub earthing: OutputEarthing,
+    /// Whether it switches off on an earth fault.
+    pub earth_fault_protection: bool,
+    /// Trip current of that protection.
+    pub trip: Option<Milliamps>,
+    /// Whether it switches off when the string is open.
+    pub open_circuit_protection: bool,
+    /// Rated size: the plate's volt-amperes, or no-load volts times short-circuit current.
+    pub rated_va: f64,
+    /// The plate's loading window, shares of no-load volts (least, most).
+    pub plate_window: Option<(f64, f64)>,
+    /// Mains volts it is made for.
+    pub input_volts: Option<f64>,
+    /// The wettest place it is made for.
+    pub place: Dampness,
+    /// Price of one.
+    pub price: Option<Decimal>,
+}
+
+impl Rating {
+    /// Checks an entry.
+    ///
+    /// # Errors
+    /// Everything that is missing or contradicts itself, as findings at the supply.
+    pub fn read(entry: &SupplyEntry) -> Result<Self, Vec<Finding>> {
+        let wrong = finding::contradictions(entry);
+        let (Some(no_load), Some(short_circuit), true) = (
+            entry.no_load_volts,
+            entry.short_circuit_ma.or(match entry.kind {
+                // An electronic supply that names only its rated current is taken to hold it.
+                SupplyKind::Electronic => entry.rated_ma,
+                SupplyKind::Iron => None,
+            }),
+            wrong.is_empty(),
+        ) else {
+            return Err(wrong);
+        };
+        let share = |percent: f64| percent / 100.0;
+        Ok(Self {
+            name: entry.name.clone(),
+            kind: entry.kind,
+            no_load: Volts::from_volts(no_load),
+            short_circuit: Milliamps::from_ma(short_circuit),
+            rated: Milliamps::from_ma(entry.rated_ma.unwrap_or(short_circuit)),
+            rated_load: entry.rated_load_volts.map(Volts::from_volts),
+            earthing: entry.earthing,
+            earth_fault_protection: entry.earth_fault_protection,
+            trip: entry.trip_ma.map(Milliamps::from_ma),
+            open_circuit_protection: entry.open_circuit_protection,
+            rated_va: entry.input_va.unwrap_or(no_load * short_circuit / 1000.0),
+            plate_window: entry
+                .least_load_percent
+                .map(share)
+                .zip(entry.most_load_percent.map(share)),
+            input_volts: entry.input_volts,
+            place: entry.place,
+            price: entry.price,
+        })
+    }
+
+    /// Greatest volts from any terminal to earth with no load: what insulation must stand. On an
+    /// isolated output this is the whole no-load voltage (NEC Article 100: for an ungrounded
+    /// circuit, the greatest voltage to any other conductor).
+    pub fn no_load_to_earth(&self) -> Volts {
+        match self.earthing {
+            OutputEarthing::MidPoint | OutputEarthing::MidPointReturn => self.no_load * 0.5,
+            OutputEarthing::OneEnd | OutputEarthing::Isolated => self.no_load,
+        }
+    }
+
+    /// What a rule set says of this rating, whatever hangs on it. A stop means the rating is not to
+    /// be used under the set.
+    pub fn against_rules(&self, rules: &RuleSet) -> Vec<Finding> {
+        finding::rules(self, rules)
+    }
+
+    /// What the site says of this rating.
+    pub fn against_site(&self, site: &Site) -> Vec<Finding> {
+        finding::site(self, site)
+    }
+
+    /// Whether iron and isolated, the only supplies the exemption from earth-fault protection names.
+    pub(crate) fn isolated_transformer(&self) -> bool {
+        self.kind == SupplyKind::Iron && self.earthing == OutputEarthing::Isolated
+    }
+
+    /// The rating in words: `9 000 V, 30 mA, mid-point earthed`.
+    pub fn words(&self) -> String {
+        format!(
+            "{}, {} mA, {}",
+            crate::measure::volts_shown(self.no_load),
+            self.short_circuit.ma(),
+            earthing_words(self.earthing)
+        )
+    }
+}
+
+/// The earthing of an output in words.
+pub const fn earthing_words(earthing: OutputEarthing) -> &'static str {
+    match earthing {
+        OutputEarthing::MidPoint => "mid-point earthed",
+        OutputEarthing::MidPointReturn => "mid-point earthed with return",
+        OutputEarthing::OneEnd => "one end earthed",
+        OutputEarthing::Isolated => "isolated",
+    }
+}

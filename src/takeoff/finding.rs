@@ -1,0 +1,110 @@
+//! The sentences of this room.
+
+use super::Piece;
+use crate::book::Allowances;
+use crate::drawing::{Face, faces};
+use crate::measure::{Limit, ReadError, Units, length_shown, quoted};
+use crate::rules::{Finding, Grade, Place, Source};
+
+fn row(grade: Grade, row: usize, says: String) -> Finding {
+    Finding::new(grade, Place::Row(row), says, Source::entry())
+}
+
+pub(super) fn unreadable(at: usize, field: &str, error: &ReadError) -> Finding {
+    row(Grade::Stop, at, format!("{field}: {error}."))
+}
+
+pub(super) fn outside(at: usize, limit: &Limit, value: f64) -> Finding {
+    row(Grade::Stop, at, format!("{limit}, but is {value}.")).with(
+        value,
+        if value < limit.least { limit.least } else { limit.most },
+        limit.unit,
+    )
+}
+
+pub(super) fn no_text(at: usize) -> Finding {
+    row(Grade::Look, at, "Nothing to make: the row has no letters.".to_owned())
+}
+
+pub(super) fn no_strokes(at: usize) -> Finding {
+    row(Grade::Look, at, "Nothing to make: the row has no stroke lengths.".to_owned())
+}
+
+pub(super) fn no_face(at: usize, name: &str) -> Finding {
+    let known: Vec<&str> = faces().iter().map(|face| face.name).collect();
+    row(
+        Grade::Stop,
+        at,
+        format!("There is no letter face {}; there are: {}.", quoted(name), known.join(", ")),
+    )
+}
+
+pub(super) fn no_shape(at: usize, face: &Face, missing: &[(usize, char)]) -> Finding {
+    const MOST_NAMED: usize = 5;
+    let mut named: Vec<String> = missing
+        .iter()
+        .take(MOST_NAMED)
+        .map(|&(place, character)| {
+            format!("{} (character {})", quoted(&character.to_string()), place + 1)
+        })
+        .collect();
+    if missing.len() > MOST_NAMED {
+        named.push(format!("{} more", missing.len() - MOST_NAMED));
+    }
+    row(
+        Grade::Stop,
+        at,
+        format!(
+            "The face {} has no shape for {}: glass and price are without it. Give it as strokes.",
+            face.name,
+            named.join(", ")
+        ),
+    )
+}
+
+pub(super) fn too_many(limit: &Limit, value: usize) -> Finding {
+    Finding::new(
+        Grade::Stop,
+        Place::Job,
+        format!("{limit}, but there are {value}: the rest is left out."),
+        Source::entry(),
+    )
+}
+
+pub(super) fn too_long(piece_at: usize, piece: &Piece, allowances: &Allowances) -> Finding {
+    Finding::new(
+        Grade::Look,
+        Place::Piece(piece_at),
+        format!(
+            "The piece {} is {} of glass between its electrodes, longer than the shop bends in one \
+             ({} mm): give it as more pieces.",
+            quoted(&piece.label),
+            length_shown(piece.column(), Units::Metric),
+            allowances.longest_piece_mm
+        ),
+        Source::shop(),
+    )
+    .with(piece.column().mm(), allowances.longest_piece_mm, "mm")
+}
+
+pub(super) fn crossovers() -> Finding {
+    Finding::new(
+        Grade::Note,
+        Place::Job,
+        "Painted-out glass between the strokes of a piece is estimated by the shortest straight \
+         jumps; a bender's double-backs may take more.",
+        Source::practice(),
+    )
+}
+
+pub(super) fn drawn_straight(at: usize) -> Finding {
+    row(
+        Grade::Note,
+        at,
+        "Given by length only: drawn straight, to scale, not where it hangs.".to_owned(),
+    )
+}
+
+pub(super) fn allowance(says: String) -> Finding {
+    Finding::new(Grade::Stop, Place::Job, says, Source::shop())
+}

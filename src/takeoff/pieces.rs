@@ -1,0 +1,305 @@
+//! Rows into placed pieces.
+
+use std::collections::HashMap;
+
+use kurbo::{Affine, BezPath, ParamCurveArclen, Point, Rect, Shape};
+
+use super::route::{Route, route};
+use super::{Piece, RowTakeoff, finding};
+use crate::book::Allowances;
+use crate::drawing::{Letter, face};
+use crate::job::{Job, Row, StrokesRow, TextRow};
+use crate::measure::{self, Length, LengthUnit};
+use crate::rules::Finding;
+
+/// Accuracy of stroke lengths in millimetres: far below what glass can be bent to.
+const ARC_LENGTH_MM: f64 = 1e-9;
+/// Clear space between rows, as a share of the taller row's height.
+const ROW_GAP: f64 = 0.35;
+/// Distance between straight strokes drawn under each other, as a share of the longest.
+const BAR_PITCH: f64 = 0.03;
+
+/// Everything taken off a job.
+#[derive(Debug, Clone)]
+pub struct Takeoff {
+    /// One for each row of the job.
+    pub rows: Vec<RowTakeoff>,
+    /// All pieces in reading order.
+    pub pieces: Vec<Piece>,
+    /// The whole sign's box on its own plane, millimetres.
+    pub bounds: Rect,
+    /// What was found on the way.
+    pub findings: Vec<Finding>,
+}
+
+/// Takes a job off: strokes, pieces, glass.
+pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
+    let mut off =
+        Takeoff { rows: Vec::new(), pieces: Vec::new(), bounds: Rect::ZERO, findings: Vec::new() };
+    let tail_mm = sane(allowances.tail_mm, 0.0, 2_000.0).unwrap_or_else(|| {
+        off.findings.push(finding::allowance(format!(
+            "The tail allowance must be 0 to 2000 mm, but is {}: counted as none.",
+            allowances.tail_mm
+        )));
+        0.0
+    });
+    let longest_mm = sane(allowances.longest_piece_mm, 1.0, 100_000.0);
+    let mut sheet = Sheet { below: 0.0, last_height: 0.0, bounds: None };
+    for (at, row) in job.rows.iter().enumerate() {
+        #[allow(clippy::cast_precision_loss, reason = "a handful of rows")]
+        let over = at as f64 >= measure::ROWS.most;
+        if over {
+            off.findings.push(finding::too_many(&measure::ROWS, job.rows.len()));
+            break;
+        }
+        let first = off.pieces.len();
+        let room = whole(measure::PIECES.most).saturating_sub(first);
+        let mut made = match row {
+            Row::Text(row) => text(at, row, &mut off.findings),
+            Row::Strokes(row) => strokes(at, row, &mut off.findings),
+        };
+        let copies = count(at, row.count(), &mut off.findings);
+        let wanted = made.pieces.len() * copies;
+        if wanted > room {
+            off.findings.push(finding::too_many(&measure::PIECES, first + wanted));
+            made.pieces.truncate(room / copies.max(1));
+        }
+        let mut bounds: Option<Rect> = None;
+        for copy in 0..copies {
+            if made.pieces.is_empty() {
+                break;
+            }
+            let place = sheet.place(made.bounds);
+            for drawn in &made.pieces {
+                let piece = drawn.piece(at, copy, row.tube(), tail_mm, place);
+                if longest_mm.is_some_and(|most| piece.column().mm() > most) && copy == 0 {
+                    off.findings.push(finding::too_long(off.pieces.len(), &piece, allowances));
+                }
+                off.pieces.push(piece);
+            }
+            let here = place.transform_rect_bbox(made.bounds);
+            bounds = Some(bounds.map_or(here, |all| all.union(here)));
+        }
+        let pieces = first..off.pieces.len();
+        off.rows.push(RowTakeoff {
+            bounds: bounds.unwrap_or(Rect::ZERO),
+            lit: off.pieces[pieces.clone()].iter().map(|piece| piece.lit).sum(),
+            glass: off.pieces[pieces.clone()].iter().map(Piece::glass).sum(),
+            pieces,
+        });
+    }
+    off.bounds = sheet.bounds.unwrap_or(Rect::ZERO);
+    if off.pieces.iter().any(|piece| piece.hidden > Length::ZERO) {
+        off.findings.push(finding::crossovers());
+    }
+    off
+}
+
+/// The plane rows are laid out on: centred, one under the other.
+struct Sheet {
+    below: f64,
+    last_height: f64,
+    bounds: Option<Rect>,
+}
+
+impl Sheet {
+    fn place(&mut self, bounds: Rect) -> Affine {
+        let height = bounds.height();
+        let gap = if self.bounds.is_some() {
+            ROW_GAP * height.max(self.last_height).max(bounds.width() * BAR_PITCH)
+        } else {
+            0.0
+        };
+        let top = self.below + gap;
+        let place = Affine::translate((-bounds.center().x, top - bounds.y0));
+        (self.below, self.last_height) = (top + height, height);
+        let here = place.transform_rect_bbox(bounds);
+        self.bounds = Some(self.bounds.map_or(here, |all| all.union(here)));
+        place
+    }
+}
+
+/// A row's pieces before they are placed.
+#[derive(Default)]
+struct Made {
+    pieces: Vec<Drawn>,
+    bounds: Rect,
+}
+
+struct Drawn {
+    label: String,
+    lit_mm: f64,
+    strokes: Vec<BezPath>,
+    route: Route,
+}
+
+impl Drawn {
+    fn new(label: String, strokes: Vec<BezPath>, route: Route) -> Self {
+        let lit_mm = strokes
+            .iter()
+            .flat_map(BezPath::segments)
+            .map(|segment| segment.arclen(ARC_LENGTH_MM))
+            .sum();
+        Self { label, lit_mm, strokes, route }
+    }
+
+    fn piece(&self, row: usize, copy: usize, tube: &str, tail_mm: f64, place: Affine) -> Piece {
+        let jump = |&(from, to): &(Point, Point)| {
+            let mut path = BezPath::new();
+            path.move_to(place * from);
+            path.line_to(place * to);
+            path
+        };
+        Piece {
+            row,
+            copy,
+            label: self.label.clone(),
+            tube: tube.to_owned(),
+            lit: Length::from_mm(self.lit_mm),
+            hidden: Length::from_mm(self.route.jump_mm),
+            tails: Length::from_mm(2.0 * tail_mm),
+            strokes: self.strokes.iter().map(|stroke| place * stroke).collect(),
+            jumps: self.route.jumps.iter().map(jump).collect(),
+            electrodes: self.route.ends.map(|end| place * end),
+        }
+    }
+}
+
+fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
+    if row.text.trim().is_empty() {
+        findings.push(finding::no_text(at));
+        return Made::default();
+    }
+    let characters = row.text.chars().count();
+    #[allow(clippy::cast_precision_loss, reason = "a count of characters")]
+    if !measure::TEXT_CHARACTERS.holds(characters as f64) {
+        findings.push(finding::outside(at, &measure::TEXT_CHARACTERS, characters as f64));
+        return Made::default();
+    }
+    let Some(face) = face(&row.face) else {
+        findings.push(finding::no_face(at, &row.face));
+        return Made::default();
+    };
+    let height_mm = match measure::length(&row.height, LengthUnit::Millimetres) {
+        Ok(height) => height.length().mm(),
+        Err(error) => {
+            findings.push(finding::unreadable(at, "Letter height", &error));
+            return Made::default();
+        }
+    };
+    if !measure::LETTER_HEIGHT_MM.holds(height_mm) {
+        findings.push(finding::outside(at, &measure::LETTER_HEIGHT_MM, height_mm));
+        return Made::default();
+    }
+    let shaped = face.shape(&row.text, height_mm);
+    if !shaped.missing.is_empty() {
+        findings.push(finding::no_shape(at, face, &shaped.missing));
+    }
+    let mut pieces: Vec<(usize, String, Vec<BezPath>)> = Vec::new();
+    for Letter { character, word, strokes } in shaped.letters {
+        match pieces.last_mut() {
+            Some((last, label, all)) if face.joined && *last == word => {
+                label.push(character);
+                all.extend(strokes);
+            }
+            _ => pieces.push((word, character.to_string(), strokes)),
+        }
+    }
+    // The same letter is run through the same way wherever it stands in the row.
+    let mut known: HashMap<String, (Point, Route)> = HashMap::new();
+    let pieces = pieces
+        .into_iter()
+        .map(|(_, label, strokes)| {
+            let here = strokes.first().map_or(Point::ZERO, |stroke| stroke.bounding_box().origin());
+            let route = match known.get(&label) {
+                Some((there, route)) => moved(route, here - *there),
+                None => route(&strokes),
+            };
+            known.entry(label.clone()).or_insert_with(|| (here, route.clone()));
+            Drawn::new(label, strokes, route)
+        })
+        .collect();
+    Made { pieces, bounds: shaped.bounds }
+}
+
+fn moved(route: &Route, by: kurbo::Vec2) -> Route {
+    Route {
+        jump_mm: route.jump_mm,
+        jumps: route.jumps.iter().map(|&(from, to)| (from + by, to + by)).collect(),
+        ends: route.ends.map(|end| end + by),
+    }
+}
+
+fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
+    let mut lengths_mm = Vec::new();
+    for (number, typed) in row.strokes.split(';').enumerate() {
+        if typed.trim().is_empty() {
+            continue;
+        }
+        let field = format!("Stroke {}", number + 1);
+        match measure::length(typed, LengthUnit::Millimetres) {
+            Ok(length) if measure::PIECE_LENGTH_MM.holds(length.length().mm()) => {
+                lengths_mm.push(length.length().mm());
+            }
+            Ok(length) => {
+                findings.push(finding::outside(at, &measure::PIECE_LENGTH_MM, length.length().mm()));
+            }
+            Err(error) => findings.push(finding::unreadable(at, &field, &error)),
+        }
+        if lengths_mm.len() > whole(measure::PIECES.most) {
+            break;
+        }
+    }
+    if lengths_mm.is_empty() {
+        if row.strokes.split(';').all(|typed| typed.trim().is_empty()) {
+            findings.push(finding::no_strokes(at));
+        }
+        return Made::default();
+    }
+    findings.push(finding::drawn_straight(at));
+    let longest = lengths_mm.iter().copied().fold(0.0, f64::max);
+    let alone = lengths_mm.len() == 1;
+    let mut bounds: Option<Rect> = None;
+    let pieces = lengths_mm
+        .iter()
+        .enumerate()
+        .map(|(number, &length)| {
+            #[allow(clippy::cast_precision_loss, reason = "a count of strokes")]
+            let y = number as f64 * longest * BAR_PITCH;
+            let (from, to) = (Point::new(-length / 2.0, y), Point::new(length / 2.0, y));
+            let mut stroke = BezPath::new();
+            stroke.move_to(from);
+            stroke.line_to(to);
+            let here = Rect::from_points(from, to);
+            bounds = Some(bounds.map_or(here, |all| all.union(here)));
+            let label =
+                if alone { row.label.clone() } else { format!("{} {}", row.label, number + 1) };
+            let route = Route { jump_mm: 0.0, jumps: Vec::new(), ends: [from, to] };
+            Drawn::new(label, vec![stroke], route)
+        })
+        .collect();
+    Made { pieces, bounds: bounds.unwrap_or(Rect::ZERO) }
+}
+
+fn count(at: usize, typed: i64, findings: &mut Vec<Finding>) -> usize {
+    #[allow(clippy::cast_precision_loss, reason = "only compared with a small limit")]
+    let value = typed as f64;
+    if measure::COUNT.holds(value) {
+        return usize::try_from(typed).unwrap_or(0);
+    }
+    findings.push(finding::outside(at, &measure::COUNT, value));
+    0
+}
+
+fn sane(value: f64, least: f64, most: f64) -> Option<f64> {
+    (least <= value && value <= most).then_some(value)
+}
+
+#[allow(
+    clippy::cast_possible_truncation,
+    clippy::cast_sign_loss,
+    reason = "limits of counts are small whole numbers"
+)]
+fn whole(limit: f64) -> usize {
+    limit as usize
+}

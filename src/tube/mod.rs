@@ -1,0 +1,183 @@
+//! Tube types: the volts a column of gas and a pair of electrodes take at a current.
+//!
+//! `U = U_pair + E L`, `E = E_ref (I_ref / I)^n`. L runs from electrode shell to electrode shell,
+//! painted-out parts included.
+//!
+//! # Source
+//! The default model is a similarity model anchored on a few published points (lamp data of
+//! IEC 60081 as remembered, Gaster & Dow *Modern Illuminating Engineering* p. 112, and others), about
+//! ±15 % for glass of 12 to 15 mm and ±25 % outside. It is not a transcription of a handbook.
+//! Bench readings of the shop's own tubes are better; so is any figure typed into the book.
+
+use crate::book::{Gas, TubeEntry};
+use crate::measure::{Length, Milliamps, Volts};
+use crate::rules::{Finding, Grade, Place, Source};
+
+/// Current the default model's figures are given at.
+const MODEL_MA: f64 = 25.0;
+/// Below 0 °C, mercury tubes: low confidence, from memory (+10 to +30 % reported orally).
+const MODEL_COLD_FACTOR: f64 = 1.15;
+/// Greatest exponent of the fall of volts with current.
+const MOST_EXPONENT: f64 = 0.45;
+
+/// Default figures for a gas and a bore.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct ModelFigures {
+    /// Running volts per metre at 25 mA.
+    pub volts_per_m: f64,
+    /// Exponent n of the fall with current.
+    pub exponent: f64,
+    /// Volts of one electrode pair.
+    pub pair_volts: f64,
+    /// How far off the volts per metre may be, percent either way.
+    pub uncertainty_percent: f64,
+}
+
+/// The default model: `bore_mm` is the inner diameter in millimetres.
+pub fn model(gas: Gas, bore_mm: f64) -> ModelFigures {
+    // Tubes of 12 to 15 mm outer diameter, as the model's data bracket them.
+    let uncertainty_percent = if (10.0..=13.0).contains(&bore_mm) { 15.0 } else { 25.0 };
+    let (at_10_mm, slope, exponent, pair_volts) = match gas {
+        Gas::Neon => (720.0, 0.75, 0.25, 180.0),
+        Gas::ArgonMercury => (425.0, 0.70, 0.30, 210.0),
+    };
+    ModelFigures {
+        volts_per_m: at_10_mm * (10.0 / bore_mm).powf(slope),
+        exponent,
+        pair_volts,
+        uncertainty_percent,
+    }
+}
+
+/// A tube type with every figure known.
+#[derive(Debug, Clone, PartialEq)]
+pub struct TubeType {
+    /// Name in the book.
+    pub name: String,
+    /// Its gas.
+    pub gas: Gas,
+    /// Outer diameter of the glass.
+    pub outer: Length,
+    /// Colour to draw it in, `#rrggbb`.
+    pub colour: String,
+    /// Running volts per metre at `at_ma`, warm.
+    pub volts_per_m: f64,
+    /// Current of `volts_per_m`, milliamperes.
+    pub at_ma: f64,
+    /// Volts go as current to the power of minus this.
+    pub exponent: f64,
+    /// Volts of one electrode pair.
+    pub pair_volts: f64,
+    /// Factor on volts per metre below 0 °C.
+    pub cold_factor: f64,
+    /// Least steady current.
+    pub least: Option<Milliamps>,
+    /// Greatest current of glass and electrodes.
+    pub most: Option<Milliamps>,
+    /// How far off the volts may be, percent either way, where the default model gave them.
+    pub model_uncertainty_percent: Option<f64>,
+}
+
+impl TubeType {
+    /// Checks an entry; figures left out come from the default model.
+    ///
+    /// # Errors
+    /// Every contradiction, as findings at the tube.
+    pub fn read(entry: &TubeEntry) -> Result<Self, Vec<Finding>> {
+        let mut wrong = Vec::new();
+        let mut stop = |says: String| {
+            wrong.push(Finding::new(
+                Grade::Stop,
+                Place::Tube(entry.name.clone()),
+                says,
+                Source::entry(),
+            ));
+        };
+        let mut above_zero = |name: &str, value: Option<f64>, most: f64, unit: &str| {
+            if let Some(value) = value
+                && !(value > 0.0 && value <= most)
+            {
+                stop(format!("{name} must be above 0 and at most {most} {unit}, but is {value}."));
+            }
+        };
+        above_zero("Outer diameter", entry.outer_mm, 60.0, "mm");
+        above_zero("Wall", entry.wall_mm, 10.0, "mm");
+        above_zero("Volts per metre", entry.volts_per_m, 10_000.0, "V/m");
+        above_zero("Reference current", entry.at_ma, 1_000.0, "mA");
+        above_zero("Volts of an electrode pair", entry.pair_volts, 2_000.0, "V");
+        above_zero("Cold factor", entry.cold_factor, 3.0, "");
+        above_zero("Least current", entry.least_ma, 1_000.0, "mA");
+        above_zero("Greatest current", entry.most_ma, 1_000.0, "mA");
+        // Up to here every crossing with a supply's steady branch is stable, so there is only one;
+        // published exponents of cold-cathode columns are 0.2 to 0.36.
+        if let Some(n) = entry.exponent
+            && !(0.0..=MOST_EXPONENT).contains(&n)
+        {
+            stop(format!("The exponent must be 0 to {MOST_EXPONENT}, but is {n}."));
+        }
+        if let (Some(least), Some(most)) = (entry.least_ma, entry.most_ma)
+            && least > most
+        {
+            stop(format!("The least current, {least} mA, is above the greatest, {most} mA."));
+        }
+        let outer_mm = entry.outer_mm.unwrap_or_else(|| {
+            stop("The outer diameter is missing: it is needed to draw and to model the tube.".into());
+            f64::NAN
+        });
+        let bore_mm = outer_mm - 2.0 * entry.wall_mm.unwrap_or(1.0);
+        if bore_mm <= 0.0 {
+            stop(format!("The walls leave no bore: outer diameter {outer_mm} mm."));
+        }
+        if !wrong.is_empty() {
+            return Err(wrong);
+        }
+        let figures = model(entry.gas, bore_mm);
+        // A gradient given at another current than 25 mA keeps its own reference.
+        let at_ma = entry.at_ma.filter(|_| entry.volts_per_m.is_some()).unwrap_or(MODEL_MA);
+        let modelled = entry.volts_per_m.is_none();
+        Ok(Self {
+            name: entry.name.clone(),
+            gas: entry.gas,
+            outer: Length::from_mm(outer_mm),
+            colour: colour(&entry.colour, entry.gas),
+            volts_per_m: entry.volts_per_m.unwrap_or(figures.volts_per_m),
+            at_ma,
+            exponent: entry.exponent.unwrap_or(figures.exponent),
+            pair_volts: entry.pair_volts.unwrap_or(figures.pair_volts),
+            cold_factor: entry.cold_factor.unwrap_or(match entry.gas {
+                Gas::Neon => 1.0,
+                Gas::ArgonMercury => MODEL_COLD_FACTOR,
+            }),
+            least: entry.least_ma.map(Milliamps::from_ma),
+            most: entry.most_ma.map(Milliamps::from_ma),
+            model_uncertainty_percent: modelled.then_some(figures.uncertainty_percent),
+        })
+    }
+
+    /// The column constant of a length: volts of the column are `column(length) * I^-n`, I in mA.
+    pub fn column(&self, length: Length, cold: bool) -> f64 {
+        let warm = self.volts_per_m * length.m() * self.at_ma.powf(self.exponent);
+        if cold { warm * self.cold_factor } else { warm }
+    }
+
+    /// Running volts of one piece.
+    pub fn running(&self, length: Length, current: Milliamps, cold: bool) -> Volts {
+        Volts::from_volts(
+            self.pair_volts + self.column(length, cold) * current.ma().powf(-self.exponent),
+        )
+    }
+}
+
+/// The entry's colour if it is `#rrggbb`, else a colour of the gas.
+fn colour(typed: &str, gas: Gas) -> String {
+    let fine = typed.len() == 7
+        && typed.starts_with('#')
+        && typed.bytes().skip(1).all(|b| b.is_ascii_hexdigit());
+    if fine {
+        return typed.to_owned();
+    }
+    match gas {
+        Gas::Neon => "#ff5a3c".to_owned(),
+        Gas::ArgonMercury => "#9fc4ff".to_owned(),
+    }
+}

@@ -1,0 +1,440 @@
+//! The one function: a job and a book in, every figure and every finding out.
+//!
+//! Same inputs, same output. It never fails as a whole: what cannot be worked out carries its own
+//! finding and the rest still counts.
+
+use std::collections::HashSet;
+
+use crate::book::Book;
+use crate::circuit::Assessment;
+use crate::job::Job;
+use crate::measure::{Length, quoted};
+use crate::plan::{self, Candidate, Task};
+use crate::quote::{self, GlassPart, Parts, Quote};
+use crate::rules::{Finding, Grade, Place, RuleSet, Source};
+use crate::supply::{self, Rating};
+use crate::takeoff::{Piece, Takeoff, takeoff};
+use crate::tube::TubeType;
+
+/// Everything worked out of a job and a book.
+#[derive(Debug, Clone)]
+pub struct Workup {
+    /// Rows and pieces, measured and placed.
+    pub takeoff: Takeoff,
+    /// Glass by tube type, in the order of the rows.
+    pub tubes: Vec<TubeTotal>,
+    /// Circuits in reading order.
+    pub circuits: Vec<CircuitWork>,
+    /// Pieces no supply can run.
+    pub left_over: Vec<LeftOverWork>,
+    /// Supplies of the book that this job cannot use, with the reasons.
+    pub refused: Vec<Refused>,
+    /// The first sum.
+    pub quote: Quote,
+    /// The rule set the job is held against.
+    pub rules: Option<RuleSet>,
+    /// All findings, gravest first.
+    pub findings: Vec<Finding>,
+}
+
+/// Glass of one tube type.
+#[derive(Debug, Clone, PartialEq)]
+pub struct TubeTotal {
+    /// Name in the book.
+    pub name: String,
+    /// The tube type; None when the book has none of that name, or a contradictory one.
+    pub tube: Option<TubeType>,
+    /// Pieces of it.
+    pub pieces: usize,
+    /// Glass that shines.
+    pub lit: Length,
+    /// Glass painted out.
+    pub hidden: Length,
+    /// All glass to bend, tails counted, waste not.
+    pub glass: Length,
+}
+
+/// A circuit of the plan.
+#[derive(Debug, Clone)]
+pub struct CircuitWork {
+    /// Its pieces in order, places in the takeoff.
+    pub pieces: Vec<usize>,
+    /// How many of them are in the first string; all but with a mid-point return.
+    pub first_string: usize,
+    /// Its supply.
+    pub supply: Rating,
+    /// Worked up.
+    pub assessment: Assessment,
+    /// Glass column of all its pieces.
+    pub column: Length,
+    /// The next smaller supply of the book by name, and what it fails by.
+    pub smaller: Option<(String, String)>,
+    /// The next larger one, and what speaks against it.
+    pub larger: Option<(String, String)>,
+    /// Findings at this circuit and of its supply, gravest first.
+    pub findings: Vec<Finding>,
+}
+
+impl CircuitWork {
+    /// The gravest finding.
+    pub fn grade(&self) -> Option<Grade> {
+        Finding::gravest(&self.findings)
+    }
+}
+
+/// Pieces no supply can run.
+#[derive(Debug, Clone)]
+pub struct LeftOverWork {
+    /// The pieces, places in the takeoff.
+    pub pieces: Vec<usize>,
+    /// The nearest supply by name, and what stops it.
+    pub nearest: Option<(String, String)>,
+    /// What would make it fit.
+    pub would_fit: String,
+}
+
+/// A supply this job cannot use.
+#[derive(Debug, Clone)]
+pub struct Refused {
+    /// Name in the book.
+    pub supply: String,
+    /// Why.
+    pub findings: Vec<Finding>,
+}
+
+impl Workup {
+    /// Glass that shines.
+    pub fn lit(&self) -> Length {
+        self.tubes.iter().map(|total| total.lit).sum()
+    }
+
+    /// All glass to bend.
+    pub fn glass(&self) -> Length {
+        self.tubes.iter().map(|total| total.glass).sum()
+    }
+
+    /// The gravest grade of all findings.
+    pub fn grade(&self) -> Option<Grade> {
+        Finding::gravest(&self.findings)
+    }
+
+    /// The circuit a piece is on.
+    pub fn circuit_of(&self, piece: usize) -> Option<usize> {
+        self.circuits.iter().position(|circuit| circuit.pieces.contains(&piece))
+    }
+}
+
+/// Works a job up with a book.
+pub fn workup(job: &Job, book: &Book) -> Workup {
+    let mut findings = Vec::new();
+    let rules = rule_set(job, book, &mut findings);
+    let loading = loading(book, &mut findings);
+
+    let off = takeoff(job, &book.allowances);
+    findings.extend(off.findings.iter().cloned());
+
+    let tubes = tube_totals(job, book, &off.pieces, &mut findings);
+    let (candidates, refused) = candidates(job, book, rules.as_ref(), &mut findings);
+
+    let placed: Vec<(usize, &Piece, &TubeType)> = off
+        .pieces
+        .iter()
+        .enumerate()
+        .filter_map(|(at, piece)| {
+            let total = tubes.iter().find(|total| total.name == piece.tube)?;
+            Some((at, piece, total.tube.as_ref()?))
+        })
+        .collect();
+    let pieces: Vec<(&Piece, &TubeType)> =
+        placed.iter().map(|&(_, piece, tube)| (piece, tube)).collect();
+    let task = Task {
+        pieces: &pieces,
+        candidates: &candidates,
+        loading: &loading,
+        wish: job.wish,
+        cold: job.site.cold,
+    };
+    let planned = plan::plan(&task);
+
+    let place = |range: std::ops::Range<usize>| -> Vec<usize> {
+        placed[range].iter().map(|&(at, ..)| at).collect()
+    };
+    let named = |candidate: usize| candidates[candidate].rating.name.clone();
+    let circuits: Vec<CircuitWork> = planned
+        .circuits
+        .into_iter()
+        .enumerate()
+        .map(|(number, circuit)| {
+            let rating = candidates[circuit.candidate].rating.clone();
+            let mut found = circuit.assessment.findings.clone();
+            found.extend(rules.iter().flat_map(|rules| rating.against_rules(rules)));
+            for finding in &mut found {
+                finding.place = Place::Circuit(number);
+            }
+            gravest_first(&mut found);
+            findings.extend(found.iter().cloned());
+            CircuitWork {
+                first_string: circuit.second_from.unwrap_or(circuit.pieces.end)
+                    - circuit.pieces.start,
+                column: pieces[circuit.pieces.clone()].iter().map(|(p, _)| p.column()).sum(),
+                pieces: place(circuit.pieces),
+                supply: rating,
+                smaller: circuit.smaller.map(|other| (named(other.candidate), other.says)),
+                larger: circuit.larger.map(|other| (named(other.candidate), other.says)),
+                assessment: circuit.assessment,
+                findings: found,
+            }
+        })
+        .collect();
+    let left_over: Vec<LeftOverWork> = planned
+        .left_over
+        .into_iter()
+        .map(|left| {
+            let stranded = LeftOverWork {
+                pieces: place(left.pieces),
+                nearest: left.nearest.map(|nearest| {
+                    let stop = nearest.findings.first().map(|finding| finding.says.clone());
+                    (named(nearest.candidate), stop.unwrap_or_default())
+                }),
+                would_fit: left.would_fit,
+            };
+            findings.push(no_supply(&stranded, &off.pieces));
+            stranded
+        })
+        .collect();
+
+    let quote = quote::quote(&parts(book, &tubes, &circuits, off.pieces.len()), &book.rates);
+    findings.extend(quote.findings.iter().cloned());
+    findings.extend(model_notes(&tubes));
+    gravest_first(&mut findings);
+    Workup { takeoff: off, tubes, circuits, left_over, refused, quote, rules, findings }
+}
+
+fn gravest_first(findings: &mut [Finding]) {
+    findings.sort_by_key(|finding| std::cmp::Reverse(finding.grade));
+}
+
+fn rule_set(job: &Job, book: &Book, findings: &mut Vec<Finding>) -> Option<RuleSet> {
+    let found = book.rule_sets.iter().find(|set| set.name == job.rules);
+    match found {
+        Some(set) => findings.extend(supply::blanks(set)),
+        None if job.rules.is_empty() => findings.push(Finding::new(
+            Grade::Look,
+            Place::Job,
+            "No rule set is chosen: no limit of any code is checked.",
+            Source::entry(),
+        )),
+        None => findings.push(Finding::new(
+            Grade::Stop,
+            Place::Job,
+            format!(
+                "The rule set {} is not in the shop book: no limit of it is checked.",
+                quoted(&job.rules)
+            ),
+            Source::entry(),
+        )),
+    }
+    found.cloned()
+}
+
+/// The book's windows, or the defaults where they contradict themselves.
+fn loading(book: &Book, findings: &mut Vec<Finding>) -> crate::book::Loading {
+    let set = &book.loading;
+    let default = crate::book::Loading::default();
+    let rising = |shares: &[f64]| shares.is_sorted_by(|a, b| a <= b);
+    let fine = rising(&[0.0, set.look_below, set.target_from, set.neon_target_to])
+        && rising(&[set.target_from, set.mercury_target_to, set.mercury_look_above])
+        && rising(&[set.neon_target_to, set.neon_look_above, set.stop_from, default.stop_from])
+        && rising(&[set.mercury_look_above, set.stop_from])
+        && set.target_from > 0.0
+        && (1.0..=4.0).contains(&set.strike_factor);
+    if fine {
+        return set.clone();
+    }
+    findings.push(Finding::new(
+        Grade::Look,
+        Place::Job,
+        format!(
+            "The loading windows of the shop book contradict themselves (they must rise from light \
+             to heavy, end at {} at most, with a strike factor of 1 to 4): the defaults are used.",
+            default.stop_from
+        ),
+        Source::shop(),
+    ));
+    default
+}
+
+fn tube_totals(
+    job: &Job,
+    book: &Book,
+    pieces: &[Piece],
+    findings: &mut Vec<Finding>,
+) -> Vec<TubeTotal> {
+    let mut totals: Vec<TubeTotal> = Vec::new();
+    for (at, row) in job.rows.iter().enumerate() {
+        let name = row.tube();
+        if totals.iter().any(|total| total.name == name) {
+            continue;
+        }
+        let mut entries = book.tubes.iter().filter(|entry| entry.name == name);
+        let tube = match entries.next().map(TubeType::read) {
+            Some(Ok(tube)) => Some(tube),
+            Some(Err(wrong)) => {
+                findings.extend(wrong);
+                None
+            }
+            None => {
+                findings.push(Finding::new(
+                    Grade::Stop,
+                    Place::Row(at),
+                    format!(
+                        "The tube type {} is not in the shop book: glass is counted, volts are not.",
+                        quoted(name)
+                    ),
+                    Source::entry(),
+                ));
+                None
+            }
+        };
+        if entries.next().is_some() {
+            findings.push(Finding::new(
+                Grade::Look,
+                Place::Tube(name.to_owned()),
+                format!("Two tube types are called {}: the first is used.", quoted(name)),
+                Source::entry(),
+            ));
+        }
+        totals.push(TubeTotal {
+            name: name.to_owned(),
+            tube,
+            pieces: 0,
+            lit: Length::ZERO,
+            hidden: Length::ZERO,
+            glass: Length::ZERO,
+        });
+    }
+    for piece in pieces {
+        if let Some(total) = totals.iter_mut().find(|total| total.name == piece.tube) {
+            total.pieces += 1;
+            total.lit += piece.lit;
+            total.hidden += piece.hidden;
+            total.glass += piece.glass();
+        }
+    }
+    totals.retain(|total| total.pieces > 0);
+    totals
+}
+
+fn candidates(
+    job: &Job,
+    book: &Book,
+    rules: Option<&RuleSet>,
+    findings: &mut Vec<Finding>,
+) -> (Vec<Candidate>, Vec<Refused>) {
+    let (mut candidates, mut refused) = (Vec::new(), Vec::new());
+    let mut names = HashSet::new();
+    for (entry, supply) in book.supplies.iter().enumerate() {
+        if !names.insert(supply.name.as_str()) {
+            findings.push(Finding::new(
+                Grade::Look,
+                Place::Supply(supply.name.clone()),
+                format!("Two supplies are called {}: the first is used.", quoted(&supply.name)),
+                Source::entry(),
+            ));
+            continue;
+        }
+        let rating = match Rating::read(supply) {
+            Ok(rating) => rating,
+            Err(wrong) => {
+                refused.push(Refused { supply: supply.name.clone(), findings: wrong });
+                continue;
+            }
+        };
+        let mut said = rating.against_site(&job.site);
+        said.extend(rules.iter().flat_map(|rules| rating.against_rules(rules)));
+        if Finding::gravest(&said) == Some(Grade::Stop) {
+            said.retain(|finding| finding.grade == Grade::Stop);
+            refused.push(Refused { supply: supply.name.clone(), findings: said });
+        } else {
+            let look = Finding::gravest(&said) == Some(Grade::Look);
+            candidates.push(Candidate { entry, rating, look });
+        }
+    }
+    (candidates, refused)
+}
+
+fn no_supply(left: &LeftOverWork, pieces: &[Piece]) -> Finding {
+    let label = |at: Option<&usize>| {
+        at.and_then(|&at| pieces.get(at)).map_or_else(String::new, |piece| quoted(&piece.label))
+    };
+    let which = if left.pieces.len() == 1 {
+        format!("the piece {}", label(left.pieces.first()))
+    } else {
+        format!(
+            "{} pieces from {} to {}",
+            left.pieces.len(),
+            label(left.pieces.first()),
+            label(left.pieces.last())
+        )
+    };
+    let nearest = left.nearest.as_ref().map_or_else(String::new, |(name, stop)| {
+        format!(" Nearest is {name}: {stop}")
+    });
+    let at = left.pieces.first().copied().unwrap_or_default();
+    Finding::new(
+        Grade::Stop,
+        Place::Piece(at),
+        format!("No supply runs {which}.{nearest} Would fit: {}", left.would_fit),
+        Source::model(),
+    )
+}
+
+/// Where the volts of a tube came from the default model, by how much they may be off.
+fn model_notes(tubes: &[TubeTotal]) -> Vec<Finding> {
+    tubes
+        .iter()
+        .filter_map(|total| {
+            let tube = total.tube.as_ref()?;
+            let percent = tube.model_uncertainty_percent?;
+            Some(Finding::new(
+                Grade::Note,
+                Place::Tube(tube.name.clone()),
+                format!(
+                    "Volts of {} come from the default model, about ±{percent} %: {:.0} V/m at {} \
+                     mA and {:.0} V for each pair of electrodes. Bench readings of your own glass \
+                     are better.",
+                    tube.name, tube.volts_per_m, tube.at_ma, tube.pair_volts
+                ),
+                Source::model(),
+            ))
+        })
+        .collect()
+}
+
+fn parts(book: &Book, tubes: &[TubeTotal], circuits: &[CircuitWork], pieces: usize) -> Parts {
+    let mut supplies: Vec<(String, usize, Option<rust_decimal::Decimal>)> = Vec::new();
+    for circuit in circuits {
+        match supplies.iter_mut().find(|(name, ..)| *name == circuit.supply.name) {
+            Some((_, count, _)) => *count += 1,
+            None => supplies.push((circuit.supply.name.clone(), 1, circuit.supply.price)),
+        }
+    }
+    Parts {
+        glass: tubes
+            .iter()
+            .map(|total| GlassPart {
+                tube: total.name.clone(),
+                glass: total.glass,
+                price_per_m: book
+                    .tubes
+                    .iter()
+                    .find(|entry| entry.name == total.name)
+                    .and_then(|entry| entry.price_per_m),
+            })
+            .collect(),
+        pieces,
+        circuits: circuits.len(),
+        supplies,
+        waste_percent: book.allowances.waste_percent,
+    }
+}
