@@ -1,2 +1,2 @@
 //! t
-fn main(){}
+fn main() {}

@@ -120,7 +120,9 @@ impl Workup {
 
     /// The circuit a piece is on.
     pub fn circuit_of(&self, piece: usize) -> Option<usize> {
-        self.circuits.iter().position(|circuit| circuit.pieces.contains(&piece))
+        self.circuits
+            .iter()
+            .position(|circuit| circuit.pieces.contains(&piece))
     }
 }
 
@@ -145,8 +147,10 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
             Some((at, piece, total.tube.as_ref()?))
         })
         .collect();
-    let pieces: Vec<(&Piece, &TubeType)> =
-        placed.iter().map(|&(_, piece, tube)| (piece, tube)).collect();
+    let pieces: Vec<(&Piece, &TubeType)> = placed
+        .iter()
+        .map(|&(_, piece, tube)| (piece, tube))
+        .collect();
     let task = Task {
         pieces: &pieces,
         candidates: &candidates,
@@ -176,11 +180,18 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
             CircuitWork {
                 first_string: circuit.second_from.unwrap_or(circuit.pieces.end)
                     - circuit.pieces.start,
-                column: pieces[circuit.pieces.clone()].iter().map(|(p, _)| p.column()).sum(),
+                column: pieces[circuit.pieces.clone()]
+                    .iter()
+                    .map(|(p, _)| p.column())
+                    .sum(),
                 pieces: place(circuit.pieces),
                 supply: rating,
-                smaller: circuit.smaller.map(|other| (named(other.candidate), other.says)),
-                larger: circuit.larger.map(|other| (named(other.candidate), other.says)),
+                smaller: circuit
+                    .smaller
+                    .map(|other| (named(other.candidate), other.says)),
+                larger: circuit
+                    .larger
+                    .map(|other| (named(other.candidate), other.says)),
                 assessment: circuit.assessment,
                 findings: found,
             }
@@ -203,11 +214,23 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         })
         .collect();
 
-    let quote = quote::quote(&parts(book, &tubes, &circuits, off.pieces.len()), &book.rates);
+    let quote = quote::quote(
+        &parts(book, &tubes, &circuits, off.pieces.len()),
+        &book.rates,
+    );
     findings.extend(quote.findings.iter().cloned());
     findings.extend(model_notes(&tubes));
     gravest_first(&mut findings);
-    Workup { takeoff: off, tubes, circuits, left_over, refused, quote, rules, findings }
+    Workup {
+        takeoff: off,
+        tubes,
+        circuits,
+        left_over,
+        refused,
+        quote,
+        rules,
+        findings,
+    }
 }
 
 fn gravest_first(findings: &mut [Finding]) {
@@ -243,8 +266,17 @@ fn loading(book: &Book, findings: &mut Vec<Finding>) -> crate::book::Loading {
     let default = crate::book::Loading::default();
     let rising = |shares: &[f64]| shares.is_sorted_by(|a, b| a <= b);
     let fine = rising(&[0.0, set.look_below, set.target_from, set.neon_target_to])
-        && rising(&[set.target_from, set.mercury_target_to, set.mercury_look_above])
-        && rising(&[set.neon_target_to, set.neon_look_above, set.stop_from, default.stop_from])
+        && rising(&[
+            set.target_from,
+            set.mercury_target_to,
+            set.mercury_look_above,
+        ])
+        && rising(&[
+            set.neon_target_to,
+            set.neon_look_above,
+            set.stop_from,
+            default.stop_from,
+        ])
         && rising(&[set.mercury_look_above, set.stop_from])
         && set.target_from > 0.0
         && (1.0..=4.0).contains(&set.strike_factor);
@@ -300,7 +332,10 @@ fn tube_totals(
             findings.push(Finding::new(
                 Grade::Look,
                 Place::Tube(name.to_owned()),
-                format!("Two tube types are called {}: the first is used.", quoted(name)),
+                format!(
+                    "Two tube types are called {}: the first is used.",
+                    quoted(name)
+                ),
                 Source::entry(),
             ));
         }
@@ -338,7 +373,10 @@ fn candidates(
             findings.push(Finding::new(
                 Grade::Look,
                 Place::Supply(supply.name.clone()),
-                format!("Two supplies are called {}: the first is used.", quoted(&supply.name)),
+                format!(
+                    "Two supplies are called {}: the first is used.",
+                    quoted(&supply.name)
+                ),
                 Source::entry(),
             ));
             continue;
@@ -346,7 +384,10 @@ fn candidates(
         let rating = match Rating::read(supply) {
             Ok(rating) => rating,
             Err(wrong) => {
-                refused.push(Refused { supply: supply.name.clone(), findings: wrong });
+                refused.push(Refused {
+                    supply: supply.name.clone(),
+                    findings: wrong,
+                });
                 continue;
             }
         };
@@ -354,10 +395,17 @@ fn candidates(
         said.extend(rules.iter().flat_map(|rules| rating.against_rules(rules)));
         if Finding::gravest(&said) == Some(Grade::Stop) {
             said.retain(|finding| finding.grade == Grade::Stop);
-            refused.push(Refused { supply: supply.name.clone(), findings: said });
+            refused.push(Refused {
+                supply: supply.name.clone(),
+                findings: said,
+            });
         } else {
             let look = Finding::gravest(&said) == Some(Grade::Look);
-            candidates.push(Candidate { entry, rating, look });
+            candidates.push(Candidate {
+                entry,
+                rating,
+                look,
+            });
         }
     }
     (candidates, refused)
@@ -365,7 +413,8 @@ fn candidates(
 
 fn no_supply(left: &LeftOverWork, pieces: &[Piece]) -> Finding {
     let label = |at: Option<&usize>| {
-        at.and_then(|&at| pieces.get(at)).map_or_else(String::new, |piece| quoted(&piece.label))
+        at.and_then(|&at| pieces.get(at))
+            .map_or_else(String::new, |piece| quoted(&piece.label))
     };
     let which = if left.pieces.len() == 1 {
         format!("the piece {}", label(left.pieces.first()))
@@ -377,14 +426,20 @@ fn no_supply(left: &LeftOverWork, pieces: &[Piece]) -> Finding {
             label(left.pieces.last())
         )
     };
-    let nearest = left.nearest.as_ref().map_or_else(String::new, |(name, stop)| {
-        format!(" Nearest is {name}: {stop}")
-    });
+    let nearest = left
+        .nearest
+        .as_ref()
+        .map_or_else(String::new, |(name, stop)| {
+            format!(" Nearest is {name}: {stop}")
+        });
     let at = left.pieces.first().copied().unwrap_or_default();
     Finding::new(
         Grade::Stop,
         Place::Piece(at),
-        format!("No supply runs {which}.{nearest} Would fit: {}", left.would_fit),
+        format!(
+            "No supply runs {which}.{nearest} Would fit: {}",
+            left.would_fit
+        ),
         Source::model(),
     )
 }
@@ -414,7 +469,10 @@ fn model_notes(tubes: &[TubeTotal]) -> Vec<Finding> {
 fn parts(book: &Book, tubes: &[TubeTotal], circuits: &[CircuitWork], pieces: usize) -> Parts {
     let mut supplies: Vec<(String, usize, Option<rust_decimal::Decimal>)> = Vec::new();
     for circuit in circuits {
-        match supplies.iter_mut().find(|(name, ..)| *name == circuit.supply.name) {
+        match supplies
+            .iter_mut()
+            .find(|(name, ..)| *name == circuit.supply.name)
+        {
             Some((_, count, _)) => *count += 1,
             None => supplies.push((circuit.supply.name.clone(), 1, circuit.supply.price)),
         }

@@ -96,9 +96,7 @@ pub enum OutputEarthing {
 }
 
 /// How wet a place is, driest first.
-#[derive(
-    Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Default, Serialize, Deserialize,
-)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Default, Serialize, Deserialize)]
 #[serde(rename_all = "kebab-case")]
 pub enum Dampness {
     /// Indoors, dry.
@@ -254,7 +252,11 @@ pub struct Allowances {
 
 impl Default for Allowances {
     fn default() -> Self {
-        Self { tail_mm: 150.0, waste_percent: 10.0, longest_piece_mm: 2_400.0 }
+        Self {
+            tail_mm: 150.0,
+            waste_percent: 10.0,
+            longest_piece_mm: 2_400.0,
+        }
     }
 }
 
@@ -347,6 +349,8 @@ pub(crate) fn check_kind(text: &str, kind: &str, version: u32) -> Result<(), Str
             "This {kind} file has version {found}; this program knows versions up to {version}. \
              Open it with a newer program."
         )),
-        _ => Err(format!("This {kind} file says no version that was ever written (1 to {version}).")),
+        _ => Err(format!(
+            "This {kind} file says no version that was ever written (1 to {version})."
+        )),
     }
 }

@@ -59,13 +59,20 @@ struct Cell<'t> {
 
 impl Cell<'_> {
     fn figure(&self) -> String {
-        if self.decimal_comma { self.text.replace(',', ".") } else { self.text.to_owned() }
+        if self.decimal_comma {
+            self.text.replace(',', ".")
+        } else {
+            self.text.to_owned()
+        }
     }
 
     fn number(&self) -> Result<Option<f64>, String> {
         match self.figure().parse::<f64>() {
             Ok(value) if value.is_finite() => Ok(Some(value)),
-            _ => Err(format!("expected a number, but found {}", quoted(self.text))),
+            _ => Err(format!(
+                "expected a number, but found {}",
+                quoted(self.text)
+            )),
         }
     }
 
@@ -75,7 +82,12 @@ impl Cell<'_> {
             .ok()
             .filter(|price| !price.is_sign_negative())
             .map(Some)
-            .ok_or_else(|| format!("expected a price such as 12.50, but found {}", quoted(self.text)))
+            .ok_or_else(|| {
+                format!(
+                    "expected a price such as 12.50, but found {}",
+                    quoted(self.text)
+                )
+            })
     }
 
     fn count(&self) -> Result<Option<u32>, String> {
@@ -89,16 +101,27 @@ impl Cell<'_> {
         match self.text.to_ascii_lowercase().as_str() {
             "yes" | "true" | "1" => Ok(true),
             "no" | "false" | "0" => Ok(false),
-            _ => Err(format!("expected yes or no, but found {}", quoted(self.text))),
+            _ => Err(format!(
+                "expected yes or no, but found {}",
+                quoted(self.text)
+            )),
         }
     }
 
     fn word<W: Copy>(&self, words: &[(&str, W)]) -> Result<W, String> {
         let found = self.text.to_ascii_lowercase();
-        words.iter().find(|(word, _)| *word == found).map(|&(_, value)| value).ok_or_else(|| {
-            let known: Vec<&str> = words.iter().map(|&(word, _)| word).collect();
-            format!("expected {}, but found {}", known.join(" or "), quoted(self.text))
-        })
+        words
+            .iter()
+            .find(|(word, _)| *word == found)
+            .map(|&(_, value)| value)
+            .ok_or_else(|| {
+                let known: Vec<&str> = words.iter().map(|&(word, _)| word).collect();
+                format!(
+                    "expected {}, but found {}",
+                    known.join(" or "),
+                    quoted(self.text)
+                )
+            })
     }
 }
 
@@ -109,16 +132,21 @@ fn said<W: Copy + PartialEq>(value: W, words: &[(&'static str, W)]) -> String {
         .map_or_else(String::new, |&(word, _)| word.to_owned())
 }
 
-const KINDS: &[(&str, SupplyKind)] =
-    &[("iron", SupplyKind::Iron), ("electronic", SupplyKind::Electronic)];
+const KINDS: &[(&str, SupplyKind)] = &[
+    ("iron", SupplyKind::Iron),
+    ("electronic", SupplyKind::Electronic),
+];
 const EARTHINGS: &[(&str, OutputEarthing)] = &[
     ("mid-point", OutputEarthing::MidPoint),
     ("mid-point-return", OutputEarthing::MidPointReturn),
     ("one-end", OutputEarthing::OneEnd),
     ("isolated", OutputEarthing::Isolated),
 ];
-const PLACES: &[(&str, Dampness)] =
-    &[("dry", Dampness::Dry), ("damp", Dampness::Damp), ("wet", Dampness::Wet)];
+const PLACES: &[(&str, Dampness)] = &[
+    ("dry", Dampness::Dry),
+    ("damp", Dampness::Damp),
+    ("wet", Dampness::Wet),
+];
 const GASES: &[(&str, Gas)] = &[("neon", Gas::Neon), ("argon-mercury", Gas::ArgonMercury)];
 
 fn shown<T: ToString>(value: Option<T>) -> String {
@@ -205,14 +233,19 @@ const TUBE: &[Column<TubeEntry>] = &[
 ];
 
 fn write<T>(entries: &[T], columns: &[Column<T>]) -> String {
-    let mut writer =
-        csv::WriterBuilder::new().terminator(csv::Terminator::CRLF).from_writer(Vec::new());
+    let mut writer = csv::WriterBuilder::new()
+        .terminator(csv::Terminator::CRLF)
+        .from_writer(Vec::new());
     // Writing to memory does not fail.
     let _ = writer.write_record(columns.iter().map(|column| column.name));
     for entry in entries {
         let _ = writer.write_record(columns.iter().map(|column| (column.get)(entry)));
     }
-    writer.into_inner().ok().and_then(|bytes| String::from_utf8(bytes).ok()).unwrap_or_default()
+    writer
+        .into_inner()
+        .ok()
+        .and_then(|bytes| String::from_utf8(bytes).ok())
+        .unwrap_or_default()
 }
 
 fn read<T: Default>(
@@ -227,7 +260,13 @@ fn read<T: Default>(
         .into_iter()
         .max_by_key(|separator| first.matches(*separator).count())
         .unwrap_or(',');
-    let known = || columns.iter().map(|column| column.name).collect::<Vec<_>>().join(", ");
+    let known = || {
+        columns
+            .iter()
+            .map(|column| column.name)
+            .collect::<Vec<_>>()
+            .join(", ")
+    };
     let mut reader = csv::ReaderBuilder::new()
         .delimiter(u8::try_from(separator).unwrap_or(b','))
         .flexible(true)
@@ -241,9 +280,14 @@ fn read<T: Default>(
     let chosen: Vec<Option<&Column<T>>> = headers
         .iter()
         .map(|header| {
-            let column = columns.iter().find(|column| column.name.eq_ignore_ascii_case(header));
+            let column = columns
+                .iter()
+                .find(|column| column.name.eq_ignore_ascii_case(header));
             if column.is_none() {
-                trouble.push(format!("Column {} is not known and was left out.", quoted(header)));
+                trouble.push(format!(
+                    "Column {} is not known and was left out.",
+                    quoted(header)
+                ));
             }
             column
         })
@@ -284,7 +328,10 @@ fn read<T: Default>(
             if text.is_empty() {
                 continue;
             }
-            let cell = Cell { text, decimal_comma: separator != ',' };
+            let cell = Cell {
+                text,
+                decimal_comma: separator != ',',
+            };
             if let Err(error) = (column.set)(&mut entry, &cell) {
                 trouble.push(format!(
                     "Line {line} was left out: column {}, {error}.",
@@ -309,7 +356,9 @@ fn read<T: Default>(
         }
     }
     if entries.is_empty() && trouble.is_empty() {
-        return Err(format!("The file of {what} has a first line but nothing under it."));
+        return Err(format!(
+            "The file of {what} has a first line but nothing under it."
+        ));
     }
     Ok(Sheet { entries, trouble })
 }
@@ -318,11 +367,14 @@ fn read<T: Default>(
 fn decoded(bytes: &[u8]) -> Result<String, String> {
     const MOST_BYTES: usize = 4_000_000;
     if bytes.len() > MOST_BYTES {
-        return Err(format!("The file is larger than {} MB.", MOST_BYTES / 1_000_000));
+        return Err(format!(
+            "The file is larger than {} MB.",
+            MOST_BYTES / 1_000_000
+        ));
     }
     if bytes.starts_with(&[0xff, 0xfe]) || bytes.starts_with(&[0xfe, 0xff]) || bytes.contains(&0) {
         return Err(
-            "The file is not plain text in UTF-8 or Latin-1: save it as “CSV UTF-8”.".to_owned()
+            "The file is not plain text in UTF-8 or Latin-1: save it as “CSV UTF-8”.".to_owned(),
         );
     }
     Ok(match std::str::from_utf8(bytes) {

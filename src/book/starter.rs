@@ -18,21 +18,26 @@ const SIZES: [(f64, f64, f64); 8] = [
 
 /// A fresh book.
 pub fn starter() -> Book {
-    let gases = [(Gas::Neon, "neon", "#ff5a3c"), (Gas::ArgonMercury, "argon-mercury", "#9fc4ff")];
+    let gases = [
+        (Gas::Neon, "neon", "#ff5a3c"),
+        (Gas::ArgonMercury, "argon-mercury", "#9fc4ff"),
+    ];
     let tubes = gases
         .into_iter()
         .flat_map(|(gas, word, colour)| {
-            SIZES.into_iter().map(move |(outer_mm, least_ma, most_ma)| TubeEntry {
-                name: format!("{outer_mm} mm {word}"),
-                gas,
-                outer_mm: Some(outer_mm),
-                wall_mm: Some(1.0),
-                colour: colour.to_owned(),
-                least_ma: Some(least_ma),
-                most_ma: Some(most_ma),
-                source: "default model; currents are common practice, no source".to_owned(),
-                ..TubeEntry::default()
-            })
+            SIZES
+                .into_iter()
+                .map(move |(outer_mm, least_ma, most_ma)| TubeEntry {
+                    name: format!("{outer_mm} mm {word}"),
+                    gas,
+                    outer_mm: Some(outer_mm),
+                    wall_mm: Some(1.0),
+                    colour: colour.to_owned(),
+                    least_ma: Some(least_ma),
+                    most_ma: Some(most_ma),
+                    source: "default model; currents are common practice, no source".to_owned(),
+                    ..TubeEntry::default()
+                })
         })
         .collect();
     Book {

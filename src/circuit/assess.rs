@@ -60,7 +60,10 @@ impl Assessment {
 
     /// The half that carries more of its share.
     pub fn heavier(&self) -> &Half {
-        self.halves.iter().max_by(|a, b| a.share.total_cmp(&b.share)).unwrap_or(&self.halves[0])
+        self.halves
+            .iter()
+            .max_by(|a, b| a.share.total_cmp(&b.share))
+            .unwrap_or(&self.halves[0])
     }
 
     /// Power in all its strings, watts; None where one does not run.
@@ -81,8 +84,16 @@ impl Assessment {
 /// Never; an empty `loads` is worked up as one empty string.
 pub fn assess(loads: &[&Load], rating: &Rating, loading: &Loading) -> Assessment {
     let empty = Load::new();
-    let loads = if loads.is_empty() { &[&empty][..] } else { loads };
-    let part = if rating.earthing == OutputEarthing::MidPointReturn { 0.5 } else { 1.0 };
+    let loads = if loads.is_empty() {
+        &[&empty][..]
+    } else {
+        loads
+    };
+    let part = if rating.earthing == OutputEarthing::MidPointReturn {
+        0.5
+    } else {
+        1.0
+    };
     let neon = loads.iter().any(|load| load.neon);
     let window = Window::of(rating, neon, loading);
     let curve = |mains: f64| Curve::of(rating, part, mains);
@@ -124,8 +135,10 @@ pub fn assess(loads: &[&Load], rating: &Rating, loading: &Loading) -> Assessment
     if rating.kind == SupplyKind::Electronic {
         findings.push(finding::electronic_shape());
     }
-    let heaviest_volts =
-        halves.iter().map(|half| half.operating.volts().volts()).fold(0.0, f64::max);
+    let heaviest_volts = halves
+        .iter()
+        .map(|half| half.operating.volts().volts())
+        .fold(0.0, f64::max);
     let to_earth_running = match rating.earthing {
         OutputEarthing::MidPoint => heaviest_volts / 2.0,
         OutputEarthing::MidPointReturn | OutputEarthing::OneEnd => heaviest_volts,
@@ -186,7 +199,9 @@ fn half_findings(
         if let Some((most, tube)) = &load.most {
             if current > *most {
                 findings.push(finding::overdriven(current, *most, tube));
-            } else if let Operating::Runs { current: at_high, .. } = half.at_high_mains
+            } else if let Operating::Runs {
+                current: at_high, ..
+            } = half.at_high_mains
                 && at_high > *most
             {
                 findings.push(finding::overdriven_at_high_mains(at_high, *most, tube));
@@ -205,7 +220,11 @@ fn half_findings(
             _ => low.no_load().volts(),
         };
         let fails = match half.at_low_mains {
-            Operating::Runs { running, gaps: false, .. } => {
+            Operating::Runs {
+                running,
+                gaps: false,
+                ..
+            } => {
                 window.zone(running.volts() / low_basis) == Zone::Over
                     || running.volts() * loading.strike_factor
                         > low.no_load().volts() * std::f64::consts::SQRT_2
@@ -213,7 +232,10 @@ fn half_findings(
             Operating::Runs { .. } | Operating::Overloaded { .. } => true,
         };
         if fails && rating.kind == SupplyKind::Iron {
-            findings.push(finding::low_mains(half.at_low_mains.volts().volts() / low_basis, window));
+            findings.push(finding::low_mains(
+                half.at_low_mains.volts().volts() / low_basis,
+                window,
+            ));
         }
     }
 }

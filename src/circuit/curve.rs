@@ -30,7 +30,11 @@ pub struct Waveform {
 /// gaps. Nothing flows from r = √2 on. A negative or NaN `r` gives NaN.
 pub fn iron(r: f64) -> Waveform {
     if !(r >= 0.0) {
-        return Waveform { rms: f64::NAN, mean: f64::NAN, gaps: false };
+        return Waveform {
+            rms: f64::NAN,
+            mean: f64::NAN,
+            gaps: false,
+        };
     }
     if r <= CONTINUOUS_TO {
         // c = (π²/8)(1 − 2(5/6 − 8/π²)) = 1.177533
@@ -51,7 +55,11 @@ pub fn iron(r: f64) -> Waveform {
 /// `i = (V_m / X) (cos θ₀ − cos θ − u φ)` until it comes back to zero before θ₀ + π.
 fn with_gaps(u: f64) -> Waveform {
     if u >= 1.0 {
-        return Waveform { rms: 0.0, mean: 0.0, gaps: true };
+        return Waveform {
+            rms: 0.0,
+            mean: 0.0,
+            gaps: true,
+        };
     }
     let start = u.asin();
     let cos_start = start.cos();
@@ -60,7 +68,11 @@ fn with_gaps(u: f64) -> Waveform {
     let (mut low, mut high) = (PI - 2.0 * start, PI);
     for _ in 0..80 {
         let middle = f64::midpoint(low, high);
-        if current(middle) > 0.0 { low = middle } else { high = middle }
+        if current(middle) > 0.0 {
+            low = middle
+        } else {
+            high = middle
+        }
     }
     let end = f64::midpoint(low, high);
     // Integrals of i and i² over 0..end, i = a − cos θ − u φ with a = cos θ₀, written out.
@@ -71,7 +83,8 @@ fn with_gaps(u: f64) -> Waveform {
     let cos_squared = end / 2.0 + (sin_e * cos_e - sin_s * cos_s) / 2.0;
     // ∫ φ cos θ dφ = φ sin θ + cos θ
     let phi_cos = end * sin_e + cos_e - cos_s;
-    let square = a * a * end - 2.0 * a * (sin_e - sin_s) - a * u * end * end + cos_squared
+    let square = a * a * end - 2.0 * a * (sin_e - sin_s) - a * u * end * end
+        + cos_squared
         + 2.0 * u * phi_cos
         + u * u * end.powi(3) / 3.0;
     // i is in units of V_m / X = √2 I_sc, and the half wave lasts π.
@@ -118,7 +131,10 @@ impl Curve {
                 rated_ma: rating.rated.ma(),
                 rated_volts: rated_volts.volts() * halves,
             },
-            _ => Self::Iron { no_load: no_load * mains, short_ma: short_ma * mains },
+            _ => Self::Iron {
+                no_load: no_load * mains,
+                short_ma: short_ma * mains,
+            },
         }
     }
 
@@ -138,9 +154,11 @@ impl Curve {
                 Volts::from_volts(CONTINUOUS_TO * no_load),
                 Milliamps::from_ma(iron(CONTINUOUS_TO).rms * short_ma),
             ),
-            Self::Electronic { rated_ma, rated_volts, .. } => {
-                (Volts::from_volts(rated_volts), Milliamps::from_ma(rated_ma))
-            }
+            Self::Electronic {
+                rated_ma,
+                rated_volts,
+                ..
+            } => (Volts::from_volts(rated_volts), Milliamps::from_ma(rated_ma)),
         }
     }
 
@@ -148,9 +166,12 @@ impl Curve {
     pub fn current(&self, volts: f64) -> f64 {
         match *self {
             Self::Iron { no_load, short_ma } => iron(volts / no_load).rms * short_ma,
-            Self::Electronic { short_ma, rated_ma, rated_volts, .. } => {
-                short_ma - (short_ma - rated_ma) * volts / rated_volts
-            }
+            Self::Electronic {
+                short_ma,
+                rated_ma,
+                rated_volts,
+                ..
+            } => short_ma - (short_ma - rated_ma) * volts / rated_volts,
         }
     }
 
@@ -168,10 +189,13 @@ impl Curve {
                 let share = current_ma / short_ma;
                 Some(no_load * ((1.0 - share * share) / c).max(0.0).sqrt())
             }
-            Self::Electronic { short_ma, rated_ma, rated_volts, .. } => {
-                (rated_ma <= current_ma && current_ma <= short_ma && rated_ma < short_ma)
-                    .then(|| rated_volts * (short_ma - current_ma) / (short_ma - rated_ma))
-            }
+            Self::Electronic {
+                short_ma,
+                rated_ma,
+                rated_volts,
+                ..
+            } => (rated_ma <= current_ma && current_ma <= short_ma && rated_ma < short_ma)
+                .then(|| rated_volts * (short_ma - current_ma) / (short_ma - rated_ma)),
         }
     }
 }
@@ -185,15 +209,27 @@ mod tests {
     #[test]
     fn the_limit_of_gapless_current_is_where_both_forms_meet() {
         let limit = SQRT_2 / (1.0 + FRAC_PI_2 * FRAC_PI_2).sqrt();
-        assert!((CONTINUOUS_TO - limit).abs() < 1e-6, "{CONTINUOUS_TO} against {limit}");
+        assert!(
+            (CONTINUOUS_TO - limit).abs() < 1e-6,
+            "{CONTINUOUS_TO} against {limit}"
+        );
         let (below, above) = (iron(limit - 1e-6), iron(limit + 1e-6));
-        assert!((below.rms - above.rms).abs() < 1e-5, "rms {below:?} {above:?}");
-        assert!((below.mean - above.mean).abs() < 1e-5, "mean {below:?} {above:?}");
+        assert!(
+            (below.rms - above.rms).abs() < 1e-5,
+            "rms {below:?} {above:?}"
+        );
+        assert!(
+            (below.mean - above.mean).abs() < 1e-5,
+            "mean {below:?} {above:?}"
+        );
     }
 
     #[test]
     fn volts_at_undoes_current() {
-        let iron = Curve::Iron { no_load: 9_000.0, short_ma: 30.0 };
+        let iron = Curve::Iron {
+            no_load: 9_000.0,
+            short_ma: 30.0,
+        };
         let droop = Curve::Electronic {
             no_load: 8_000.0,
             short_ma: 32.0,
@@ -203,7 +239,10 @@ mod tests {
         for curve in [iron, droop] {
             for volts in [10.0, 2_000.0, 4_500.0, 5_900.0] {
                 let back = curve.volts_at(curve.current(volts));
-                assert!(back.is_some_and(|back| (back - volts).abs() < 1e-6), "{volts} {back:?}");
+                assert!(
+                    back.is_some_and(|back| (back - volts).abs() < 1e-6),
+                    "{volts} {back:?}"
+                );
             }
         }
     }

@@ -12,7 +12,11 @@ fn found(grade: Grade, says: String, source: Source) -> Finding {
 }
 
 fn source(window: &Window) -> Source {
-    if window.from_plate { Source::entry() } else { Source::model() }
+    if window.from_plate {
+        Source::entry()
+    } else {
+        Source::model()
+    }
 }
 
 fn of_basis(window: &Window) -> &'static str {
@@ -69,7 +73,11 @@ pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Find
                 format!(
                     "Overloaded: running volts are {percent:.0} % {basis}, at or over {:.0} %{}.",
                     window.stop_from * 100.0,
-                    if gaps { "; the current has gaps and the tube flickers" } else { "" }
+                    if gaps {
+                        "; the current has gaps and the tube flickers"
+                    } else {
+                        ""
+                    }
                 ),
                 window.stop_from,
             ),
@@ -155,7 +163,8 @@ pub(super) fn low_mains(share: f64, window: &Window) -> Finding {
 pub(super) fn needs_two_strings() -> Finding {
     found(
         Grade::Stop,
-        "A supply with a mid-point return carries two strings; one piece makes only one.".to_owned(),
+        "A supply with a mid-point return carries two strings; one piece makes only one."
+            .to_owned(),
         Source::model(),
     )
 }

@@ -54,10 +54,7 @@ impl Load {
     }
 
     /// A string of pieces.
-    pub fn of<'p>(
-        pieces: impl IntoIterator<Item = (&'p Piece, &'p TubeType)>,
-        cold: bool,
-    ) -> Self {
+    pub fn of<'p>(pieces: impl IntoIterator<Item = (&'p Piece, &'p TubeType)>, cold: bool) -> Self {
         let mut load = Self::new();
         for (piece, tube) in pieces {
             load.add(piece, tube, cold);
@@ -68,7 +65,11 @@ impl Load {
     /// Running volts at a current in milliamperes.
     pub fn volts(&self, current_ma: f64) -> f64 {
         self.pair_volts
-            + self.columns.iter().map(|(n, k)| k * current_ma.powf(-n)).sum::<f64>()
+            + self
+                .columns
+                .iter()
+                .map(|(n, k)| k * current_ma.powf(-n))
+                .sum::<f64>()
     }
 }
 
@@ -118,7 +119,11 @@ pub fn operate(load: &Load, curve: &Curve) -> Operating {
         let (mut low, mut high) = (edge_current.ma(), short_ma);
         for _ in 0..60 {
             let middle = f64::midpoint(low, high);
-            if curve.current(load.volts(middle)) >= middle { low = middle } else { high = middle }
+            if curve.current(load.volts(middle)) >= middle {
+                low = middle
+            } else {
+                high = middle
+            }
         }
         let current = f64::midpoint(low, high);
         return runs(load, curve, current, false);
@@ -133,13 +138,20 @@ pub fn operate(load: &Load, curve: &Curve) -> Operating {
                 let (mut low, mut high) = (at(step), at(step - 1));
                 for _ in 0..60 {
                     let middle = f64::midpoint(low, high);
-                    if excess(middle) >= 0.0 { low = middle } else { high = middle }
+                    if excess(middle) >= 0.0 {
+                        low = middle
+                    } else {
+                        high = middle
+                    }
                 }
                 return runs(load, curve, f64::midpoint(low, high), true);
             }
         }
     }
-    Operating::Overloaded { wanted: Volts::from_volts(wanted), given: edge_volts }
+    Operating::Overloaded {
+        wanted: Volts::from_volts(wanted),
+        given: edge_volts,
+    }
 }
 
 fn runs(load: &Load, curve: &Curve, current: f64, gaps: bool) -> Operating {

@@ -13,9 +13,8 @@ mod finding;
 mod load;
 mod window;
 
-pub(crate) use assess::{MAINS_SPREAD, STRIKE_LOOK};
 pub use assess::{Assessment, Half, assess};
+pub(crate) use assess::{MAINS_SPREAD, STRIKE_LOOK};
 pub use curve::{CONTINUOUS_TO, Curve, Waveform, iron};
 pub use load::{Load, Operating, operate};
 pub use window::{Basis, Window, Zone};
-

@@ -76,8 +76,11 @@ impl Face {
     /// Lays out one line of text with capitals `height_mm` high, starting at x = 0 on y = 0.
     pub fn shape(&self, text: &str, height_mm: f64) -> Shaped {
         let scale = height_mm / CAP_UNITS;
-        let mut shaped =
-            Shaped { letters: Vec::new(), missing: Vec::new(), bounds: Rect::ZERO };
+        let mut shaped = Shaped {
+            letters: Vec::new(),
+            missing: Vec::new(),
+            bounds: Rect::ZERO,
+        };
         let mut bounds: Option<Rect> = None;
         let mut pen = 0.0;
         let mut word = 0;
@@ -90,15 +93,18 @@ impl Face {
             if glyph.strokes.is_empty() {
                 word += 1;
             } else {
-                let place = Affine::scale(scale)
-                    * Affine::translate((pen - left, -BASELINE_UNITS));
+                let place = Affine::scale(scale) * Affine::translate((pen - left, -BASELINE_UNITS));
                 let strokes: Vec<BezPath> =
                     glyph.strokes.iter().map(|stroke| place * stroke).collect();
                 for stroke in &strokes {
                     let stroke_box = stroke.bounding_box();
                     bounds = Some(bounds.map_or(stroke_box, |all| all.union(stroke_box)));
                 }
-                shaped.letters.push(Letter { character, word, strokes });
+                shaped.letters.push(Letter {
+                    character,
+                    word,
+                    strokes,
+                });
             }
             pen += right - left;
         }
@@ -108,7 +114,11 @@ impl Face {
 
     fn glyph(&self, character: char) -> Option<&Glyph> {
         // Spaces of every kind are a gap; the files end before the delete character.
-        let code = if character.is_whitespace() { FIRST } else { u32::from(character) };
+        let code = if character.is_whitespace() {
+            FIRST
+        } else {
+            u32::from(character)
+        };
         let index = usize::try_from(code.checked_sub(FIRST)?).ok()?;
         let glyph = self.glyphs.get(index)?;
         let space = index == 0;

@@ -26,7 +26,10 @@ pub(super) fn read(text: &str) -> Vec<Glyph> {
     let mut glyphs = Vec::new();
     let mut lines = text.lines();
     while let Some(line) = lines.next() {
-        let count: usize = line.get(5..8).and_then(|count| count.trim().parse().ok()).unwrap_or(0);
+        let count: usize = line
+            .get(5..8)
+            .and_then(|count| count.trim().parse().ok())
+            .unwrap_or(0);
         let mut body = line.get(8..).unwrap_or_default().to_owned();
         while body.len() < 2 * count {
             let Some(more) = lines.next() else { break };
@@ -40,7 +43,9 @@ pub(super) fn read(text: &str) -> Vec<Glyph> {
 fn glyph(body: &[u8]) -> Glyph {
     let value = |byte: u8| f64::from(byte) - 82.0;
     let mut pairs = body.as_chunks::<2>().0.iter();
-    let Some(&[left, right]) = pairs.next() else { return Glyph::default() };
+    let Some(&[left, right]) = pairs.next() else {
+        return Glyph::default();
+    };
     let mut strokes = Vec::new();
     let mut stroke = BezPath::new();
     for pair in pairs {
@@ -56,7 +61,10 @@ fn glyph(body: &[u8]) -> Glyph {
         }
     }
     finish(&mut strokes, &mut stroke);
-    Glyph { bearings: (value(left), value(right)), strokes }
+    Glyph {
+        bearings: (value(left), value(right)),
+        strokes,
+    }
 }
 
 fn finish(strokes: &mut Vec<BezPath>, stroke: &mut BezPath) {

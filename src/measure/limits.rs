@@ -32,7 +32,11 @@ impl fmt::Display for Limit {
         } else {
             format!(" {}", self.unit)
         };
-        write!(f, "{} must be {} to {}{unit} ({})", self.name, self.least, self.most, self.why)
+        write!(
+            f,
+            "{} must be {} to {}{unit} ({})",
+            self.name, self.least, self.most, self.why
+        )
     }
 }
 

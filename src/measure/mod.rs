@@ -8,9 +8,7 @@ mod quantity;
 mod read;
 mod show;
 
-pub use limits::{
-    COUNT, LETTER_HEIGHT_MM, Limit, PIECES, PIECE_LENGTH_MM, ROWS, TEXT_CHARACTERS,
-};
+pub use limits::{COUNT, LETTER_HEIGHT_MM, Limit, PIECE_LENGTH_MM, PIECES, ROWS, TEXT_CHARACTERS};
 pub use quantity::{Length, Milliamps, Volts};
 pub use read::{ExactLength, LengthUnit, ReadError, length, milliamps, quoted, volts, with_units};
 pub use show::{Units, glass, grouped, length_exact, length_shown, milliamps_shown, volts_shown};

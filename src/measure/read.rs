@@ -71,7 +71,12 @@ pub struct ReadError {
 
 impl ReadError {
     fn new(text: &str, at: usize, expected: impl Into<String>) -> Self {
-        Self { text: text.to_owned(), at, expected: expected.into(), hint: None }
+        Self {
+            text: text.to_owned(),
+            at,
+            expected: expected.into(),
+            hint: None,
+        }
     }
 
     fn hint(mut self, hint: impl Into<String>) -> Self {
@@ -141,9 +146,12 @@ pub fn with_units(text: &str, bare: LengthUnit) -> String {
         if i > 0 {
             out.push(';');
         }
-        let bare_ends =
-            Reader::new(part).and_then(|reader| reader.sum(&LENGTH_WORDS, bare.word()));
-        let mut ends = bare_ends.map(|(_, ends)| ends).unwrap_or_default().into_iter().peekable();
+        let bare_ends = Reader::new(part).and_then(|reader| reader.sum(&LENGTH_WORDS, bare.word()));
+        let mut ends = bare_ends
+            .map(|(_, ends)| ends)
+            .unwrap_or_default()
+            .into_iter()
+            .peekable();
         let count = part.chars().count();
         for (at, c) in part.chars().enumerate() {
             if ends.next_if_eq(&at).is_some() {
@@ -176,7 +184,10 @@ fn plain(text: &str, words: &Words, bare: &str) -> Result<f64, ReadError> {
 }
 
 /// The float beside a fraction: at most one rounding of each part and one of the quotient.
-#[allow(clippy::cast_precision_loss, reason = "the one place where exact becomes floating")]
+#[allow(
+    clippy::cast_precision_loss,
+    reason = "the one place where exact becomes floating"
+)]
 fn nearest(value: Exact) -> f64 {
     *value.numer() as f64 / *value.denom() as f64
 }
@@ -213,10 +224,14 @@ const LENGTH_WORDS: Words = Words {
 };
 const FOOT: (i128, i128) = (1524, 5);
 const INCH: (i128, i128) = (127, 5);
-const VOLT_WORDS: Words =
-    Words { sizes: &[("kv", 1000, 1), ("v", 1, 1)], examples: "V or kV" };
-const MILLIAMP_WORDS: Words =
-    Words { sizes: &[("ma", 1, 1), ("a", 1000, 1)], examples: "mA or A" };
+const VOLT_WORDS: Words = Words {
+    sizes: &[("kv", 1000, 1), ("v", 1, 1)],
+    examples: "V or kV",
+};
+const MILLIAMP_WORDS: Words = Words {
+    sizes: &[("ma", 1, 1), ("a", 1000, 1)],
+    examples: "mA or A",
+};
 
 /// A factor: its figure, already multiplied by its unit if it had one.
 struct Factor {
@@ -295,9 +310,12 @@ impl<'t> Reader<'t> {
         }
         let mut size = Exact::from_integer(1);
         if factors.iter().all(|factor| !factor.unit) {
-            let (_, numer, denom) =
-                words.sizes.iter().find(|(word, ..)| word.eq_ignore_ascii_case(bare)).copied()
-                    .unwrap_or(("", 1, 1));
+            let (_, numer, denom) = words
+                .sizes
+                .iter()
+                .find(|(word, ..)| word.eq_ignore_ascii_case(bare))
+                .copied()
+                .unwrap_or(("", 1, 1));
             size = Exact::new(numer, denom);
             bare_ends.extend(factors.last().map(|factor| factor.end));
         }
@@ -319,7 +337,12 @@ impl<'t> Reader<'t> {
         let number = self.number()?;
         let end = self.at;
         let Some((numer, denom)) = self.unit(words) else {
-            return Ok(Factor { value: number, unit: false, start, end });
+            return Ok(Factor {
+                value: number,
+                unit: false,
+                start,
+                end,
+            });
         };
         let mut value = self.times(number, numer, denom, start)?;
         if (numer, denom) == FOOT {
@@ -329,7 +352,10 @@ impl<'t> Reader<'t> {
             if self.take('-') {
                 self.skip_spaces();
             }
-            if self.peek().is_some_and(|c| c.is_ascii_digit() || vulgar(c).is_some()) {
+            if self
+                .peek()
+                .is_some_and(|c| c.is_ascii_digit() || vulgar(c).is_some())
+            {
                 let inches_start = self.at;
                 let inches = self.number()?;
                 let unit_start = self.at;
@@ -347,7 +373,12 @@ impl<'t> Reader<'t> {
                 self.at = before;
             }
         }
-        Ok(Factor { value, unit: true, start, end: self.at })
+        Ok(Factor {
+            value,
+            unit: true,
+            start,
+            end: self.at,
+        })
     }
 
     fn times(&self, value: Exact, numer: i128, denom: i128, at: usize) -> Result<Exact, ReadError> {
@@ -370,13 +401,13 @@ impl<'t> Reader<'t> {
             let (decimals, count) = self.digits()?;
             if comma && count == 3 {
                 let typed: String = self.chars[start..self.at].iter().collect();
-                return Err(ReadError::new(self.text, point_at, "a point or no comma").hint(
-                    format!(
+                return Err(
+                    ReadError::new(self.text, point_at, "a point or no comma").hint(format!(
                         "{typed} could be {} or {}",
                         typed.replace(',', "."),
                         typed.replace(',', "")
-                    ),
-                ));
+                    )),
+                );
             }
             if matches!(self.peek(), Some('.' | ',')) {
                 return Err(ReadError::new(self.text, self.at, "one decimal point only"));
@@ -419,10 +450,18 @@ impl<'t> Reader<'t> {
         let under_at = self.at;
         let (under, _) = self.digits()?;
         if under == 0 {
-            return Err(ReadError::new(self.text, under_at, "a figure above zero under the bar"));
+            return Err(ReadError::new(
+                self.text,
+                under_at,
+                "a figure above zero under the bar",
+            ));
         }
         if matches!(self.peek(), Some('.' | ',' | '/')) {
-            return Err(ReadError::new(self.text, start, "a plain fraction such as 5/8"));
+            return Err(ReadError::new(
+                self.text,
+                start,
+                "a plain fraction such as 5/8",
+            ));
         }
         Ok(Exact::new(over, under))
     }
@@ -446,7 +485,10 @@ impl<'t> Reader<'t> {
                 value = value * 10 + i128::from(digit);
             } else if !(count > 0
                 && matches!(c, '\u{2009}' | '\u{202f}')
-                && self.chars.get(self.at + 1).is_some_and(char::is_ascii_digit))
+                && self
+                    .chars
+                    .get(self.at + 1)
+                    .is_some_and(char::is_ascii_digit))
             {
                 break;
             }
@@ -463,11 +505,19 @@ impl<'t> Reader<'t> {
         self.skip_spaces();
         for &(word, numer, denom) in words.sizes {
             let end = self.at + word.chars().count();
-            let Some(found) = self.chars.get(self.at..end) else { continue };
-            let same = found.iter().zip(word.chars()).all(|(a, b)| a.eq_ignore_ascii_case(&b));
+            let Some(found) = self.chars.get(self.at..end) else {
+                continue;
+            };
+            let same = found
+                .iter()
+                .zip(word.chars())
+                .all(|(a, b)| a.eq_ignore_ascii_case(&b));
             // A word ends where its letters end: `min` is not `m`.
             let ends = !word.chars().all(char::is_alphabetic)
-                || !self.chars.get(end).is_some_and(|c| c.is_alphabetic() && !is_times(*c));
+                || !self
+                    .chars
+                    .get(end)
+                    .is_some_and(|c| c.is_alphabetic() && !is_times(*c));
             if same && ends {
                 self.at = end;
                 return Some((numer, denom));
@@ -493,7 +543,6 @@ impl<'t> Reader<'t> {
         }
     }
 }
-
 
 const fn is_times(c: char) -> bool {
     matches!(c, 'x' | 'X')

@@ -13,7 +13,10 @@ pub enum Units {
 }
 
 /// A whole number with thin spaces between thousands: `5 004`.
-#[allow(clippy::cast_possible_truncation, reason = "rounded and kept inside i64 just before")]
+#[allow(
+    clippy::cast_possible_truncation,
+    reason = "rounded and kept inside i64 just before"
+)]
 pub fn grouped(value: f64) -> String {
     if !value.is_finite() {
         return "–".to_owned();
@@ -77,10 +80,15 @@ pub fn milliamps_shown(current: Milliamps) -> String {
     }
 }
 
-#[allow(clippy::cast_possible_truncation, reason = "rounded and kept inside i64 just before")]
+#[allow(
+    clippy::cast_possible_truncation,
+    reason = "rounded and kept inside i64 just before"
+)]
 fn feet_inches(length: Length, parts: i64) -> String {
     #[allow(clippy::cast_precision_loss, reason = "16 or 64")]
-    let ticks = (length.mm() / 25.4 * parts as f64 + 0.5).floor().clamp(0.0, 1e15) as i64;
+    let ticks = (length.mm() / 25.4 * parts as f64 + 0.5)
+        .floor()
+        .clamp(0.0, 1e15) as i64;
     let (inches, over) = (ticks / parts, ticks % parts);
     let (feet, inches) = (inches / 12, inches % 12);
     let mut out = String::new();

@@ -86,11 +86,14 @@ impl Gates {
             if !exponents.contains(&kind.exponent) {
                 exponents.push(kind.exponent);
             }
-            let place = names.iter().position(|name| *name == kind.name).unwrap_or_else(|| {
-                names.push(&kind.name);
-                distinct.push(*kind);
-                names.len() - 1
-            });
+            let place = names
+                .iter()
+                .position(|name| *name == kind.name)
+                .unwrap_or_else(|| {
+                    names.push(&kind.name);
+                    distinct.push(*kind);
+                    names.len() - 1
+                });
             tube.push(place);
         }
         let count = task.pieces.len() + 1;
@@ -140,7 +143,10 @@ impl Gates {
                     let heavy = (window.look_above * basis(nominal))
                         .min(strike(crate::circuit::STRIKE_LOOK) * nominal.no_load().volts());
                     let share = |share: f64| {
-                        at(nominal, (share * basis(nominal)).min(nominal.edge().0.volts()))
+                        at(
+                            nominal,
+                            (share * basis(nominal)).min(nominal.edge().0.volts()),
+                        )
                     };
                     Loads {
                         over: at(nominal, stop(nominal)),
@@ -152,7 +158,9 @@ impl Gates {
                     }
                 });
                 let bound = |curve: Curve, current: Option<f64>, upper: bool| {
-                    let Some(current) = current else { return CurrentGate::Always };
+                    let Some(current) = current else {
+                        return CurrentGate::Always;
+                    };
                     let short = match curve {
                         Curve::Iron { short_ma, .. } | Curve::Electronic { short_ma, .. } => {
                             short_ma
@@ -184,14 +192,28 @@ impl Gates {
                     least: distinct
                         .iter()
                         .map(|kind| {
-                            bound(nominal, kind.least.map(crate::measure::Milliamps::ma), false)
+                            bound(
+                                nominal,
+                                kind.least.map(crate::measure::Milliamps::ma),
+                                false,
+                            )
                         })
                         .collect(),
                 }
             })
             .collect();
-        debug_assert!(CONTINUOUS_TO < 0.76, "the edge of an iron supply is its last steady point");
-        Self { pairs, columns, neon, tube, tubes: distinct.len(), supplies }
+        debug_assert!(
+            CONTINUOUS_TO < 0.76,
+            "the edge of an iron supply is its last steady point"
+        );
+        Self {
+            pairs,
+            columns,
+            neon,
+            tube,
+            tubes: distinct.len(),
+            supplies,
+        }
     }
 
     /// Volts of some pieces at a gate's current.
@@ -199,7 +221,9 @@ impl Gates {
         let (i, j) = (pieces.start, pieces.end);
         let columns = self.columns.iter().zip(&gate.powers);
         self.pairs[j] - self.pairs[i]
-            + columns.map(|(column, power)| (column[j] - column[i]) * power).sum::<f64>()
+            + columns
+                .map(|(column, power)| (column[j] - column[i]) * power)
+                .sum::<f64>()
     }
 
     /// Whether some pieces fit a supply.
@@ -219,7 +243,11 @@ impl Gates {
             None => {
                 let neon = usize::from(self.neon[pieces.end] > self.neon[pieces.start]);
                 let over = &self.supplies[supply].loads[neon].over;
-                if self.volts(&pieces, over) > 2.0 * over.volts { Fit::TooMuch } else { Fit::NotYet }
+                if self.volts(&pieces, over) > 2.0 * over.volts {
+                    Fit::TooMuch
+                } else {
+                    Fit::NotYet
+                }
             }
         }
     }
@@ -234,17 +262,20 @@ impl Gates {
         if !two_strings(&task.candidates[supply].rating) || pieces.len() < 2 {
             return None;
         }
-        self.halves(pieces, supply).map(|(from, _)| from).or_else(|| {
-            // Nothing fits: halve the volts as well as may be, to say by how much.
-            let over = &self.supplies[supply].loads[0].over;
-            (pieces.start + 1..pieces.end).min_by(|&a, &b| {
-                let off = |from: usize| {
-                    (self.volts(&(pieces.start..from), over) - self.volts(&(from..pieces.end), over))
+        self.halves(pieces, supply)
+            .map(|(from, _)| from)
+            .or_else(|| {
+                // Nothing fits: halve the volts as well as may be, to say by how much.
+                let over = &self.supplies[supply].loads[0].over;
+                (pieces.start + 1..pieces.end).min_by(|&a, &b| {
+                    let off = |from: usize| {
+                        (self.volts(&(pieces.start..from), over)
+                            - self.volts(&(from..pieces.end), over))
                         .abs()
-                };
-                off(a).total_cmp(&off(b))
+                    };
+                    off(a).total_cmp(&off(b))
+                })
             })
-        })
     }
 
     /// The best halving: lightest grade, then best balance between the halves.
@@ -281,7 +312,10 @@ impl Gates {
             .over_at_low_mains
             .as_ref()
             .is_some_and(|low| self.volts(pieces, low) >= low.volts)
-            || loads.heavy.as_ref().is_some_and(|heavy| self.volts(pieces, heavy) > heavy.volts)
+            || loads
+                .heavy
+                .as_ref()
+                .is_some_and(|heavy| self.volts(pieces, heavy) > heavy.volts)
             || self.volts(pieces, &loads.light) < loads.light.volts;
         // A string has few tube types; each is asked once.
         let mut asked = 0_u64;
@@ -298,7 +332,10 @@ impl Gates {
             look |= !self.holds(pieces, high) || self.breaks(pieces, &gates.least[tube]);
         }
         let share = self.volts(pieces, &loads.middle) / loads.middle.volts - 1.0;
-        Fit::Fits(Fitting { grade: look.then_some(Grade::Look), off_middle: share * share })
+        Fit::Fits(Fitting {
+            grade: look.then_some(Grade::Look),
+            off_middle: share * share,
+        })
     }
 
     /// Whether an upper bound on the current holds.

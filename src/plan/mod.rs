@@ -96,7 +96,11 @@ pub fn plan(task: &Task) -> Plan {
         task.pieces.len(),
         task.candidates.len(),
         Some(left_out),
-        |pieces, supply| gates.fit(task, pieces, supply).map(|fit| cost(task, supply, fit)),
+        |pieces, supply| {
+            gates
+                .fit(task, pieces, supply)
+                .map(|fit| cost(task, supply, fit))
+        },
     ) else {
         return Plan::default();
     };
@@ -110,10 +114,16 @@ pub fn plan(task: &Task) -> Plan {
             }
             continue;
         };
-        found.left_over.extend(stranded.take().map(|pieces| why::left_over(task, pieces)));
-        found.circuits.push(circuit(task, &gates, pieces, candidate));
+        found
+            .left_over
+            .extend(stranded.take().map(|pieces| why::left_over(task, pieces)));
+        found
+            .circuits
+            .push(circuit(task, &gates, pieces, candidate));
     }
-    found.left_over.extend(stranded.map(|pieces| why::left_over(task, pieces)));
+    found
+        .left_over
+        .extend(stranded.map(|pieces| why::left_over(task, pieces)));
     found
 }
 
@@ -175,7 +185,6 @@ fn on(
         None => assess(&[&load(pieces.clone())], rating, task.loading),
     }
 }
-
 
 const fn two_strings(rating: &Rating) -> bool {
     matches!(rating.earthing, OutputEarthing::MidPointReturn)

@@ -51,11 +51,20 @@ pub fn best_split<C: Ord + Copy + Summed>(
         from: usize,
         supply: Option<usize>,
     }
-    let mut reached: Vec<Reached<C>> =
-        (0..=pieces).map(|_| Reached { cost: None, from: 0, supply: None }).collect();
+    let mut reached: Vec<Reached<C>> = (0..=pieces)
+        .map(|_| Reached {
+            cost: None,
+            from: 0,
+            supply: None,
+        })
+        .collect();
     let improve = |slot: &mut Reached<C>, cost: C, from: usize, supply: Option<usize>| {
         if slot.cost.is_none_or(|known| cost < known) {
-            *slot = Reached { cost: Some(cost), from, supply };
+            *slot = Reached {
+                cost: Some(cost),
+                from,
+                supply,
+            };
         }
     };
     let mut open: Vec<usize> = Vec::with_capacity(supplies);

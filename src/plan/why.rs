@@ -74,7 +74,12 @@ fn neighbour(
     other: usize,
 ) -> Neighbour {
     let there = &task.candidates[other];
-    let worked = on(task, pieces, gates.second_from(task, pieces, other), &there.rating);
+    let worked = on(
+        task,
+        pieces,
+        gates.second_from(task, pieces, other),
+        &there.rating,
+    );
     let grave = worked
         .findings
         .iter()
@@ -86,18 +91,30 @@ fn neighbour(
             "Runs it, but the supply itself needs a look under the rule set.".to_owned()
         }
         None => {
-            let load = format!("runs it at {:.0} % of its window's basis", worked.heavier().share * 100.0);
+            let load = format!(
+                "runs it at {:.0} % of its window's basis",
+                worked.heavier().share * 100.0
+            );
             let price = match (there.rating.price, task.candidates[taken].rating.price) {
-                (Some(there), Some(here)) if there > here => format!("; costs {} more", there - here),
-                (Some(there), Some(here)) if there < here => format!("; costs {} less", here - there),
+                (Some(there), Some(here)) if there > here => {
+                    format!("; costs {} more", there - here)
+                }
+                (Some(there), Some(here)) if there < here => {
+                    format!("; costs {} less", here - there)
+                }
                 (Some(_), Some(_)) => "; costs the same".to_owned(),
                 _ => String::new(),
             };
-            format!("Larger than needed: {load}, {} to earth{price}.",
-                volts_shown(worked.to_earth_no_load))
+            format!(
+                "Larger than needed: {load}, {} to earth{price}.",
+                volts_shown(worked.to_earth_no_load)
+            )
         }
     };
-    Neighbour { candidate: other, says }
+    Neighbour {
+        candidate: other,
+        says,
+    }
 }
 
 /// The nearest miss for pieces that nothing runs.
@@ -114,7 +131,12 @@ pub(super) fn left_over(task: &Task, pieces: Range<usize>) -> LeftOver {
         .flat_map(|range| (0..task.candidates.len()).map(move |supply| (range.clone(), supply)))
         .map(|(range, supply)| {
             let rating = &task.candidates[supply].rating;
-            let worked = on(task, &range, gates.second_from(task, &range, supply), rating);
+            let worked = on(
+                task,
+                &range,
+                gates.second_from(task, &range, supply),
+                rating,
+            );
             let miss = miss(&worked);
             (range, supply, worked, miss)
         })
@@ -129,9 +151,19 @@ pub(super) fn left_over(task: &Task, pieces: Range<usize>) -> LeftOver {
         };
     };
     let would_fit = remedy(task, &range, supply, &worked);
-    let findings =
-        worked.findings.into_iter().filter(|finding| finding.grade == Grade::Stop).collect();
-    LeftOver { pieces, nearest: Some(Rejection { candidate: supply, findings }), would_fit }
+    let findings = worked
+        .findings
+        .into_iter()
+        .filter(|finding| finding.grade == Grade::Stop)
+        .collect();
+    LeftOver {
+        pieces,
+        nearest: Some(Rejection {
+            candidate: supply,
+            findings,
+        }),
+        would_fit,
+    }
 }
 
 /// How far a string is from running, as a ratio above 1, of its worst stop.
@@ -150,7 +182,10 @@ fn miss(worked: &Assessment) -> f64 {
 /// The smallest change that would make it fit, in words.
 fn remedy(task: &Task, pieces: &Range<usize>, supply: usize, worked: &Assessment) -> String {
     let rating = &task.candidates[supply].rating;
-    let overdriven = worked.findings.iter().find(|f| f.grade == Grade::Stop && f.unit == "mA");
+    let overdriven = worked
+        .findings
+        .iter()
+        .find(|f| f.grade == Grade::Stop && f.unit == "mA");
     let half = worked.heavier();
     match half.operating {
         Operating::Runs { gaps: false, .. } if let Some(finding) = overdriven => format!(

@@ -69,7 +69,10 @@ pub struct Quote {
 
 /// Sums up.
 pub fn quote(parts: &Parts, rates: &Rates) -> Quote {
-    let mut sum = Sum { lines: Vec::new(), findings: Vec::new() };
+    let mut sum = Sum {
+        lines: Vec::new(),
+        findings: Vec::new(),
+    };
     let waste = sum.sane_percent("Waste", decimal(parts.waste_percent));
     for part in &parts.glass {
         let metres = decimal(part.glass.m()) * (Decimal::ONE + waste / Decimal::ONE_HUNDRED);
@@ -78,7 +81,12 @@ pub fn quote(parts: &Parts, rates: &Rates) -> Quote {
     }
     if parts.pieces > 0 {
         let electrodes = Decimal::from(2 * parts.pieces);
-        sum.line("Electrodes".to_owned(), electrodes, "", Some(rates.electrode));
+        sum.line(
+            "Electrodes".to_owned(),
+            electrodes,
+            "",
+            Some(rates.electrode),
+        );
     }
     for (name, count, price) in &parts.supplies {
         sum.line(format!("Supply, {name}"), Decimal::from(*count), "", *price);
@@ -133,7 +141,9 @@ impl Sum {
         let rounded = quantity.round_dp_with_strategy(2, RoundingStrategy::MidpointAwayFromZero);
         self.lines.push(Line {
             what,
-            quantity: format!("{} {unit}", rounded.normalize()).trim_end().to_owned(),
+            quantity: format!("{} {unit}", rounded.normalize())
+                .trim_end()
+                .to_owned(),
             amount: each.map(|each| cents(quantity * each)),
             each,
         });

@@ -57,12 +57,20 @@ pub struct Source {
 impl Source {
     /// A setting of the shop book.
     pub fn shop() -> Self {
-        Self { clause: String::new(), from: "shop book".to_owned(), standing: "shop setting" }
+        Self {
+            clause: String::new(),
+            from: "shop book".to_owned(),
+            standing: "shop setting",
+        }
     }
 
     /// The electrical model this program works with.
     pub fn model() -> Self {
-        Self { clause: String::new(), from: "electrical model".to_owned(), standing: "derived" }
+        Self {
+            clause: String::new(),
+            from: "electrical model".to_owned(),
+            standing: "derived",
+        }
     }
 
     /// Custom of the trade, no published source.
@@ -76,7 +84,11 @@ impl Source {
 
     /// The entry itself: a nameplate, a row, a file.
     pub fn entry() -> Self {
-        Self { clause: String::new(), from: "as entered".to_owned(), standing: "as entered" }
+        Self {
+            clause: String::new(),
+            from: "as entered".to_owned(),
+            standing: "as entered",
+        }
     }
 
     /// In a few words, for a caption.
@@ -111,7 +123,15 @@ pub struct Finding {
 impl Finding {
     /// A finding with no figures.
     pub fn new(grade: Grade, place: Place, says: impl Into<String>, source: Source) -> Self {
-        Self { grade, place, says: says.into(), value: None, limit: None, unit: "", source }
+        Self {
+            grade,
+            place,
+            says: says.into(),
+            value: None,
+            limit: None,
+            unit: "",
+            source,
+        }
     }
 
     /// The same with the figure and the limit.

@@ -9,7 +9,12 @@
 use super::{EarthWord, Limits, Rule, RuleSet, Standing};
 
 fn rule(limits: Limits, value: Option<f64>, clause: &str, standing: Standing) -> Rule {
-    Rule { limits, value, clause: clause.to_owned(), standing }
+    Rule {
+        limits,
+        value,
+        clause: clause.to_owned(),
+        standing,
+    }
 }
 
 /// NEC Article 600, editions 2017 and 2020.
@@ -28,9 +33,19 @@ pub fn nec() -> RuleSet {
             .to_owned(),
         rules: vec![
             rule(Limits::NoLoadVolts, Some(15_000.0), "600.23(C)", ReadInText),
-            rule(Limits::VoltsToEarth, Some(7_500.0), "600.23(C), Article 100", ReadInText),
+            rule(
+                Limits::VoltsToEarth,
+                Some(7_500.0),
+                "600.23(C), Article 100",
+                ReadInText,
+            ),
             rule(Limits::RatedCurrent, Some(300.0), "600.23(D)", ReadInText),
-            rule(Limits::EarthFaultProtection, Some(7_500.0), "600.23(B)", ReadInText),
+            rule(
+                Limits::EarthFaultProtection,
+                Some(7_500.0),
+                "600.23(B)",
+                ReadInText,
+            ),
             rule(Limits::OutputsApart, None, "600.23(E)", ReadInText),
         ],
     }
@@ -44,14 +59,30 @@ pub fn iec_en() -> RuleSet {
         jurisdiction: "Europe and countries that adopt IEC".to_owned(),
         edition: "IEC 61050:1991 with A1:1994, EN 50107-1:2002".to_owned(),
         earth_word: EarthWord::Earth,
-        note: "Only values with a source. Volts to earth, trip current, creepage, cable length and \
+        note:
+            "Only values with a source. Volts to earth, trip current, creepage, cable length and \
                heights of EN 50107 were not confirmed and are left for you to fill in from the \
                official text; national rules add to it."
-            .to_owned(),
+                .to_owned(),
         rules: vec![
-            rule(Limits::NoLoadVoltsAbove, Some(1_000.0), "IEC 61050 clause 1.1", ReadInText),
-            rule(Limits::NoLoadVolts, Some(10_000.0), "IEC 61050 clause 1.1", ReadInText),
-            rule(Limits::RatedVoltAmperes, Some(2_500.0), "IEC 61050 clause 8.1", Reported),
+            rule(
+                Limits::NoLoadVoltsAbove,
+                Some(1_000.0),
+                "IEC 61050 clause 1.1",
+                ReadInText,
+            ),
+            rule(
+                Limits::NoLoadVolts,
+                Some(10_000.0),
+                "IEC 61050 clause 1.1",
+                ReadInText,
+            ),
+            rule(
+                Limits::RatedVoltAmperes,
+                Some(2_500.0),
+                "IEC 61050 clause 8.1",
+                Reported,
+            ),
             rule(Limits::VoltsToEarth, None, "EN 50107-1", ToBeFilledIn),
             rule(Limits::TripCurrent, None, "EN 50107-2", ToBeFilledIn),
         ],

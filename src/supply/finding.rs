@@ -22,7 +22,12 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
     };
     for (name, value, most, unit) in [
         ("No-load volts", entry.no_load_volts, 30_000.0, "V"),
-        ("Short-circuit current", entry.short_circuit_ma, 2_000.0, "mA"),
+        (
+            "Short-circuit current",
+            entry.short_circuit_ma,
+            2_000.0,
+            "mA",
+        ),
         ("Rated current", entry.rated_ma, 2_000.0, "mA"),
         ("Rated load volts", entry.rated_load_volts, 30_000.0, "V"),
         ("Input volts", entry.input_volts, 1_000.0, "V"),
@@ -37,7 +42,9 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
         if let Some(value) = value
             && !(value > 0.0 && value <= most)
         {
-            stop(format!("{name} must be above 0 and at most {most} {unit}, but is {value}."));
+            stop(format!(
+                "{name} must be above 0 and at most {most} {unit}, but is {value}."
+            ));
         }
     }
     if entry.no_load_volts.is_none() {
@@ -51,14 +58,18 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
         }
         SupplyKind::Electronic => {
             if entry.rated_ma.is_none() {
-                stop("Rated current is missing: an electronic supply is worked out from its rated \
+                stop(
+                    "Rated current is missing: an electronic supply is worked out from its rated \
                       current and the volts at it."
-                    .to_owned());
+                        .to_owned(),
+                );
             }
             if entry.rated_load_volts.is_none() {
-                stop("Rated load volts are missing: an electronic supply is worked out from the \
+                stop(
+                    "Rated load volts are missing: an electronic supply is worked out from the \
                       volts at its rated current."
-                    .to_owned());
+                        .to_owned(),
+                );
             }
         }
     }
@@ -81,7 +92,9 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
     if let (Some(load), Some(no_load)) = (entry.rated_load_volts, entry.no_load_volts)
         && load > no_load
     {
-        stop(format!("The rated load volts, {load} V, are above the no-load volts, {no_load} V."));
+        stop(format!(
+            "The rated load volts, {load} V, are above the no-load volts, {no_load} V."
+        ));
     }
     if let (Some(trip), Some(short)) = (entry.trip_ma, entry.short_circuit_ma.or(entry.rated_ma))
         && trip > short
@@ -125,7 +138,10 @@ pub(super) fn rules(rating: &Rating, set: &RuleSet) -> Vec<Finding> {
         found.extend(match rule.limits {
             Limits::NoLoadVolts => over(
                 no_load,
-                format!("No-load volts {} are above {limit}.", volts_shown(rating.no_load)),
+                format!(
+                    "No-load volts {} are above {limit}.",
+                    volts_shown(rating.no_load)
+                ),
             ),
             Limits::NoLoadVoltsAbove => rule.value.filter(|&from| no_load <= from).map(|from| {
                 Finding::new(
@@ -150,14 +166,24 @@ pub(super) fn rules(rating: &Rating, set: &RuleSet) -> Vec<Finding> {
             ),
             Limits::RatedCurrent => over(
                 rating.rated.ma(),
-                format!("The rated current {} mA is above {limit}.", rating.rated.ma()),
+                format!(
+                    "The rated current {} mA is above {limit}.",
+                    rating.rated.ma()
+                ),
             ),
             Limits::RatedVoltAmperes => {
                 let va = no_load * rating.rated.ma() / 1000.0;
-                over(va, format!("No-load volts x rated current is {va:.0} VA, above {limit}."))
+                over(
+                    va,
+                    format!("No-load volts x rated current is {va:.0} VA, above {limit}."),
+                )
             }
-            Limits::EarthFaultProtection => earth_fault(rating, set, rule.value)
-                .map(|finding| Finding { source: set.source(rule), ..finding }),
+            Limits::EarthFaultProtection => {
+                earth_fault(rating, set, rule.value).map(|finding| Finding {
+                    source: set.source(rule),
+                    ..finding
+                })
+            }
             Limits::OpenCircuitProtection => (!rating.open_circuit_protection).then(|| {
                 Finding::new(
                     Grade::Stop,
@@ -188,8 +214,7 @@ pub(super) fn rules(rating: &Rating, set: &RuleSet) -> Vec<Finding> {
             Source::model(),
         ));
     }
-    if !rating.open_circuit_protection
-        && !found.iter().any(|finding| finding.grade == Grade::Stop)
+    if !rating.open_circuit_protection && !found.iter().any(|finding| finding.grade == Grade::Stop)
     {
         found.push(Finding::new(
             Grade::Note,
@@ -308,5 +333,7 @@ const fn damp_words(place: Dampness) -> &'static str {
 
 fn capital(text: &str) -> String {
     let mut chars = text.chars();
-    chars.next().map_or_else(String::new, |first| first.to_uppercase().chain(chars).collect())
+    chars.next().map_or_else(String::new, |first| {
+        first.to_uppercase().chain(chars).collect()
+    })
 }

@@ -4,7 +4,6 @@
 
 mod finding;
 
-
 use rust_decimal::Decimal;
 
 use crate::book::{Dampness, OutputEarthing, SupplyEntry, SupplyKind};

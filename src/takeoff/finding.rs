@@ -17,17 +17,29 @@ pub(super) fn unreadable(at: usize, field: &str, error: &ReadError) -> Finding {
 pub(super) fn outside(at: usize, limit: &Limit, value: f64) -> Finding {
     row(Grade::Stop, at, format!("{limit}, but is {value}.")).with(
         value,
-        if value < limit.least { limit.least } else { limit.most },
+        if value < limit.least {
+            limit.least
+        } else {
+            limit.most
+        },
         limit.unit,
     )
 }
 
 pub(super) fn no_text(at: usize) -> Finding {
-    row(Grade::Look, at, "Nothing to make: the row has no letters.".to_owned())
+    row(
+        Grade::Look,
+        at,
+        "Nothing to make: the row has no letters.".to_owned(),
+    )
 }
 
 pub(super) fn no_strokes(at: usize) -> Finding {
-    row(Grade::Look, at, "Nothing to make: the row has no stroke lengths.".to_owned())
+    row(
+        Grade::Look,
+        at,
+        "Nothing to make: the row has no stroke lengths.".to_owned(),
+    )
 }
 
 pub(super) fn no_face(at: usize, name: &str) -> Finding {
@@ -35,7 +47,11 @@ pub(super) fn no_face(at: usize, name: &str) -> Finding {
     row(
         Grade::Stop,
         at,
-        format!("There is no letter face {}; there are: {}.", quoted(name), known.join(", ")),
+        format!(
+            "There is no letter face {}; there are: {}.",
+            quoted(name),
+            known.join(", ")
+        ),
     )
 }
 
@@ -45,7 +61,11 @@ pub(super) fn no_shape(at: usize, face: &Face, missing: &[(usize, char)]) -> Fin
         .iter()
         .take(MOST_NAMED)
         .map(|&(place, character)| {
-            format!("{} (character {})", quoted(&character.to_string()), place + 1)
+            format!(
+                "{} (character {})",
+                quoted(&character.to_string()),
+                place + 1
+            )
         })
         .collect();
     if missing.len() > MOST_NAMED {

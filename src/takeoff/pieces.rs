@@ -34,8 +34,12 @@ pub struct Takeoff {
 
 /// Takes a job off: strokes, pieces, glass.
 pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
-    let mut off =
-        Takeoff { rows: Vec::new(), pieces: Vec::new(), bounds: Rect::ZERO, findings: Vec::new() };
+    let mut off = Takeoff {
+        rows: Vec::new(),
+        pieces: Vec::new(),
+        bounds: Rect::ZERO,
+        findings: Vec::new(),
+    };
     let tail_mm = sane(allowances.tail_mm, 0.0, 2_000.0).unwrap_or_else(|| {
         off.findings.push(finding::allowance(format!(
             "The tail allowance must be 0 to 2000 mm, but is {}: counted as none.",
@@ -44,12 +48,17 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
         0.0
     });
     let longest_mm = sane(allowances.longest_piece_mm, 1.0, 100_000.0);
-    let mut sheet = Sheet { below: 0.0, last_height: 0.0, bounds: None };
+    let mut sheet = Sheet {
+        below: 0.0,
+        last_height: 0.0,
+        bounds: None,
+    };
     for (at, row) in job.rows.iter().enumerate() {
         #[allow(clippy::cast_precision_loss, reason = "a handful of rows")]
         let over = at as f64 >= measure::ROWS.most;
         if over {
-            off.findings.push(finding::too_many(&measure::ROWS, job.rows.len()));
+            off.findings
+                .push(finding::too_many(&measure::ROWS, job.rows.len()));
             break;
         }
         let first = off.pieces.len();
@@ -61,7 +70,8 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
         let copies = count(at, row.count(), &mut off.findings);
         let wanted = made.pieces.len() * copies;
         if wanted > room {
-            off.findings.push(finding::too_many(&measure::PIECES, first + wanted));
+            off.findings
+                .push(finding::too_many(&measure::PIECES, first + wanted));
             made.pieces.truncate(room / copies.max(1));
         }
         let mut bounds: Option<Rect> = None;
@@ -73,7 +83,8 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
             for drawn in &made.pieces {
                 let piece = drawn.piece(at, copy, row.tube(), tail_mm, place);
                 if longest_mm.is_some_and(|most| piece.column().mm() > most) && copy == 0 {
-                    off.findings.push(finding::too_long(off.pieces.len(), &piece, allowances));
+                    off.findings
+                        .push(finding::too_long(off.pieces.len(), &piece, allowances));
                 }
                 off.pieces.push(piece);
             }
@@ -83,7 +94,10 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
         let pieces = first..off.pieces.len();
         off.rows.push(RowTakeoff {
             bounds: bounds.unwrap_or(Rect::ZERO),
-            lit: off.pieces[pieces.clone()].iter().map(|piece| piece.lit).sum(),
+            lit: off.pieces[pieces.clone()]
+                .iter()
+                .map(|piece| piece.lit)
+                .sum(),
             glass: off.pieces[pieces.clone()].iter().map(Piece::glass).sum(),
             pieces,
         });
@@ -140,7 +154,12 @@ impl Drawn {
             .flat_map(BezPath::segments)
             .map(|segment| segment.arclen(ARC_LENGTH_MM))
             .sum();
-        Self { label, lit_mm, strokes, route }
+        Self {
+            label,
+            lit_mm,
+            strokes,
+            route,
+        }
     }
 
     fn piece(&self, row: usize, copy: usize, tube: &str, tail_mm: f64, place: Affine) -> Piece {
@@ -173,7 +192,11 @@ fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
     let characters = row.text.chars().count();
     #[allow(clippy::cast_precision_loss, reason = "a count of characters")]
     if !measure::TEXT_CHARACTERS.holds(characters as f64) {
-        findings.push(finding::outside(at, &measure::TEXT_CHARACTERS, characters as f64));
+        findings.push(finding::outside(
+            at,
+            &measure::TEXT_CHARACTERS,
+            characters as f64,
+        ));
         return Made::default();
     }
     let Some(face) = face(&row.face) else {
@@ -196,7 +219,12 @@ fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
         findings.push(finding::no_shape(at, face, &shaped.missing));
     }
     let mut pieces: Vec<(usize, String, Vec<BezPath>)> = Vec::new();
-    for Letter { character, word, strokes } in shaped.letters {
+    for Letter {
+        character,
+        word,
+        strokes,
+    } in shaped.letters
+    {
         match pieces.last_mut() {
             Some((last, label, all)) if face.joined && *last == word => {
                 label.push(character);
@@ -210,22 +238,33 @@ fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
     let pieces = pieces
         .into_iter()
         .map(|(_, label, strokes)| {
-            let here = strokes.first().map_or(Point::ZERO, |stroke| stroke.bounding_box().origin());
+            let here = strokes
+                .first()
+                .map_or(Point::ZERO, |stroke| stroke.bounding_box().origin());
             let route = match known.get(&label) {
                 Some((there, route)) => moved(route, here - *there),
                 None => route(&strokes),
             };
-            known.entry(label.clone()).or_insert_with(|| (here, route.clone()));
+            known
+                .entry(label.clone())
+                .or_insert_with(|| (here, route.clone()));
             Drawn::new(label, strokes, route)
         })
         .collect();
-    Made { pieces, bounds: shaped.bounds }
+    Made {
+        pieces,
+        bounds: shaped.bounds,
+    }
 }
 
 fn moved(route: &Route, by: kurbo::Vec2) -> Route {
     Route {
         jump_mm: route.jump_mm,
-        jumps: route.jumps.iter().map(|&(from, to)| (from + by, to + by)).collect(),
+        jumps: route
+            .jumps
+            .iter()
+            .map(|&(from, to)| (from + by, to + by))
+            .collect(),
         ends: route.ends.map(|end| end + by),
     }
 }
@@ -242,7 +281,11 @@ fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
                 lengths_mm.push(length.length().mm());
             }
             Ok(length) => {
-                findings.push(finding::outside(at, &measure::PIECE_LENGTH_MM, length.length().mm()));
+                findings.push(finding::outside(
+                    at,
+                    &measure::PIECE_LENGTH_MM,
+                    length.length().mm(),
+                ));
             }
             Err(error) => findings.push(finding::unreadable(at, &field, &error)),
         }
@@ -272,17 +315,30 @@ fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
             stroke.line_to(to);
             let here = Rect::from_points(from, to);
             bounds = Some(bounds.map_or(here, |all| all.union(here)));
-            let label =
-                if alone { row.label.clone() } else { format!("{} {}", row.label, number + 1) };
-            let route = Route { jump_mm: 0.0, jumps: Vec::new(), ends: [from, to] };
+            let label = if alone {
+                row.label.clone()
+            } else {
+                format!("{} {}", row.label, number + 1)
+            };
+            let route = Route {
+                jump_mm: 0.0,
+                jumps: Vec::new(),
+                ends: [from, to],
+            };
             Drawn::new(label, vec![stroke], route)
         })
         .collect();
-    Made { pieces, bounds: bounds.unwrap_or(Rect::ZERO) }
+    Made {
+        pieces,
+        bounds: bounds.unwrap_or(Rect::ZERO),
+    }
 }
 
 fn count(at: usize, typed: i64, findings: &mut Vec<Finding>) -> usize {
-    #[allow(clippy::cast_precision_loss, reason = "only compared with a small limit")]
+    #[allow(
+        clippy::cast_precision_loss,
+        reason = "only compared with a small limit"
+    )]
     let value = typed as f64;
     if measure::COUNT.holds(value) {
         return usize::try_from(typed).unwrap_or(0);

@@ -19,8 +19,17 @@ pub(super) struct Route {
 /// First and last point of a path.
 fn ends(path: &BezPath) -> [Point; 2] {
     let point = |element: &PathEl| element.end_point();
-    let first = path.elements().first().and_then(point).unwrap_or(Point::ZERO);
-    let last = path.elements().iter().rev().find_map(point).unwrap_or(first);
+    let first = path
+        .elements()
+        .first()
+        .and_then(point)
+        .unwrap_or(Point::ZERO);
+    let last = path
+        .elements()
+        .iter()
+        .rev()
+        .find_map(point)
+        .unwrap_or(first);
     [first, last]
 }
 
@@ -29,7 +38,11 @@ fn ends(path: &BezPath) -> [Point; 2] {
 /// Exact up to eight strokes (dynamic programme over subsets); a fair way for more.
 pub(super) fn route(strokes: &[BezPath]) -> Route {
     let ends: Vec<[Point; 2]> = strokes.iter().map(ends).collect();
-    let order = if strokes.len() <= EXACT_STROKES { exact(&ends) } else { nearest(&ends) };
+    let order = if strokes.len() <= EXACT_STROKES {
+        exact(&ends)
+    } else {
+        nearest(&ends)
+    };
     let mut jumps = Vec::new();
     let mut jump_mm = 0.0;
     for pair in order.windows(2) {
@@ -41,9 +54,17 @@ pub(super) fn route(strokes: &[BezPath]) -> Route {
             jumps.push((from, to));
         }
     }
-    let start = order.first().map_or(Point::ZERO, |&(stroke, end)| ends[stroke][end]);
-    let finish = order.last().map_or(Point::ZERO, |&(stroke, end)| ends[stroke][1 - end]);
-    Route { jump_mm, jumps, ends: [start, finish] }
+    let start = order
+        .first()
+        .map_or(Point::ZERO, |&(stroke, end)| ends[stroke][end]);
+    let finish = order
+        .last()
+        .map_or(Point::ZERO, |&(stroke, end)| ends[stroke][1 - end]);
+    Route {
+        jump_mm,
+        jumps,
+        ends: [start, finish],
+    }
 }
 
 /// Order as (stroke, the end it is entered by).
@@ -104,7 +125,8 @@ fn nearest(ends: &[[Point; 2]]) -> Vec<(usize, usize)> {
         let (slot, entry) = (0..left.len())
             .flat_map(|slot| [(slot, 0), (slot, 1)])
             .min_by(|&(a, a_end), &(b, b_end)| {
-                at.distance(ends[left[a]][a_end]).total_cmp(&at.distance(ends[left[b]][b_end]))
+                at.distance(ends[left[a]][a_end])
+                    .total_cmp(&at.distance(ends[left[b]][b_end]))
             })
             .unwrap_or((0, 0));
         let stroke = left.remove(slot);
@@ -128,9 +150,16 @@ mod tests {
     #[test]
     fn strokes_that_touch_need_no_jump() {
         // An L drawn as two strokes away from the corner.
-        let found = route(&[line((0.0, 0.0), (0.0, 10.0)), line((0.0, 10.0), (5.0, 10.0))]);
+        let found = route(&[
+            line((0.0, 0.0), (0.0, 10.0)),
+            line((0.0, 10.0), (5.0, 10.0)),
+        ]);
         assert_eq!(found.jump_mm, 0.0, "the strokes share the corner");
-        assert_eq!(found.ends, [Point::new(0.0, 0.0), Point::new(5.0, 10.0)], "tip to tip");
+        assert_eq!(
+            found.ends,
+            [Point::new(0.0, 0.0), Point::new(5.0, 10.0)],
+            "tip to tip"
+        );
     }
 
     #[test]
@@ -146,9 +175,14 @@ mod tests {
 
     #[test]
     fn many_strokes_are_all_run_through() {
-        let strokes: Vec<BezPath> =
-            (0..14).map(|i| line((f64::from(i) * 10.0, 0.0), (f64::from(i) * 10.0, 5.0))).collect();
+        let strokes: Vec<BezPath> = (0..14)
+            .map(|i| line((f64::from(i) * 10.0, 0.0), (f64::from(i) * 10.0, 5.0)))
+            .collect();
         // Up, over, down, over: 13 jumps of 10.
-        assert!((route(&strokes).jump_mm - 130.0).abs() < 1e-9, "{:?}", route(&strokes));
+        assert!(
+            (route(&strokes).jump_mm - 130.0).abs() < 1e-9,
+            "{:?}",
+            route(&strokes)
+        );
     }
 }

@@ -36,7 +36,11 @@ pub struct ModelFigures {
 /// The default model: `bore_mm` is the inner diameter in millimetres.
 pub fn model(gas: Gas, bore_mm: f64) -> ModelFigures {
     // Tubes of 12 to 15 mm outer diameter, as the model's data bracket them.
-    let uncertainty_percent = if (10.0..=13.0).contains(&bore_mm) { 15.0 } else { 25.0 };
+    let uncertainty_percent = if (10.0..=13.0).contains(&bore_mm) {
+        15.0
+    } else {
+        25.0
+    };
     let (at_10_mm, slope, exponent, pair_volts) = match gas {
         Gas::Neon => (720.0, 0.75, 0.25, 180.0),
         Gas::ArgonMercury => (425.0, 0.70, 0.30, 210.0),
@@ -97,7 +101,9 @@ impl TubeType {
             if let Some(value) = value
                 && !(value > 0.0 && value <= most)
             {
-                stop(format!("{name} must be above 0 and at most {most} {unit}, but is {value}."));
+                stop(format!(
+                    "{name} must be above 0 and at most {most} {unit}, but is {value}."
+                ));
             }
         };
         above_zero("Outer diameter", entry.outer_mm, 60.0, "mm");
@@ -113,27 +119,38 @@ impl TubeType {
         if let Some(n) = entry.exponent
             && !(0.0..=MOST_EXPONENT).contains(&n)
         {
-            stop(format!("The exponent must be 0 to {MOST_EXPONENT}, but is {n}."));
+            stop(format!(
+                "The exponent must be 0 to {MOST_EXPONENT}, but is {n}."
+            ));
         }
         if let (Some(least), Some(most)) = (entry.least_ma, entry.most_ma)
             && least > most
         {
-            stop(format!("The least current, {least} mA, is above the greatest, {most} mA."));
+            stop(format!(
+                "The least current, {least} mA, is above the greatest, {most} mA."
+            ));
         }
         let outer_mm = entry.outer_mm.unwrap_or_else(|| {
-            stop("The outer diameter is missing: it is needed to draw and to model the tube.".into());
+            stop(
+                "The outer diameter is missing: it is needed to draw and to model the tube.".into(),
+            );
             f64::NAN
         });
         let bore_mm = outer_mm - 2.0 * entry.wall_mm.unwrap_or(1.0);
         if bore_mm <= 0.0 {
-            stop(format!("The walls leave no bore: outer diameter {outer_mm} mm."));
+            stop(format!(
+                "The walls leave no bore: outer diameter {outer_mm} mm."
+            ));
         }
         if !wrong.is_empty() {
             return Err(wrong);
         }
         let figures = model(entry.gas, bore_mm);
         // A gradient given at another current than 25 mA keeps its own reference.
-        let at_ma = entry.at_ma.filter(|_| entry.volts_per_m.is_some()).unwrap_or(MODEL_MA);
+        let at_ma = entry
+            .at_ma
+            .filter(|_| entry.volts_per_m.is_some())
+            .unwrap_or(MODEL_MA);
         let modelled = entry.volts_per_m.is_none();
         Ok(Self {
             name: entry.name.clone(),
