@@ -113,11 +113,12 @@ impl Face {
     }
 
     fn glyph(&self, character: char) -> Option<&Glyph> {
-        // Spaces of every kind are a gap; the files end before the delete character.
-        let code = if character.is_whitespace() {
-            FIRST
-        } else {
-            u32::from(character)
+        // Spaces of every kind are a gap. The files go on past the tilde with a shape of their own,
+        // which stands for no character a person types.
+        let code = match character {
+            _ if character.is_whitespace() => FIRST,
+            ' '..='~' => u32::from(character),
+            _ => return None,
         };
         let index = usize::try_from(code.checked_sub(FIRST)?).ok()?;
         let glyph = self.glyphs.get(index)?;

@@ -1,1 +1,7 @@
-//! t
+//! The rooms of the core from outside, one module for each; what only a room's own code can see is
+//! tested beside that code.
+//!
+//! Figures come from outside references (`tests/reference`, each folder with its provenance) or are
+//! worked by hand in the comment above them.
+
+mod drawing; // strokes of the faces against published lengths; characters without a shape
