@@ -1,1 +1,11 @@
-//! t
+//! The commands of the house, run as `cargo xtask COMMAND`; one file each.
+//!
+//! A library besides the program so that the browser journeys can serve the page with the very
+//! server a person uses.
+
+pub mod paths;
+pub mod run;
+pub mod serve;
+
+/// How a command ends: well, or with a sentence saying what, where, and what would be right.
+pub type Outcome = Result<(), String>;
