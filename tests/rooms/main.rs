@@ -4,4 +4,5 @@
 //! Figures come from outside references (`tests/reference`, each folder with its provenance) or are
 //! worked by hand in the comment above them.
 
+mod circuit; // operating points against ngspice and exact solutions; volts to earth
 mod drawing; // strokes of the faces against published lengths; characters without a shape
