@@ -3,9 +3,14 @@
 //! A library besides the program so that the browser journeys can serve the page with the very
 //! server a person uses.
 
+pub mod build;
+pub mod files;
 pub mod paths;
 pub mod run;
 pub mod serve;
+
+#[cfg(test)]
+mod scratch;
 
 /// How a command ends: well, or with a sentence saying what, where, and what would be right.
 pub type Outcome = Result<(), String>;

@@ -17,7 +17,7 @@ const WORKERS: usize = 4;
 /// Serves the files of a folder on 127.0.0.1 until stopped or dropped.
 pub struct Server {
     address: SocketAddr,
-    server: Arc<tiny_http::Server>,
+    http: Arc<tiny_http::Server>,
     workers: Vec<JoinHandle<()>>,
 }
 
@@ -29,21 +29,20 @@ impl Server {
     pub fn start(dir: &Path, port: Option<u16>) -> io::Result<Self> {
         let listener = TcpListener::bind((Ipv4Addr::LOCALHOST, port.unwrap_or(0)))?;
         let address = listener.local_addr()?;
-        let server = Arc::new(
-            tiny_http::Server::from_listener(listener, None).map_err(io::Error::other)?,
-        );
+        let http =
+            Arc::new(tiny_http::Server::from_listener(listener, None).map_err(io::Error::other)?);
         let workers = (0..WORKERS)
             .map(|_| {
-                let (server, dir) = (Arc::clone(&server), dir.to_owned());
+                let (http, dir) = (Arc::clone(&http), dir.to_owned());
                 std::thread::spawn(move || {
-                    while let Ok(request) = server.recv() {
+                    while let Ok(request) = http.recv() {
                         // A browser that went away before its answer is no matter of ours.
                         let _gone = answer(request, &dir);
                     }
                 })
             })
             .collect();
-        Ok(Self { address, server, workers })
+        Ok(Self { address, http, workers })
     }
 
     /// Where the page is: `http://127.0.0.1:PORT/`.
@@ -58,7 +57,7 @@ impl Server {
 impl Drop for Server {
     fn drop(&mut self) {
         for _ in &self.workers {
-            self.server.unblock();
+            self.http.unblock();
         }
         for worker in self.workers.drain(..) {
             // A worker that panicked has said so already.
@@ -75,12 +74,11 @@ fn answer(request: Request, dir: &Path) -> io::Result<()> {
     }
     let found = file_of(request.url())
         .and_then(|file| Some((mime(&file), std::fs::read(dir.join(&file)).ok()?)));
-    let (status, mime, body) = match found {
-        Some((mime, body)) => (200, mime, body),
-        None => {
-            let says = format!("Nothing is served at {}; the page is at /.\n", request.url());
-            (404, "text/plain; charset=utf-8", says.into_bytes())
-        }
+    let (status, mime, body) = if let Some((mime, body)) = found {
+        (200, mime, body)
+    } else {
+        let says = format!("Nothing is served at {}; the page is at /.\n", request.url());
+        (404, "text/plain; charset=utf-8", says.into_bytes())
     };
     let response = Response::from_data(body).with_status_code(status);
     let response = with(response, "Content-Type", mime);
@@ -154,6 +152,7 @@ mod tests {
     use std::net::TcpStream;
 
     use super::*;
+    use crate::scratch::Scratch;
 
     #[test]
     fn addresses_name_files() {
@@ -219,12 +218,12 @@ mod tests {
 
     #[test]
     fn a_folder_is_served_and_nothing_beside_it() {
-        let outer = std::env::temp_dir().join(format!("tubewright-serve-{}", std::process::id()));
-        let dir = outer.join("dist");
-        std::fs::create_dir_all(&dir).unwrap();
-        std::fs::write(outer.join("secret"), "not for you").unwrap();
-        std::fs::write(dir.join("index.html"), "<p>the page").unwrap();
-        std::fs::write(dir.join("page_bg.wasm"), "\0asm").unwrap();
+        let outer = Scratch::with(&[
+            ("secret", "not for you"),
+            ("dist/index.html", "<p>the page"),
+            ("dist/page_bg.wasm", "\0asm"),
+        ]);
+        let dir = outer.path().join("dist");
         let server = Server::start(&dir, None).unwrap();
         let address = server.address();
 
@@ -255,6 +254,5 @@ mod tests {
         let taken = Server::start(&dir, Some(port)).err().unwrap();
         assert_eq!(taken.kind(), io::ErrorKind::AddrInUse);
         server.stop();
-        std::fs::remove_dir_all(&outer).unwrap();
     }
 }
