@@ -6,3 +6,4 @@
 
 mod circuit; // operating points against ngspice and exact solutions; volts to earth
 mod drawing; // strokes of the faces against published lengths; characters without a shape
+mod plan; // the splitter against known optima, brute force and random splits
