@@ -6,4 +6,5 @@
 
 mod circuit; // operating points against ngspice and exact solutions; volts to earth
 mod drawing; // strokes of the faces against published lengths; characters without a shape
+mod measure; // reading and showing figures; every sentence of a text that cannot be read
 mod plan; // the splitter against known optima, brute force and random splits
