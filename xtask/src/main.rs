@@ -2,12 +2,13 @@
 
 use std::process::ExitCode;
 
-use xtask::{Outcome, build};
+use xtask::{Outcome, build, serve};
 
 const HELP: &str = "\
 cargo xtask COMMAND
 
-  build     compile the page into dist/
+  build             compile the page into dist/
+  serve [--port N]  build, then serve the page on this machine
 ";
 
 fn main() -> ExitCode {
@@ -18,6 +19,7 @@ fn main() -> ExitCode {
     };
     let outcome = match command.as_str() {
         "build" => no_more(rest).and_then(|()| build::build()),
+        "serve" => serve::serve(rest),
         "help" | "--help" | "-h" => {
             print!("{HELP}");
             Ok(())

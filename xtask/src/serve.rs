@@ -8,11 +8,55 @@ use std::thread::JoinHandle;
 
 use tiny_http::{Header, Method, Request, Response};
 
+use crate::{Outcome, build, paths};
+
 /// The port tried first when none is asked for.
 pub const USUAL_PORT: u16 = 8080;
 
 /// A browser asks for a handful of files at once.
 const WORKERS: usize = 4;
+
+/// The command; it ends only by Ctrl-C or a failure.
+///
+/// # Errors
+/// When the arguments make no sense, the page does not build, or the port is taken.
+pub fn serve(arguments: &[String]) -> Outcome {
+    let port = port(arguments)?;
+    build::build()?;
+    let server = start_near(&paths::dist(), port)?;
+    println!("Serving it at {} until Ctrl-C.", server.address());
+    loop {
+        std::thread::park();
+    }
+}
+
+fn port(arguments: &[String]) -> Result<Option<u16>, String> {
+    match arguments {
+        [] => Ok(None),
+        [option, port] if option == "--port" => port
+            .parse()
+            .map(Some)
+            .map_err(|_| format!("A port is a number from 0 (any free one) to 65535, not “{port}”.")),
+        _ => Err("Expected nothing or `--port NUMBER`.".to_owned()),
+    }
+}
+
+/// On the port asked for, else on the usual one, else on any free one.
+fn start_near(dir: &Path, port: Option<u16>) -> Result<Server, String> {
+    match Server::start(dir, Some(port.unwrap_or(USUAL_PORT))) {
+        Err(error) if port.is_none() && error.kind() == io::ErrorKind::AddrInUse => {
+            println!("Port {USUAL_PORT} is taken; using another.");
+            Server::start(dir, None)
+        }
+        tried => tried,
+    }
+    .map_err(|error| {
+        format!(
+            "Cannot serve on port {}: {error}. `--port NUMBER` takes another.",
+            port.unwrap_or(USUAL_PORT)
+        )
+    })
+}
 
 /// Serves the files of a folder on 127.0.0.1 until stopped or dropped.
 pub struct Server {
@@ -204,6 +248,28 @@ mod tests {
         assert_eq!(of("icons/icon.svg"), "image/svg+xml");
         assert_eq!(of("index.html"), "text/html; charset=utf-8");
         assert_eq!(of("no-ending"), "application/octet-stream");
+    }
+
+    #[test]
+    fn the_port_is_a_number() {
+        let port = |words: &[&str]| {
+            port(&words.iter().map(|&word| word.to_owned()).collect::<Vec<_>>())
+        };
+        assert_eq!(port(&[]), Ok(None));
+        assert_eq!(port(&["--port", "9000"]), Ok(Some(9000)));
+        assert!(port(&["--port", "70000"]).unwrap_err().contains("not “70000”"));
+        assert!(port(&["--port"]).is_err() && port(&["9000"]).is_err());
+    }
+
+    #[test]
+    fn a_taken_port_is_given_up_only_if_nobody_asked_for_it() {
+        let dir = Scratch::with(&[]);
+        // Whoever holds the usual port, this test or another program, it is taken now.
+        let _held = TcpListener::bind((Ipv4Addr::LOCALHOST, USUAL_PORT));
+        let server = start_near(dir.path(), None).unwrap();
+        assert_ne!(server.address.port(), USUAL_PORT);
+        let said = start_near(dir.path(), Some(server.address.port())).err().unwrap();
+        assert!(said.contains("`--port NUMBER` takes another"), "{said}");
     }
 
     /// Sends one request and gives the whole answer.
