@@ -22,7 +22,8 @@ type Exact = Ratio<i128>;
 
 /// More digits than any real length has; keeps the exact arithmetic far from overflow.
 const MOST_DIGITS: usize = 12;
-/// More characters than any field needs.
+/// More characters than any field needs. Spaces and letters are not counted: units written out by
+/// [`with_units`] must not make a text too long to be read again.
 const MOST_CHARACTERS: usize = 200;
 
 /// A length exactly as typed, in millimetres as a fraction.
@@ -250,12 +251,15 @@ struct Reader<'t> {
 impl<'t> Reader<'t> {
     fn new(text: &'t str) -> Result<Self, ReadError> {
         let chars: Vec<char> = text.chars().collect();
-        if chars.len() > MOST_CHARACTERS {
-            return Err(ReadError::new(
-                text,
-                MOST_CHARACTERS,
-                format!("at most {MOST_CHARACTERS} characters"),
-            ));
+        let counted = |(_, c): &(usize, &char)| !c.is_alphabetic() && !c.is_whitespace();
+        if let Some((at, _)) = chars
+            .iter()
+            .enumerate()
+            .filter(counted)
+            .nth(MOST_CHARACTERS)
+        {
+            let expected = format!("at most {MOST_CHARACTERS} characters besides spaces and units");
+            return Err(ReadError::new(text, at, expected));
         }
         Ok(Self { text, chars, at: 0 })
     }

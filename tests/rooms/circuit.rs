@@ -3,7 +3,7 @@
 
 use insta::assert_snapshot;
 use proptest::prelude::*;
-use tubewright::book::{Gas, Loading, OutputEarthing, SupplyEntry, TubeEntry};
+use tubewright::book::{Allowances, Gas, Loading, OutputEarthing, SupplyEntry, TubeEntry};
 use tubewright::circuit::{Assessment, Curve, Load, Operating, assess, iron, operate};
 use tubewright::job::{Job, Row, StrokesRow};
 use tubewright::supply::Rating;
@@ -178,7 +178,7 @@ fn pieces(strokes: &str) -> Vec<Piece> {
             rows: vec![row],
             ..Job::default()
         },
-        &Default::default(),
+        &Allowances::default(),
     );
     assert_eq!(
         off.pieces.len(),

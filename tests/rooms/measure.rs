@@ -174,8 +174,8 @@ fn what_is_no_length_is_refused_with_its_place() {
     assert_snapshot!(refused("1234567890123"), @"expected at most 12 digits, but found “1234567890123” at character 1 of “1234567890123”");
     assert_snapshot!(refused("<b>450</b>"), @"expected a number such as 450, but found “<b>450</b>” at character 1 of “<b>450</b>”");
     assert_snapshot!(refused("999999999999 m x 999999999999 x 999999999999 x 999999999999"), @"expected a smaller figure, but found “999999999999 m x 9999999…” at character 1 of “999999999999 m x 9999999…”");
-    assert_snapshot!(refused(&"9".repeat(10_000)), @"expected at most 200 characters, but found “999999999999999999999999…” at character 201 of “999999999999999999999999…”");
-    assert_snapshot!(refused(&"1+".repeat(5_000)), @"expected at most 200 characters, but found “1+1+1+1+1+1+1+1+1+1+1+1+…” at character 201 of “1+1+1+1+1+1+1+1+1+1+1+1+…”");
+    assert_snapshot!(refused(&"9".repeat(10_000)), @"expected at most 200 characters besides spaces and units, but found “999999999999999999999999…” at character 201 of “999999999999999999999999…”");
+    assert_snapshot!(refused(&"1+".repeat(5_000)), @"expected at most 200 characters besides spaces and units, but found “1+1+1+1+1+1+1+1+1+1+1+1+…” at character 201 of “1+1+1+1+1+1+1+1+1+1+1+1+…”");
 }
 
 #[test]
@@ -271,6 +271,10 @@ fn units_are_written_out_where_a_number_has_none() {
         );
     }
     assert_eq!(with_units("6 1/2", LengthUnit::Inches), "6 1/2 in");
+    // As long a sum as may be typed stays readable with its units.
+    let longest = format!("{}1", "1+".repeat(99));
+    let written = with_units(&longest, LengthUnit::Inches);
+    assert_eq!(mm(&written), inches(&longest), "{written}");
 }
 
 /// Something a person might type: pieces of lengths in any order, some of it nonsense.
