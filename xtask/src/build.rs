@@ -23,7 +23,13 @@ const FILES: &str = "\"__FILES__\"";
 /// Where it waits for a word that changes when any file does.
 const VERSION: &str = "\"__VERSION__\"";
 /// What lies in the page's folder but is no part of the page; names at its top level.
-const NOT_THE_PAGE: [&str; 5] = ["Cargo.toml", "clippy.toml", "src", "tests", "webdriver.json"];
+const NOT_THE_PAGE: [&str; 5] = [
+    "Cargo.toml",
+    "clippy.toml",
+    "src",
+    "tests",
+    "webdriver.json",
+];
 
 /// The command.
 ///
@@ -53,12 +59,8 @@ pub fn build() -> Outcome {
 /// # Errors
 /// A sentence saying what to install where it cannot, and nothing here can install it.
 pub fn ensure_target() -> Outcome {
-    let libraries = run::output(Command::new("rustc").args([
-        "--print",
-        "target-libdir",
-        "--target",
-        TARGET,
-    ]));
+    let libraries =
+        run::output(Command::new("rustc").args(["--print", "target-libdir", "--target", TARGET]));
     if libraries.is_ok_and(|libraries| Path::new(libraries.trim()).is_dir()) {
         return Ok(());
     }
@@ -76,15 +78,23 @@ pub fn ensure_target() -> Outcome {
 
 /// Compiles the page and says where the wasm is.
 fn compile() -> Result<PathBuf, String> {
-    run::run(run::cargo().args(["build", "--release", "--package", PAGE, "--target", TARGET]).args([
-        "--config",
-        &without_own_paths(),
-    ]))?;
-    let wasm = target_dir()?.join(TARGET).join("release").join(PAGE).with_extension("wasm");
+    run::run(
+        run::cargo()
+            .args(["build", "--release", "--package", PAGE, "--target", TARGET])
+            .args(["--config", &without_own_paths()]),
+    )?;
+    let wasm = target_dir()?
+        .join(TARGET)
+        .join("release")
+        .join(PAGE)
+        .with_extension("wasm");
     if wasm.is_file() {
         Ok(wasm)
     } else {
-        Err(format!("{PAGE} was compiled, but there is no {}: it needs a main.rs.", wasm.display()))
+        Err(format!(
+            "{PAGE} was compiled, but there is no {}: it needs a main.rs.",
+            wasm.display()
+        ))
     }
 }
 
@@ -94,11 +104,14 @@ fn without_own_paths() -> String {
     let cargo_home = std::env::var_os("CARGO_HOME")
         .map(PathBuf::from)
         .or_else(|| std::env::home_dir().map(|home| home.join(".cargo")));
-    let flags: Vec<String> = [Some((paths::root(), ".")), cargo_home.map(|home| (home, "cargo"))]
-        .into_iter()
-        .flatten()
-        .map(|(from, to)| format!("--remap-path-prefix={}={to}", from.display()))
-        .collect();
+    let flags: Vec<String> = [
+        Some((paths::root(), ".")),
+        cargo_home.map(|home| (home, "cargo")),
+    ]
+    .into_iter()
+    .flatten()
+    .map(|(from, to)| format!("--remap-path-prefix={}={to}", from.display()))
+    .collect();
     // A list of strings is written the same in JSON as in cargo's TOML.
     format!("target.{TARGET}.rustflags={}", json!(flags))
 }
@@ -108,8 +121,12 @@ fn without_own_paths() -> String {
 /// # Errors
 /// When cargo does not say.
 pub fn target_dir() -> Result<PathBuf, String> {
-    let said =
-        run::output(run::cargo().args(["metadata", "--no-deps", "--offline", "--format-version=1"]))?;
+    let said = run::output(run::cargo().args([
+        "metadata",
+        "--no-deps",
+        "--offline",
+        "--format-version=1",
+    ]))?;
     let said: Value = serde_json::from_str(&said)
         .map_err(|error| format!("`cargo metadata` printed no JSON: {error}."))?;
     said["target_directory"]
@@ -136,7 +153,10 @@ fn bind(wasm: &Path, into: &Path) -> Outcome {
 fn copy_static(www: &Path, into: &Path) -> Outcome {
     let all = files::list(www)?;
     if !all.iter().any(|name| name == "index.html") {
-        return Err(format!("{} is missing: a page begins with it.", www.join("index.html").display()));
+        return Err(format!(
+            "{} is missing: a page begins with it.",
+            www.join("index.html").display()
+        ));
     }
     for name in all {
         let top = name.split('/').next().unwrap_or_default();
@@ -150,7 +170,10 @@ fn copy_static(www: &Path, into: &Path) -> Outcome {
 /// Copies the demonstration jobs and book.
 fn copy_demo(demo: &Path, into: &Path) -> Outcome {
     for name in files::list(demo)? {
-        if Path::new(&name).extension().is_some_and(|ending| ending == "json") {
+        if Path::new(&name)
+            .extension()
+            .is_some_and(|ending| ending == "json")
+        {
             files::write(&into.join(&name), &files::read(&demo.join(&name))?)?;
         }
     }
@@ -228,7 +251,10 @@ mod tests {
             files::list(dist.path()).unwrap(),
             ["icons/icon.svg", "icons/src/of-an-icon.svg", "index.html"]
         );
-        assert_eq!(files::read_text(&dist.path().join("index.html")).unwrap(), "<p>");
+        assert_eq!(
+            files::read_text(&dist.path().join("index.html")).unwrap(),
+            "<p>"
+        );
     }
 
     #[test]
@@ -263,7 +289,11 @@ mod tests {
         let worker = page("p {}");
         let mut lines = worker.lines();
         let listed = lines.next().unwrap();
-        let listed = listed.strip_prefix("const FILES = ").unwrap().strip_suffix(';').unwrap();
+        let listed = listed
+            .strip_prefix("const FILES = ")
+            .unwrap()
+            .strip_suffix(';')
+            .unwrap();
         let listed: Vec<(String, String)> = serde_json::from_str(listed).unwrap();
         let names: Vec<&str> = listed.iter().map(|(name, _)| name.as_str()).collect();
         assert_eq!(names, ["./", "demo/book.json", "index.html", "style.css"]);
@@ -272,7 +302,11 @@ mod tests {
 
         let version = |worker: &str| worker.lines().nth(1).unwrap().to_owned();
         assert_eq!(version(&worker).len(), "const VERSION = \"\";".len() + 64);
-        assert_eq!(page("p {}"), worker, "the same files must give the same version");
+        assert_eq!(
+            page("p {}"),
+            worker,
+            "the same files must give the same version"
+        );
         assert_ne!(version(&page("a {}")), version(&worker));
     }
 

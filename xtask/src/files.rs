@@ -107,10 +107,18 @@ mod tests {
 
     #[test]
     fn all_files_are_listed_in_order() {
-        let dir = Scratch::with(&[("b.txt", ""), ("a/z.txt", ""), ("a/b/c", ""), (".hidden", "")]);
+        let dir = Scratch::with(&[
+            ("b.txt", ""),
+            ("a/z.txt", ""),
+            ("a/b/c", ""),
+            (".hidden", ""),
+        ]);
         assert_eq!(list(dir.path()).unwrap(), ["a/b/c", "a/z.txt", "b.txt"]);
         let said = list(&dir.path().join("none")).unwrap_err();
-        assert!(said.starts_with("Cannot list ") && said.contains("none: "), "{said}");
+        assert!(
+            said.starts_with("Cannot list ") && said.contains("none: "),
+            "{said}"
+        );
     }
 
     #[test]
@@ -125,8 +133,10 @@ mod tests {
     fn sizes_add_up() {
         let dir = Scratch::with(&[("a", &"x".repeat(1_000)), ("b", "12345")]);
         let shown = sizes(dir.path()).unwrap();
-        let lines: Vec<Vec<&str>> =
-            shown.lines().map(|line| line.split_whitespace().collect()).collect();
+        let lines: Vec<Vec<&str>> = shown
+            .lines()
+            .map(|line| line.split_whitespace().collect())
+            .collect();
         assert_eq!(lines[1][0], "1000");
         assert!(lines[1][1].parse::<usize>().unwrap() < 100, "{shown}");
         assert_eq!(lines[2][0], "5");
@@ -139,7 +149,10 @@ mod tests {
     fn what_cannot_be_written_or_removed_is_named() {
         let dir = Scratch::with(&[("file", "")]);
         let said = write(&dir.path().join("file/under"), b"").unwrap_err();
-        assert!(said.starts_with("Cannot write ") && said.contains("under"), "{said}");
+        assert!(
+            said.starts_with("Cannot write ") && said.contains("under"),
+            "{said}"
+        );
         remove(&dir.path().join("none")).unwrap();
         remove(dir.path()).unwrap();
         assert!(!dir.path().exists());

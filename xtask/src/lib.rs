@@ -6,6 +6,7 @@
 pub mod build;
 pub mod files;
 pub mod paths;
+pub mod report;
 pub mod run;
 pub mod serve;
 

@@ -2,13 +2,14 @@
 
 use std::process::ExitCode;
 
-use xtask::{Outcome, build, serve};
+use xtask::{Outcome, build, report, serve};
 
 const HELP: &str = "\
 cargo xtask COMMAND
 
-  build             compile the page into dist/
-  serve [--port N]  build, then serve the page on this machine
+  build                               compile the page into dist/
+  serve [--port N]                    build, then serve the page on this machine
+  report JOB [--book BOOK] [--json]   work a job file up, with the demonstration book or another
 ";
 
 fn main() -> ExitCode {
@@ -20,6 +21,7 @@ fn main() -> ExitCode {
     let outcome = match command.as_str() {
         "build" => no_more(rest).and_then(|()| build::build()),
         "serve" => serve::serve(rest),
+        "report" => report::report(rest),
         "help" | "--help" | "-h" => {
             print!("{HELP}");
             Ok(())
@@ -41,7 +43,9 @@ fn main() -> ExitCode {
 /// For commands that take no arguments.
 fn no_more(rest: &[String]) -> Outcome {
     match rest.first() {
-        Some(extra) => Err(format!("This command takes no arguments, but was given “{extra}”.")),
+        Some(extra) => Err(format!(
+            "This command takes no arguments, but was given “{extra}”."
+        )),
         None => Ok(()),
     }
 }

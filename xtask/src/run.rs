@@ -18,17 +18,29 @@ pub fn cargo() -> Command {
 pub fn run(command: &mut Command) -> Outcome {
     let shown = shown(command);
     println!("$ {shown}");
-    let status = command.status().map_err(|error| cannot_start(&shown, &error))?;
-    if status.success() { Ok(()) } else { Err(format!("`{shown}` failed: {status}.")) }
+    let status = command
+        .status()
+        .map_err(|error| cannot_start(&shown, &error))?;
+    if status.success() {
+        Ok(())
+    } else {
+        Err(format!("`{shown}` failed: {status}."))
+    }
 }
 
 /// Runs a command quietly and gives what it prints.
 pub fn output(command: &mut Command) -> Result<String, String> {
     let shown = shown(command);
-    let output = command.output().map_err(|error| cannot_start(&shown, &error))?;
+    let output = command
+        .output()
+        .map_err(|error| cannot_start(&shown, &error))?;
     if !output.status.success() {
         let says = String::from_utf8_lossy(&output.stderr);
-        return Err(format!("`{shown}` failed: {}. It says: {}", output.status, says.trim()));
+        return Err(format!(
+            "`{shown}` failed: {}. It says: {}",
+            output.status,
+            says.trim()
+        ));
     }
     String::from_utf8(output.stdout).map_err(|_| format!("`{shown}` printed no readable text."))
 }
@@ -39,12 +51,14 @@ fn cannot_start(shown: &str, error: &std::io::Error) -> String {
 
 /// A command as it would be typed: what is set in its environment, the program's name, the arguments.
 pub fn shown(command: &Command) -> String {
-    let set = command.get_envs().filter_map(|(name, value)| {
-        Some(format!("{}={}", name.to_string_lossy(), quoted(value?)))
-    });
+    let set = command
+        .get_envs()
+        .filter_map(|(name, value)| Some(format!("{}={}", name.to_string_lossy(), quoted(value?))));
     let program = Path::new(command.get_program());
     let program = program.file_name().unwrap_or(program.as_os_str());
-    let words = std::iter::once(program).chain(command.get_args()).map(quoted);
+    let words = std::iter::once(program)
+        .chain(command.get_args())
+        .map(quoted);
     set.chain(words).collect::<Vec<_>>().join(" ")
 }
 
@@ -65,25 +79,40 @@ mod tests {
     #[test]
     fn a_command_is_shown_as_typed() {
         let mut command = Command::new("/somewhere/bin/cargo");
-        command.args(["doc", "--no-deps"]).env("RUSTDOCFLAGS", "-D warnings");
-        assert_eq!(shown(&command), "RUSTDOCFLAGS='-D warnings' cargo doc --no-deps");
+        command
+            .args(["doc", "--no-deps"])
+            .env("RUSTDOCFLAGS", "-D warnings");
+        assert_eq!(
+            shown(&command),
+            "RUSTDOCFLAGS='-D warnings' cargo doc --no-deps"
+        );
     }
 
     #[test]
     fn a_failing_command_is_named() {
         let said = run(cargo().arg("no-such-command-of-cargo")).unwrap_err();
-        assert!(said.starts_with("`cargo no-such-command-of-cargo` failed: "), "{said}");
+        assert!(
+            said.starts_with("`cargo no-such-command-of-cargo` failed: "),
+            "{said}"
+        );
     }
 
     #[test]
     fn a_missing_program_is_named() {
         let said = run(&mut Command::new("no-such-program-anywhere")).unwrap_err();
-        assert!(said.starts_with("`no-such-program-anywhere` cannot be started: "), "{said}");
+        assert!(
+            said.starts_with("`no-such-program-anywhere` cannot be started: "),
+            "{said}"
+        );
     }
 
     #[test]
     fn output_is_what_it_prints() {
-        assert!(output(cargo().arg("--version")).unwrap().starts_with("cargo "));
+        assert!(
+            output(cargo().arg("--version"))
+                .unwrap()
+                .starts_with("cargo ")
+        );
         let said = output(cargo().arg("no-such-command-of-cargo")).unwrap_err();
         assert!(said.contains("no such command"), "{said}");
     }

@@ -33,10 +33,9 @@ pub fn serve(arguments: &[String]) -> Outcome {
 fn port(arguments: &[String]) -> Result<Option<u16>, String> {
     match arguments {
         [] => Ok(None),
-        [option, port] if option == "--port" => port
-            .parse()
-            .map(Some)
-            .map_err(|_| format!("A port is a number from 0 (any free one) to 65535, not “{port}”.")),
+        [option, port] if option == "--port" => port.parse().map(Some).map_err(|_| {
+            format!("A port is a number from 0 (any free one) to 65535, not “{port}”.")
+        }),
         _ => Err("Expected nothing or `--port NUMBER`.".to_owned()),
     }
 }
@@ -86,7 +85,11 @@ impl Server {
                 })
             })
             .collect();
-        Ok(Self { address, http, workers })
+        Ok(Self {
+            address,
+            http,
+            workers,
+        })
     }
 
     /// Where the page is: `http://127.0.0.1:PORT/`.
@@ -112,8 +115,15 @@ impl Drop for Server {
 
 fn answer(request: Request, dir: &Path) -> io::Result<()> {
     if !matches!(request.method(), Method::Get | Method::Head) {
-        let says = format!("Only GET and HEAD are answered here, not {}.\n", request.method());
-        let response = with(Response::from_string(says).with_status_code(405), "Allow", "GET, HEAD");
+        let says = format!(
+            "Only GET and HEAD are answered here, not {}.\n",
+            request.method()
+        );
+        let response = with(
+            Response::from_string(says).with_status_code(405),
+            "Allow",
+            "GET, HEAD",
+        );
         return request.respond(response);
     }
     let found = file_of(request.url())
@@ -121,7 +131,10 @@ fn answer(request: Request, dir: &Path) -> io::Result<()> {
     let (status, mime, body) = if let Some((mime, body)) = found {
         (200, mime, body)
     } else {
-        let says = format!("Nothing is served at {}; the page is at /.\n", request.url());
+        let says = format!(
+            "Nothing is served at {}; the page is at /.\n",
+            request.url()
+        );
         (404, "text/plain; charset=utf-8", says.into_bytes())
     };
     let response = Response::from_data(body).with_status_code(status);
@@ -253,11 +266,20 @@ mod tests {
     #[test]
     fn the_port_is_a_number() {
         let port = |words: &[&str]| {
-            port(&words.iter().map(|&word| word.to_owned()).collect::<Vec<_>>())
+            port(
+                &words
+                    .iter()
+                    .map(|&word| word.to_owned())
+                    .collect::<Vec<_>>(),
+            )
         };
         assert_eq!(port(&[]), Ok(None));
         assert_eq!(port(&["--port", "9000"]), Ok(Some(9000)));
-        assert!(port(&["--port", "70000"]).unwrap_err().contains("not “70000”"));
+        assert!(
+            port(&["--port", "70000"])
+                .unwrap_err()
+                .contains("not “70000”")
+        );
         assert!(port(&["--port"]).is_err() && port(&["9000"]).is_err());
     }
 
@@ -268,7 +290,9 @@ mod tests {
         let _held = TcpListener::bind((Ipv4Addr::LOCALHOST, USUAL_PORT));
         let server = start_near(dir.path(), None).unwrap();
         assert_ne!(server.address.port(), USUAL_PORT);
-        let said = start_near(dir.path(), Some(server.address.port())).err().unwrap();
+        let said = start_near(dir.path(), Some(server.address.port()))
+            .err()
+            .unwrap();
         assert!(said.contains("`--port NUMBER` takes another"), "{said}");
     }
 
@@ -276,7 +300,11 @@ mod tests {
     fn ask(address: &str, request: &str) -> String {
         let host = address.trim_start_matches("http://").trim_end_matches('/');
         let mut stream = TcpStream::connect(host).unwrap();
-        write!(stream, "{request} HTTP/1.1\r\nHost: {host}\r\nConnection: close\r\n\r\n").unwrap();
+        write!(
+            stream,
+            "{request} HTTP/1.1\r\nHost: {host}\r\nConnection: close\r\n\r\n"
+        )
+        .unwrap();
         let mut answer = Vec::new();
         stream.read_to_end(&mut answer).unwrap();
         String::from_utf8(answer).unwrap()
@@ -295,12 +323,18 @@ mod tests {
 
         let page = ask(&address, "GET /");
         assert!(page.starts_with("HTTP/1.1 200 "), "{page}");
-        assert!(page.contains("Content-Type: text/html; charset=utf-8\r\n"), "{page}");
+        assert!(
+            page.contains("Content-Type: text/html; charset=utf-8\r\n"),
+            "{page}"
+        );
         assert!(page.contains("Cache-Control: no-cache\r\n"), "{page}");
         assert!(page.ends_with("\r\n\r\n<p>the page"), "{page}");
 
         let wasm = ask(&address, "GET /page_bg.wasm?v=1");
-        assert!(wasm.contains("Content-Type: application/wasm\r\n"), "{wasm}");
+        assert!(
+            wasm.contains("Content-Type: application/wasm\r\n"),
+            "{wasm}"
+        );
         assert!(wasm.ends_with("\0asm"), "{wasm}");
 
         let head = ask(&address, "HEAD /");
@@ -308,10 +342,18 @@ mod tests {
         assert!(head.contains("Content-Length: 11\r\n"), "{head}");
         assert!(head.ends_with("\r\n\r\n"), "{head}");
 
-        for outside in ["GET /../secret", "GET /%2e%2e/secret", "GET /missing", "GET /icons"] {
+        for outside in [
+            "GET /../secret",
+            "GET /%2e%2e/secret",
+            "GET /missing",
+            "GET /icons",
+        ] {
             let answer = ask(&address, outside);
             assert!(answer.starts_with("HTTP/1.1 404 "), "{outside}: {answer}");
-            assert!(answer.contains("Nothing is served at /"), "{outside}: {answer}");
+            assert!(
+                answer.contains("Nothing is served at /"),
+                "{outside}: {answer}"
+            );
         }
         let post = ask(&address, "POST /");
         assert!(post.starts_with("HTTP/1.1 405 "), "{post}");
