@@ -102,18 +102,23 @@ impl TubeType {
                 && !(value > 0.0 && value <= most)
             {
                 stop(format!(
-                    "{name} must be above 0 and at most {most} {unit}, but is {value}."
+                    "{name} must be above 0 and at most {most}{unit}, but is {value}."
                 ));
             }
         };
-        above_zero("Outer diameter", entry.outer_mm, 60.0, "mm");
-        above_zero("Wall", entry.wall_mm, 10.0, "mm");
-        above_zero("Volts per metre", entry.volts_per_m, 10_000.0, "V/m");
-        above_zero("Reference current", entry.at_ma, 1_000.0, "mA");
-        above_zero("Volts of an electrode pair", entry.pair_volts, 2_000.0, "V");
+        above_zero("Outer diameter", entry.outer_mm, 60.0, " mm");
+        above_zero("Wall", entry.wall_mm, 10.0, " mm");
+        above_zero("Volts per metre", entry.volts_per_m, 10_000.0, " V/m");
+        above_zero("Reference current", entry.at_ma, 1_000.0, " mA");
+        above_zero(
+            "Volts of an electrode pair",
+            entry.pair_volts,
+            2_000.0,
+            " V",
+        );
         above_zero("Cold factor", entry.cold_factor, 3.0, "");
-        above_zero("Least current", entry.least_ma, 1_000.0, "mA");
-        above_zero("Greatest current", entry.most_ma, 1_000.0, "mA");
+        above_zero("Least current", entry.least_ma, 1_000.0, " mA");
+        above_zero("Greatest current", entry.most_ma, 1_000.0, " mA");
         // Up to here every crossing with a supply's steady branch is stable, so there is only one;
         // published exponents of cold-cathode columns are 0.2 to 0.36.
         if let Some(n) = entry.exponent
@@ -137,7 +142,7 @@ impl TubeType {
             f64::NAN
         });
         let bore_mm = outer_mm - 2.0 * entry.wall_mm.unwrap_or(1.0);
-        if bore_mm <= 0.0 {
+        if outer_mm > 0.0 && bore_mm <= 0.0 {
             stop(format!(
                 "The walls leave no bore: outer diameter {outer_mm} mm."
             ));

@@ -8,3 +8,6 @@ mod circuit; // operating points against ngspice and exact solutions; volts to e
 mod drawing; // strokes of the faces against published lengths; characters without a shape
 mod measure; // reading and showing figures; every sentence of a text that cannot be read
 mod plan; // the splitter against known optima, brute force and random splits
+mod rules; // the shipped rule sets at their limits, clause by clause
+mod supply; // nameplates: what is missing or contradicts itself, and the site
+mod tube; // the default model by hand; entries that are not whole
