@@ -3,6 +3,7 @@
 //! A library besides the program so that the browser journeys can serve the page with the very
 //! server a person uses.
 
+pub mod bench;
 pub mod build;
 pub mod files;
 pub mod paths;

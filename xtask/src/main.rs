@@ -2,7 +2,7 @@
 
 use std::process::ExitCode;
 
-use xtask::{Outcome, build, report, serve};
+use xtask::{Outcome, bench, build, report, serve};
 
 const HELP: &str = "\
 cargo xtask COMMAND
@@ -10,6 +10,7 @@ cargo xtask COMMAND
   build                               compile the page into dist/
   serve [--port N]                    build, then serve the page on this machine
   report JOB [--book BOOK] [--json]   work a job file up, with the demonstration book or another
+  bench                               time the core, weigh the page
 ";
 
 fn main() -> ExitCode {
@@ -22,6 +23,7 @@ fn main() -> ExitCode {
         "build" => no_more(rest).and_then(|()| build::build()),
         "serve" => serve::serve(rest),
         "report" => report::report(rest),
+        "bench" => no_more(rest).and_then(|()| bench::bench()),
         "help" | "--help" | "-h" => {
             print!("{HELP}");
             Ok(())
