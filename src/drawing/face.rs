@@ -6,8 +6,10 @@ use kurbo::{Affine, BezPath, Rect, Shape};
 
 use super::jhf::{self, Glyph};
 
-/// Height of a capital in the units of the face files, and their baseline.
-const CAP_UNITS: f64 = 21.0;
+/// Height of a capital in the units of the face files: shaped at this height, every point of a letter
+/// is a whole number.
+pub const CAP_UNITS: f64 = 21.0;
+/// The baseline in those units.
 const BASELINE_UNITS: f64 = 9.0;
 /// First character of the files.
 const FIRST: u32 = ' ' as u32;

@@ -5,4 +5,4 @@
 mod face;
 mod jhf;
 
-pub use face::{Face, Letter, Shaped, face, faces};
+pub use face::{CAP_UNITS, Face, Letter, Shaped, face, faces};

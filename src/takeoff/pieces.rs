@@ -7,13 +7,13 @@ use kurbo::{Affine, BezPath, ParamCurveArclen, Point, Rect, Shape};
 use super::route::{Route, route};
 use super::{Piece, RowTakeoff, finding};
 use crate::book::Allowances;
-use crate::drawing::{Letter, face};
+use crate::drawing::{CAP_UNITS, Letter, face};
 use crate::job::{Job, Row, StrokesRow, TextRow};
 use crate::measure::{self, Length, LengthUnit};
 use crate::rules::Finding;
 
-/// Accuracy of stroke lengths in millimetres: far below what glass can be bent to.
-const ARC_LENGTH_MM: f64 = 1e-9;
+/// Accuracy of stroke lengths, in millimetres or letter units: far below what glass can be bent to.
+const ARC_LENGTH: f64 = 1e-9;
 /// Clear space between rows, as a share of the taller row's height.
 const ROW_GAP: f64 = 0.35;
 /// Distance between straight strokes drawn under each other, as a share of the longest.
@@ -152,13 +152,27 @@ impl Drawn {
         let lit_mm = strokes
             .iter()
             .flat_map(BezPath::segments)
-            .map(|segment| segment.arclen(ARC_LENGTH_MM))
+            .map(|segment| segment.arclen(ARC_LENGTH))
             .sum();
         Self {
             label,
             lit_mm,
             strokes,
             route,
+        }
+    }
+
+    /// The same drawing so many times as large.
+    fn scaled(&self, by: f64) -> Self {
+        Self {
+            label: self.label.clone(),
+            lit_mm: self.lit_mm * by,
+            strokes: self
+                .strokes
+                .iter()
+                .map(|stroke| Affine::scale(by) * stroke)
+                .collect(),
+            route: self.route.scaled(by),
         }
     }
 
@@ -175,7 +189,7 @@ impl Drawn {
             label: self.label.clone(),
             tube: tube.to_owned(),
             lit: Length::from_mm(self.lit_mm),
-            hidden: Length::from_mm(self.route.jump_mm),
+            hidden: Length::from_mm(self.route.jumped),
             tails: Length::from_mm(2.0 * tail_mm),
             strokes: self.strokes.iter().map(|stroke| place * stroke).collect(),
             jumps: self.route.jumps.iter().map(jump).collect(),
@@ -214,7 +228,10 @@ fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
         findings.push(finding::outside(at, &measure::LETTER_HEIGHT_MM, height_mm));
         return Made::default();
     }
-    let shaped = face.shape(&row.text, height_mm);
+    // Worked out in the units of the face, where every point is a whole number, and scaled at the end:
+    // twice the height is exactly twice the glass.
+    let scale = height_mm / CAP_UNITS;
+    let shaped = face.shape(&row.text, CAP_UNITS);
     if !shaped.missing.is_empty() {
         findings.push(finding::no_shape(at, face, &shaped.missing));
     }
@@ -242,30 +259,18 @@ fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
                 .first()
                 .map_or(Point::ZERO, |stroke| stroke.bounding_box().origin());
             let route = match known.get(&label) {
-                Some((there, route)) => moved(route, here - *there),
+                Some((there, route)) => route.moved(here - *there),
                 None => route(&strokes),
             };
             known
                 .entry(label.clone())
                 .or_insert_with(|| (here, route.clone()));
-            Drawn::new(label, strokes, route)
+            Drawn::new(label, strokes, route).scaled(scale)
         })
         .collect();
     Made {
         pieces,
-        bounds: shaped.bounds,
-    }
-}
-
-fn moved(route: &Route, by: kurbo::Vec2) -> Route {
-    Route {
-        jump_mm: route.jump_mm,
-        jumps: route
-            .jumps
-            .iter()
-            .map(|&(from, to)| (from + by, to + by))
-            .collect(),
-        ends: route.ends.map(|end| end + by),
+        bounds: shaped.bounds.scale_from_origin(scale),
     }
 }
 
@@ -321,7 +326,7 @@ fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
                 format!("{} {}", row.label, number + 1)
             };
             let route = Route {
-                jump_mm: 0.0,
+                jumped: 0.0,
                 jumps: Vec::new(),
                 ends: [from, to],
             };
@@ -358,4 +363,44 @@ fn sane(value: f64, least: f64, most: f64) -> Option<f64> {
 )]
 fn whole(limit: f64) -> usize {
     limit as usize
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// A job of one text row.
+    fn texts(text: &str, height: &str, face: &str, count: i64) -> Job {
+        Job {
+            rows: vec![Row::Text(TextRow {
+                text: text.to_owned(),
+                height: height.to_owned(),
+                face: face.to_owned(),
+                tube: "t".to_owned(),
+                count,
+            })],
+            ..Job::default()
+        }
+    }
+
+    #[test]
+    fn twice_the_height_is_twice_the_glass() {
+        for text in ["Mending", "Moth", "the moon holds late hours"] {
+            let per_mm = |height: u32| {
+                let job = texts(text, &format!("{height} mm"), "script", 1);
+                let off = takeoff(&job, &Allowances::default());
+                assert!(!off.pieces.is_empty(), "{text} has pieces");
+                let column: Length = off.pieces.iter().map(Piece::column).sum();
+                column.mm() / f64::from(height)
+            };
+            let at_100 = per_mm(100);
+            for height in (100..=400).step_by(10).chain([127, 333]) {
+                let here = per_mm(height);
+                assert!(
+                    (here / at_100 - 1.0).abs() < 1e-9,
+                    "{text} at {height} mm: {here} for each mm of height, {at_100} at 100 mm"
+                );
+            }
+        }
+    }
 }
