@@ -321,15 +321,10 @@ pub(crate) fn without_mark(text: &str) -> &str {
 
 /// Whether a text is JSON at all, of the wanted kind and of a version this program knows.
 pub(crate) fn check_kind(text: &str, kind: &str, version: u32) -> Result<(), String> {
-    #[derive(Deserialize)]
-    struct Head {
-        tubewright: Option<serde_json::Value>,
-        version: Option<serde_json::Value>,
-    }
-    let head: Head = serde_json::from_str(text).map_err(|error| {
+    let head: serde_json::Value = serde_json::from_str(text).map_err(|error| {
         format!("This is not a {kind} file: expected JSON written by this program, but {error}.")
     })?;
-    match head.tubewright.as_ref().and_then(serde_json::Value::as_str) {
+    match head.get("tubewright").and_then(serde_json::Value::as_str) {
         Some(found) if found == kind => {}
         Some(found) => {
             return Err(format!(
@@ -343,14 +338,15 @@ pub(crate) fn check_kind(text: &str, kind: &str, version: u32) -> Result<(), Str
             ));
         }
     }
-    match head.version.as_ref().and_then(serde_json::Value::as_u64) {
+    match head.get("version").and_then(serde_json::Value::as_u64) {
         Some(found) if found == u64::from(version) => Ok(()),
         Some(found) if found > u64::from(version) => Err(format!(
             "This {kind} file has version {found}; this program knows versions up to {version}. \
              Open it with a newer program."
         )),
         _ => Err(format!(
-            "This {kind} file says no version that was ever written (1 to {version})."
+            "This {kind} file names no version that exists; this program knows versions up to \
+             {version}."
         )),
     }
 }

@@ -4,6 +4,8 @@
 //! names the columns, units in the names. Order is free, columns may be missing, a cell left empty
 //! is a figure not given.
 
+use std::collections::HashSet;
+
 use rust_decimal::Decimal;
 
 use super::{Dampness, Gas, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry};
@@ -14,7 +16,8 @@ use crate::measure::quoted;
 pub struct Sheet<T> {
     /// Lines that could be read.
     pub entries: Vec<T>,
-    /// A sentence for each line, cell or column that could not, with its place.
+    /// A sentence for each line, cell or column that could not, with its place; after the first
+    /// hundred, how many more.
     pub trouble: Vec<String>,
 }
 
@@ -255,6 +258,9 @@ fn read<T: Default>(
     name: fn(&T) -> &String,
 ) -> Result<Sheet<T>, String> {
     let text = decoded(bytes)?;
+    if text.trim().is_empty() {
+        return Err(format!("The file of {what} is empty."));
+    }
     let first = text.lines().next().unwrap_or_default();
     let separator = [';', '\t', ',']
         .into_iter()
@@ -276,20 +282,29 @@ fn read<T: Default>(
         .headers()
         .map_err(|error| format!("The file of {what} cannot be read: {error}."))?
         .clone();
-    let mut trouble = Vec::new();
+    let mut trouble = Trouble::default();
+    let mut taken = HashSet::new();
     let chosen: Vec<Option<&Column<T>>> = headers
         .iter()
         .map(|header| {
             let column = columns
                 .iter()
                 .find(|column| column.name.eq_ignore_ascii_case(header));
-            if column.is_none() {
-                trouble.push(format!(
-                    "Column {} is not known and was left out.",
-                    quoted(header)
-                ));
+            match column {
+                None => {
+                    let says = format!("Column {} is not known and was left out.", quoted(header));
+                    trouble.push(says);
+                    None
+                }
+                Some(column) if !taken.insert(column.name) => {
+                    trouble.push(format!(
+                        "Column {} is there twice: the first is used.",
+                        quoted(header)
+                    ));
+                    None
+                }
+                Some(column) => Some(column),
             }
-            column
         })
         .collect();
     if !chosen.iter().flatten().any(|column| column.name == "name") {
@@ -300,15 +315,17 @@ fn read<T: Default>(
         ));
     }
     let mut entries: Vec<T> = Vec::new();
-    for (number, record) in reader.records().enumerate() {
-        let line = number + 2;
+    let mut names: HashSet<String> = HashSet::new();
+    let mut lines = Lines::of(&text);
+    for record in reader.records() {
         let record = match record {
             Ok(record) => record,
             Err(error) => {
-                trouble.push(format!("Line {line} was left out: {error}."));
+                trouble.push(format!("A line was left out: {error}."));
                 continue;
             }
         };
+        let line = lines.of_byte(record.position().map_or(0, csv::Position::byte));
         if record.iter().all(str::is_empty) {
             continue;
         }
@@ -344,9 +361,15 @@ fn read<T: Default>(
         if !fine {
             continue;
         }
-        if name(&entry).is_empty() {
+        let characters = name(&entry).chars().count();
+        if characters == 0 {
             trouble.push(format!("Line {line} was left out: it has no name."));
-        } else if entries.iter().any(|known| name(known) == name(&entry)) {
+        } else if characters > MOST_NAME_CHARACTERS {
+            trouble.push(format!(
+                "Line {line} was left out: its name has {characters} characters, more than \
+                 {MOST_NAME_CHARACTERS}; a quote may be missing."
+            ));
+        } else if !names.insert(name(&entry).clone()) {
             trouble.push(format!(
                 "Line {line} was left out: the name {} stands further up already.",
                 quoted(name(&entry))
@@ -355,12 +378,75 @@ fn read<T: Default>(
             entries.push(entry);
         }
     }
+    let trouble = trouble.told();
     if entries.is_empty() && trouble.is_empty() {
         return Err(format!(
             "The file of {what} has a first line but nothing under it."
         ));
     }
     Ok(Sheet { entries, trouble })
+}
+
+/// A name is to be read in a list; a longer one is a cell that was never closed.
+const MOST_NAME_CHARACTERS: usize = 200;
+
+/// Sentences of what could not be read: the first of them, and how many more there were. A file of
+/// another kind would give one for each of its lines.
+#[derive(Default)]
+struct Trouble {
+    told: Vec<String>,
+    more: usize,
+}
+
+impl Trouble {
+    const MOST_TOLD: usize = 100;
+
+    fn push(&mut self, sentence: String) {
+        if self.told.len() < Self::MOST_TOLD {
+            self.told.push(sentence);
+        } else {
+            self.more += 1;
+        }
+    }
+
+    fn told(mut self) -> Vec<String> {
+        if self.more > 0 {
+            self.told
+                .push(format!("And {} more like these.", self.more));
+        }
+        self.told
+    }
+}
+
+/// Numbers of lines as an editor counts them: the csv reader passes over empty lines, and a cell in
+/// quotes may go on over several.
+struct Lines<'t> {
+    text: &'t [u8],
+    byte: usize,
+    line: usize,
+}
+
+impl<'t> Lines<'t> {
+    fn of(text: &'t str) -> Self {
+        Self {
+            text: text.as_bytes(),
+            byte: 0,
+            line: 1,
+        }
+    }
+
+    /// The line of the first character at or after a byte that does not end a line. Bytes must be
+    /// asked for in order.
+    fn of_byte(&mut self, byte: u64) -> usize {
+        let byte = usize::try_from(byte).unwrap_or(usize::MAX);
+        while let Some(here) = self.text.get(self.byte)
+            && (self.byte < byte || matches!(here, b'\r' | b'\n'))
+        {
+            self.line += usize::from(*here == b'\n');
+            self.byte += 1;
+        }
+        self.line
+    }
 }
 
 /// Text of a file: UTF-8 with or without a mark, else Latin-1.
