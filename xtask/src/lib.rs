@@ -5,11 +5,13 @@
 
 pub mod bench;
 pub mod build;
+pub mod chromium;
 pub mod files;
 pub mod paths;
 pub mod report;
 pub mod run;
 pub mod serve;
+pub mod test;
 
 #[cfg(test)]
 mod scratch;

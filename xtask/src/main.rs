@@ -2,13 +2,14 @@
 
 use std::process::ExitCode;
 
-use xtask::{Outcome, bench, build, report, serve};
+use xtask::{Outcome, bench, build, report, serve, test};
 
 const HELP: &str = "\
 cargo xtask COMMAND
 
   build                               compile the page into dist/
   serve [--port N]                    build, then serve the page on this machine
+  test [--only STEP]                  check everything, or one step: format, lint, native, docs, build, page, browser
   report JOB [--book BOOK] [--json]   work a job file up, with the demonstration book or another
   bench                               time the core, weigh the page
 ";
@@ -22,6 +23,7 @@ fn main() -> ExitCode {
     let outcome = match command.as_str() {
         "build" => no_more(rest).and_then(|()| build::build()),
         "serve" => serve::serve(rest),
+        "test" => test::test(rest),
         "report" => report::report(rest),
         "bench" => no_more(rest).and_then(|()| bench::bench()),
         "help" | "--help" | "-h" => {
