@@ -1,2 +1,5 @@
-//! t
-fn main(){}
+//! Starts the page.
+
+fn main() {
+    tubewright_www::start();
+}

@@ -1,0 +1,248 @@
+//! The desk: what is open, and everything the places read. One for the page, found in the context.
+
+use std::sync::Arc;
+
+use leptos::prelude::*;
+use tubewright::measure::{LengthUnit, Units};
+use tubewright::{Book, Job, Workup, workup};
+
+use crate::document::Document;
+use crate::keep::{Keeper, Standing};
+
+/// The places of the page, in the order of work.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Where {
+    /// Rows and picture.
+    Sign,
+    /// Pieces of glass.
+    Glass,
+    /// Strings and supplies.
+    Circuits,
+    /// The sum.
+    Price,
+    /// Supplies, tubes, rules, rates.
+    ShopBook,
+}
+
+impl Where {
+    /// All of them.
+    pub const ALL: [Self; 5] =
+        [Self::Sign, Self::Glass, Self::Circuits, Self::Price, Self::ShopBook];
+
+    /// Its name on the page.
+    pub const fn name(self) -> &'static str {
+        match self {
+            Self::Sign => "Sign",
+            Self::Glass => "Glass",
+            Self::Circuits => "Circuits",
+            Self::Price => "Price",
+            Self::ShopBook => "Shop book",
+        }
+    }
+
+    /// Its part of the address, with the mark before it.
+    pub const fn address(self) -> &'static str {
+        match self {
+            Self::Sign => "#sign",
+            Self::Glass => "#glass",
+            Self::Circuits => "#circuits",
+            Self::Price => "#price",
+            Self::ShopBook => "#shop-book",
+        }
+    }
+
+    /// The place of an address; the sign for any other.
+    pub fn of(address: &str) -> Self {
+        Self::ALL.into_iter().find(|place| place.address() == address).unwrap_or(Self::Sign)
+    }
+}
+
+/// Something to tell the person at the page, until they put it away.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Message {
+    /// Whether something did not work.
+    pub trouble: bool,
+    /// Sentences, most important first.
+    pub says: Vec<String>,
+}
+
+/// The results shared between the places.
+#[derive(Debug, Clone)]
+pub struct Results(Arc<Workup>);
+
+impl core::ops::Deref for Results {
+    type Target = Workup;
+    fn deref(&self) -> &Workup {
+        &self.0
+    }
+}
+
+impl PartialEq for Results {
+    /// Each work-up is new: whatever reads it compares its own part.
+    fn eq(&self, other: &Self) -> bool {
+        Arc::ptr_eq(&self.0, &other.0)
+    }
+}
+
+/// What is open and what is known of it.
+#[derive(Debug, Clone, Copy)]
+pub struct Desk {
+    document: RwSignal<Document>,
+    keeper: StoredValue<Option<Keeper>, LocalStorage>,
+    /// The open job.
+    pub job: Memo<Job>,
+    /// The open book.
+    pub book: Memo<Book>,
+    /// Everything worked out of both.
+    pub results: Memo<Results>,
+    /// What lengths are shown in, and what a bare number means.
+    pub units: RwSignal<Units>,
+    /// The place in sight.
+    pub place: RwSignal<Where>,
+    /// The piece marked on the picture.
+    pub piece: RwSignal<Option<usize>>,
+    /// The circuit opened on its place.
+    pub circuit: RwSignal<usize>,
+    /// How keeping stands.
+    pub standing: RwSignal<Standing>,
+    /// What to tell.
+    pub message: RwSignal<Option<Message>>,
+}
+
+impl Desk {
+    /// A desk with a job and a book on it.
+    pub fn new(document: Document) -> Self {
+        let document = RwSignal::new(document);
+        let job = Memo::new(move |_| document.with(|document| document.job().clone()));
+        let book = Memo::new(move |_| document.with(|document| document.book().clone()));
+        let results = Memo::new(move |_| {
+            job.with(|job| book.with(|book| Results(Arc::new(workup(job, book)))))
+        });
+        Self {
+            document,
+            keeper: StoredValue::new_local(None),
+            job,
+            book,
+            results,
+            units: RwSignal::new(Units::Metric),
+            place: RwSignal::new(Where::Sign),
+            piece: RwSignal::new(None),
+            circuit: RwSignal::new(0),
+            standing: RwSignal::new(Standing::Starting),
+            message: RwSignal::new(None),
+        }
+    }
+
+    /// The unit a bare number takes in a length field.
+    pub fn bare(&self) -> LengthUnit {
+        match self.units.get() {
+            Units::Metric => LengthUnit::Millimetres,
+            Units::FeetInches => LengthUnit::Inches,
+        }
+    }
+
+    /// Changes the job; see [`Document::edit_job`].
+    pub fn edit_job(&self, field: &str, says: &str, edit: impl FnOnce(&mut Job)) {
+        self.change(|document| document.edit_job(field, says, edit));
+    }
+
+    /// Changes the book; see [`Document::edit_book`].
+    pub fn edit_book(&self, field: &str, says: &str, edit: impl FnOnce(&mut Book)) {
+        self.change(|document| document.edit_book(field, says, edit));
+    }
+
+    /// The field was left.
+    pub fn settle(&self) {
+        self.document.update_untracked(Document::settle);
+    }
+
+    /// Takes the last step back.
+    pub fn undo(&self) {
+        self.change(Document::undo);
+    }
+
+    /// Does an undone step again.
+    pub fn redo(&self) {
+        self.change(Document::redo);
+    }
+
+    /// What undo would take back.
+    pub fn undoes(&self) -> Option<String> {
+        self.document.with(|document| document.undoes().map(str::to_owned))
+    }
+
+    /// What redo would do again.
+    pub fn redoes(&self) -> Option<String> {
+        self.document.with(|document| document.redoes().map(str::to_owned))
+    }
+
+    /// Texts that were kept and cannot be read.
+    pub fn set_aside(&self) -> Vec<(String, String)> {
+        self.document.with(Document::set_aside)
+    }
+
+    /// Tells something that went well.
+    pub fn tell(&self, says: impl Into<String>) {
+        self.message.set(Some(Message { trouble: false, says: vec![says.into()] }));
+    }
+
+    /// Tells of trouble.
+    pub fn trouble(&self, says: Vec<String>) {
+        self.message.set(Some(Message { trouble: true, says }));
+    }
+
+    /// Puts what was kept on the desk and keeps every edit from now on; called once, at the start.
+    /// Until the store has answered, [`Standing::Starting`], the page shows nothing to edit: an
+    /// edit made before could only be lost or write over what was kept.
+    pub fn start_keeping(self) {
+        leptos::task::spawn_local(async move {
+            match Keeper::open().await {
+                Ok((keeper, kept)) => {
+                    let now = self.document.with_untracked(Clone::clone);
+                    let fresh = kept.is_empty();
+                    let (document, trouble) =
+                        Document::restore(&kept, now.job().clone(), now.book().clone());
+                    self.keeper.set_value(Some(keeper));
+                    self.standing.set(Standing::Kept);
+                    self.document.set(document);
+                    if fresh {
+                        self.send(now.all_writes());
+                    } else {
+                        self.change(|_| ());
+                    }
+                    if !trouble.is_empty() {
+                        self.trouble(trouble);
+                    }
+                    crate::keep::ask_to_stay();
+                }
+                Err(why) => self.standing.set(Standing::NotKept(why)),
+            }
+        });
+    }
+
+    fn change(&self, change: impl FnOnce(&mut Document)) {
+        let mut writes = Vec::new();
+        self.document.update(|document| {
+            change(document);
+            writes = document.take_writes();
+        });
+        self.send(writes);
+    }
+
+    fn send(&self, writes: Vec<crate::document::Write>) {
+        if writes.is_empty() {
+            return;
+        }
+        let standing = self.standing;
+        self.keeper.with_value(|keeper| {
+            if let Some(keeper) = keeper {
+                keeper.store(writes, move |now| standing.set(now));
+            }
+        });
+    }
+}
+
+/// The desk of the page.
+pub fn desk() -> Desk {
+    expect_context::<Desk>()
+}

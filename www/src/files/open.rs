@@ -1,0 +1,104 @@
+//! Taking a file from the browser and putting what it holds on the desk.
+
+use leptos::prelude::*;
+use wasm_bindgen::JsCast;
+use wasm_bindgen_futures::JsFuture;
+
+use super::read::{Opened, merge, read};
+use crate::desk::{Desk, Where};
+
+/// The file of an input element was chosen.
+pub fn choose(desk: Desk, event: &web_sys::Event) {
+    let Some(input) = event.target().and_then(|to| to.dyn_into::<web_sys::HtmlInputElement>().ok())
+    else {
+        return;
+    };
+    if let Some(file) = input.files().and_then(|files| files.get(0)) {
+        take(desk, file);
+    }
+    // So that choosing the same file again is heard too.
+    input.set_value("");
+}
+
+/// Files were dropped on the page; the first is opened.
+pub fn dropped(desk: Desk, event: &web_sys::DragEvent) {
+    event.prevent_default();
+    let files = event.data_transfer().and_then(|carried| carried.files());
+    if let Some(file) = files.and_then(|files| files.get(0)) {
+        take(desk, file);
+    }
+}
+
+fn take(desk: Desk, file: web_sys::File) {
+    let name = file.name();
+    leptos::task::spawn_local(async move {
+        match JsFuture::from(file.array_buffer()).await {
+            Ok(buffer) => {
+                let bytes = js_sys::Uint8Array::new(&buffer).to_vec();
+                match read(&name, &bytes) {
+                    Ok(opened) => put(desk, opened),
+                    Err(why) => desk.trouble(vec![why]),
+                }
+            }
+            Err(_) => desk.trouble(vec![format!(
+                "{} was not opened: the browser could not read it.",
+                tubewright::measure::quoted(&name)
+            )]),
+        }
+    });
+}
+
+/// Puts what a file held on the desk, as one step that can be undone.
+pub fn put(desk: Desk, opened: Opened) {
+    desk.settle();
+    match opened {
+        Opened::Job(job) => {
+            let says = format!("Opened the job “{}”. Undo brings the one before back.", job.name);
+            desk.edit_job("open", "Open a job", |open| *open = *job);
+            desk.piece.set(None);
+            desk.circuit.set(0);
+            desk.tell(says);
+        }
+        Opened::Book(book) => {
+            let says = format!(
+                "Opened the shop book “{}”: {} supplies, {} tube types. Undo brings the one before \
+                 back.",
+                book.name,
+                book.supplies.len(),
+                book.tubes.len()
+            );
+            desk.edit_book("open", "Open a shop book", |open| *open = *book);
+            desk.place.set(Where::ShopBook);
+            desk.tell(says);
+        }
+        Opened::Supplies(entries, trouble) => {
+            let mut counted = (0, 0);
+            desk.edit_book("open", "Take in supplies", |book| {
+                counted = merge(&mut book.supplies, entries, |entry| &entry.name);
+            });
+            told(desk, "supplies", counted, trouble);
+        }
+        Opened::Tubes(entries, trouble) => {
+            let mut counted = (0, 0);
+            desk.edit_book("open", "Take in tube types", |book| {
+                counted = merge(&mut book.tubes, entries, |entry| &entry.name);
+            });
+            told(desk, "tube types", counted, trouble);
+        }
+    }
+    desk.settle();
+}
+
+fn told(desk: Desk, what: &str, (replaced, added): (usize, usize), mut trouble: Vec<String>) {
+    desk.place.set(Where::ShopBook);
+    let says = format!(
+        "Into the shop book: {added} {what} added, {replaced} replaced, none removed. Undo takes it \
+         back."
+    );
+    if trouble.is_empty() {
+        desk.tell(says);
+    } else {
+        trouble.insert(0, says);
+        desk.trouble(trouble);
+    }
+}

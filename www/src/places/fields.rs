@@ -1,0 +1,245 @@
+//! Fields: a caption, a control, and a sentence where what was typed cannot be taken.
+
+use leptos::prelude::*;
+
+use crate::desk::desk;
+
+/// Whether the field takes what was typed, or why not.
+pub(super) type Taken = Result<(), String>;
+
+/// A line of text. What is typed stays in sight even where it cannot be taken.
+#[component]
+pub(super) fn Field(
+    /// What it is.
+    #[prop(into)]
+    label: String,
+    /// What is there now.
+    #[prop(into)]
+    value: Signal<String>,
+    /// Takes what was typed.
+    #[prop(into)]
+    commit: Callback<String, Taken>,
+    /// Whether each key is taken at once; else only when the field is left or Enter is pressed.
+    #[prop(optional)]
+    live: bool,
+    /// An example, shown while the field is empty.
+    #[prop(optional, into)]
+    example: String,
+    /// Whether a number pad is the better keyboard.
+    #[prop(optional)]
+    number: bool,
+    /// A further class of the field.
+    #[prop(optional, into)]
+    class: String,
+) -> impl IntoView {
+    let desk = desk();
+    let wrong = RwSignal::new(None::<String>);
+    // What is typed and not taken, so that a change elsewhere does not wipe it out.
+    let typed = RwSignal::new(None::<String>);
+    let shown = move || typed.get().unwrap_or_else(|| value.get());
+    let take = move |text: String| match commit.run(text.clone()) {
+        Ok(()) => {
+            wrong.set(None);
+            typed.set(None);
+        }
+        Err(why) => {
+            wrong.set(Some(why));
+            typed.set(Some(text));
+        }
+    };
+    view! {
+        <label class=format!("field {class}") class:bad=move || wrong.get().is_some()>
+            <span class="caption">{label}</span>
+            <input
+                type="text"
+                inputmode=if number { "decimal" } else { "text" }
+                autocomplete="off"
+                spellcheck="false"
+                placeholder=example
+                prop:value=shown
+                aria-invalid=move || wrong.get().is_some().to_string()
+                on:input:target=move |event| {
+                    if live {
+                        take(event.target().value());
+                    }
+                }
+                on:change:target=move |event| {
+                    if !live {
+                        take(event.target().value());
+                    }
+                }
+                on:blur=move |_| desk.settle()
+            />
+            {move || wrong.get().map(|why| view! { <span class="wrong" role="alert">{why}</span> })}
+        </label>
+    }
+}
+
+/// A choice from a list.
+#[component]
+pub(super) fn Choice(
+    /// What it is.
+    #[prop(into)]
+    label: String,
+    /// What is chosen now.
+    #[prop(into)]
+    value: Signal<String>,
+    /// What can be chosen: value and words.
+    #[prop(into)]
+    options: Signal<Vec<(String, String)>>,
+    /// Takes a choice.
+    #[prop(into)]
+    commit: Callback<String>,
+    /// A further class of the field.
+    #[prop(optional, into)]
+    class: String,
+) -> impl IntoView {
+    let desk = desk();
+    let listed = Memo::new(move |_| {
+        let (mut list, now) = (options.get(), value.get());
+        // A name the book does not have stays as it is until another is chosen.
+        if !list.iter().any(|(known, _)| *known == now) {
+            let words = if now.is_empty() {
+                "choose…".to_owned()
+            } else {
+                format!("{now} (not in the shop book)")
+            };
+            list.insert(0, (now, words));
+        }
+        list
+    });
+    let items = move || {
+        listed
+            .get()
+            .into_iter()
+            .map(|(name, words)| {
+                let chosen = name.clone();
+                view! {
+                    <option value=name prop:selected=move || value.get() == chosen>
+                        {words}
+                    </option>
+                }
+            })
+            .collect::<Vec<_>>()
+    };
+    view! {
+        <label class=format!("field {class}")>
+            <span class="caption">{label}</span>
+            <select
+                on:change:target=move |event| {
+                    commit.run(event.target().value());
+                    desk.settle();
+                }
+            >
+                {items}
+            </select>
+        </label>
+    }
+}
+
+/// Yes or no.
+#[component]
+pub(super) fn Tick(
+    /// What it is.
+    #[prop(into)]
+    label: String,
+    /// Whether it is so.
+    #[prop(into)]
+    value: Signal<bool>,
+    /// Takes a change.
+    #[prop(into)]
+    commit: Callback<bool>,
+) -> impl IntoView {
+    let desk = desk();
+    view! {
+        <label class="tick">
+            <input
+                type="checkbox"
+                prop:checked=value
+                on:change:target=move |event| {
+                    commit.run(event.target().checked());
+                    desk.settle();
+                }
+            />
+            <span>{label}</span>
+        </label>
+    }
+}
+
+/// A large figure with its caption.
+#[component]
+pub(super) fn Figure(
+    /// The figure with its unit.
+    #[prop(into)]
+    figure: String,
+    /// What it is.
+    #[prop(into)]
+    caption: String,
+) -> impl IntoView {
+    view! {
+        <div class="figure">
+            <b>{figure}</b>
+            <span class="caption">{caption}</span>
+        </div>
+    }
+}
+
+/// Reads an optional figure: empty is "not given", a decimal comma is taken.
+pub(super) fn optional_number(text: &str) -> Result<Option<f64>, String> {
+    let text = text.trim();
+    if text.is_empty() {
+        return Ok(None);
+    }
+    match text.replace(',', ".").parse::<f64>() {
+        Ok(figure) if figure.is_finite() => Ok(Some(figure)),
+        _ => Err(format!(
+            "Expected a number such as 12.5, but found {}.",
+            tubewright::measure::quoted(text)
+        )),
+    }
+}
+
+/// Reads a figure that must be there, from 0 on.
+pub(super) fn number(text: &str) -> Result<f64, String> {
+    match optional_number(text)? {
+        Some(figure) if figure >= 0.0 => Ok(figure),
+        Some(figure) => Err(format!("Expected 0 or more, but found {figure}.")),
+        None => Err("Expected a number such as 12.5, but the field is empty.".to_owned()),
+    }
+}
+
+/// Reads an amount of money, from 0 on.
+pub(super) fn money(text: &str) -> Result<rust_decimal::Decimal, String> {
+    let text = text.trim();
+    text.replace(',', ".")
+        .parse::<rust_decimal::Decimal>()
+        .ok()
+        .filter(|amount| !amount.is_sign_negative())
+        .ok_or_else(|| {
+            format!(
+                "Expected an amount such as 12.50, but found {}.",
+                tubewright::measure::quoted(text)
+            )
+        })
+}
+
+/// A figure as it is put into a field.
+pub(super) fn typed(figure: Option<f64>) -> String {
+    figure.map_or_else(String::new, |figure| figure.to_string())
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn figures_are_read_or_explained() {
+        assert_eq!(optional_number("  "), Ok(None), "empty is not given");
+        assert_eq!(optional_number("7,5"), Ok(Some(7.5)), "decimal comma");
+        assert!(optional_number("NaN").is_err(), "not a number");
+        assert!(optional_number("1e999").is_err(), "beyond all numbers");
+        assert!(number("-3").is_err_and(|why| why.contains("0 or more")), "negative");
+        assert!(money("12.345.6").is_err(), "two points");
+        assert_eq!(money("12,50").map(|m| m.to_string()), Ok("12.50".to_owned()), "kept exact");
+    }
+}

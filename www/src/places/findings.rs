@@ -1,0 +1,98 @@
+//! Findings as they are listed everywhere.
+
+use leptos::prelude::*;
+use tubewright::rules::{Finding, Grade, Place};
+
+use crate::desk::{Desk, Where, desk};
+
+/// A grade as a word on its colour; without one, it fits.
+pub(super) fn chip(grade: Option<Grade>) -> impl IntoView {
+    let (class, word) = match grade {
+        Some(Grade::Stop) => ("stop", "stop"),
+        Some(Grade::Look) => ("look", "look"),
+        Some(Grade::Note) | None => ("fits", "fits"),
+    };
+    view! { <span class=format!("chip {class}")>{word}</span> }
+}
+
+/// One finding: its grade as a word, the sentence, where the limit comes from.
+pub(super) fn line(finding: &Finding) -> impl IntoView + use<> {
+    let grade = finding.grade.word();
+    let source = if finding.source.standing == finding.source.from
+        || finding.source.standing.starts_with(&finding.source.from)
+    {
+        finding.source.standing.to_owned()
+    } else {
+        format!("{} ({})", finding.source.words(), finding.source.standing)
+    };
+    view! {
+        <p class=format!("finding {grade}")>
+            <b class="grade">{grade}</b>
+            <span>{finding.says.clone()}</span>
+            <span class="source">{source}</span>
+        </p>
+    }
+}
+
+/// Goes to where a finding belongs.
+pub(super) fn go(desk: Desk, place: &Place) {
+    match place {
+        Place::Job | Place::Row(_) => desk.place.set(Where::Sign),
+        Place::Piece(piece) => {
+            desk.piece.set(Some(*piece));
+            desk.place.set(Where::Sign);
+        }
+        Place::Circuit(number) => {
+            desk.circuit.set(*number);
+            desk.place.set(Where::Circuits);
+        }
+        Place::Supply(_) | Place::Tube(_) | Place::Rules(_) => desk.place.set(Where::ShopBook),
+        Place::Price => desk.place.set(Where::Price),
+    }
+}
+
+/// Where a finding belongs, in words.
+fn belongs(desk: Desk, place: &Place) -> String {
+    match place {
+        Place::Job => "the job".to_owned(),
+        Place::Row(row) => format!("row {}", row + 1),
+        Place::Piece(piece) => desk.results.with_untracked(|results| {
+            results
+                .takeoff
+                .pieces
+                .get(*piece)
+                .map_or_else(|| "a piece".to_owned(), |found| format!("piece “{}”", found.label))
+        }),
+        Place::Circuit(number) => format!("circuit {}", number + 1),
+        Place::Supply(name) | Place::Tube(name) | Place::Rules(name) => name.clone(),
+        Place::Price => "the price".to_owned(),
+    }
+}
+
+/// Every finding of the job, gravest first; each leads to its place.
+#[component]
+pub fn FindingsList() -> impl IntoView {
+    let desk = desk();
+    let list = move || {
+        let results = desk.results.get();
+        if results.findings.is_empty() {
+            return view! { <p class="quiet">"Nothing to say: no stop, no look, no note."</p> }.into_any();
+        }
+        results
+            .findings
+            .iter()
+            .map(|finding| {
+                let place = finding.place.clone();
+                let to = format!("Go to {}", belongs(desk, &place));
+                view! {
+                    <li>
+                        {line(finding)}
+                        <button class="link" on:click=move |_| go(desk, &place)>{to}</button>
+                    </li>
+                }
+            })
+            .collect::<Vec<_>>()
+            .into_any()
+    };
+    view! { <ul class="findings">{list}</ul> }
+}

@@ -1,0 +1,21 @@
+//! The places of the page, one file each, and the frame around them.
+
+mod circuits;
+mod fields;
+mod files;
+mod findings;
+mod frame;
+mod glass;
+mod price;
+mod rows;
+mod shop_book;
+mod sign;
+
+pub use circuits::Circuits;
+pub use findings::FindingsList;
+pub use frame::Frame;
+pub use glass::Glass;
+pub use price::Price;
+pub use rows::Rows;
+pub use shop_book::ShopBook;
+pub use sign::Sign;

@@ -1,0 +1,198 @@
+//! Sign: the picture, the rows, and what is true of the whole job.
+
+use leptos::prelude::*;
+use tubewright::Job;
+use tubewright::book::Dampness;
+use tubewright::job::Wish;
+use tubewright::measure::{length_shown, milliamps_shown};
+use tubewright::rules::Place;
+
+use super::Rows;
+use super::fields::{Choice, Field, Figure, Tick, optional_number, typed};
+use super::findings::line;
+use crate::desk::{Where, desk};
+use crate::pictures::SignPicture;
+
+/// The place.
+#[component]
+pub fn Sign() -> impl IntoView {
+    let circuits = RwSignal::new(false);
+    view! {
+        <div class="sign-place">
+            <div class="picture-frame">
+                <SignPicture circuits=circuits focus=Signal::stored(None)/>
+                <div class="picture-tools">
+                    <button
+                        aria-pressed=move || circuits.get().to_string()
+                        class:on=move || circuits.get()
+                        on:click=move |_| circuits.update(|on| *on = !*on)
+                    >
+                        "Circuits"
+                    </button>
+                </div>
+            </div>
+            <div class="sign-columns">
+                <Rows/>
+                <div class="sign-side">
+                    <Marked/>
+                    <JobPanel/>
+                </div>
+            </div>
+        </div>
+    }
+}
+
+/// The piece that was tapped.
+#[component]
+fn Marked() -> impl IntoView {
+    let desk = desk();
+    let panel = move || {
+        let at = desk.piece.get()?;
+        let results = desk.results.get();
+        let piece = results.takeoff.pieces.get(at)?;
+        let units = desk.units.get();
+        let circuit = results.circuit_of(at);
+        let on = circuit.and_then(|number| results.circuits.get(number)).map(|circuit| {
+            let current = match circuit.assessment.heavier().operating {
+                tubewright::circuit::Operating::Runs { current, .. } => milliamps_shown(current),
+                tubewright::circuit::Operating::Overloaded { .. } => "no current".to_owned(),
+            };
+            format!("{}, {current}", circuit.supply.name)
+        });
+        let button = circuit.map(|number| {
+            view! {
+                <button class="link" on:click=move |_| {
+                    desk.circuit.set(number);
+                    desk.place.set(Where::Circuits);
+                }>{format!("Circuit {}", number + 1)}</button>
+            }
+        });
+        Some(view! {
+            <section class="panel" aria-label="Marked piece">
+                <header class="panel-head">
+                    <h2>{piece.label.clone()}<small>{format!(" piece {}, row {}", at + 1, piece.row + 1)}</small></h2>
+                    <button on:click=move |_| desk.piece.set(None)>"Close"</button>
+                </header>
+                <div class="figures">
+                    <Figure figure=length_shown(piece.lit, units) caption="lit glass"/>
+                    <Figure figure=length_shown(piece.hidden, units) caption="painted out"/>
+                    <Figure figure=length_shown(piece.tails, units) caption="tails"/>
+                    <Figure figure=length_shown(piece.glass(), units) caption="glass to bend"/>
+                </div>
+                <p>{piece.tube.clone()}</p>
+                <p>{on.unwrap_or_else(|| "on no circuit".to_owned())}" "{button}</p>
+            </section>
+        })
+    };
+    panel
+}
+
+#[component]
+fn JobPanel() -> impl IntoView {
+    let desk = desk();
+    let text = move |get: fn(&Job) -> &String| Signal::derive(move || desk.job.with(|job| get(job).clone()));
+    let set = move |field: &'static str, set: fn(&mut Job, String)| {
+        Callback::new(move |typed: String| {
+            desk.edit_job(field, field, |job| set(job, typed));
+            Ok(())
+        })
+    };
+    let rule_sets = Signal::derive(move || {
+        desk.book.with(|book| {
+            let mut sets = vec![(String::new(), "none".to_owned())];
+            sets.extend(book.rule_sets.iter().map(|set| (set.name.clone(), set.name.clone())));
+            sets
+        })
+    });
+    let said = move || {
+        desk.results.with(|results| {
+            results
+                .findings
+                .iter()
+                .filter(|finding| {
+                    matches!(finding.place, Place::Job | Place::Rules(_) | Place::Tube(_))
+                })
+                .map(line)
+                .collect::<Vec<_>>()
+        })
+    };
+    view! {
+        <section class="panel job" aria-label="This job">
+            <h2>"This job"</h2>
+            <Field label="Name" live=true value=text(|job| &job.name) commit=set("Name", |job, typed| job.name = typed)/>
+            <Field label="Customer" live=true value=text(|job| &job.customer) commit=set("Customer", |job, typed| job.customer = typed)/>
+            <Field label="Note" live=true value=text(|job| &job.note) commit=set("Note", |job, typed| job.note = typed)/>
+            <Choice
+                label="Rules it is held against"
+                value=text(|job| &job.rules)
+                options=rule_sets
+                commit=move |name: String| desk.edit_job("rules", "Rules", |job| job.rules = name)
+            />
+            <Choice
+                label="The plan strives for"
+                value=Signal::derive(move || match desk.job.with(|job| job.wish) {
+                    Wish::FewestSupplies => "fewest".to_owned(),
+                    Wish::LowestPrice => "price".to_owned(),
+                })
+                options=Signal::stored(vec![
+                    ("fewest".to_owned(), "fewest supplies, then the smallest".to_owned()),
+                    ("price".to_owned(), "lowest price of supplies".to_owned()),
+                ])
+                commit=move |wish: String| desk.edit_job("wish", "What the plan strives for", |job| {
+                    job.wish = if wish == "price" { Wish::LowestPrice } else { Wish::FewestSupplies };
+                })
+            />
+            <Field
+                label="Mains volts at the sign"
+                number=true
+                example="not checked"
+                value=Signal::derive(move || typed(desk.job.with(|job| job.site.mains_volts)))
+                commit=move |typed: String| {
+                    let volts = optional_number(&typed)?;
+                    desk.edit_job("mains", "Mains volts", |job| job.site.mains_volts = volts);
+                    Ok(())
+                }
+            />
+            <Choice
+                label="Where the supplies stand"
+                value=Signal::derive(move || damp_word(desk.job.with(|job| job.site.place)).to_owned())
+                options=Signal::stored(damp_options())
+                commit=move |word: String| desk.edit_job("place", "Where the supplies stand", |job| {
+                    job.site.place = damp(&word);
+                })
+            />
+            <Tick
+                label="Outdoors below 0 °C at times"
+                value=Signal::derive(move || desk.job.with(|job| job.site.cold))
+                commit=move |cold: bool| desk.edit_job("cold", "Cold", |job| job.site.cold = cold)
+            />
+            {said}
+        </section>
+    }
+}
+
+/// The word of a dampness.
+pub(super) const fn damp_word(place: Dampness) -> &'static str {
+    match place {
+        Dampness::Dry => "dry",
+        Dampness::Damp => "damp",
+        Dampness::Wet => "wet",
+    }
+}
+
+/// The dampness of a word; dry for any other.
+pub(super) fn damp(word: &str) -> Dampness {
+    match word {
+        "wet" => Dampness::Wet,
+        "damp" => Dampness::Damp,
+        _ => Dampness::Dry,
+    }
+}
+
+/// All of them, to choose from.
+pub(super) fn damp_options() -> Vec<(String, String)> {
+    [("dry", "dry, indoors"), ("damp", "damp, sheltered"), ("wet", "wet, in the rain")]
+        .into_iter()
+        .map(|(value, words)| (value.to_owned(), words.to_owned()))
+        .collect()
+}
