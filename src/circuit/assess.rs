@@ -212,29 +212,34 @@ fn half_findings(
         {
             findings.push(finding::too_little_current(current, *least, tube));
         }
-        findings.extend(finding::strike(half.strike, half.strike_from));
+        findings.extend(finding::strike(half.strike, half.strike_from, rating));
     }
     if half.zone != Zone::Over {
         let low_basis = match (window.basis, *low) {
             (Basis::RatedLoad, Curve::Electronic { rated_volts, .. }) => rated_volts,
             _ => low.no_load().volts(),
         };
-        let fails = match half.at_low_mains {
+        let low_peak = low.no_load() * std::f64::consts::SQRT_2;
+        let low_strike = half.at_low_mains.volts() * loading.strike_factor;
+        let overloaded = match half.at_low_mains {
             Operating::Runs {
                 running,
                 gaps: false,
                 ..
-            } => {
-                window.zone(running.volts() / low_basis) == Zone::Over
-                    || running.volts() * loading.strike_factor
-                        > low.no_load().volts() * std::f64::consts::SQRT_2
-            }
+            } => window.zone(running.volts() / low_basis) == Zone::Over,
             Operating::Runs { .. } | Operating::Overloaded { .. } => true,
         };
-        if fails && rating.kind == SupplyKind::Iron {
+        // An electronic supply is taken to hold its output.
+        if rating.kind != SupplyKind::Iron {
+        } else if overloaded {
             findings.push(finding::low_mains(
                 half.at_low_mains.volts().volts() / low_basis,
                 window,
+                rating,
+            ));
+        } else if low_strike > low_peak {
+            findings.push(finding::no_strike_at_low_mains(
+                low_strike, low_peak, rating,
             ));
         }
     }

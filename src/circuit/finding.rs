@@ -2,7 +2,8 @@
 
 use super::assess::{Half, STRIKE_LOOK};
 use super::load::Operating;
-use super::window::{Basis, Window, Zone};
+use super::window::{Window, Zone};
+use crate::book::OutputEarthing;
 use crate::measure::{Milliamps, Volts, volts_shown};
 use crate::rules::{Finding, Grade, Place, Source};
 use crate::supply::Rating;
@@ -19,17 +20,26 @@ fn source(window: &Window) -> Source {
     }
 }
 
-fn of_basis(window: &Window) -> &'static str {
-    match window.basis {
-        Basis::NoLoad => "of no-load volts",
-        Basis::RatedLoad => "of the rated load volts",
-    }
+/// A figure to so many decimals, or to as many as it takes to tell it from the limit beside it:
+/// "70 %, over 70 %" would not be believed.
+fn beside(value: f64, limit: f64, decimals: usize) -> String {
+    const MOST: usize = 3;
+    (decimals..MOST)
+        .map(|decimals| format!("{value:.decimals$}"))
+        .find(|shown| shown.parse::<f64>().is_ok_and(|shown| shown != limit))
+        .unwrap_or_else(|| format!("{value:.MOST$}"))
+}
+
+/// One string of two, or the only one.
+fn half_of(rating: &Rating) -> bool {
+    rating.earthing == OutputEarthing::MidPointReturn
 }
 
 /// The loading in its window.
 pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Finding> {
     let percent = half.share * 100.0;
-    let basis = of_basis(window);
+    let of_what = window.of_what(rating);
+    let shown = |limit: f64| beside(percent, limit * 100.0, 0);
     let finding = |grade, says: String, limit: f64| {
         Some(found(grade, says, source(window)).with(percent, limit * 100.0, "%"))
     };
@@ -38,8 +48,9 @@ pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Find
         Zone::Light => finding(
             Grade::Look,
             format!(
-                "Underloaded: running volts are {percent:.0} % {basis}, under {:.0} %; the tubes \
-                 and electrodes carry nearly the short-circuit current.",
+                "Underloaded: running volts are {} % {of_what}, under {:.0} %; the tubes and \
+                 electrodes carry nearly the short-circuit current.",
+                shown(window.look_below),
                 window.look_below * 100.0
             ),
             window.look_below,
@@ -47,8 +58,9 @@ pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Find
         Zone::Heavy => finding(
             Grade::Look,
             format!(
-                "Heavily loaded: running volts are {percent:.0} % {basis}, over {:.0} %; it may \
-                 flicker or fail to strike when cold or on low mains.",
+                "Heavily loaded: running volts are {} % {of_what}, over {:.0} %; it may flicker or \
+                 fail to strike when cold or on low mains.",
+                shown(window.look_above),
                 window.look_above * 100.0
             ),
             window.look_above,
@@ -58,10 +70,15 @@ pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Find
                 found(
                     Grade::Stop,
                     format!(
-                        "Overloaded: the string wants {} where {} gives at most {}; there is no \
-                         current at which it runs.",
+                        "Overloaded: the string wants {} where {} gives {} {}; there is no current at \
+                         which it runs.",
                         volts_shown(wanted),
                         rating.name,
+                        if half_of(rating) {
+                            "each of its two strings at most"
+                        } else {
+                            "at most"
+                        },
                         volts_shown(given)
                     ),
                     source(window),
@@ -71,7 +88,7 @@ pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Find
             Operating::Runs { gaps, .. } => finding(
                 Grade::Stop,
                 format!(
-                    "Overloaded: running volts are {percent:.0} % {basis}, at or over {:.0} %{}.",
+                    "Overloaded: running volts are {percent:.0} % {of_what}, at or over {:.0} %{}.",
                     window.stop_from * 100.0,
                     if gaps {
                         "; the current has gaps and the tube flickers"
@@ -89,8 +106,8 @@ pub(super) fn overdriven(current: Milliamps, most: Milliamps, tube: &str) -> Fin
     found(
         Grade::Stop,
         format!(
-            "{:.1} mA is above the {} mA that {tube} stands: more glass on it, or a smaller supply.",
-            current.ma(),
+            "{} mA is above the {} mA that {tube} stands: more glass on it, or a smaller supply.",
+            beside(current.ma(), most.ma(), 1),
             most.ma()
         ),
         Source::entry(),
@@ -102,8 +119,8 @@ pub(super) fn overdriven_at_high_mains(current: Milliamps, most: Milliamps, tube
     found(
         Grade::Look,
         format!(
-            "At 110 % of the input volts the current is {:.1} mA, above the {} mA that {tube} stands.",
-            current.ma(),
+            "At 110 % of the input volts the current is {} mA, above the {} mA that {tube} stands.",
+            beside(current.ma(), most.ma(), 1),
             most.ma()
         ),
         Source::model(),
@@ -115,8 +132,8 @@ pub(super) fn too_little_current(current: Milliamps, least: Milliamps, tube: &st
     found(
         Grade::Look,
         format!(
-            "{:.1} mA is under the {} mA at which {tube} runs steadily.",
-            current.ma(),
+            "{} mA is under the {} mA at which {tube} runs steadily.",
+            beside(current.ma(), least.ma(), 1),
             least.ma()
         ),
         Source::entry(),
@@ -124,7 +141,16 @@ pub(super) fn too_little_current(current: Milliamps, least: Milliamps, tube: &st
     .with(current.ma(), least.ma(), "mA")
 }
 
-pub(super) fn strike(needed: Volts, peak: Volts) -> Option<Finding> {
+/// The peak a string strikes from, in words.
+fn peak_words(rating: &Rating) -> &'static str {
+    if half_of(rating) {
+        "no-load peak of one half"
+    } else {
+        "no-load peak"
+    }
+}
+
+pub(super) fn strike(needed: Volts, peak: Volts, rating: &Rating) -> Option<Finding> {
     let grade = if needed > peak {
         Grade::Stop
     } else if needed > peak * STRIKE_LOOK {
@@ -136,8 +162,9 @@ pub(super) fn strike(needed: Volts, peak: Volts) -> Option<Finding> {
         found(
             grade,
             format!(
-                "Striking needs about {}; the no-load peak is {}.",
+                "Striking needs about {}; the {} is {}.",
                 volts_shown(needed),
+                peak_words(rating),
                 volts_shown(peak)
             ),
             Source::model(),
@@ -146,18 +173,35 @@ pub(super) fn strike(needed: Volts, peak: Volts) -> Option<Finding> {
     )
 }
 
-pub(super) fn low_mains(share: f64, window: &Window) -> Finding {
+pub(super) fn low_mains(share: f64, window: &Window, rating: &Rating) -> Finding {
     found(
         Grade::Look,
         format!(
-            "At 90 % of the input volts it is overloaded ({:.0} % {}): it may go out when the mains \
-             sag.",
+            "At 90 % of the input volts it is overloaded ({:.0} % {} it has then): it may go out \
+             when the mains sag.",
             share * 100.0,
-            of_basis(window)
+            window
+                .of_what(rating)
+                .replacen("of no-load", "of the no-load", 1)
         ),
         Source::model(),
     )
     .with(share * 100.0, window.stop_from * 100.0, "%")
+}
+
+pub(super) fn no_strike_at_low_mains(needed: Volts, peak: Volts, rating: &Rating) -> Finding {
+    found(
+        Grade::Look,
+        format!(
+            "At 90 % of the input volts it may not strike: that needs about {}, and the {} is then \
+             {}.",
+            volts_shown(needed),
+            peak_words(rating),
+            volts_shown(peak)
+        ),
+        Source::model(),
+    )
+    .with(needed.volts(), peak.volts(), "V")
 }
 
 pub(super) fn needs_two_strings() -> Finding {
@@ -187,4 +231,98 @@ pub(super) fn mixed() -> Finding {
             .to_owned(),
         Source::practice(),
     )
+}
+
+#[cfg(test)]
+mod tests {
+    use super::super::{Load, assess};
+    use super::*;
+    use crate::book::{Loading, SupplyEntry};
+
+    fn rating(earthing: OutputEarthing) -> Rating {
+        Rating::read(&SupplyEntry {
+            name: "T".to_owned(),
+            no_load_volts: Some(8_000.0),
+            short_circuit_ma: Some(30.0),
+            earthing,
+            ..SupplyEntry::default()
+        })
+        .expect("a whole plate")
+    }
+
+    /// A string that takes so many volts at any current.
+    fn steady(volts: f64) -> Load {
+        Load {
+            pair_volts: volts,
+            ..Load::new()
+        }
+    }
+
+    fn says(volts: f64, earthing: OutputEarthing, loading: &Loading) -> Vec<String> {
+        let load = steady(volts);
+        let two = [&load, &load];
+        let strings = if earthing == OutputEarthing::MidPointReturn {
+            &two[..]
+        } else {
+            &two[..1]
+        };
+        let mut says: Vec<String> = assess(strings, &rating(earthing), loading)
+            .findings
+            .into_iter()
+            .map(|finding| finding.says)
+            .collect();
+        says.dedup();
+        says
+    }
+
+    #[test]
+    fn shares_say_what_they_are_of() {
+        let loading = Loading::default();
+        // 3 280 V are 82 % of the 4 000 V of a half.
+        let halves = says(3_280.0, OutputEarthing::MidPointReturn, &loading);
+        assert!(
+            halves[0]
+                .starts_with("Overloaded: running volts are 82 % of half the no-load volts, at"),
+            "{halves:?}"
+        );
+        // 5 720 V are 71.5 % of 8 000 V, and 79 % of 7 200 V.
+        let whole = says(5_720.0, OutputEarthing::MidPoint, &loading);
+        let low = "At 90 % of the input volts it is overloaded (79 % of the no-load volts it has \
+                   then): it may go out when the mains sag.";
+        assert!(whole.iter().any(|says| says == low), "{whole:?}");
+        let halves = says(2_860.0, OutputEarthing::MidPointReturn, &loading);
+        assert!(
+            halves
+                .iter()
+                .any(|says| says.contains("(79 % of half the no-load volts it has then)")),
+            "{halves:?}"
+        );
+    }
+
+    #[test]
+    fn a_figure_is_told_from_its_limit() {
+        assert_eq!(beside(71.2, 75.0, 0), "71");
+        assert_eq!(beside(75.2, 75.0, 0), "75.2");
+        assert_eq!(beside(30.04, 30.0, 1), "30.04");
+        assert_eq!(beside(30.000_01, 30.0, 1), "30.000");
+    }
+
+    #[test]
+    fn striking_on_low_mains_is_not_called_overloading() {
+        // 55 % of no-load volts: striking at 2.5 times that takes 11 000 V. The peak is 11 314 V,
+        // and 10 182 V at 90 % of the input volts.
+        let loading = Loading {
+            strike_factor: 2.5,
+            ..Loading::default()
+        };
+        let found = says(4_400.0, OutputEarthing::MidPoint, &loading);
+        assert_eq!(
+            found,
+            [
+                "Striking needs about 11\u{202f}000 V; the no-load peak is 11\u{202f}314 V.",
+                "At 90 % of the input volts it may not strike: that needs about 11\u{202f}000 V, and \
+                 the no-load peak is then 10\u{202f}182 V.",
+            ]
+        );
+    }
 }

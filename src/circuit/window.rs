@@ -1,6 +1,6 @@
 //! The loading window: where on the supply's curve a string should run.
 
-use crate::book::{Loading, SupplyKind};
+use crate::book::{Loading, OutputEarthing, SupplyKind};
 use crate::supply::Rating;
 
 /// What shares of a window are shares of.
@@ -124,6 +124,17 @@ impl Window {
             Zone::UnderTarget
         } else {
             Zone::Light
+        }
+    }
+
+    /// What a percentage of this window is of, in words: "of no-load volts". With a mid-point return
+    /// each string runs on half of the output, and its shares are of that half.
+    pub const fn of_what(&self, rating: &Rating) -> &'static str {
+        match (self.basis, rating.earthing) {
+            (Basis::NoLoad, OutputEarthing::MidPointReturn) => "of half the no-load volts",
+            (Basis::NoLoad, _) => "of no-load volts",
+            (Basis::RatedLoad, OutputEarthing::MidPointReturn) => "of half the rated load volts",
+            (Basis::RatedLoad, _) => "of the rated load volts",
         }
     }
 
