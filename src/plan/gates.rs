@@ -229,10 +229,10 @@ impl Gates {
     /// Whether some pieces fit a supply.
     pub fn fit(&self, task: &Task, pieces: Range<usize>, supply: usize) -> Fit<Fitting> {
         if !two_strings(&task.candidates[supply].rating) {
-            return self.string(&pieces, supply);
+            return self.string(&pieces, supply, self.neon(&pieces));
         }
         if pieces.len() < 2 {
-            return match self.string(&pieces, supply) {
+            return match self.string(&pieces, supply, self.neon(&pieces)) {
                 Fit::TooMuch => Fit::TooMuch,
                 _ => Fit::NotYet,
             };
@@ -241,8 +241,7 @@ impl Gates {
             Some((_, fitting)) => Fit::Fits(fitting),
             // Both halves together over twice a half's limit: one of them always is.
             None => {
-                let neon = usize::from(self.neon[pieces.end] > self.neon[pieces.start]);
-                let over = &self.supplies[supply].loads[neon].over;
+                let over = &self.supplies[supply].loads[self.neon(&pieces)].over;
                 if self.volts(&pieces, over) > 2.0 * over.volts {
                     Fit::TooMuch
                 } else {
@@ -281,12 +280,15 @@ impl Gates {
     /// The best halving: lightest grade, then best balance between the halves.
     fn halves(&self, pieces: &Range<usize>, supply: usize) -> Option<(usize, Fitting)> {
         let middle = &self.supplies[supply].loads[0].middle;
+        // One window for both strings, as `circuit::assess` holds them.
+        let neon = self.neon(pieces);
         (pieces.start + 1..pieces.end)
             .filter_map(|from| {
                 let (first, second) = (pieces.start..from, from..pieces.end);
-                let (Fit::Fits(a), Fit::Fits(b)) =
-                    (self.string(&first, supply), self.string(&second, supply))
-                else {
+                let (Fit::Fits(a), Fit::Fits(b)) = (
+                    self.string(&first, supply, neon),
+                    self.string(&second, supply, neon),
+                ) else {
                     return None;
                 };
                 let uneven = (self.volts(&first, middle) - self.volts(&second, middle)).abs();
@@ -300,9 +302,13 @@ impl Gates {
             .map(|(from, fitting, _)| (from, fitting))
     }
 
-    /// One string.
-    fn string(&self, pieces: &Range<usize>, supply: usize) -> Fit<Fitting> {
-        let neon = usize::from(self.neon[pieces.end] > self.neon[pieces.start]);
+    /// Whether any of some pieces is neon, as the place of its gates.
+    fn neon(&self, pieces: &Range<usize>) -> usize {
+        usize::from(self.neon[pieces.end] > self.neon[pieces.start])
+    }
+
+    /// One string, held against the window with or without neon.
+    fn string(&self, pieces: &Range<usize>, supply: usize, neon: usize) -> Fit<Fitting> {
         let gates = &self.supplies[supply];
         let loads = &gates.loads[neon];
         if self.volts(pieces, &loads.over) >= loads.over.volts {
@@ -353,6 +359,217 @@ impl Gates {
             CurrentGate::Always => false,
             CurrentGate::Never => true,
             CurrentGate::At(gate) => self.volts(pieces, gate) > gate.volts,
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use kurbo::Point;
+    use proptest::prelude::*;
+    use proptest::sample::select;
+
+    use super::super::{Candidate, on};
+    use super::*;
+    use crate::book::{Loading, OutputEarthing, SupplyEntry, TubeEntry};
+    use crate::circuit::Load;
+    use crate::job::Wish;
+    use crate::measure::Length;
+    use crate::rules::Finding;
+    use crate::supply::Rating;
+    use crate::takeoff::Piece;
+    use crate::tube::TubeType;
+
+    fn piece(length_mm: f64) -> Piece {
+        Piece {
+            row: 0,
+            copy: 0,
+            label: String::new(),
+            tube: String::new(),
+            lit: Length::from_mm(length_mm),
+            hidden: Length::ZERO,
+            tails: Length::ZERO,
+            strokes: Vec::new(),
+            jumps: Vec::new(),
+            electrodes: [Point::ZERO; 2],
+        }
+    }
+
+    /// Tube types of both gases, with and without bounds on the current.
+    fn tubes() -> impl Strategy<Value = Vec<TubeType>> {
+        let tube = (
+            select(vec![Gas::Neon, Gas::ArgonMercury]),
+            8.0..20.0_f64,
+            prop::option::of(0.0..0.45_f64),
+            prop::option::of(5.0..30.0_f64),
+            prop::option::of(20.0..60.0_f64),
+        );
+        prop::collection::vec(tube, 1..4).prop_map(|tubes| {
+            let tube = |(at, (gas, outer_mm, exponent, least_ma, most_ma))| {
+                let (least_ma, most_ma): (Option<f64>, Option<f64>) = (least_ma, most_ma);
+                TubeType::read(&TubeEntry {
+                    name: format!("{at}"),
+                    gas,
+                    outer_mm: Some(outer_mm),
+                    exponent,
+                    least_ma: least_ma.map(|least| least.min(most_ma.unwrap_or(least))),
+                    most_ma,
+                    ..TubeEntry::default()
+                })
+                .expect("a whole tube")
+            };
+            tubes.into_iter().enumerate().map(tube).collect()
+        })
+    }
+
+    /// A nameplate whose no-load volts are some times what a string takes.
+    #[derive(Debug)]
+    struct Plate {
+        kind: SupplyKind,
+        earthing: OutputEarthing,
+        times: f64,
+        short_ma: f64,
+        rated_share: f64,
+        load_share: f64,
+        window: Option<(f64, f64)>,
+    }
+
+    impl Plate {
+        fn candidate(&self, takes_volts: f64) -> Candidate {
+            let no_load = (self.times * takes_volts).clamp(200.0, 30_000.0);
+            let electronic = self.kind == SupplyKind::Electronic;
+            let entry = SupplyEntry {
+                kind: self.kind,
+                earthing: self.earthing,
+                no_load_volts: Some(no_load),
+                short_circuit_ma: Some(self.short_ma),
+                rated_ma: electronic.then_some(self.rated_share * self.short_ma),
+                rated_load_volts: electronic.then_some(self.load_share * no_load),
+                least_load_percent: self.window.map(|(least, _)| least),
+                most_load_percent: self.window.map(|(least, more)| least + more),
+                ..SupplyEntry::default()
+            };
+            let rating = Rating::read(&entry).expect("a whole nameplate");
+            Candidate {
+                entry: 0,
+                rating,
+                look: false,
+            }
+        }
+    }
+
+    fn plate() -> impl Strategy<Value = Plate> {
+        use OutputEarthing::{Isolated, MidPoint, MidPointReturn, OneEnd};
+        (
+            select(vec![
+                SupplyKind::Iron,
+                SupplyKind::Iron,
+                SupplyKind::Electronic,
+            ]),
+            select(vec![
+                MidPoint,
+                MidPointReturn,
+                MidPointReturn,
+                OneEnd,
+                Isolated,
+            ]),
+            1.1..3.0_f64,
+            18.0..60.0_f64,
+            (0.4..1.0_f64, 0.4..1.0_f64),
+            prop::option::weighted(0.3, (10.0..60.0_f64, 1.0..40.0_f64)),
+        )
+            .prop_map(
+                |(kind, earthing, times, short_ma, (rated_share, load_share), window)| Plate {
+                    kind,
+                    earthing,
+                    times,
+                    short_ma,
+                    rated_share,
+                    load_share,
+                    window,
+                },
+            )
+    }
+
+    /// The default windows and such a shop may set, neon's far from mercury's.
+    fn loading() -> impl Strategy<Value = Loading> {
+        let own = (
+            0.1..0.3_f64,
+            0.4..0.6_f64,
+            0.5..0.76_f64,
+            0.6..0.76_f64,
+            1.0..2.5_f64,
+        );
+        let own = own.prop_map(
+            |(look_below, neon, mercury, stop_from, strike_factor)| Loading {
+                look_below,
+                target_from: 0.3,
+                neon_target_to: 0.4,
+                neon_look_above: neon,
+                mercury_target_to: 0.5,
+                mercury_look_above: mercury.min(stop_from),
+                stop_from,
+                strike_factor,
+            },
+        );
+        prop_oneof![Just(Loading::default()), own]
+    }
+
+    /// What the full work-up says: notes count as nothing, the best halving counts.
+    fn judged(task: &Task, pieces: &Range<usize>, supply: usize) -> Option<Grade> {
+        let rating = &task.candidates[supply].rating;
+        let grade = |second_from| {
+            let worked = on(task, pieces, second_from, rating);
+            Finding::gravest(&worked.findings).filter(|&grade| grade > Grade::Note)
+        };
+        if two_strings(rating) && pieces.len() > 1 {
+            let halvings = (pieces.start + 1..pieces.end).map(|from| grade(Some(from)));
+            halvings.min().expect("two pieces can be halved")
+        } else {
+            grade(None)
+        }
+    }
+
+    proptest! {
+        #![proptest_config(ProptestConfig::with_cases(1_500))]
+
+        #[test]
+        fn a_gate_says_what_the_full_work_up_says(
+            tubes in tubes(),
+            made_of in prop::collection::vec((0..3_usize, 50.0..3_000.0_f64), 1..6),
+            plate in plate(),
+            loading in loading(),
+            cold in any::<bool>(),
+        ) {
+            let glass: Vec<Piece> = made_of.iter().map(|&(_, length)| piece(length)).collect();
+            let kinds = made_of.iter().map(|&(tube, _)| &tubes[tube % tubes.len()]);
+            let pieces: Vec<(&Piece, &TubeType)> = glass.iter().zip(kinds).collect();
+            let all = Load::of(pieces.iter().copied(), cold);
+            let candidates = [plate.candidate(all.volts(0.7 * plate.short_ma))];
+            let task = Task {
+                pieces: &pieces,
+                candidates: &candidates,
+                loading: &loading,
+                wish: Wish::FewestSupplies,
+                cold,
+            };
+            let gates = Gates::new(&task);
+            let count = pieces.len();
+            for from in 0..count {
+                let mut never = false;
+                for to in from + 1..=count {
+                    let judged = judged(&task, &(from..to), 0);
+                    let fit = gates.fit(&task, from..to, 0);
+                    let gate = match fit {
+                        Fit::Fits(fitting) => fitting.grade,
+                        Fit::NotYet | Fit::TooMuch => Some(Grade::Stop),
+                    };
+                    prop_assert_eq!(gate, judged, "pieces {}..{}", from, to);
+                    // What is too much stays too much with more.
+                    prop_assert!(!never || judged == Some(Grade::Stop), "{}..{} fits after all", from, to);
+                    never |= fit == Fit::TooMuch;
+                }
+            }
         }
     }
 }

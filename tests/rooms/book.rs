@@ -165,9 +165,9 @@ fn trouble_without_end_is_counted_not_told() {
     let sheet = supplies(&format!("name,price\n{}", "T,x\n".repeat(1_000)));
     assert_eq!(sheet.trouble.len(), 101);
     assert_eq!(sheet.trouble[100], "And 900 more like these.");
-    // Half a million names are held against each other at once, not each against all.
-    let many: String = (0..500_000).map(|number| format!("{number}\n")).collect();
-    assert_eq!(supplies(&format!("name\n{many}")).entries.len(), 500_000);
+    // Many names are held against each other at once, not each against all.
+    let many: String = (0..100_000).map(|number| format!("{number}\n")).collect();
+    assert_eq!(supplies(&format!("name\n{many}")).entries.len(), 100_000);
 }
 
 #[test]
