@@ -11,7 +11,7 @@ use crate::job::Job;
 use crate::measure::{Length, quoted};
 use crate::plan::{self, Candidate, Task};
 use crate::quote::{self, GlassPart, Parts, Quote};
-use crate::rules::{Finding, Grade, Place, RuleSet, Source};
+use crate::rules::{EarthWord, Finding, Grade, Place, RuleSet, Source};
 use crate::supply::{self, Rating};
 use crate::takeoff::{Piece, Takeoff, takeoff};
 use crate::tube::TubeType;
@@ -157,6 +157,9 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         loading: &loading,
         wish: job.wish,
         cold: job.site.cold,
+        earth: rules
+            .as_ref()
+            .map_or_else(EarthWord::default, |rules| rules.earth_word),
     };
     let planned = plan::plan(&task);
 

@@ -4,7 +4,7 @@ use super::assess::{Half, STRIKE_LOOK};
 use super::load::Operating;
 use super::window::{Window, Zone};
 use crate::book::OutputEarthing;
-use crate::measure::{Milliamps, Volts, volts_shown};
+use crate::measure::{Milliamps, Volts, told_from, volts_shown};
 use crate::rules::{Finding, Grade, Place, Source};
 use crate::supply::Rating;
 
@@ -20,16 +20,6 @@ fn source(window: &Window) -> Source {
     }
 }
 
-/// A figure to so many decimals, or to as many as it takes to tell it from the limit beside it:
-/// "70 %, over 70 %" would not be believed.
-fn beside(value: f64, limit: f64, decimals: usize) -> String {
-    const MOST: usize = 3;
-    (decimals..MOST)
-        .map(|decimals| format!("{value:.decimals$}"))
-        .find(|shown| shown.parse::<f64>().is_ok_and(|shown| shown != limit))
-        .unwrap_or_else(|| format!("{value:.MOST$}"))
-}
-
 /// One string of two, or the only one.
 fn half_of(rating: &Rating) -> bool {
     rating.earthing == OutputEarthing::MidPointReturn
@@ -39,7 +29,7 @@ fn half_of(rating: &Rating) -> bool {
 pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Finding> {
     let percent = half.share * 100.0;
     let of_what = window.of_what(rating);
-    let shown = |limit: f64| beside(percent, limit * 100.0, 0);
+    let shown = |limit: f64| told_from(percent, limit * 100.0, 0);
     let finding = |grade, says: String, limit: f64| {
         Some(found(grade, says, source(window)).with(percent, limit * 100.0, "%"))
     };
@@ -107,7 +97,7 @@ pub(super) fn overdriven(current: Milliamps, most: Milliamps, tube: &str) -> Fin
         Grade::Stop,
         format!(
             "{} mA is above the {} mA that {tube} stands: more glass on it, or a smaller supply.",
-            beside(current.ma(), most.ma(), 1),
+            told_from(current.ma(), most.ma(), 1),
             most.ma()
         ),
         Source::entry(),
@@ -120,7 +110,7 @@ pub(super) fn overdriven_at_high_mains(current: Milliamps, most: Milliamps, tube
         Grade::Look,
         format!(
             "At 110 % of the input volts the current is {} mA, above the {} mA that {tube} stands.",
-            beside(current.ma(), most.ma(), 1),
+            told_from(current.ma(), most.ma(), 1),
             most.ma()
         ),
         Source::model(),
@@ -133,7 +123,7 @@ pub(super) fn too_little_current(current: Milliamps, least: Milliamps, tube: &st
         Grade::Look,
         format!(
             "{} mA is under the {} mA at which {tube} runs steadily.",
-            beside(current.ma(), least.ma(), 1),
+            told_from(current.ma(), least.ma(), 1),
             least.ma()
         ),
         Source::entry(),
@@ -297,14 +287,6 @@ mod tests {
                 .any(|says| says.contains("(79 % of half the no-load volts it has then)")),
             "{halves:?}"
         );
-    }
-
-    #[test]
-    fn a_figure_is_told_from_its_limit() {
-        assert_eq!(beside(71.2, 75.0, 0), "71");
-        assert_eq!(beside(75.2, 75.0, 0), "75.2");
-        assert_eq!(beside(30.04, 30.0, 1), "30.04");
-        assert_eq!(beside(30.000_01, 30.0, 1), "30.000");
     }
 
     #[test]

@@ -11,4 +11,6 @@ mod show;
 pub use limits::{COUNT, LETTER_HEIGHT_MM, Limit, PIECE_LENGTH_MM, PIECES, ROWS, TEXT_CHARACTERS};
 pub use quantity::{Length, Milliamps, Volts};
 pub use read::{ExactLength, LengthUnit, ReadError, length, milliamps, quoted, volts, with_units};
-pub use show::{Units, glass, grouped, length_exact, length_shown, milliamps_shown, volts_shown};
+pub use show::{
+    Units, glass, grouped, length_exact, length_shown, milliamps_shown, told_from, volts_shown,
+};

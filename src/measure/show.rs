@@ -80,6 +80,16 @@ pub fn milliamps_shown(current: Milliamps) -> String {
     }
 }
 
+/// A figure to so many decimals, or to as many as it takes to tell it from the limit beside it:
+/// "70 %, over 70 %" would not be believed.
+pub fn told_from(value: f64, limit: f64, decimals: usize) -> String {
+    const MOST: usize = 3;
+    (decimals..MOST)
+        .map(|decimals| format!("{value:.decimals$}"))
+        .find(|shown| shown.parse::<f64>().is_ok_and(|shown| shown != limit))
+        .unwrap_or_else(|| format!("{value:.MOST$}"))
+}
+
 #[allow(
     clippy::cast_possible_truncation,
     reason = "rounded and kept inside i64 just before"
@@ -104,4 +114,17 @@ fn feet_inches(length: Length, parts: i64) -> String {
         out += &format!("{inches} ");
     }
     out + &format!("{}/{} in", over / shared, parts / shared)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_figure_is_told_from_its_limit() {
+        assert_eq!(told_from(71.2, 75.0, 0), "71");
+        assert_eq!(told_from(75.2, 75.0, 0), "75.2");
+        assert_eq!(told_from(30.04, 30.0, 1), "30.04");
+        assert_eq!(told_from(30.000_01, 30.0, 1), "30.000");
+    }
 }

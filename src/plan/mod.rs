@@ -13,7 +13,7 @@ use std::ops::Range;
 use crate::book::{Loading, OutputEarthing};
 use crate::circuit::{Assessment, Load, assess};
 use crate::job::Wish;
-use crate::rules::Grade;
+use crate::rules::{EarthWord, Grade};
 use crate::supply::Rating;
 use crate::takeoff::Piece;
 use crate::tube::TubeType;
@@ -46,6 +46,8 @@ pub struct Task<'a> {
     pub wish: Wish,
     /// Whether the site is cold.
     pub cold: bool,
+    /// The rule set's word for earth, for the reasons.
+    pub earth: EarthWord,
 }
 
 /// A circuit of the plan.

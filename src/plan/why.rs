@@ -1,12 +1,17 @@
 //! The reasons: what the next smaller and next larger supply come to, and what is nearest when
 //! nothing fits.
+//!
+//! The next smaller and larger are what a person would reach for: of the same kind, earthing and
+//! current class as the one taken, the next by no-load volts. Only where there is none in that
+//! direction, the next by rated volt-amperes of any sort.
 
+use std::cmp::Ordering;
 use std::ops::Range;
 
 use super::gates::Gates;
 use super::{LeftOver, Task, on};
-use crate::circuit::{Assessment, CONTINUOUS_TO, Operating};
-use crate::measure::{Volts, grouped, volts_shown};
+use crate::circuit::{Assessment, CONTINUOUS_TO, Operating, Zone};
+use crate::measure::{Volts, grouped, told_from, volts_shown};
 use crate::rules::{Finding, Grade};
 use crate::supply::Rating;
 
@@ -28,42 +33,64 @@ pub struct Rejection {
     pub findings: Vec<Finding>,
 }
 
-/// By size: rated volt-amperes, then no-load volts.
-fn size(rating: &Rating) -> (f64, f64) {
-    (rating.rated_va, rating.no_load.volts())
+/// Short-circuit currents up to this share apart are of one class: the tubes for one run on the other.
+const SAME_CLASS: f64 = 0.20;
+
+fn alike(a: &Rating, b: &Rating) -> bool {
+    let (one, other) = (a.short_circuit.ma(), b.short_circuit.ma());
+    a.kind == b.kind && a.earthing == b.earthing && (one - other).abs() <= SAME_CLASS * one
 }
 
-fn by_size(a: &Rating, b: &Rating) -> std::cmp::Ordering {
-    let (a, b) = (size(a), size(b));
-    a.0.total_cmp(&b.0).then(a.1.total_cmp(&b.1))
+/// By no-load volts, then rated volt-amperes.
+fn by_volts(a: &Rating, b: &Rating) -> Ordering {
+    (a.no_load.volts().total_cmp(&b.no_load.volts())).then(a.rated_va.total_cmp(&b.rated_va))
 }
 
-/// The largest supply smaller than the one taken.
+/// By rated volt-amperes, then no-load volts.
+fn by_va(a: &Rating, b: &Rating) -> Ordering {
+    (a.rated_va.total_cmp(&b.rated_va)).then(a.no_load.volts().total_cmp(&b.no_load.volts()))
+}
+
+/// The next supply in a direction.
+fn next(task: &Task, taken: usize, way: Ordering) -> Option<usize> {
+    let here = &task.candidates[taken].rating;
+    let nearest = |alike_only: bool, by: fn(&Rating, &Rating) -> Ordering| {
+        (0..task.candidates.len())
+            .map(|other| (other, &task.candidates[other].rating))
+            .filter(|(_, there)| by(there, here) == way && (!alike_only || alike(here, there)))
+            .min_by(|(_, a), (_, b)| {
+                let nearer = if way.is_lt() { by(b, a) } else { by(a, b) };
+                // Of two the same, the cheaper one; one without a price is never the cheaper.
+                nearer
+                    .then(a.price.is_none().cmp(&b.price.is_none()))
+                    .then(a.price.cmp(&b.price))
+            })
+            .map(|(other, _)| other)
+    };
+    nearest(true, by_volts).or_else(|| nearest(false, by_va))
+}
+
+/// The next supply smaller than the one taken.
 pub(super) fn smaller(
     task: &Task,
     gates: &Gates,
     pieces: &Range<usize>,
     taken: usize,
 ) -> Option<Neighbour> {
-    let size = &task.candidates[taken].rating;
-    let next = (0..task.candidates.len())
-        .filter(|&other| by_size(&task.candidates[other].rating, size).is_lt())
-        .max_by(|&a, &b| by_size(&task.candidates[a].rating, &task.candidates[b].rating))?;
-    Some(neighbour(task, gates, pieces, taken, next))
+    let other = next(task, taken, Ordering::Less)?;
+    Some(neighbour(task, gates, pieces, taken, other, "Fits too"))
 }
 
-/// The smallest supply larger than the one taken.
+/// The next supply larger than the one taken.
 pub(super) fn larger(
     task: &Task,
     gates: &Gates,
     pieces: &Range<usize>,
     taken: usize,
 ) -> Option<Neighbour> {
-    let size = &task.candidates[taken].rating;
-    let next = (0..task.candidates.len())
-        .filter(|&other| by_size(&task.candidates[other].rating, size).is_gt())
-        .min_by(|&a, &b| by_size(&task.candidates[a].rating, &task.candidates[b].rating))?;
-    Some(neighbour(task, gates, pieces, taken, next))
+    let other = next(task, taken, Ordering::Greater)?;
+    let fits = "Fits too, but is larger";
+    Some(neighbour(task, gates, pieces, taken, other, fits))
 }
 
 fn neighbour(
@@ -72,6 +99,7 @@ fn neighbour(
     pieces: &Range<usize>,
     taken: usize,
     other: usize,
+    fits: &str,
 ) -> Neighbour {
     let there = &task.candidates[other];
     let worked = on(
@@ -88,32 +116,53 @@ fn neighbour(
     let says = match grave {
         Some(finding) => finding.says.clone(),
         None if there.look => {
-            "Runs it, but the supply itself needs a look under the rule set.".to_owned()
+            "Would run it, but the supply itself needs a look under the rule set.".to_owned()
         }
         None => {
-            let load = format!(
-                "runs it at {:.0} % of its window's basis",
-                worked.heavier().share * 100.0
-            );
-            let price = match (there.rating.price, task.candidates[taken].rating.price) {
-                (Some(there), Some(here)) if there > here => {
-                    format!("; costs {} more", there - here)
-                }
-                (Some(there), Some(here)) if there < here => {
-                    format!("; costs {} less", here - there)
-                }
-                (Some(_), Some(_)) => "; costs the same".to_owned(),
-                _ => String::new(),
-            };
+            let here = &task.candidates[taken].rating;
             format!(
-                "Larger than needed: {load}, {} to earth{price}.",
-                volts_shown(worked.to_earth_no_load)
+                "{}{}.",
+                runs(task, &worked, &there.rating, fits),
+                costs(&there.rating, here)
             )
         }
     };
     Neighbour {
         candidate: other,
         says,
+    }
+}
+
+/// How a supply would run what nothing speaks against.
+fn runs(task: &Task, worked: &Assessment, rating: &Rating, fits: &str) -> String {
+    let heavier = worked.heavier();
+    let window = &worked.window;
+    let (from, to) = (window.target_from * 100.0, window.target_to * 100.0);
+    let (opening, edge) = match heavier.zone {
+        Zone::Light | Zone::UnderTarget => ("Larger than needed", from),
+        Zone::OverTarget | Zone::Heavy | Zone::Over => ("Runs it over its target", to),
+        Zone::Target => (fits, f64::NAN),
+    };
+    format!(
+        "{opening}: it would run at {} % {} (target {from:.0} to {to:.0} %), {} to {} with no load",
+        told_from(heavier.share * 100.0, edge, 0),
+        window.of_what(rating),
+        volts_shown(worked.to_earth_no_load),
+        task.earth.word(),
+    )
+}
+
+/// What a supply costs beside the one taken.
+fn costs(there: &Rating, here: &Rating) -> String {
+    let more = match (there.price, here.price) {
+        (Some(there), Some(here)) => there.checked_sub(here),
+        _ => None,
+    };
+    match more {
+        Some(more) if more.is_zero() => "; costs the same".to_owned(),
+        Some(more) if more.is_sign_negative() => format!("; costs {} less", more.abs()),
+        Some(more) => format!("; costs {more} more"),
+        None => String::new(),
     }
 }
 
@@ -208,5 +257,150 @@ fn remedy(task: &Task, pieces: &Range<usize>, supply: usize, worked: &Assessment
                 rating.short_circuit.ma()
             )
         }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::book::{Allowances, Loading, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry};
+    use crate::job::{Job, Row, StrokesRow, Wish};
+    use crate::plan::{Candidate, Circuit, plan};
+    use crate::rules::EarthWord;
+    use crate::takeoff::{Piece, takeoff};
+    use crate::tube::TubeType;
+
+    fn supply(name: &str, volts: f64, ma: f64, price: i64) -> SupplyEntry {
+        SupplyEntry {
+            name: name.to_owned(),
+            no_load_volts: Some(volts),
+            short_circuit_ma: Some(ma),
+            price: Some(price.into()),
+            ..SupplyEntry::default()
+        }
+    }
+
+    fn candidates(supplies: &[SupplyEntry]) -> Vec<Candidate> {
+        supplies
+            .iter()
+            .enumerate()
+            .map(|(entry, supply)| Candidate {
+                entry,
+                rating: Rating::read(supply).expect("a whole plate"),
+                look: false,
+            })
+            .collect()
+    }
+
+    /// The one circuit of some lengths of a tube that takes 500 V a metre and 200 V a pair.
+    fn circuit(lengths: &str, candidates: &[Candidate], wish: Wish) -> Circuit {
+        let row = Row::Strokes(StrokesRow {
+            label: "b".to_owned(),
+            strokes: lengths.to_owned(),
+            tube: "t".to_owned(),
+            count: 1,
+        });
+        let job = Job {
+            rows: vec![row],
+            ..Job::default()
+        };
+        let off = takeoff(&job, &Allowances::default());
+        let tube = TubeType::read(&TubeEntry {
+            volts_per_m: Some(500.0),
+            at_ma: Some(25.0),
+            exponent: Some(0.0),
+            pair_volts: Some(200.0),
+            outer_mm: Some(12.0),
+            ..TubeEntry::default()
+        })
+        .expect("a whole tube");
+        let pieces: Vec<(&Piece, &TubeType)> =
+            off.pieces.iter().map(|piece| (piece, &tube)).collect();
+        let loading = Loading::default();
+        let mut found = plan(&Task {
+            pieces: &pieces,
+            candidates,
+            loading: &loading,
+            wish,
+            cold: false,
+            earth: EarthWord::Ground,
+        });
+        assert_eq!(found.circuits.len(), 1, "{found:?}");
+        found.circuits.remove(0)
+    }
+
+    fn named(neighbour: Option<&Neighbour>, candidates: &[Candidate]) -> Option<(String, String)> {
+        neighbour.map(|found| {
+            let name = candidates[found.candidate].rating.name.clone();
+            (name, found.says.replace('\u{202f}', " "))
+        })
+    }
+
+    #[test]
+    fn neighbours_are_of_the_same_sort() {
+        let mut with_return = supply("6.5 kV return", 6_500.0, 30.0, 158);
+        // By volt-amperes it would be the next below the 270 VA of 9 kV.
+        with_return.input_va = Some(240.0);
+        with_return.earthing = OutputEarthing::MidPointReturn;
+        let mut electronic = supply("Electronic 10 kV", 10_000.0, 30.0, 149);
+        electronic.kind = SupplyKind::Electronic;
+        (electronic.rated_ma, electronic.rated_load_volts) = (Some(30.0), Some(9_000.0));
+        let candidates = candidates(&[
+            supply("7.5 kV", 7_500.0, 30.0, 134),
+            with_return,
+            supply("9 kV", 9_000.0, 30.0, 152),
+            electronic,
+            // 300 VA lies between 270 and 450, but 5 kV can never run what needs 9 kV.
+            supply("5 kV 60 mA", 5_000.0, 60.0, 148),
+            supply("15 kV dear", 15_000.0, 30.0, 300),
+            supply("15 kV", 15_000.0, 30.0, 228),
+        ]);
+        // 10 m and two pairs: 5 400 V, 60 % of 9 000 V and 36 % of 15 000 V.
+        let found = circuit("5 m; 5 m", &candidates, Wish::FewestSupplies);
+        assert_eq!(candidates[found.candidate].rating.name, "9 kV");
+        let smaller = named(found.smaller.as_ref(), &candidates).expect("one");
+        assert_eq!(smaller.0, "7.5 kV");
+        let (name, says) = named(found.larger.as_ref(), &candidates).expect("one");
+        assert_eq!(name, "15 kV", "the cheaper one of two alike");
+        assert_eq!(
+            says,
+            "Larger than needed: it would run at 36 % of no-load volts (target 50 to 65 %), 7 500 V \
+             to ground with no load; costs 76 more."
+        );
+    }
+
+    #[test]
+    fn where_none_is_alike_the_nearest_of_any_is_named() {
+        let mut one_end = supply("3 kV one end", 3_000.0, 30.0, 57);
+        one_end.earthing = OutputEarthing::OneEnd;
+        let candidates = candidates(&[one_end, supply("4 kV", 4_000.0, 30.0, 70)]);
+        // 2 400 V: 60 % of 4 000 V, 80 % of 3 000 V.
+        let found = circuit("2200 mm; 1800 mm", &candidates, Wish::FewestSupplies);
+        let (name, _) = named(found.smaller.as_ref(), &candidates).expect("one");
+        assert_eq!(name, "3 kV one end");
+        assert!(found.larger.is_none(), "{:?}", found.larger);
+    }
+
+    #[test]
+    fn a_neighbour_in_its_target_is_said_to_fit() {
+        let candidates = candidates(&[
+            supply("4 kV", 4_000.0, 30.0, 90),
+            supply("4.5 kV", 4_500.0, 30.0, 80),
+        ]);
+        // 2 400 V: 60 % of 4 000 V, 53 % of 4 500 V.
+        let found = circuit("2200 mm; 1800 mm", &candidates, Wish::FewestSupplies);
+        let (_, says) = named(found.larger.as_ref(), &candidates).expect("one");
+        assert_eq!(
+            says,
+            "Fits too, but is larger: it would run at 53 % of no-load volts (target 50 to 65 %), \
+             2 250 V to ground with no load; costs 10 less."
+        );
+        let found = circuit("2200 mm; 1800 mm", &candidates, Wish::LowestPrice);
+        let (_, says) = named(found.smaller.as_ref(), &candidates).expect("one");
+        assert_eq!(
+            says,
+            "Fits too: it would run at 60 % of no-load volts (target 50 to 65 %), 2 000 V to ground \
+             with no load; costs 10 more."
+        );
     }
 }
