@@ -13,3 +13,4 @@ mod plan; // the splitter against known optima, brute force and random splits
 mod rules; // the shipped rule sets at their limits, clause by clause
 mod supply; // nameplates: what is missing or contradicts itself, and the site
 mod tube; // the default model by hand; entries that are not whole // job files
+mod workup; // the whole flow on arbitrary jobs and books, and on such as a shop has

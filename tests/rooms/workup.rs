@@ -1,0 +1,643 @@
+//! The whole flow on jobs and books nobody should type, and on such as a shop does.
+
+use proptest::prelude::*;
+use proptest::sample::select;
+use rust_decimal::Decimal;
+use tubewright::book::{
+    Allowances, Book, Dampness, Gas, Loading, OutputEarthing, Rates, SupplyEntry, SupplyKind,
+    TubeEntry, starter,
+};
+use tubewright::job::{Job, Row, Site, StrokesRow, TextRow, Wish};
+use tubewright::rules::{Grade, Place};
+use tubewright::{Workup, workup};
+
+const NEON: &str = "12 mm neon";
+const MERCURY: &str = "15 mm argon-mercury";
+
+fn letters(text: &str, height: &str) -> Row {
+    Row::Text(TextRow {
+        text: text.to_owned(),
+        height: height.to_owned(),
+        face: "sans".to_owned(),
+        tube: NEON.to_owned(),
+        count: 1,
+    })
+}
+
+fn strokes(strokes: &str) -> Row {
+    Row::Strokes(StrokesRow {
+        label: "bar".to_owned(),
+        strokes: strokes.to_owned(),
+        tube: MERCURY.to_owned(),
+        count: 1,
+    })
+}
+
+fn job(rows: Vec<Row>) -> Job {
+    Job {
+        rows,
+        rules: "NEC Article 600".to_owned(),
+        ..Job::default()
+    }
+}
+
+fn iron(name: &str, no_load_volts: f64, ma: f64, price: i64) -> SupplyEntry {
+    SupplyEntry {
+        name: name.to_owned(),
+        no_load_volts: Some(no_load_volts),
+        short_circuit_ma: Some(ma),
+        earth_fault_protection: true,
+        open_circuit_protection: true,
+        price: Some(Decimal::from(price)),
+        ..SupplyEntry::default()
+    }
+}
+
+/// The starter book with a few supplies of invented figures.
+fn book() -> Book {
+    let supplies = vec![
+        iron("S4", 4_000.0, 30.0, 90),
+        iron("S6", 6_000.0, 30.0, 120),
+        iron("S9", 9_000.0, 30.0, 150),
+        iron("S15", 15_000.0, 30.0, 220),
+    ];
+    Book {
+        supplies,
+        ..starter()
+    }
+}
+
+/// Every sentence, one a line, gravest first.
+fn said(work: &Workup) -> String {
+    let line = |finding: &tubewright::Finding| {
+        format!(
+            "{} {:?}: {}",
+            finding.grade.word(),
+            finding.place,
+            finding.says
+        )
+    };
+    work.findings
+        .iter()
+        .map(line)
+        .collect::<Vec<_>>()
+        .join("\n")
+        .replace('\u{202f}', "_")
+}
+
+/// The stops and looks of a row.
+fn of_row(work: &Workup, row: usize) -> String {
+    work.findings
+        .iter()
+        .filter(|finding| finding.place == Place::Row(row) && finding.grade > Grade::Note)
+        .map(|finding| format!("{}: {}", finding.grade.word(), finding.says))
+        .collect::<Vec<_>>()
+        .join("\n")
+        .replace('\u{202f}', "_")
+}
+
+/// What must hold of every work-up, whatever went in.
+fn assert_sound(job: &Job, work: &Workup) {
+    let count = work.takeoff.pieces.len();
+    // Every piece of a known tube is on one circuit or left over, once.
+    let mut placed: Vec<usize> = work
+        .circuits
+        .iter()
+        .flat_map(|circuit| &circuit.pieces)
+        .chain(work.left_over.iter().flat_map(|left| &left.pieces))
+        .copied()
+        .collect();
+    placed.sort_unstable();
+    let known: Vec<usize> = (0..count)
+        .filter(|&piece| {
+            let name = &work.takeoff.pieces[piece].tube;
+            work.tubes
+                .iter()
+                .any(|total| total.name == *name && total.tube.is_some())
+        })
+        .collect();
+    assert_eq!(placed, known);
+    // Glass is counted once.
+    let totals: usize = work.tubes.iter().map(|total| total.pieces).sum();
+    assert_eq!(totals, count);
+    let glass: f64 = work
+        .takeoff
+        .pieces
+        .iter()
+        .map(|piece| piece.glass().mm())
+        .sum();
+    assert!(
+        (work.glass().mm() - glass).abs() <= 1e-6 * glass.max(1.0),
+        "{:?}",
+        work.glass()
+    );
+    assert!(glass.is_finite() && glass >= 0.0);
+    // No circuit of a plan carries a stop of its own loading.
+    for circuit in &work.circuits {
+        assert!(
+            circuit.assessment.grade() < Some(Grade::Stop),
+            "{:?}",
+            circuit.assessment.findings
+        );
+        assert!(0 < circuit.first_string && circuit.first_string <= circuit.pieces.len());
+        assert!(circuit.column.mm() > 0.0);
+    }
+    // A piece left over is said.
+    assert!(work.left_over.is_empty() || work.grade() == Some(Grade::Stop));
+    // The sum adds up.
+    let lines: Decimal = work.quote.lines.iter().filter_map(|line| line.amount).sum();
+    assert_eq!(lines, work.quote.cost);
+    assert_eq!(
+        work.quote.cost + work.quote.markup + work.quote.tax,
+        work.quote.total
+    );
+    // Gravest first, every one a sentence, at a place that exists.
+    assert!(work.findings.is_sorted_by(|a, b| a.grade >= b.grade));
+    for finding in &work.findings {
+        assert!(!finding.says.trim().is_empty());
+        assert!(finding.says.chars().count() < 2_000, "{}", finding.says);
+        match finding.place {
+            Place::Row(row) => assert!(row < job.rows.len()),
+            Place::Piece(piece) => assert!(piece < count.max(1)),
+            Place::Circuit(circuit) => assert!(circuit < work.circuits.len()),
+            _ => {}
+        }
+    }
+}
+
+// ---- arbitrary jobs and books ----
+
+fn awkward() -> impl Strategy<Value = String> {
+    prop_oneof![
+        4 => select(vec![
+            "OPEN", "Café", "A", "é🍕", "", "   ", "x\u{0}y", "\u{202e}abc", "ab cd", "~|{}", "Ii1l",
+            "<script>alert(1)</script>", "\n\t", "0",
+        ]).prop_map(str::to_owned),
+        1 => any::<String>(),
+        1 => "[A-Z ]{0,40}",
+    ]
+}
+
+fn length() -> impl Strategy<Value = String> {
+    prop_oneof![
+        6 => select(vec![
+            "100", "450 mm", "1' 6 1/2\"", "10", "5000", "5001", "9.99", "2 km", "2000 m", "0", "-5",
+            "NaN", "1e9", "", "3 x", "3 x 180 + 2 x 95", "999999999999 m", "1/3", "300; 400; x; 500",
+            ";;;", "20 m; 10 mm", "abc;",
+        ]).prop_map(str::to_owned),
+        3 => (10..3_000_u32).prop_map(|mm| format!("{mm} mm")),
+        1 => any::<String>(),
+    ]
+}
+
+fn count() -> impl Strategy<Value = i64> {
+    prop_oneof![6 => Just(1_i64), 2 => 0..6_i64, 1 => Just(200), 2 => any::<i64>()]
+}
+
+fn tube_name() -> impl Strategy<Value = String> {
+    prop_oneof![
+        6 => select(vec![NEON, MERCURY, "8 mm neon", "25 mm argon-mercury"]).prop_map(str::to_owned),
+        2 => select(vec!["odd", "", "no such tube"]).prop_map(str::to_owned),
+    ]
+}
+
+fn row() -> impl Strategy<Value = Row> {
+    let face = select(vec!["sans", "sans", "script", "", "gothic"]).prop_map(str::to_owned);
+    prop_oneof![
+        (awkward(), length(), face, tube_name(), count()).prop_map(
+            |(text, height, face, tube, count)| Row::Text(TextRow {
+                text,
+                height,
+                face,
+                tube,
+                count
+            })
+        ),
+        (awkward(), length(), tube_name(), count()).prop_map(|(label, strokes, tube, count)| {
+            Row::Strokes(StrokesRow {
+                label,
+                strokes,
+                tube,
+                count,
+            })
+        }),
+    ]
+}
+
+fn odd_figure() -> impl Strategy<Value = f64> {
+    prop_oneof![
+        select(vec![
+            0.0,
+            -1.0,
+            1e-300,
+            1e300,
+            f64::NAN,
+            f64::INFINITY,
+            f64::NEG_INFINITY,
+            f64::MIN_POSITIVE,
+            -0.0,
+            0.5,
+            1.0,
+            100.0,
+        ]),
+        any::<f64>(),
+    ]
+}
+
+fn figure(sane: std::ops::Range<f64>) -> impl Strategy<Value = Option<f64>> {
+    prop_oneof![
+        6 => sane.prop_map(Some),
+        1 => odd_figure().prop_map(Some),
+        2 => Just(None),
+    ]
+}
+
+fn money() -> impl Strategy<Value = Decimal> {
+    prop_oneof![
+        4 => (0..100_000_i64).prop_map(|cents| Decimal::new(cents, 2)),
+        1 => select(vec![
+            Decimal::MAX, Decimal::MIN, Decimal::NEGATIVE_ONE, Decimal::ZERO,
+            Decimal::new(1, 28), Decimal::new(-1, 28), Decimal::new(i64::MAX, 0),
+        ]),
+    ]
+}
+
+fn supply() -> impl Strategy<Value = SupplyEntry> {
+    use OutputEarthing::{Isolated, MidPoint, MidPointReturn, OneEnd};
+    (
+        (
+            select(vec!["a", "b", "c", "", "🍕"]).prop_map(str::to_owned),
+            select(vec![SupplyKind::Iron, SupplyKind::Electronic]),
+            select(vec![MidPoint, MidPointReturn, OneEnd, Isolated]),
+            select(vec![Dampness::Dry, Dampness::Wet]),
+        ),
+        (
+            figure(1_000.0..15_000.0),
+            figure(20.0..60.0),
+            figure(10.0..60.0),
+            figure(500.0..9_000.0),
+            figure(10.0..80.0),
+            figure(10.0..100.0),
+        ),
+        (figure(1.0..30.0), figure(100.0..250.0), figure(50.0..900.0)),
+        (
+            any::<bool>(),
+            any::<bool>(),
+            prop::option::of(money()),
+            any::<Option<u32>>(),
+        ),
+    )
+        .prop_map(
+            |(
+                (name, kind, earthing, place),
+                (no_load_volts, short_circuit_ma, rated_ma, rated_load_volts, least, most),
+                (trip_ma, input_volts, input_va),
+                (earth_fault_protection, open_circuit_protection, price, stock),
+            )| SupplyEntry {
+                name,
+                kind,
+                earthing,
+                place,
+                no_load_volts,
+                short_circuit_ma,
+                rated_ma,
+                rated_load_volts,
+                // Both ends or none, mostly: one alone only ever refuses the supply.
+                least_load_percent: least,
+                most_load_percent: least.and(most),
+                trip_ma: trip_ma.filter(|_| earth_fault_protection),
+                input_volts: input_volts.filter(|_| open_circuit_protection),
+                input_va,
+                earth_fault_protection,
+                open_circuit_protection,
+                price,
+                stock,
+                ..SupplyEntry::default()
+            },
+        )
+}
+
+fn odd_tube() -> impl Strategy<Value = TubeEntry> {
+    (
+        prop::collection::vec(figure(5.0..30.0), 4),
+        figure(100.0..2_000.0),
+        figure(0.0..0.45),
+        figure(1.0..400.0),
+        figure(1.0..2.0),
+        prop::option::of(money()),
+    )
+        .prop_map(
+            |(figures, volts_per_m, exponent, pair_volts, cold_factor, price_per_m)| TubeEntry {
+                name: "odd".to_owned(),
+                gas: Gas::ArgonMercury,
+                outer_mm: figures[0],
+                wall_mm: figures[1].map(|wall| wall / 10.0),
+                least_ma: figures[2],
+                most_ma: figures[3],
+                volts_per_m,
+                exponent,
+                pair_volts,
+                cold_factor,
+                price_per_m,
+                ..TubeEntry::default()
+            },
+        )
+}
+
+fn rates() -> impl Strategy<Value = Rates> {
+    prop::collection::vec(money(), 7).prop_map(|money| Rates {
+        currency: "¤".to_owned(),
+        electrode: money[0],
+        labour_hour: money[1],
+        minutes_per_piece: money[2],
+        minutes_per_m: money[3],
+        minutes_per_circuit: money[4],
+        markup_percent: money[5],
+        tax_percent: money[6],
+    })
+}
+
+fn any_book() -> impl Strategy<Value = Book> {
+    let allowances = (odd_figure(), odd_figure(), odd_figure()).prop_map(
+        |(tail_mm, waste_percent, longest_piece_mm)| Allowances {
+            tail_mm,
+            waste_percent,
+            longest_piece_mm,
+        },
+    );
+    let loading = prop::collection::vec(odd_figure(), 8).prop_map(|shares| Loading {
+        look_below: shares[0],
+        target_from: shares[1],
+        neon_target_to: shares[2],
+        neon_look_above: shares[3],
+        mercury_target_to: shares[4],
+        mercury_look_above: shares[5],
+        stop_from: shares[6],
+        strike_factor: shares[7],
+    });
+    (
+        prop::collection::vec(supply(), 0..6),
+        prop::collection::vec(odd_tube(), 0..2),
+        prop_oneof![Just(Rates::default()), rates()],
+        prop_oneof![3 => Just(Allowances::default()), 1 => allowances],
+        prop_oneof![3 => Just(Loading::default()), 1 => loading],
+    )
+        .prop_map(|(supplies, odd, rates, allowances, loading)| {
+            let mut book = Book {
+                supplies,
+                rates,
+                allowances,
+                loading,
+                ..starter()
+            };
+            book.tubes.extend(odd);
+            book
+        })
+}
+
+fn any_job() -> impl Strategy<Value = Job> {
+    let rules = select(vec![
+        "NEC Article 600",
+        "IEC/EN 1 to 10 kV",
+        "Shop rules",
+        "",
+        "none such",
+    ]);
+    let mains = prop::option::of(prop_oneof![100.0..250.0_f64, odd_figure()]);
+    (
+        prop::collection::vec(row(), 0..5),
+        rules.prop_map(str::to_owned),
+        select(vec![Wish::FewestSupplies, Wish::LowestPrice]),
+        (
+            mains,
+            select(vec![Dampness::Dry, Dampness::Damp, Dampness::Wet]),
+            any::<bool>(),
+        ),
+    )
+        .prop_map(|(rows, rules, wish, (mains_volts, place, cold))| Job {
+            rows,
+            rules,
+            wish,
+            site: Site {
+                mains_volts,
+                place,
+                cold,
+            },
+            ..Job::default()
+        })
+}
+
+proptest! {
+    #![proptest_config(ProptestConfig::with_cases(300))]
+
+    #[test]
+    fn no_job_and_no_book_brings_it_down(job in any_job(), book in any_book()) {
+        assert_sound(&job, &workup(&job, &book));
+    }
+
+    /// Trouble in one row leaves the figures of the others as they were.
+    #[test]
+    fn trouble_stays_in_its_row(bad in row(), at in 0..3_usize) {
+        let good = [letters("OPEN", "300 mm"), strokes("1200 mm; 800 mm")];
+        let mut rows = good.to_vec();
+        rows.insert(at.min(2), bad);
+        let (alone, together) = (workup(&job(good.to_vec()), &book()), workup(&job(rows), &book()));
+        let others = together.takeoff.rows.iter().enumerate().filter(|&(row, _)| row != at.min(2));
+        for (before, (_, after)) in alone.takeoff.rows.iter().zip(others) {
+            prop_assert_eq!(before.lit, after.lit);
+            prop_assert_eq!(before.glass, after.glass);
+            prop_assert_eq!(before.pieces.len(), after.pieces.len());
+        }
+    }
+}
+
+// ---- jobs a shop has ----
+
+#[test]
+fn a_plain_sign_is_planned_without_a_stop() {
+    let job = job(vec![
+        letters("OPEN", "300 mm"),
+        strokes("1500 mm; 1500 mm; 1500 mm"),
+    ]);
+    let work = workup(&job, &book());
+    assert_sound(&job, &work);
+    assert!(
+        !work.circuits.is_empty() && work.left_over.is_empty(),
+        "{}",
+        said(&work)
+    );
+    assert!(work.grade() < Some(Grade::Stop), "{}", said(&work));
+    // By hand from the published lengths: O 2.8501, P 2.6488, E 2.6190, N 3.2019 cap heights.
+    let lit = work.takeoff.rows[0].lit.mm() / 300.0;
+    assert!(
+        (lit - (2.8501 + 2.6488 + 2.6190 + 3.2019)).abs() < 2e-4,
+        "{lit}"
+    );
+    assert_eq!(work.takeoff.rows[1].lit.mm(), 4_500.0);
+}
+
+#[test]
+fn the_same_in_gives_the_same_out() {
+    let job = job(vec![letters("OPEN", "300 mm"), strokes("1500 mm; 1500 mm")]);
+    assert_eq!(
+        format!("{:?}", workup(&job, &book())),
+        format!("{:?}", workup(&job, &book()))
+    );
+}
+
+#[test]
+fn an_empty_job_has_no_glass_and_no_price() {
+    let work = workup(&Job::default(), &Book::default());
+    assert_sound(&Job::default(), &work);
+    assert_eq!(
+        (work.glass().mm(), work.circuits.len(), work.quote.total),
+        (0.0, 0, Decimal::ZERO)
+    );
+    insta::assert_snapshot!(said(&work), @"look Job: No rule set is chosen: no limit of any code is checked.");
+}
+
+#[test]
+fn text_that_is_too_long_or_has_no_shapes() {
+    let rows = vec![
+        letters(&"A".repeat(10_000), "100 mm"),
+        letters("🍕É", "100 mm"),
+        letters("A", "2 km"),
+        letters("A", "2000 m"),
+        letters("A", "wide"),
+        letters("", "100 mm"),
+        letters("A🍕B", "100 mm"),
+    ];
+    let count = rows.len();
+    let job = job(rows);
+    let work = workup(&job, &book());
+    assert_sound(&job, &work);
+    let sentences: Vec<String> = (0..count).map(|row| of_row(&work, row)).collect();
+    insta::assert_snapshot!(sentences.join("\n"), @r"
+    stop: text must be 1 to 400 characters (a line of letters longer than this is given as several rows), but is 10000.
+    stop: The face sans has no shape for “🍕” (character 1), “É” (character 2): glass and price are without it. Give it as strokes.
+    stop: Letter height: expected “+”, “x” or the end, but found “km” at character 3 of “2 km”; units are mm, cm, m, in or ft.
+    stop: letter height must be 10 to 5000 mm (smaller cannot be bent in glass, larger is built from parts given as strokes), but is 2000000.
+    stop: Letter height: expected a number such as 450, but found “wide” at character 1 of “wide”.
+    look: Nothing to make: the row has no letters.
+    stop: The face sans has no shape for “🍕” (character 2): glass and price are without it. Give it as strokes.
+    ");
+    assert_eq!(work.takeoff.pieces.len(), 2, "A and B of the last row");
+}
+
+#[test]
+fn strokes_that_cannot_be_read() {
+    let rows = vec![
+        strokes("1200 mm; abc; 5 mm; 30 m"),
+        strokes(";"),
+        strokes("NaN"),
+    ];
+    let work = workup(&job(rows), &book());
+    let sentences: Vec<String> = (0..3).map(|row| of_row(&work, row)).collect();
+    insta::assert_snapshot!(sentences.join("\n"), @r"
+    stop: Stroke 2: expected a number such as 450, but found “abc” at character 2 of “ abc”.
+    stop: one piece of glass must be 10 to 20000 mm (no piece between two electrodes is shorter or longer than this; give it as more pieces), but is 5.
+    stop: one piece of glass must be 10 to 20000 mm (no piece between two electrodes is shorter or longer than this; give it as more pieces), but is 30000.
+    look: Nothing to make: the row has no stroke lengths.
+    stop: Stroke 1: expected a number such as 450, but found “NaN” at character 1 of “NaN”.
+    ");
+    assert_eq!(work.takeoff.pieces.len(), 1);
+}
+
+#[test]
+fn counts_nobody_makes() {
+    for count in [0, -1, 201, i64::MAX, i64::MIN] {
+        let mut row = strokes("1200 mm");
+        if let Row::Strokes(row) = &mut row {
+            row.count = count;
+        }
+        let work = workup(&job(vec![row]), &book());
+        assert_eq!(work.takeoff.pieces.len(), 0, "{count}");
+        assert!(
+            of_row(&work, 0).starts_with("stop: count must be 1 to 200"),
+            "{}",
+            of_row(&work, 0)
+        );
+    }
+}
+
+#[test]
+fn more_rows_and_pieces_than_a_job_may_have() {
+    let rows = job(vec![strokes("1200 mm"); 205]);
+    let work = workup(&rows, &book());
+    assert_sound(&rows, &work);
+    assert_eq!(work.takeoff.rows.len(), 200);
+    assert!(
+        said(&work).contains("rows must be 0 to 200"),
+        "{}",
+        said(&work)
+    );
+    let mut row = strokes(&vec!["1200 mm"; 30].join(";"));
+    if let Row::Strokes(row) = &mut row {
+        row.count = 200;
+    }
+    let pieces = job(vec![row]);
+    let work = workup(
+        &pieces,
+        &Book {
+            supplies: vec![],
+            ..book()
+        },
+    );
+    assert!(work.takeoff.pieces.len() <= 4_000);
+    assert!(
+        said(&work).contains("pieces of glass must be 0 to 4000"),
+        "{}",
+        work.findings[0].says
+    );
+}
+
+#[test]
+fn names_that_are_twice_in_the_book() {
+    let mut book = book();
+    book.supplies.push(iron("S9", 100.0, 1.0, 1));
+    let neon = book
+        .tubes
+        .iter()
+        .find(|tube| tube.name == NEON)
+        .expect("a tube")
+        .clone();
+    book.tubes.push(TubeEntry {
+        outer_mm: Some(50.0),
+        ..neon
+    });
+    let work = workup(&job(vec![letters("OPEN", "300 mm")]), &book);
+    let all = said(&work);
+    assert!(
+        all.contains("Two supplies are called “S9”: the first is used."),
+        "{all}"
+    );
+    assert!(
+        all.contains("Two tube types are called “12 mm neon”: the first is used."),
+        "{all}"
+    );
+    assert_eq!(
+        work.tubes[0].tube.as_ref().map(|tube| tube.outer.mm()),
+        Some(12.0)
+    );
+}
+
+#[test]
+fn a_supply_the_rules_stop_is_refused_and_never_planned() {
+    let mut book = book();
+    for supply in &mut book.supplies {
+        supply.earth_fault_protection = false;
+    }
+    let work = workup(&job(vec![letters("OPEN", "300 mm")]), &book);
+    assert_eq!((work.circuits.len(), work.refused.len()), (0, 4));
+    assert_eq!(work.left_over.len(), 1);
+    assert_eq!(work.grade(), Some(Grade::Stop));
+    // With the shop's own empty set the same supplies run it, and it is said that nothing trips.
+    let mut job = job(vec![letters("OPEN", "300 mm")]);
+    job.rules = "Shop rules".to_owned();
+    let work = workup(&job, &book);
+    assert!(
+        !work.circuits.is_empty() && work.grade() == Some(Grade::Look),
+        "{}",
+        said(&work)
+    );
+}
