@@ -1,9 +1,8 @@
 //! The sentences of this room.
 
 use super::Piece;
-use crate::book::Allowances;
 use crate::drawing::{Face, faces};
-use crate::measure::{Limit, ReadError, Units, length_shown, quoted};
+use crate::measure::{Length, Limit, ReadError, Units, length_exact, length_shown, quoted};
 use crate::rules::{Finding, Grade, Place, Source};
 
 fn row(grade: Grade, row: usize, says: String) -> Finding {
@@ -91,20 +90,37 @@ pub(super) fn too_many(limit: &Limit, value: usize) -> Finding {
     )
 }
 
-pub(super) fn too_long(piece_at: usize, piece: &Piece, allowances: &Allowances) -> Finding {
+/// Said once for all copies of a piece: `piece` is the first, `label` what all are called.
+pub(super) fn too_long(
+    piece_at: usize,
+    piece: &Piece,
+    (label, copies): (&str, usize),
+    longest: Length,
+) -> Finding {
+    let made = if copies > 1 {
+        format!(", made {copies} times,")
+    } else {
+        String::new()
+    };
+    let shown = |length| length_shown(length, Units::Metric);
+    // Finer where whole millimetres would show a piece as long as what it is longer than.
+    let column = if shown(piece.column()) == shown(longest) {
+        length_exact(piece.column(), Units::Metric)
+    } else {
+        shown(piece.column())
+    };
     Finding::new(
         Grade::Look,
         Place::Piece(piece_at),
         format!(
-            "The piece {} is {} of glass between its electrodes, longer than the shop bends in one \
-             ({} mm): give it as more pieces.",
-            quoted(&piece.label),
-            length_shown(piece.column(), Units::Metric),
-            allowances.longest_piece_mm
+            "The piece {}{made} is {column} of glass between its electrodes, longer than the shop \
+             bends in one ({}): give it as more pieces.",
+            quoted(label),
+            shown(longest)
         ),
         Source::shop(),
     )
-    .with(piece.column().mm(), allowances.longest_piece_mm, "mm")
+    .with(piece.column().mm(), longest.mm(), "mm")
 }
 
 pub(super) fn crossovers() -> Finding {

@@ -24,7 +24,8 @@ pub struct Piece {
     pub row: usize,
     /// Which of the row's copies, from 0.
     pub copy: usize,
-    /// What it is called: the letter, the word, or label and number.
+    /// What it is called: the letter, the word, or label and number; with "(2 of 4)" after it where
+    /// its row is made more than once.
     pub label: String,
     /// Name of its tube type in the book.
     pub tube: String,

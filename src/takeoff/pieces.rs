@@ -47,7 +47,7 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
         )));
         0.0
     });
-    let longest_mm = sane(allowances.longest_piece_mm, 1.0, 100_000.0);
+    let longest = sane(allowances.longest_piece_mm, 1.0, 100_000.0).map(Length::from_mm);
     let mut sheet = Sheet {
         below: 0.0,
         last_height: 0.0,
@@ -81,10 +81,15 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
             }
             let place = sheet.place(made.bounds);
             for drawn in &made.pieces {
-                let piece = drawn.piece(at, copy, row.tube(), tail_mm, place);
-                if longest_mm.is_some_and(|most| piece.column().mm() > most) && copy == 0 {
+                let piece = drawn.piece(at, (copy, copies), row.tube(), tail_mm, place);
+                if let Some(longest) = longest
+                    && piece.column() > longest
+                    && copy == 0
+                {
+                    let called = (drawn.label.as_str(), copies);
+                    let at = off.pieces.len();
                     off.findings
-                        .push(finding::too_long(off.pieces.len(), &piece, allowances));
+                        .push(finding::too_long(at, &piece, called, longest));
                 }
                 off.pieces.push(piece);
             }
@@ -176,7 +181,20 @@ impl Drawn {
         }
     }
 
-    fn piece(&self, row: usize, copy: usize, tube: &str, tail_mm: f64, place: Affine) -> Piece {
+    fn piece(
+        &self,
+        row: usize,
+        (copy, copies): (usize, usize),
+        tube: &str,
+        tail_mm: f64,
+        place: Affine,
+    ) -> Piece {
+        // Four like quarters of a border are to be told apart on the bench and in sentences.
+        let label = if copies > 1 {
+            format!("{} ({} of {copies})", self.label, copy + 1)
+        } else {
+            self.label.clone()
+        };
         let jump = |&(from, to): &(Point, Point)| {
             let mut path = BezPath::new();
             path.move_to(place * from);
@@ -186,7 +204,7 @@ impl Drawn {
         Piece {
             row,
             copy,
-            label: self.label.clone(),
+            label,
             tube: tube.to_owned(),
             lit: Length::from_mm(self.lit_mm),
             hidden: Length::from_mm(self.route.jumped),
@@ -307,6 +325,11 @@ fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
     findings.push(finding::drawn_straight(at));
     let longest = lengths_mm.iter().copied().fold(0.0, f64::max);
     let alone = lengths_mm.len() == 1;
+    // "The piece “”" would be no name.
+    let called = match row.label.trim() {
+        "" => "stroke",
+        label => label,
+    };
     let mut bounds: Option<Rect> = None;
     let pieces = lengths_mm
         .iter()
@@ -321,9 +344,9 @@ fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
             let here = Rect::from_points(from, to);
             bounds = Some(bounds.map_or(here, |all| all.union(here)));
             let label = if alone {
-                row.label.clone()
+                called.to_owned()
             } else {
-                format!("{} {}", row.label, number + 1)
+                format!("{called} {}", number + 1)
             };
             let route = Route {
                 jumped: 0.0,
@@ -368,6 +391,7 @@ fn whole(limit: f64) -> usize {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::rules::Place;
 
     /// A job of one text row.
     fn texts(text: &str, height: &str, face: &str, count: i64) -> Job {
@@ -402,5 +426,81 @@ mod tests {
                 );
             }
         }
+    }
+
+    #[test]
+    fn copies_are_told_apart() {
+        let job = Job {
+            rows: vec![
+                Row::Strokes(StrokesRow {
+                    label: "Border, quarter".to_owned(),
+                    strokes: "1850 mm; 3057 mm".to_owned(),
+                    tube: "t".to_owned(),
+                    count: 2,
+                }),
+                Row::Strokes(StrokesRow {
+                    label: String::new(),
+                    strokes: "300 mm; 300 mm".to_owned(),
+                    tube: "t".to_owned(),
+                    count: 1,
+                }),
+                texts("Hi", "100 mm", "sans", 1).rows.remove(0),
+            ],
+            ..Job::default()
+        };
+        let allowances = Allowances {
+            longest_piece_mm: 2_700.0,
+            ..Allowances::default()
+        };
+        let off = takeoff(&job, &allowances);
+        let labels: Vec<&str> = off
+            .pieces
+            .iter()
+            .map(|piece| piece.label.as_str())
+            .collect();
+        assert_eq!(
+            labels,
+            [
+                "Border, quarter 1 (1 of 2)",
+                "Border, quarter 2 (1 of 2)",
+                "Border, quarter 1 (2 of 2)",
+                "Border, quarter 2 (2 of 2)",
+                "stroke 1",
+                "stroke 2",
+                "H",
+                "i",
+            ]
+        );
+        let long: Vec<&str> = off
+            .findings
+            .iter()
+            .filter(|finding| finding.place == Place::Piece(1))
+            .map(|finding| finding.says.as_str())
+            .collect();
+        assert_eq!(
+            long,
+            [
+                "The piece “Border, quarter 2”, made 2 times, is 3\u{202f}057 mm of glass between its \
+                 electrodes, longer than the shop bends in one (2\u{202f}700 mm): give it as more \
+                 pieces."
+            ]
+        );
+    }
+
+    #[test]
+    fn a_hair_too_long_is_not_shown_as_just_long_enough() {
+        let row = Row::Strokes(StrokesRow {
+            label: "Bar".to_owned(),
+            strokes: "2400.3 mm".to_owned(),
+            tube: "t".to_owned(),
+            count: 1,
+        });
+        let job = Job {
+            rows: vec![row],
+            ..Job::default()
+        };
+        let off = takeoff(&job, &Allowances::default());
+        let says = &off.findings[1].says;
+        assert!(says.contains("is 2400.3 mm of glass"), "{says}");
     }
 }
