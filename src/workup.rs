@@ -217,10 +217,9 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         })
         .collect();
 
-    let quote = quote::quote(
-        &parts(book, &tubes, &circuits, off.pieces.len()),
-        &book.rates,
-    );
+    let parts = parts(book, &tubes, &circuits, off.pieces.len());
+    let quote = quote::quote(&parts, &book.rates);
+    findings.extend(short_of(book, &parts));
     findings.extend(quote.findings.iter().cloned());
     findings.extend(model_notes(&tubes));
     gravest_first(&mut findings);
@@ -469,6 +468,29 @@ fn model_notes(tubes: &[TubeTotal]) -> Vec<Finding> {
         .collect()
 }
 
+/// Supplies the plan takes more of than are on the shelf, where the book says how many there are.
+fn short_of(book: &Book, parts: &Parts) -> Vec<Finding> {
+    let short = |(name, taken, _): &(String, usize, _)| {
+        // Of two entries with one name the first is used.
+        let entry = book.supplies.iter().find(|entry| entry.name == *name)?;
+        let stock = usize::try_from(entry.stock?).ok()?;
+        let shelf = if stock == 0 {
+            "none".to_owned()
+        } else {
+            stock.to_string()
+        };
+        (*taken > stock).then(|| {
+            Finding::new(
+                Grade::Note,
+                Place::Supply(name.clone()),
+                format!("The plan takes {taken} of {name}; the shelf has {shelf}."),
+                Source::shop(),
+            )
+        })
+    };
+    parts.supplies.iter().filter_map(short).collect()
+}
+
 fn parts(book: &Book, tubes: &[TubeTotal], circuits: &[CircuitWork], pieces: usize) -> Parts {
     let mut supplies: Vec<(String, usize, Option<rust_decimal::Decimal>)> = Vec::new();
     for circuit in circuits {
@@ -497,5 +519,67 @@ fn parts(book: &Book, tubes: &[TubeTotal], circuits: &[CircuitWork], pieces: usi
         circuits: circuits.len(),
         supplies,
         waste_percent: book.allowances.waste_percent,
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::book::{SupplyEntry, TubeEntry};
+    use crate::job::{Row, StrokesRow};
+
+    /// Three bars that need a supply each, and a book with one supply.
+    fn bars() -> (Job, Book) {
+        let row = Row::Strokes(StrokesRow {
+            label: "bar".to_owned(),
+            strokes: "4 m".to_owned(),
+            tube: "t".to_owned(),
+            count: 3,
+        });
+        let job = Job {
+            rows: vec![row],
+            ..Job::default()
+        };
+        let book = Book {
+            supplies: vec![SupplyEntry {
+                name: "4 kV 30 mA".to_owned(),
+                no_load_volts: Some(4_000.0),
+                short_circuit_ma: Some(30.0),
+                ..SupplyEntry::default()
+            }],
+            tubes: vec![TubeEntry {
+                name: "t".to_owned(),
+                outer_mm: Some(12.0),
+                volts_per_m: Some(550.0),
+                pair_volts: Some(200.0),
+                ..TubeEntry::default()
+            }],
+            ..Book::default()
+        };
+        (job, book)
+    }
+
+    #[test]
+    fn a_plan_that_takes_more_than_the_shelf_has_says_so() {
+        let (job, mut book) = bars();
+        let mut of_stock = |stock| {
+            book.supplies[0].stock = stock;
+            let work = workup(&job, &book);
+            assert_eq!(work.circuits.len(), 3, "{:?}", work.findings);
+            let place = Place::Supply("4 kV 30 mA".to_owned());
+            let mut found = work.findings.into_iter().filter(|f| f.place == place);
+            found.next().map(|finding| (finding.grade, finding.says))
+        };
+        let note = |says: &str| Some((Grade::Note, says.to_owned()));
+        assert_eq!(
+            of_stock(Some(2)),
+            note("The plan takes 3 of 4 kV 30 mA; the shelf has 2.")
+        );
+        assert_eq!(
+            of_stock(Some(0)),
+            note("The plan takes 3 of 4 kV 30 mA; the shelf has none.")
+        );
+        assert_eq!(of_stock(Some(3)), None);
+        assert_eq!(of_stock(None), None, "not counted");
     }
 }
