@@ -57,7 +57,8 @@ macro_rules! quantity {
 
         impl core::iter::Sum for $name {
             fn sum<I: Iterator<Item = Self>>(values: I) -> Self {
-                Self(values.map(|value| value.0).sum())
+                // An empty sum of floats is -0, which would show its sign.
+                Self(values.map(|value| value.0).fold(0.0, core::ops::Add::add))
             }
         }
     };

@@ -249,6 +249,14 @@ fn figures_as_shown() {
 }
 
 #[test]
+fn nothing_is_nought_without_a_sign() {
+    let nothing: Length = std::iter::empty::<Length>().sum();
+    assert_eq!(glass(nothing, Units::Metric), "0.00 m");
+    assert_eq!(glass(nothing, Units::FeetInches), "0.00 ft");
+    assert_eq!(length_exact(nothing, Units::Metric), "0 mm");
+}
+
+#[test]
 fn text_from_outside_is_quoted_short_and_without_control_characters() {
     assert_eq!(quoted("a\nb\u{1b}[31m"), "“a\\nb\\u{1b}[31m”");
     assert_eq!(quoted(&"é".repeat(100)), format!("“{}…”", "é".repeat(24)));

@@ -442,6 +442,8 @@ proptest! {
         let mut rows = good.to_vec();
         rows.insert(at.min(2), bad);
         let (alone, together) = (workup(&job(good.to_vec()), &book()), workup(&job(rows), &book()));
+        // A row of thousands of pieces does crowd the others out, and the job says so.
+        prop_assume!(!said(&together).contains("pieces of glass must be"));
         let others = together.takeoff.rows.iter().enumerate().filter(|&(row, _)| row != at.min(2));
         for (before, (_, after)) in alone.takeoff.rows.iter().zip(others) {
             prop_assert_eq!(before.lit, after.lit);
