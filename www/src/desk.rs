@@ -6,8 +6,12 @@ use leptos::prelude::*;
 use tubewright::measure::{LengthUnit, Units};
 use tubewright::{Book, Job, Workup, workup};
 
-use crate::document::Document;
+use crate::document::{Document, Write};
 use crate::keep::{Keeper, Standing};
+
+/// Name of the record of the units, and its word for feet and inches.
+const UNITS: &str = "units";
+const FEET_INCHES: &str = "ft in";
 
 /// The places of the page, in the order of work.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -141,6 +145,16 @@ impl Desk {
         }
     }
 
+    /// Shows lengths in other units, and keeps the choice.
+    pub fn set_units(&self, units: Units) {
+        self.units.set(units);
+        let word = match units {
+            Units::Metric => "mm",
+            Units::FeetInches => FEET_INCHES,
+        };
+        self.send(vec![Write { name: UNITS.to_owned(), value: Some(word.to_owned()) }]);
+    }
+
     /// Changes the job; see [`Document::edit_job`].
     pub fn edit_job(&self, field: &str, says: &str, edit: impl FnOnce(&mut Job)) {
         self.change(|document| document.edit_job(field, says, edit));
@@ -199,10 +213,13 @@ impl Desk {
             match Keeper::open().await {
                 Ok((keeper, kept)) => {
                     let now = self.document.with_untracked(Clone::clone);
-                    let fresh = kept.is_empty();
+                    let fresh = !kept.contains_key("job");
                     let (document, trouble) =
                         Document::restore(&kept, now.job().clone(), now.book().clone());
                     self.keeper.set_value(Some(keeper));
+                    if kept.get(UNITS).is_some_and(|word| word == FEET_INCHES) {
+                        self.units.set(Units::FeetInches);
+                    }
                     self.standing.set(Standing::Kept);
                     self.document.set(document);
                     if fresh {
@@ -229,7 +246,7 @@ impl Desk {
         self.send(writes);
     }
 
-    fn send(&self, writes: Vec<crate::document::Write>) {
+    fn send(&self, writes: Vec<Write>) {
         if writes.is_empty() {
             return;
         }

@@ -91,8 +91,14 @@ fn hand_over(file: &Saved) -> Result<(), wasm_bindgen::JsValue> {
     link.set_href(&address);
     link.set_download(&file.name);
     link.click();
-    // The click has taken hold of the data; the address is not needed any more.
-    web_sys::Url::revoke_object_url(&address)
+    // Some browsers take hold of the data only a moment after the click.
+    leptos::prelude::set_timeout(
+        move || {
+            let _ = web_sys::Url::revoke_object_url(&address);
+        },
+        core::time::Duration::from_secs(60),
+    );
+    Ok(())
 }
 
 #[cfg(test)]

@@ -55,7 +55,7 @@ fn place(window: &Window, share: f64) -> f64 {
 
 fn zones(window: &Window) -> Vec<(&'static str, f64, f64)> {
     let ends = [
-        ("look", 0.0, window.look_below),
+        ("light", 0.0, window.look_below),
         ("plain", window.look_below, window.target_from),
         ("fits", window.target_from, window.target_to),
         ("plain", window.target_to, window.look_above),

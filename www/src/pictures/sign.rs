@@ -40,7 +40,7 @@ pub fn SignPicture(
         let box_of = format!("{} {} {} {}", view.x0, view.y0, view.width(), view.height());
         let (long, caption) = bar(view.width() * 0.3, desk.units.get());
         let bar_x = view.x0 + 22.0 * px;
-        let bar_y = view.y1 - 20.0 * px;
+        let bar_y = view.y1 - 26.0 * px;
         let bar_path = format!(
             "M{0} {1}v{2}M{0} {3}h{4}M{5} {1}v{2}",
             bar_x,
@@ -50,6 +50,9 @@ pub fn SignPicture(
             long.mm(),
             bar_x + long.mm()
         );
+        // Electrodes are drawn larger than they are, but never so large that letters drown in them.
+        let electrode = (0.9 * scene.layers.first().map_or(10.0, |layer| layer.width_mm))
+            .clamp(4.0 * px, 9.0 * px);
         let says = says(&scene.layers, scene.pieces.len(), desk.units.get(), &caption);
         let hits: Vec<_> = scene
             .pieces
@@ -89,8 +92,8 @@ pub fn SignPicture(
                         stroke-width=(1.4 * px).to_string()
                         stroke-dasharray=format!("{} {}", 2.0 * px, 5.0 * px)></path>
                 </Show>
-                <path class="picture-electrode-ring" d=scene.electrodes.clone() stroke-width=(9.0 * px).to_string()></path>
-                <path class="picture-electrode" d=scene.electrodes.clone() stroke-width=(5.5 * px).to_string()></path>
+                <path class="picture-electrode-ring" d=scene.electrodes.clone() stroke-width=electrode.to_string()></path>
+                <path class="picture-electrode" d=scene.electrodes.clone() stroke-width=(0.6 * electrode).to_string()></path>
                 {hits}
                 {move || circuits.get().then(|| numbers.clone())}
                 <path class="picture-bar" d=bar_path stroke-width=(1.2 * px).to_string()></path>
@@ -111,14 +114,16 @@ pub fn SignPicture(
 
 fn tube(layer: &Layer, px: f64) -> impl IntoView + use<> {
     let width = layer.width_mm.max(LEAST_PX * px);
+    // A small picture glows less, or neighbouring letters would drown each other.
+    let glow = (1.1 * layer.width_mm).clamp(2.0 * px, 14.0 * px);
     let part = |class: &'static str, width: f64| {
         view! { <path class=class d=layer.path.clone() stroke-width=width.to_string()></path> }
     };
     // Three strokes glow like a blur and cost a tablet far less.
     view! {
         <g class="picture-tube" class:dim=layer.dim stroke=layer.colour.clone()>
-            {part("glow wide", width + 14.0 * px)}
-            {part("glow", width + 6.0 * px)}
+            {part("glow wide", width + glow)}
+            {part("glow", width + 0.4 * glow)}
             {part("glass", width)}
             {part("core", width * 0.34)}
         </g>

@@ -56,7 +56,7 @@ pub fn Circuits() -> impl IntoView {
                     .map(|piece| piece.label.clone())
                     .collect();
                 view! {
-                    <section class="panel card-none" aria-label="Pieces without a supply">
+                    <section class="panel card-none" style:order="-1" aria-label="Pieces without a supply">
                         <header class="card-head">
                             <b>{short(&names)}</b>
                             {chip(Some(tubewright::rules::Grade::Stop))}
@@ -116,6 +116,7 @@ pub fn Circuits() -> impl IntoView {
             <p class="quiet">"No circuits yet: the sign has no glass, or its tube types are not in the shop book."</p>
         </Show>
         <div class="circuit-columns">
+            // Equal order keeps the order of writing: left over first, a card, then its detail.
             <div class="circuit-cards">{left_over}{cards}</div>
             <div class="circuit-detail">{detail}</div>
         </div>
@@ -167,6 +168,7 @@ fn Card(number: usize, results: Results) -> impl IntoView {
         view! {
             <section
                 class="panel card"
+                style:order=number.to_string()
                 class:open=move || desk.circuit.get() == number
                 aria-label=format!("Circuit {}", number + 1)
             >
@@ -240,13 +242,13 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
         let limit_says = match limit {
             Some((rules, rule)) => match rule.value {
                 Some(limit) => format!(
-                    "at most {} ({})",
+                    "At most {} at any terminal ({}).",
                     volts_shown(tubewright::measure::Volts::from_volts(limit)),
                     rules.source(rule).words()
                 ),
-                None => format!("limit not filled in ({})", rules.source(rule).words()),
+                None => format!("Not filled in, so not checked ({}).", rules.source(rule).words()),
             },
-            None => "no limit in the rules in use".to_owned(),
+            None => "None in the rules in use, so not checked.".to_owned(),
         };
         let protection = protection(circuit);
         let said: Vec<_> = circuit.findings.iter().map(line).collect();
@@ -260,7 +262,7 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
         };
         let in_order = labels(&results, circuit).join(" · ");
         view! {
-            <section class="panel detail" aria-label=format!("Circuit {} in full", number + 1)>
+            <section class="panel detail" style:order=number.to_string() aria-label=format!("Circuit {} in full", number + 1)>
                 <header class="card-head">
                     <h2>{format!("Circuit {}", number + 1)}<small>{format!(" {} pieces, {} of gas column in series", circuit.pieces.len(), glass(circuit.column, units))}</small></h2>
                     {chip(circuit.grade())}
@@ -270,7 +272,7 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                 {strings}
                 <div class="figures">
                     <Figure figure=volts_shown(worked.to_earth_running) caption=format!("to {word}, running")/>
-                    <Figure figure=volts_shown(worked.to_earth_no_load) caption=format!("to {word}, no load: {limit_says}")/>
+                    <Figure figure=volts_shown(worked.to_earth_no_load) caption=format!("to {word}, no load")/>
                     {watts.map(|watts| view! { <Figure figure=watts caption="in the tubes"/> })}
                     {va.map(|va| view! { <Figure figure=va caption=format!("drawn, of {:.0} VA rated", rating.rated_va)/> })}
                     {factor.map(|factor| view! { <Figure figure=factor caption="power factor, without correction"/> })}
@@ -280,6 +282,8 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                     <dd>{in_order}</dd>
                     {other("Next smaller", &circuit.smaller)}
                     {other("Next larger", &circuit.larger)}
+                    <dt>{format!("Limit to {word}")}</dt>
+                    <dd>{limit_says}</dd>
                     <dt>"Protection"</dt>
                     <dd>{protection}</dd>
                     <dt>"Insulation"</dt>

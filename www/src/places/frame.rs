@@ -98,7 +98,7 @@ fn Header(files_open: RwSignal<bool>) -> impl IntoView {
             <button
                 class:on=move || desk.units.get() == units
                 aria-pressed=move || (desk.units.get() == units).to_string()
-                on:click=move |_| desk.units.set(units)
+                on:click=move |_| desk.set_units(units)
             >
                 {words}
             </button>

@@ -132,7 +132,7 @@ fn RowCard(at: usize) -> impl IntoView {
         view! {
             <Field
                 label="Times"
-                class="narrow"
+                class="tiny"
                 number=true
                 value=read(|row| row.count().to_string())
                 commit=move |typed: String| {
@@ -241,7 +241,7 @@ fn RowCard(at: usize) -> impl IntoView {
                         desk.units.get(),
                     )
                 };
-                format!(", {} wide, {} high", shown(bounds.width()), shown(bounds.height()))
+                format!("{} wide, {} high", shown(bounds.width()), shown(bounds.height()))
             })
         })
     };
@@ -263,7 +263,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 {times()}
             </div>
             <div class="row-foot">
-                <span class="row-sums">{sums}{size}</span>
+                <span class="row-sums">{sums}<small>{size}</small></span>
                 <span class="row-tools">
                     <button
                         aria-label=format!("Move row {} up", at + 1)
