@@ -30,8 +30,13 @@ pub enum Where {
 
 impl Where {
     /// All of them.
-    pub const ALL: [Self; 5] =
-        [Self::Sign, Self::Glass, Self::Circuits, Self::Price, Self::ShopBook];
+    pub const ALL: [Self; 5] = [
+        Self::Sign,
+        Self::Glass,
+        Self::Circuits,
+        Self::Price,
+        Self::ShopBook,
+    ];
 
     /// Its name on the page.
     pub const fn name(self) -> &'static str {
@@ -57,7 +62,10 @@ impl Where {
 
     /// The place of an address; the sign for any other.
     pub fn of(address: &str) -> Self {
-        Self::ALL.into_iter().find(|place| place.address() == address).unwrap_or(Self::Sign)
+        Self::ALL
+            .into_iter()
+            .find(|place| place.address() == address)
+            .unwrap_or(Self::Sign)
     }
 }
 
@@ -152,7 +160,10 @@ impl Desk {
             Units::Metric => "mm",
             Units::FeetInches => FEET_INCHES,
         };
-        self.send(vec![Write { name: UNITS.to_owned(), value: Some(word.to_owned()) }]);
+        self.send(vec![Write {
+            name: UNITS.to_owned(),
+            value: Some(word.to_owned()),
+        }]);
     }
 
     /// Changes the job; see [`Document::edit_job`].
@@ -182,12 +193,14 @@ impl Desk {
 
     /// What undo would take back.
     pub fn undoes(&self) -> Option<String> {
-        self.document.with(|document| document.undoes().map(str::to_owned))
+        self.document
+            .with(|document| document.undoes().map(str::to_owned))
     }
 
     /// What redo would do again.
     pub fn redoes(&self) -> Option<String> {
-        self.document.with(|document| document.redoes().map(str::to_owned))
+        self.document
+            .with(|document| document.redoes().map(str::to_owned))
     }
 
     /// Texts that were kept and cannot be read.
@@ -197,12 +210,18 @@ impl Desk {
 
     /// Tells something that went well.
     pub fn tell(&self, says: impl Into<String>) {
-        self.message.set(Some(Message { trouble: false, says: vec![says.into()] }));
+        self.message.set(Some(Message {
+            trouble: false,
+            says: vec![says.into()],
+        }));
     }
 
     /// Tells of trouble.
     pub fn trouble(&self, says: Vec<String>) {
-        self.message.set(Some(Message { trouble: true, says }));
+        self.message.set(Some(Message {
+            trouble: true,
+            says,
+        }));
     }
 
     /// Puts what was kept on the desk and keeps every edit from now on; called once, at the start.

@@ -11,7 +11,14 @@
 //! | [`pictures`] | the sign, the loading bar | works out figures |
 //! | [`places`] | one file for each place, and the frame around them | works out figures |
 
-#![allow(unreachable_pub, reason = "the component macro makes what it writes pub, wherever it stands")]
+#![allow(
+    unreachable_pub,
+    reason = "the component macro makes what it writes pub, wherever it stands"
+)]
+#![allow(
+    clippy::needless_pass_by_value,
+    reason = "what a component is given, it is given for good"
+)]
 
 pub mod desk;
 pub mod document;

@@ -69,7 +69,10 @@ impl Document {
         for name in records::ASIDE {
             let known = document.aside.iter().any(|write| write.name == name);
             if let Some(text) = kept.get(name).filter(|_| !known) {
-                document.aside.push(Write { name: name.to_owned(), value: Some(text.clone()) });
+                document.aside.push(Write {
+                    name: name.to_owned(),
+                    value: Some(text.clone()),
+                });
             }
         }
         document.writes.clone_from(&document.aside);
@@ -150,8 +153,12 @@ impl Document {
     /// Takes the last step back.
     pub fn undo(&mut self) {
         self.settle();
-        let Some(last) = self.done.checked_sub(1) else { return };
-        let Some(step) = self.steps.get(last) else { return };
+        let Some(last) = self.done.checked_sub(1) else {
+            return;
+        };
+        let Some(step) = self.steps.get(last) else {
+            return;
+        };
         match &step.change {
             Change::Job(both) => self.job = both.0.clone(),
             Change::Book(both) => self.book = both.0.clone(),
@@ -164,7 +171,9 @@ impl Document {
     /// Does an undone step again.
     pub fn redo(&mut self) {
         self.settle();
-        let Some(step) = self.steps.get(self.done) else { return };
+        let Some(step) = self.steps.get(self.done) else {
+            return;
+        };
         match &step.change {
             Change::Job(both) => self.job = both.1.clone(),
             Change::Book(both) => self.book = both.1.clone(),
@@ -208,9 +217,13 @@ impl Document {
     fn push(&mut self, says: &str, change: Change) {
         while self.steps.len() > self.done {
             self.steps.pop_back();
-            self.writes.push(records::no_step(self.number(self.steps.len())));
+            self.writes
+                .push(records::no_step(self.number(self.steps.len())));
         }
-        self.steps.push_back(Step { says: says.to_owned(), change });
+        self.steps.push_back(Step {
+            says: says.to_owned(),
+            change,
+        });
         if self.steps.len() > MOST_STEPS {
             self.steps.pop_front();
             self.writes.push(records::no_step(self.first));
@@ -228,7 +241,11 @@ impl Document {
     }
 
     fn write_state(&mut self, job: bool) {
-        let document = if job { records::job(&self.job) } else { records::book(&self.book) };
+        let document = if job {
+            records::job(&self.job)
+        } else {
+            records::book(&self.book)
+        };
         let state = records::state(self.first, self.done, self.steps.len());
         self.writes.extend([document, state]);
     }
@@ -268,9 +285,17 @@ mod tests {
         document.settle();
         named(&mut document, "NOVA");
         document.undo();
-        assert_eq!(document.job().name, "NO", "the second visit is undone alone");
+        assert_eq!(
+            document.job().name,
+            "NO",
+            "the second visit is undone alone"
+        );
         document.undo();
-        assert_eq!(document.job().name, "New sign", "the first visit is one step");
+        assert_eq!(
+            document.job().name,
+            "New sign",
+            "the first visit is one step"
+        );
         assert_eq!(document.undoes(), None, "nothing is left to undo");
         document.redo();
         document.redo();
@@ -306,7 +331,9 @@ mod tests {
             document.settle();
             stored(&mut kept, &mut document);
         }
-        document.edit_book("name", "Name of the book", |book| "Bench".clone_into(&mut book.name));
+        document.edit_book("name", "Name of the book", |book| {
+            "Bench".clone_into(&mut book.name)
+        });
         document.undo();
         document.undo();
         stored(&mut kept, &mut document);
@@ -318,7 +345,11 @@ mod tests {
         for _ in 0..3 {
             back.redo();
         }
-        assert_eq!((&*back.job().name, &*back.book().name), ("C", "Bench"), "and redo before it");
+        assert_eq!(
+            (&*back.job().name, &*back.book().name),
+            ("C", "Bench"),
+            "and redo before it"
+        );
     }
 
     #[test]
@@ -330,7 +361,11 @@ mod tests {
             stored(&mut kept, &mut document);
         }
         // The steps, the job and the state; the book never changed.
-        assert_eq!(kept.len(), MOST_STEPS + 2, "one record for each step that is left");
+        assert_eq!(
+            kept.len(),
+            MOST_STEPS + 2,
+            "one record for each step that is left"
+        );
         let (mut back, _) = Document::restore(&kept, Job::default(), Book::default());
         while back.undoes().is_some() {
             back.undo();
@@ -343,7 +378,9 @@ mod tests {
         let (mut kept, mut document) = (Kept::new(), fresh());
         named(&mut document, "A");
         document.settle();
-        document.edit_book("name", "Name of the book", |book| "Bench".clone_into(&mut book.name));
+        document.edit_book("name", "Name of the book", |book| {
+            "Bench".clone_into(&mut book.name)
+        });
         stored(&mut kept, &mut document);
         kept.insert("job".to_owned(), "{\"tubewright\":".to_owned());
         let (back, trouble) = Document::restore(&kept, Job::default(), Book::default());
@@ -351,7 +388,11 @@ mod tests {
         assert_eq!(back.job().name, "A", "the job is taken from its last step");
         assert_eq!(trouble.len(), 1, "and it is said: {trouble:?}");
         let aside = vec![("unreadable-job".to_owned(), "{\"tubewright\":".to_owned())];
-        assert_eq!(back.set_aside(), aside, "its text is still there to be saved");
+        assert_eq!(
+            back.set_aside(),
+            aside,
+            "its text is still there to be saved"
+        );
         let mut back = back;
         stored(&mut kept, &mut back);
         let (again, _) = Document::restore(&kept, Job::default(), Book::default());

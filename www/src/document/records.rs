@@ -36,7 +36,10 @@ struct StepRecord {
 }
 
 fn write(name: impl Into<String>, value: String) -> Write {
-    Write { name: name.into(), value: Some(value) }
+    Write {
+        name: name.into(),
+        value: Some(value),
+    }
 }
 
 pub(super) fn job(job: &Job) -> Write {
@@ -48,7 +51,10 @@ pub(super) fn book(book: &Book) -> Write {
 }
 
 pub(super) fn state(first: u64, done: usize, steps: usize) -> Write {
-    write("state", serde_json::to_string(&State { first, done, steps }).unwrap_or_default())
+    write(
+        "state",
+        serde_json::to_string(&State { first, done, steps }).unwrap_or_default(),
+    )
 }
 
 pub(super) fn step(number: u64, step: &Step) -> Write {
@@ -56,12 +62,22 @@ pub(super) fn step(number: u64, step: &Step) -> Write {
         Change::Job(both) => (Some((**both).clone()), None),
         Change::Book(both) => (None, Some((**both).clone())),
     };
-    let record = StepRecord { says: step.says.clone(), job, book };
-    write(step_name(number), serde_json::to_string(&record).unwrap_or_default())
+    let record = StepRecord {
+        says: step.says.clone(),
+        job,
+        book,
+    };
+    write(
+        step_name(number),
+        serde_json::to_string(&record).unwrap_or_default(),
+    )
 }
 
 pub(super) fn no_step(number: u64) -> Write {
-    Write { name: step_name(number), value: None }
+    Write {
+        name: step_name(number),
+        value: None,
+    }
 }
 
 fn step_name(number: u64) -> String {
@@ -86,13 +102,18 @@ pub(super) const ASIDE: [&str; 2] = ["unreadable-job", "unreadable-book"];
 /// Reads records back; a sentence for each that cannot be read.
 pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
     let (mut found, mut trouble) = (Found::default(), Vec::new());
-    if let Some(state) = kept.get("state").and_then(|text| serde_json::from_str::<State>(text).ok())
+    if let Some(state) = kept
+        .get("state")
+        .and_then(|text| serde_json::from_str::<State>(text).ok())
     {
         found.first = state.first;
         found.done = state.done;
         // Steps stand on each other: a gap ends the history that can be walked.
         for number in (state.first..).take(state.steps) {
-            let Some(step) = kept.get(&step_name(number)).and_then(|text| read_step(text)) else {
+            let Some(step) = kept
+                .get(&step_name(number))
+                .and_then(|text| read_step(text))
+            else {
                 trouble.push(
                     "A part of the undo history could not be read and was let go.".to_owned(),
                 );
@@ -107,12 +128,19 @@ pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
         Some(Ok(job)) => found.job = Some(job),
         Some(Err(why)) => {
             let done = found.done.min(found.steps.len());
-            found.job = found.steps[..done].iter().rev().find_map(|step| match &step.change {
-                Change::Job(both) => Some(both.1.clone()),
-                Change::Book(_) => None,
-            });
-            trouble.push(format!("The job kept on this device could not be read. {why}"));
-            found.unreadable.extend(kept.get("job").map(|text| write(ASIDE[0], text.clone())));
+            found.job = found.steps[..done]
+                .iter()
+                .rev()
+                .find_map(|step| match &step.change {
+                    Change::Job(both) => Some(both.1.clone()),
+                    Change::Book(_) => None,
+                });
+            trouble.push(format!(
+                "The job kept on this device could not be read. {why}"
+            ));
+            found
+                .unreadable
+                .extend(kept.get("job").map(|text| write(ASIDE[0], text.clone())));
         }
         None => {}
     }
@@ -120,12 +148,19 @@ pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
         Some(Ok(book)) => found.book = Some(book),
         Some(Err(why)) => {
             let done = found.done.min(found.steps.len());
-            found.book = found.steps[..done].iter().rev().find_map(|step| match &step.change {
-                Change::Book(both) => Some(both.1.clone()),
-                Change::Job(_) => None,
-            });
-            trouble.push(format!("The shop book kept on this device could not be read. {why}"));
-            found.unreadable.extend(kept.get("book").map(|text| write(ASIDE[1], text.clone())));
+            found.book = found.steps[..done]
+                .iter()
+                .rev()
+                .find_map(|step| match &step.change {
+                    Change::Book(both) => Some(both.1.clone()),
+                    Change::Job(_) => None,
+                });
+            trouble.push(format!(
+                "The shop book kept on this device could not be read. {why}"
+            ));
+            found
+                .unreadable
+                .extend(kept.get("book").map(|text| write(ASIDE[1], text.clone())));
         }
         None => {}
     }
@@ -139,5 +174,8 @@ fn read_step(text: &str) -> Option<Step> {
         (None, Some(both)) => Change::Book(Box::new(both)),
         _ => return None,
     };
-    Some(Step { says: record.says, change })
+    Some(Step {
+        says: record.says,
+        change,
+    })
 }

@@ -20,7 +20,9 @@ pub fn book() -> Book {
 
 /// The invented jobs.
 pub fn jobs() -> Vec<Job> {
-    JOBS.iter().filter_map(|text| job::read(text).ok()).collect()
+    JOBS.iter()
+        .filter_map(|text| job::read(text).ok())
+        .collect()
 }
 
 /// What the page opens on when nothing was kept.
@@ -36,9 +38,16 @@ mod tests {
     fn every_demo_file_is_read() {
         assert_eq!(jobs().len(), JOBS.len(), "all jobs");
         assert!(book().supplies.len() >= 20, "supplies to choose from");
-        assert!(book().name.contains("invented"), "and it says it is invented");
+        assert!(
+            book().name.contains("invented"),
+            "and it says it is invented"
+        );
         for job in jobs() {
-            assert!(job.note.to_lowercase().contains("invented"), "{} says so too", job.name);
+            assert!(
+                job.note.to_lowercase().contains("invented"),
+                "{} says so too",
+                job.name
+            );
         }
     }
 }

@@ -9,7 +9,9 @@ use crate::desk::{Desk, Where};
 
 /// The file of an input element was chosen.
 pub fn choose(desk: Desk, event: &web_sys::Event) {
-    let Some(input) = event.target().and_then(|to| to.dyn_into::<web_sys::HtmlInputElement>().ok())
+    let Some(input) = event
+        .target()
+        .and_then(|to| to.dyn_into::<web_sys::HtmlInputElement>().ok())
     else {
         return;
     };
@@ -53,7 +55,10 @@ pub fn put(desk: Desk, opened: Opened) {
     desk.settle();
     match opened {
         Opened::Job(job) => {
-            let says = format!("Opened the job “{}”. Undo brings the one before back.", job.name);
+            let says = format!(
+                "Opened the job “{}”. Undo brings the one before back.",
+                job.name
+            );
             desk.edit_job("open", "Open a job", |open| *open = *job);
             desk.piece.set(None);
             desk.circuit.set(0);

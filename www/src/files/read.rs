@@ -31,7 +31,10 @@ pub fn read(name: &str, bytes: &[u8]) -> Result<Opened, String> {
             "{file} was not opened: it is larger than any job or shop book (20 MB)."
         ));
     }
-    let start = bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes).trim_ascii_start();
+    let start = bytes
+        .strip_prefix(b"\xef\xbb\xbf")
+        .unwrap_or(bytes)
+        .trim_ascii_start();
     if start.is_empty() {
         return Err(format!("{file} was not opened: it is empty."));
     }
@@ -40,14 +43,26 @@ pub fn read(name: &str, bytes: &[u8]) -> Result<Opened, String> {
         let text = core::str::from_utf8(bytes)
             .map_err(|error| told(format!("It is not UTF-8 text: {error}.")))?;
         return if says_book(text) {
-            book::read(text).map(|book| Opened::Book(Box::new(book))).map_err(told)
+            book::read(text)
+                .map(|book| Opened::Book(Box::new(book)))
+                .map_err(told)
         } else {
-            job::read(text).map(|job| Opened::Job(Box::new(job))).map_err(told)
+            job::read(text)
+                .map(|job| Opened::Job(Box::new(job)))
+                .map_err(told)
         };
     }
-    let line = start.split(|&byte| byte == b'\n').next().unwrap_or_default();
+    let line = start
+        .split(|&byte| byte == b'\n')
+        .next()
+        .unwrap_or_default();
     let names = String::from_utf8_lossy(line).to_ascii_lowercase();
-    let list = |trouble: Vec<String>| trouble.into_iter().map(|why| format!("{file}: {why}")).collect();
+    let list = |trouble: Vec<String>| {
+        trouble
+            .into_iter()
+            .map(|why| format!("{file}: {why}"))
+            .collect()
+    };
     if names.contains("no_load_volts") || names.contains("short_circuit_ma") {
         let sheet = read_supplies(bytes).map_err(told)?;
         some(Opened::Supplies(sheet.entries, list(sheet.trouble)), &file)
@@ -84,7 +99,9 @@ fn some(opened: Opened, file: &str) -> Result<Opened, String> {
         _ => false,
     };
     if none {
-        let why = trouble.first().map_or("It has no lines after the first.", String::as_str);
+        let why = trouble
+            .first()
+            .map_or("It has no lines after the first.", String::as_str);
         return Err(format!("Nothing was taken from {file}. {why}"));
     }
     Ok(opened)
@@ -95,15 +112,12 @@ fn some(opened: Opened, file: &str) -> Result<Opened, String> {
 pub fn merge<T>(list: &mut Vec<T>, entries: Vec<T>, name: fn(&T) -> &str) -> (usize, usize) {
     let (mut replaced, mut added) = (0, 0);
     for entry in entries {
-        match list.iter_mut().find(|old| name(old) == name(&entry)) {
-            Some(old) => {
-                *old = entry;
-                replaced += 1;
-            }
-            None => {
-                list.push(entry);
-                added += 1;
-            }
+        if let Some(old) = list.iter_mut().find(|old| name(old) == name(&entry)) {
+            *old = entry;
+            replaced += 1;
+        } else {
+            list.push(entry);
+            added += 1;
         }
     }
     (replaced, added)
@@ -120,36 +134,70 @@ mod tests {
     #[test]
     fn files_are_known_by_what_is_in_them() {
         let job = job::write(&Job::default());
-        assert!(matches!(read("a.txt", job.as_bytes()), Ok(Opened::Job(_))), "a job");
+        assert!(
+            matches!(read("a.txt", job.as_bytes()), Ok(Opened::Job(_))),
+            "a job"
+        );
         let book = book::write(&Book::default());
-        assert!(matches!(read("b", book.as_bytes()), Ok(Opened::Book(_))), "a book");
+        assert!(
+            matches!(read("b", book.as_bytes()), Ok(Opened::Book(_))),
+            "a book"
+        );
         let marked = [b"\xef\xbb\xbf".as_slice(), book.as_bytes()].concat();
-        assert!(matches!(read("b", &marked), Ok(Opened::Book(_))), "a book with a mark before it");
+        assert!(
+            matches!(read("b", &marked), Ok(Opened::Book(_))),
+            "a book with a mark before it"
+        );
         let list = b"name;no_load_volts;short_circuit_ma\nA;6000;30\n";
         assert!(
             matches!(read("c", list), Ok(Opened::Supplies(entries, _)) if entries.len() == 1),
             "a list"
         );
         let list = b"name,gas,outer_mm\n12 neon,neon,12\n";
-        assert!(matches!(read("d", list), Ok(Opened::Tubes(entries, _)) if entries.len() == 1), "tubes");
+        assert!(
+            matches!(read("d", list), Ok(Opened::Tubes(entries, _)) if entries.len() == 1),
+            "tubes"
+        );
     }
 
     #[test]
     fn what_cannot_be_read_gets_a_sentence() {
         assert!(why("x.json", b"").contains("empty"), "nothing in it");
-        assert!(why("x.json", b"{\"tubewright\": \"job\", ").contains("x.json"), "names the file");
-        assert!(why("x.json", b"{\"tubewright\": \"job\", ").contains("line 1"), "and the place");
-        assert!(why("photo.jpg", &[0xff, 0xd8, 0xff, 0xe0]).contains("neither"), "a picture");
-        assert!(why("x.csv", b"name,no_load_volts\n").contains("no lines"), "a list of nothing");
+        assert!(
+            why("x.json", b"{\"tubewright\": \"job\", ").contains("x.json"),
+            "names the file"
+        );
+        assert!(
+            why("x.json", b"{\"tubewright\": \"job\", ").contains("line 1"),
+            "and the place"
+        );
+        assert!(
+            why("photo.jpg", &[0xff, 0xd8, 0xff, 0xe0]).contains("neither"),
+            "a picture"
+        );
+        assert!(
+            why("x.csv", b"name,no_load_volts\n").contains("no lines"),
+            "a list of nothing"
+        );
         let newer = "{\"tubewright\":\"book\",\"version\":9,\"name\":\"x\"}";
-        assert!(why("x", newer.as_bytes()).contains("version 9"), "a newer book");
-        assert!(why("x", &vec![b'a'; MOST_BYTES + 1]).contains("20 MB"), "too large");
+        assert!(
+            why("x", newer.as_bytes()).contains("version 9"),
+            "a newer book"
+        );
+        assert!(
+            why("x", &vec![b'a'; MOST_BYTES + 1]).contains("20 MB"),
+            "too large"
+        );
     }
 
     #[test]
     fn a_list_adds_and_replaces_and_removes_nothing() {
         let mut list = vec![("a", 1), ("b", 2)];
-        assert_eq!(merge(&mut list, vec![("b", 3), ("c", 4)], |entry| entry.0), (1, 1), "counted");
+        assert_eq!(
+            merge(&mut list, vec![("b", 3), ("c", 4)], |entry| entry.0),
+            (1, 1),
+            "counted"
+        );
         assert_eq!(list, [("a", 1), ("b", 3), ("c", 4)], "a is still there");
     }
 }

@@ -53,7 +53,11 @@ impl Saved {
 
     /// A text that was kept and could not be read, as it is.
     pub fn as_kept(name: &str, text: String) -> Self {
-        Self { name: format!("{name}.json"), media: "application/json", text }
+        Self {
+            name: format!("{name}.json"),
+            media: "application/json",
+            text,
+        }
     }
 }
 
@@ -68,7 +72,11 @@ fn file_name(name: &str, what: &str, ending: &str) -> String {
         }
     }
     let plain = plain.trim_end_matches('-');
-    if plain.is_empty() { format!("{what}.{ending}") } else { format!("{plain}.{what}.{ending}") }
+    if plain.is_empty() {
+        format!("{what}.{ending}")
+    } else {
+        format!("{plain}.{what}.{ending}")
+    }
 }
 
 /// Hands a file to the browser to be saved.
@@ -87,7 +95,9 @@ fn hand_over(file: &Saved) -> Result<(), wasm_bindgen::JsValue> {
     kind.set_type(file.media);
     let blob = web_sys::Blob::new_with_str_sequence_and_options(&parts, &kind)?;
     let address = web_sys::Url::create_object_url_with_blob(&blob)?;
-    let link = document.create_element("a")?.dyn_into::<web_sys::HtmlAnchorElement>()?;
+    let link = document
+        .create_element("a")?
+        .dyn_into::<web_sys::HtmlAnchorElement>()?;
     link.set_href(&address);
     link.set_download(&file.name);
     link.click();
@@ -96,7 +106,7 @@ fn hand_over(file: &Saved) -> Result<(), wasm_bindgen::JsValue> {
         move || {
             let _ = web_sys::Url::revoke_object_url(&address);
         },
-        core::time::Duration::from_secs(60),
+        core::time::Duration::from_mins(1),
     );
     Ok(())
 }
@@ -107,7 +117,10 @@ mod tests {
 
     #[test]
     fn file_names_are_plain() {
-        assert_eq!(file_name("Fennel & Fig, front", "job", "json"), "fennel-fig-front.job.json");
+        assert_eq!(
+            file_name("Fennel & Fig, front", "job", "json"),
+            "fennel-fig-front.job.json"
+        );
         assert_eq!(file_name("../../etc", "job", "json"), "etc.job.json");
         assert_eq!(file_name("Ωμέγα 2", "book", "json"), "ωμέγα-2.book.json");
         assert_eq!(file_name("…", "tubes", "csv"), "tubes.csv");

@@ -1,4 +1,4 @@
-//! Keeping records on the device: the only code that touches IndexedDB.
+//! Keeping records on the device: the only code that touches `IndexedDB`.
 //!
 //! Each batch of writes is one transaction, so a record and the state that points at it are stored
 //! together or not at all.
@@ -41,7 +41,9 @@ pub struct Keeper {
 
 impl core::fmt::Debug for Keeper {
     fn fmt(&self, f: &mut core::fmt::Formatter<'_>) -> core::fmt::Result {
-        f.debug_struct("Keeper").field("waiting", &self.waiting.borrow().len()).finish()
+        f.debug_struct("Keeper")
+            .field("waiting", &self.waiting.borrow().len())
+            .finish_non_exhaustive()
     }
 }
 
@@ -117,7 +119,10 @@ async fn read_all(database: &Rexie) -> Result<Kept, rexie::Error> {
     let all = store.scan(None, None, None, None).await?;
     transaction.done().await?;
     let text = |value: &JsValue| value.as_string();
-    Ok(all.iter().filter_map(|(name, value)| Some((text(name)?, text(value)?))).collect())
+    Ok(all
+        .iter()
+        .filter_map(|(name, value)| Some((text(name)?, text(value)?)))
+        .collect())
 }
 
 async fn write_all(database: &Rexie, writes: &[Write]) -> Result<(), rexie::Error> {

@@ -50,7 +50,11 @@ fn percent(share: f64) -> String {
 fn place(window: &Window, share: f64) -> f64 {
     let at = share / (window.stop_from * BEYOND_STOP);
     // Nothing known to run stands at the far end.
-    if at.is_finite() { at.clamp(0.0, 1.0) } else { 1.0 }
+    if at.is_finite() {
+        at.clamp(0.0, 1.0)
+    } else {
+        1.0
+    }
 }
 
 fn zones(window: &Window) -> Vec<(&'static str, f64, f64)> {
@@ -78,7 +82,10 @@ fn ticks(window: &Window) -> Vec<(f64, String)> {
 }
 
 fn says(window: &Window, shares: &[f64]) -> String {
-    let runs: Vec<String> = shares.iter().map(|share| format!("{:.0} %", share * 100.0)).collect();
+    let runs: Vec<String> = shares
+        .iter()
+        .map(|share| format!("{:.0} %", share * 100.0))
+        .collect();
     let of = match window.basis {
         Basis::NoLoad => "no-load volts",
         Basis::RatedLoad => "the rated load volts",
@@ -105,7 +112,10 @@ mod tests {
                 let window = circuit.assessment.window;
                 let zones = zones(&window);
                 assert_eq!(zones[0].1, 0.0, "starts at nothing");
-                assert!((zones[zones.len() - 1].2 - 1.0).abs() < 1e-12, "ends at the end");
+                assert!(
+                    (zones[zones.len() - 1].2 - 1.0).abs() < 1e-12,
+                    "ends at the end"
+                );
                 for pair in zones.windows(2) {
                     assert_eq!(pair[0].2, pair[1].1, "{} then {}", pair[0].0, pair[1].0);
                 }

@@ -152,10 +152,19 @@ mod tests {
         for job in demo::jobs() {
             let worked = workup(&job, &demo::book());
             let found = scene(&worked, None);
-            assert_eq!(found.pieces.len(), worked.takeoff.pieces.len(), "{}", job.name);
+            assert_eq!(
+                found.pieces.len(),
+                worked.takeoff.pieces.len(),
+                "{}",
+                job.name
+            );
             let together: usize = found.layers.iter().map(|layer| layer.path.len()).sum();
             let alone: usize = found.pieces.iter().map(String::len).sum();
-            assert_eq!(together, alone, "{}: the layers hold the pieces, no more", job.name);
+            assert_eq!(
+                together, alone,
+                "{}: the layers hold the pieces, no more",
+                job.name
+            );
             assert_eq!(found.badges.len(), worked.circuits.len(), "{}", job.name);
         }
     }
@@ -164,12 +173,22 @@ mod tests {
     fn a_circuit_in_focus_sets_the_others_back() {
         let job = demo::jobs().remove(1);
         let worked = workup(&job, &demo::book());
-        assert!(worked.circuits.len() > 1, "the shop front has several circuits");
+        assert!(
+            worked.circuits.len() > 1,
+            "the shop front has several circuits"
+        );
         let found = scene(&worked, Some(0));
-        let bright: String =
-            found.layers.iter().filter(|layer| !layer.dim).map(|layer| &*layer.path).collect();
-        let mine: usize =
-            worked.circuits[0].pieces.iter().map(|&at| found.pieces[at].len()).sum();
+        let bright: String = found
+            .layers
+            .iter()
+            .filter(|layer| !layer.dim)
+            .map(|layer| &*layer.path)
+            .collect();
+        let mine: usize = worked.circuits[0]
+            .pieces
+            .iter()
+            .map(|&at| found.pieces[at].len())
+            .sum();
         assert_eq!(bright.len(), mine, "only its pieces shine");
     }
 }

@@ -53,7 +53,12 @@ pub fn SignPicture(
         // Electrodes are drawn larger than they are, but never so large that letters drown in them.
         let electrode = (0.9 * scene.layers.first().map_or(10.0, |layer| layer.width_mm))
             .clamp(4.0 * px, 9.0 * px);
-        let says = says(&scene.layers, scene.pieces.len(), desk.units.get(), &caption);
+        let says = says(
+            &scene.layers,
+            scene.pieces.len(),
+            desk.units.get(),
+            &caption,
+        );
         let hits: Vec<_> = scene
             .pieces
             .iter()
@@ -144,7 +149,10 @@ fn number(badge: &Badge, px: f64) -> impl IntoView + Clone + use<> {
 }
 
 fn says(layers: &[Layer], pieces: usize, units: Units, bar: &str) -> String {
-    let colours = layers.iter().map(|layer| &layer.colour).collect::<std::collections::HashSet<_>>();
+    let colours = layers
+        .iter()
+        .map(|layer| &layer.colour)
+        .collect::<std::collections::HashSet<_>>();
     let system = match units {
         Units::Metric => "metric",
         Units::FeetInches => "feet and inches",
@@ -167,7 +175,10 @@ fn window_size() -> RwSignal<(f64, f64)> {
             value.ok().and_then(|value| value.as_f64()).unwrap_or(or)
         };
         let window = window();
-        (figure(window.inner_width(), 820.0), figure(window.inner_height(), 1180.0))
+        (
+            figure(window.inner_width(), 820.0),
+            figure(window.inner_height(), 1180.0),
+        )
     }
     let size = RwSignal::new(now());
     let handle = window_event_listener(leptos::ev::resize, move |_| size.set(now()));

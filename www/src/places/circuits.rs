@@ -77,7 +77,8 @@ pub fn Circuits() -> impl IntoView {
     };
     let detail = move || {
         let results = desk.results.get();
-        (open.get() < results.circuits.len()).then(|| view! { <Detail number=open.get() results=results/> })
+        (open.get() < results.circuits.len())
+            .then(|| view! { <Detail number=open.get() results=results/> })
     };
     let refused = move || {
         let results = desk.results.get();
@@ -147,7 +148,9 @@ fn labels(results: &Results, circuit: &CircuitWork) -> Vec<String> {
 
 fn current_and_volts(operating: &Operating) -> (String, String) {
     match *operating {
-        Operating::Runs { current, running, .. } => (milliamps_shown(current), volts_shown(running)),
+        Operating::Runs {
+            current, running, ..
+        } => (milliamps_shown(current), volts_shown(running)),
         Operating::Overloaded { wanted, .. } => {
             ("none".to_owned(), format!("over {}", volts_shown(wanted)))
         }
@@ -155,7 +158,11 @@ fn current_and_volts(operating: &Operating) -> (String, String) {
 }
 
 fn earth_word(results: &Results) -> &'static str {
-    results.rules.as_ref().map_or(EarthWord::Earth, |rules| rules.earth_word).word()
+    results
+        .rules
+        .as_ref()
+        .map_or(EarthWord::Earth, |rules| rules.earth_word)
+        .word()
 }
 
 #[component]

@@ -238,8 +238,15 @@ mod tests {
         assert_eq!(optional_number("7,5"), Ok(Some(7.5)), "decimal comma");
         assert!(optional_number("NaN").is_err(), "not a number");
         assert!(optional_number("1e999").is_err(), "beyond all numbers");
-        assert!(number("-3").is_err_and(|why| why.contains("0 or more")), "negative");
+        assert!(
+            number("-3").is_err_and(|why| why.contains("0 or more")),
+            "negative"
+        );
         assert!(money("12.345.6").is_err(), "two points");
-        assert_eq!(money("12,50").map(|m| m.to_string()), Ok("12.50".to_owned()), "kept exact");
+        assert_eq!(
+            money("12,50").map(|m| m.to_string()),
+            Ok("12.50".to_owned()),
+            "kept exact"
+        );
     }
 }

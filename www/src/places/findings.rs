@@ -57,11 +57,10 @@ fn belongs(desk: Desk, place: &Place) -> String {
         Place::Job => "the job".to_owned(),
         Place::Row(row) => format!("row {}", row + 1),
         Place::Piece(piece) => desk.results.with_untracked(|results| {
-            results
-                .takeoff
-                .pieces
-                .get(*piece)
-                .map_or_else(|| "a piece".to_owned(), |found| format!("piece “{}”", found.label))
+            results.takeoff.pieces.get(*piece).map_or_else(
+                || "a piece".to_owned(),
+                |found| format!("piece “{}”", found.label),
+            )
         }),
         Place::Circuit(number) => format!("circuit {}", number + 1),
         Place::Supply(name) | Place::Tube(name) | Place::Rules(name) => name.clone(),
@@ -76,7 +75,8 @@ pub fn FindingsList() -> impl IntoView {
     let list = move || {
         let results = desk.results.get();
         if results.findings.is_empty() {
-            return view! { <p class="quiet">"Nothing to say: no stop, no look, no note."</p> }.into_any();
+            return view! { <p class="quiet">"Nothing to say: no stop, no look, no note."</p> }
+                .into_any();
         }
         results
             .findings

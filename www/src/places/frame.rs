@@ -107,7 +107,10 @@ fn Header(files_open: RwSignal<bool>) -> impl IntoView {
     let can_undo = Memo::new(move |_| desk.undoes());
     let can_redo = Memo::new(move |_| desk.redoes());
     let named = |verb: &str, step: Option<String>| {
-        step.map_or_else(|| format!("Nothing to {verb}"), |step| format!("{verb}: {step}"))
+        step.map_or_else(
+            || format!("Nothing to {verb}"),
+            |step| format!("{verb}: {step}"),
+        )
     };
     view! {
         <header class="head">
@@ -232,9 +235,10 @@ fn Strip(findings_open: RwSignal<bool>) -> impl IntoView {
     };
     let gravest = move || {
         desk.results.with(|results| match results.findings.first() {
-            Some(finding) if finding.grade > Grade::Note => {
-                (finding.grade.word(), format!("{}: {}", finding.grade.word(), finding.says))
-            }
+            Some(finding) if finding.grade > Grade::Note => (
+                finding.grade.word(),
+                format!("{}: {}", finding.grade.word(), finding.says),
+            ),
             _ if results.takeoff.pieces.is_empty() => ("note", "nothing to build yet".to_owned()),
             Some(_) => ("fits", "fits: no stop, no look; read the notes".to_owned()),
             None => ("fits", "fits: nothing found".to_owned()),

@@ -20,7 +20,11 @@ pub fn Glass() -> impl IntoView {
                 .tubes
                 .iter()
                 .map(|total| {
-                    let colour = total.tube.as_ref().map(|tube| tube.colour.clone()).unwrap_or_default();
+                    let colour = total
+                        .tube
+                        .as_ref()
+                        .map(|tube| tube.colour.clone())
+                        .unwrap_or_default();
                     let volts = total.tube.as_ref().map(|tube| {
                         format!(
                             "{:.0} V/m at {} mA and {:.0} V for each electrode pair{}",
@@ -28,7 +32,9 @@ pub fn Glass() -> impl IntoView {
                             tube.at_ma,
                             tube.pair_volts,
                             tube.model_uncertainty_percent
-                                .map_or_else(String::new, |percent| format!(", ±{percent} % (model)"))
+                                .map_or_else(String::new, |percent| format!(
+                                    ", ±{percent} % (model)"
+                                ))
                         )
                     });
                     view! {

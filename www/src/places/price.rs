@@ -10,7 +10,9 @@ use crate::desk::{Where, desk};
 pub(super) fn amount(amount: Decimal) -> String {
     let text = format!("{:.2}", amount.round_dp(2));
     let (whole, rest) = text.split_once('.').unwrap_or((&text, "00"));
-    let (sign, digits) = whole.strip_prefix('-').map_or(("", whole), |digits| ("−", digits));
+    let (sign, digits) = whole
+        .strip_prefix('-')
+        .map_or(("", whole), |digits| ("−", digits));
     let mut out = String::from(sign);
     for (i, c) in digits.chars().enumerate() {
         if i > 0 && (digits.len() - i).is_multiple_of(3) {
@@ -69,7 +71,8 @@ pub fn Price() -> impl IntoView {
         })
     };
     let said = move || {
-        desk.results.with(|results| results.quote.findings.iter().map(line).collect::<Vec<_>>())
+        desk.results
+            .with(|results| results.quote.findings.iter().map(line).collect::<Vec<_>>())
     };
     let waste = move || desk.book.with(|book| book.allowances.waste_percent);
     view! {
@@ -108,6 +111,9 @@ mod tests {
     fn amounts_have_cents_and_groups() {
         assert_eq!(amount(Decimal::new(118_400, 2)), "1\u{202f}184.00");
         assert_eq!(amount(Decimal::new(-5, 2)), "−0.05");
-        assert_eq!(amount(Decimal::new(1_234_567_891, 3)), "1\u{202f}234\u{202f}567.89");
+        assert_eq!(
+            amount(Decimal::new(1_234_567_891, 3)),
+            "1\u{202f}234\u{202f}567.89"
+        );
     }
 }

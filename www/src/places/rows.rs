@@ -36,10 +36,15 @@ pub fn Rows() -> impl IntoView {
 
 /// A new row takes height, face and tube of the last of its kind.
 fn add(desk: Desk, text: bool) {
-    let tube = desk.job.with_untracked(|job| job.rows.last().map(|row| row.tube().to_owned()));
+    let tube = desk
+        .job
+        .with_untracked(|job| job.rows.last().map(|row| row.tube().to_owned()));
     let tube = tube.unwrap_or_else(|| {
         desk.book.with_untracked(|book| {
-            book.tubes.first().map(|tube| tube.name.clone()).unwrap_or_default()
+            book.tubes
+                .first()
+                .map(|tube| tube.name.clone())
+                .unwrap_or_default()
         })
     });
     let last = desk.job.with_untracked(|job| {
@@ -91,19 +96,25 @@ fn edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut Row)) {
 fn RowCard(at: usize) -> impl IntoView {
     let desk = desk();
     let is_text = Memo::new(move |_| {
-        desk.job.with(|job| matches!(job.rows.get(at), Some(Row::Text(_))))
+        desk.job
+            .with(|job| matches!(job.rows.get(at), Some(Row::Text(_))))
     });
     let read = move |get: fn(&Row) -> String| {
         Signal::derive(move || desk.job.with(|job| part(job, at, get)))
     };
     let tubes = Signal::derive(move || {
         desk.book.with(|book| {
-            book.tubes.iter().map(|tube| (tube.name.clone(), tube.name.clone())).collect::<Vec<_>>()
+            book.tubes
+                .iter()
+                .map(|tube| (tube.name.clone(), tube.name.clone()))
+                .collect::<Vec<_>>()
         })
     });
     let colour = Memo::new(move |_| {
         desk.results.with(|results| {
-            let name = desk.job.with(|job| part(job, at, |row| row.tube().to_owned()));
+            let name = desk
+                .job
+                .with(|job| part(job, at, |row| row.tube().to_owned()));
             results
                 .tubes
                 .iter()
@@ -241,7 +252,11 @@ fn RowCard(at: usize) -> impl IntoView {
                         desk.units.get(),
                     )
                 };
-                format!("{} wide, {} high", shown(bounds.width()), shown(bounds.height()))
+                format!(
+                    "{} wide, {} high",
+                    shown(bounds.width()),
+                    shown(bounds.height())
+                )
             })
         })
     };

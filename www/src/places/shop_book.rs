@@ -128,28 +128,56 @@ fn Supplies() -> impl IntoView {
 }
 
 fn supply_edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut SupplyEntry)) {
-    desk.edit_book(&format!("supply {at} {field}"), &format!("Supply: {field}"), |book| {
-        if let Some(entry) = book.supplies.get_mut(at) {
-            edit(entry);
-        }
-    });
+    desk.edit_book(
+        &format!("supply {at} {field}"),
+        &format!("Supply: {field}"),
+        |book| {
+            if let Some(entry) = book.supplies.get_mut(at) {
+                edit(entry);
+            }
+        },
+    );
 }
 
 type Figure<T> = (&'static str, fn(&T) -> Option<f64>, fn(&mut T, Option<f64>));
 
 const SUPPLY_FIGURES: [Figure<SupplyEntry>; 13] = [
-    ("No-load volts, V", |s| s.no_load_volts, |s, v| s.no_load_volts = v),
-    ("Short-circuit current, mA", |s| s.short_circuit_ma, |s, v| s.short_circuit_ma = v),
+    (
+        "No-load volts, V",
+        |s| s.no_load_volts,
+        |s, v| s.no_load_volts = v,
+    ),
+    (
+        "Short-circuit current, mA",
+        |s| s.short_circuit_ma,
+        |s, v| s.short_circuit_ma = v,
+    ),
     ("Rated current, mA", |s| s.rated_ma, |s, v| s.rated_ma = v),
-    ("Volts at rated current (electronic), V", |s| s.rated_load_volts, |s, v| s.rated_load_volts = v),
+    (
+        "Volts at rated current (electronic), V",
+        |s| s.rated_load_volts,
+        |s, v| s.rated_load_volts = v,
+    ),
     ("Input, V", |s| s.input_volts, |s, v| s.input_volts = v),
     ("Input, Hz", |s| s.input_hertz, |s, v| s.input_hertz = v),
     ("Input, VA", |s| s.input_va, |s, v| s.input_va = v),
     ("Trip current, mA", |s| s.trip_ma, |s, v| s.trip_ma = v),
-    ("Trip time, s", |s| s.trip_seconds, |s, v| s.trip_seconds = v),
+    (
+        "Trip time, s",
+        |s| s.trip_seconds,
+        |s, v| s.trip_seconds = v,
+    ),
     ("Output, Hz", |s| s.output_hertz, |s, v| s.output_hertz = v),
-    ("Plate's least load, % of no-load volts", |s| s.least_load_percent, |s, v| s.least_load_percent = v),
-    ("Plate's most load, % of no-load volts", |s| s.most_load_percent, |s, v| s.most_load_percent = v),
+    (
+        "Plate's least load, % of no-load volts",
+        |s| s.least_load_percent,
+        |s, v| s.least_load_percent = v,
+    ),
+    (
+        "Plate's most load, % of no-load volts",
+        |s| s.most_load_percent,
+        |s, v| s.most_load_percent = v,
+    ),
     (
         "On the shelf",
         |s| s.stock.map(f64::from),
@@ -166,7 +194,10 @@ const SUPPLY_FIGURES: [Figure<SupplyEntry>; 13] = [
 fn SupplyForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
     let desk = desk();
     let read = move |get: fn(&SupplyEntry) -> String| {
-        Signal::derive(move || desk.book.with(|book| book.supplies.get(at).map(get).unwrap_or_default()))
+        Signal::derive(move || {
+            desk.book
+                .with(|book| book.supplies.get(at).map(get).unwrap_or_default())
+        })
     };
     let figures: Vec<_> = SUPPLY_FIGURES
         .into_iter()
@@ -188,10 +219,11 @@ fn SupplyForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
         })
         .collect();
     let said = move || {
-        desk.book.with(|book| match book.supplies.get(at).map(Rating::read) {
-            Some(Err(wrong)) => Some(lines(&wrong)),
-            _ => None,
-        })
+        desk.book
+            .with(|book| match book.supplies.get(at).map(Rating::read) {
+                Some(Err(wrong)) => Some(lines(&wrong)),
+                _ => None,
+            })
     };
     view! {
         <section class="panel form" aria-label="Supply">
@@ -316,7 +348,10 @@ const fn earthing_key(earthing: OutputEarthing) -> &'static str {
 }
 
 fn pairs(words: &[(&str, &str)]) -> Vec<(String, String)> {
-    words.iter().map(|&(value, words)| (value.to_owned(), words.to_owned())).collect()
+    words
+        .iter()
+        .map(|&(value, words)| (value.to_owned(), words.to_owned()))
+        .collect()
 }
 
 fn lines(findings: &[Finding]) -> Vec<impl IntoView + use<>> {
@@ -324,7 +359,11 @@ fn lines(findings: &[Finding]) -> Vec<impl IntoView + use<>> {
 }
 
 fn optional_money(text: &str) -> Result<Option<Decimal>, String> {
-    if text.trim().is_empty() { Ok(None) } else { money(text).map(Some) }
+    if text.trim().is_empty() {
+        Ok(None)
+    } else {
+        money(text).map(Some)
+    }
 }
 
 #[component]
@@ -390,30 +429,57 @@ fn Tubes() -> impl IntoView {
 }
 
 fn tube_edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut TubeEntry)) {
-    desk.edit_book(&format!("tube {at} {field}"), &format!("Tube type: {field}"), |book| {
-        if let Some(entry) = book.tubes.get_mut(at) {
-            edit(entry);
-        }
-    });
+    desk.edit_book(
+        &format!("tube {at} {field}"),
+        &format!("Tube type: {field}"),
+        |book| {
+            if let Some(entry) = book.tubes.get_mut(at) {
+                edit(entry);
+            }
+        },
+    );
 }
 
 const TUBE_FIGURES: [Figure<TubeEntry>; 9] = [
     ("Outer diameter, mm", |t| t.outer_mm, |t, v| t.outer_mm = v),
-    ("Wall, mm (1 when empty)", |t| t.wall_mm, |t, v| t.wall_mm = v),
+    (
+        "Wall, mm (1 when empty)",
+        |t| t.wall_mm,
+        |t, v| t.wall_mm = v,
+    ),
     ("Least current, mA", |t| t.least_ma, |t, v| t.least_ma = v),
     ("Greatest current, mA", |t| t.most_ma, |t, v| t.most_ma = v),
-    ("Running volts, V/m", |t| t.volts_per_m, |t, v| t.volts_per_m = v),
+    (
+        "Running volts, V/m",
+        |t| t.volts_per_m,
+        |t, v| t.volts_per_m = v,
+    ),
     ("… at, mA (25 when empty)", |t| t.at_ma, |t, v| t.at_ma = v),
-    ("Exponent of the fall with current", |t| t.exponent, |t, v| t.exponent = v),
-    ("Electrode pair, V", |t| t.pair_volts, |t, v| t.pair_volts = v),
-    ("Cold factor below 0 °C", |t| t.cold_factor, |t, v| t.cold_factor = v),
+    (
+        "Exponent of the fall with current",
+        |t| t.exponent,
+        |t, v| t.exponent = v,
+    ),
+    (
+        "Electrode pair, V",
+        |t| t.pair_volts,
+        |t, v| t.pair_volts = v,
+    ),
+    (
+        "Cold factor below 0 °C",
+        |t| t.cold_factor,
+        |t, v| t.cold_factor = v,
+    ),
 ];
 
 #[component]
 fn TubeForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
     let desk = desk();
     let read = move |get: fn(&TubeEntry) -> String| {
-        Signal::derive(move || desk.book.with(|book| book.tubes.get(at).map(get).unwrap_or_default()))
+        Signal::derive(move || {
+            desk.book
+                .with(|book| book.tubes.get(at).map(get).unwrap_or_default())
+        })
     };
     let figures: Vec<_> = TUBE_FIGURES
         .into_iter()
@@ -435,10 +501,11 @@ fn TubeForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
         })
         .collect();
     let said = move || {
-        desk.book.with(|book| match book.tubes.get(at).map(TubeType::read) {
-            Some(Err(wrong)) => Some(lines(&wrong)),
-            _ => None,
-        })
+        desk.book
+            .with(|book| match book.tubes.get(at).map(TubeType::read) {
+                Some(Err(wrong)) => Some(lines(&wrong)),
+                _ => None,
+            })
     };
     view! {
         <section class="panel form" aria-label="Tube type">
@@ -608,11 +675,31 @@ type Rate = (&'static str, fn(&Rates) -> Decimal, fn(&mut Rates, Decimal));
 
 const RATES: [Rate; 7] = [
     ("One electrode", |r| r.electrode, |r, v| r.electrode = v),
-    ("An hour of labour", |r| r.labour_hour, |r, v| r.labour_hour = v),
-    ("Minutes for each piece", |r| r.minutes_per_piece, |r, v| r.minutes_per_piece = v),
-    ("Minutes for each metre of glass", |r| r.minutes_per_m, |r, v| r.minutes_per_m = v),
-    ("Minutes for each circuit", |r| r.minutes_per_circuit, |r, v| r.minutes_per_circuit = v),
-    ("Markup, %", |r| r.markup_percent, |r, v| r.markup_percent = v),
+    (
+        "An hour of labour",
+        |r| r.labour_hour,
+        |r, v| r.labour_hour = v,
+    ),
+    (
+        "Minutes for each piece",
+        |r| r.minutes_per_piece,
+        |r, v| r.minutes_per_piece = v,
+    ),
+    (
+        "Minutes for each metre of glass",
+        |r| r.minutes_per_m,
+        |r, v| r.minutes_per_m = v,
+    ),
+    (
+        "Minutes for each circuit",
+        |r| r.minutes_per_circuit,
+        |r, v| r.minutes_per_circuit = v,
+    ),
+    (
+        "Markup, %",
+        |r| r.markup_percent,
+        |r, v| r.markup_percent = v,
+    ),
     ("Tax, %", |r| r.tax_percent, |r, v| r.tax_percent = v),
 ];
 
@@ -644,7 +731,7 @@ fn RatesForm() -> impl IntoView {
                     label="Currency"
                     value=Signal::derive(move || desk.book.with(|book| book.rates.currency.clone()))
                     commit=move |text: String| {
-                        desk.edit_book("currency", "Currency", |book| book.rates.currency = text.trim().to_owned());
+                        desk.edit_book("currency", "Currency", |book| text.trim().clone_into(&mut book.rates.currency));
                         Ok(())
                     }
                 />

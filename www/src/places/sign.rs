@@ -46,19 +46,23 @@ pub fn Sign() -> impl IntoView {
 #[component]
 fn Marked() -> impl IntoView {
     let desk = desk();
-    let panel = move || {
+    move || {
         let at = desk.piece.get()?;
         let results = desk.results.get();
         let piece = results.takeoff.pieces.get(at)?;
         let units = desk.units.get();
         let circuit = results.circuit_of(at);
-        let on = circuit.and_then(|number| results.circuits.get(number)).map(|circuit| {
-            let current = match circuit.assessment.heavier().operating {
-                tubewright::circuit::Operating::Runs { current, .. } => milliamps_shown(current),
-                tubewright::circuit::Operating::Overloaded { .. } => "no current".to_owned(),
-            };
-            format!("{}, {current}", circuit.supply.name)
-        });
+        let on = circuit
+            .and_then(|number| results.circuits.get(number))
+            .map(|circuit| {
+                let current = match circuit.assessment.heavier().operating {
+                    tubewright::circuit::Operating::Runs { current, .. } => {
+                        milliamps_shown(current)
+                    }
+                    tubewright::circuit::Operating::Overloaded { .. } => "no current".to_owned(),
+                };
+                format!("{}, {current}", circuit.supply.name)
+            });
         let button = circuit.map(|number| {
             view! {
                 <button class="link" on:click=move |_| {
@@ -83,14 +87,15 @@ fn Marked() -> impl IntoView {
                 <p>{on.unwrap_or_else(|| "on no circuit".to_owned())}" "{button}</p>
             </section>
         })
-    };
-    panel
+    }
 }
 
 #[component]
 fn JobPanel() -> impl IntoView {
     let desk = desk();
-    let text = move |get: fn(&Job) -> &String| Signal::derive(move || desk.job.with(|job| get(job).clone()));
+    let text = move |get: fn(&Job) -> &String| {
+        Signal::derive(move || desk.job.with(|job| get(job).clone()))
+    };
     let set = move |field: &'static str, set: fn(&mut Job, String)| {
         Callback::new(move |typed: String| {
             desk.edit_job(field, field, |job| set(job, typed));
@@ -100,7 +105,11 @@ fn JobPanel() -> impl IntoView {
     let rule_sets = Signal::derive(move || {
         desk.book.with(|book| {
             let mut sets = vec![(String::new(), "none".to_owned())];
-            sets.extend(book.rule_sets.iter().map(|set| (set.name.clone(), set.name.clone())));
+            sets.extend(
+                book.rule_sets
+                    .iter()
+                    .map(|set| (set.name.clone(), set.name.clone())),
+            );
             sets
         })
     });
@@ -191,8 +200,12 @@ pub(super) fn damp(word: &str) -> Dampness {
 
 /// All of them, to choose from.
 pub(super) fn damp_options() -> Vec<(String, String)> {
-    [("dry", "dry, indoors"), ("damp", "damp, sheltered"), ("wet", "wet, in the rain")]
-        .into_iter()
-        .map(|(value, words)| (value.to_owned(), words.to_owned()))
-        .collect()
+    [
+        ("dry", "dry, indoors"),
+        ("damp", "damp, sheltered"),
+        ("wet", "wet, in the rain"),
+    ]
+    .into_iter()
+    .map(|(value, words)| (value.to_owned(), words.to_owned()))
+    .collect()
 }
