@@ -11,7 +11,7 @@ use crate::job::Job;
 use crate::measure::{Length, quoted};
 use crate::plan::{self, Candidate, Task};
 use crate::quote::{self, GlassPart, Parts, Quote};
-use crate::rules::{EarthWord, Finding, Grade, Place, RuleSet, Source};
+use crate::rules::{Finding, Grade, Place, RuleSet, Source};
 use crate::supply::{self, Rating};
 use crate::takeoff::{Piece, Takeoff, takeoff};
 use crate::tube::TubeType;
@@ -157,9 +157,7 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         loading: &loading,
         wish: job.wish,
         cold: job.site.cold,
-        earth: rules
-            .as_ref()
-            .map_or_else(EarthWord::default, |rules| rules.earth_word),
+        rules: rules.as_ref(),
     };
     let planned = plan::plan(&task);
 
@@ -428,22 +426,28 @@ fn no_supply(left: &LeftOverWork, pieces: &[Piece]) -> Finding {
             label(left.pieces.last())
         )
     };
-    let nearest = left
-        .nearest
-        .as_ref()
-        .map_or_else(String::new, |(name, stop)| {
-            format!(" Nearest is {name}: {stop}")
-        });
+    let rest = match &left.nearest {
+        Some((name, stop)) => format!(
+            "Nearest is {name}: {stop} Would fit: {}",
+            small_first(&left.would_fit)
+        ),
+        None => left.would_fit.clone(),
+    };
     let at = left.pieces.first().copied().unwrap_or_default();
     Finding::new(
         Grade::Stop,
         Place::Piece(at),
-        format!(
-            "No supply runs {which}.{nearest} Would fit: {}",
-            left.would_fit
-        ),
+        format!("No supply runs {which}. {rest}"),
         Source::model(),
     )
+}
+
+/// A sentence as it stands after a colon.
+fn small_first(text: &str) -> String {
+    let mut chars = text.chars();
+    chars.next().map_or_else(String::new, |first| {
+        first.to_lowercase().chain(chars).collect()
+    })
 }
 
 /// Where the volts of a tube came from the default model, by how much they may be off.
@@ -557,6 +561,30 @@ mod tests {
             ..Book::default()
         };
         (job, book)
+    }
+
+    #[test]
+    fn what_no_supply_runs_is_said_in_whole_sentences() {
+        let (job, mut book) = bars();
+        book.supplies[0].no_load_volts = Some(2_000.0);
+        let says = |book: &Book| {
+            let mut found = workup(&job, book).findings;
+            found.remove(0).says.replace('\u{202f}', " ")
+        };
+        assert_eq!(
+            says(&book),
+            "No supply runs 3 pieces from “bar (1 of 3)” to “bar (3 of 3)”. Nearest is 4 kV 30 mA: \
+             Overloaded: the string wants 2 623 V where the supply gives at most 1 519 V; there is \
+             no current at which it runs. Would fit: a supply of about 3 800 V no-load at 30 mA, or \
+             the piece “bar (1 of 3)” bent as 3 pieces, each with electrodes and a supply of its \
+             own."
+        );
+        book.supplies.clear();
+        assert_eq!(
+            says(&book),
+            "No supply runs 3 pieces from “bar (1 of 3)” to “bar (3 of 3)”. There is no supply to \
+             choose from: add one to the shop book, or see why each was refused."
+        );
     }
 
     #[test]

@@ -60,10 +60,9 @@ pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Find
                 found(
                     Grade::Stop,
                     format!(
-                        "Overloaded: the string wants {} where {} gives {} {}; there is no current at \
-                         which it runs.",
+                        "Overloaded: the string wants {} where the supply gives {} {}; there is no \
+                         current at which it runs.",
                         volts_shown(wanted),
-                        rating.name,
                         if half_of(rating) {
                             "each of its two strings at most"
                         } else {
@@ -96,7 +95,7 @@ pub(super) fn overdriven(current: Milliamps, most: Milliamps, tube: &str) -> Fin
     found(
         Grade::Stop,
         format!(
-            "{} mA is above the {} mA that {tube} stands: more glass on it, or a smaller supply.",
+            "{} mA is above the {} mA that {tube} stands: more glass on it, or a supply of less current.",
             told_from(current.ma(), most.ma(), 1),
             most.ma()
         ),

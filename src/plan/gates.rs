@@ -552,7 +552,7 @@ mod tests {
                 loading: &loading,
                 wish: Wish::FewestSupplies,
                 cold,
-                earth: crate::rules::EarthWord::default(),
+                rules: None,
             };
             let gates = Gates::new(&task);
             let count = pieces.len();

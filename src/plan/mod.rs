@@ -13,7 +13,7 @@ use std::ops::Range;
 use crate::book::{Loading, OutputEarthing};
 use crate::circuit::{Assessment, Load, assess};
 use crate::job::Wish;
-use crate::rules::{EarthWord, Grade};
+use crate::rules::{Grade, RuleSet};
 use crate::supply::Rating;
 use crate::takeoff::Piece;
 use crate::tube::TubeType;
@@ -46,8 +46,9 @@ pub struct Task<'a> {
     pub wish: Wish,
     /// Whether the site is cold.
     pub cold: bool,
-    /// The rule set's word for earth, for the reasons.
-    pub earth: EarthWord,
+    /// The rule set, for the reasons only: its word for earth, and no supply is spoken of that it
+    /// forbids. What it says of the candidates is decided before.
+    pub rules: Option<&'a RuleSet>,
 }
 
 /// A circuit of the plan.

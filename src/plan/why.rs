@@ -10,9 +10,10 @@ use std::ops::Range;
 
 use super::gates::Gates;
 use super::{LeftOver, Task, on};
-use crate::circuit::{Assessment, CONTINUOUS_TO, Operating, Zone};
-use crate::measure::{Volts, grouped, told_from, volts_shown};
-use crate::rules::{Finding, Grade};
+use crate::book::OutputEarthing;
+use crate::circuit::{Assessment, Basis, CONTINUOUS_TO, Operating, Zone};
+use crate::measure::{Volts, grouped, quoted, told_from, volts_shown};
+use crate::rules::{EarthWord, Finding, Grade, Limits};
 use crate::supply::Rating;
 
 /// Another supply for the same pieces.
@@ -148,7 +149,9 @@ fn runs(task: &Task, worked: &Assessment, rating: &Rating, fits: &str) -> String
         told_from(heavier.share * 100.0, edge, 0),
         window.of_what(rating),
         volts_shown(worked.to_earth_no_load),
-        task.earth.word(),
+        task.rules
+            .map_or_else(EarthWord::default, |rules| rules.earth_word)
+            .word(),
     )
 }
 
@@ -171,6 +174,8 @@ pub(super) fn left_over(task: &Task, pieces: Range<usize>) -> LeftOver {
     let gates = Gates::new(task);
     let (longest, _) = pieces
         .clone()
+        // Of some as long the first is spoken of.
+        .rev()
         .map(|piece| (piece, task.pieces[piece].0.column().mm()))
         .max_by(|a, b| a.1.total_cmp(&b.1))
         .unwrap_or((pieces.start, 0.0));
@@ -238,35 +243,92 @@ fn remedy(task: &Task, pieces: &Range<usize>, supply: usize, worked: &Assessment
     let half = worked.heavier();
     match half.operating {
         Operating::Runs { gaps: false, .. } if let Some(finding) = overdriven => format!(
-            "A supply of at most {} mA short circuit for this tube, or more glass on the circuit.",
+            "A supply like it of at most {} mA short circuit, or more glass on the circuit.",
             finding.limit.map_or_else(String::new, grouped)
         ),
         _ => {
+            let pair = pieces
+                .clone()
+                .map(|piece| task.pieces[piece].1.pair_volts)
+                .sum::<f64>();
+            let volts = half.operating.volts().volts();
             // The window's look limit is where a plan wants to stay.
             let share = worked.window.look_above.min(CONTINUOUS_TO);
-            let needed = Volts::from_volts(half.operating.volts().volts() / share);
-            let parts = (half.share / share).ceil().max(2.0);
-            let shape = if pieces.len() == 1 {
-                format!("the piece bent as {parts:.0} pieces with electrodes of their own")
-            } else {
-                format!("the pieces on {parts:.0} circuits")
+            let fair = share * volts / half.share;
+            let mut ways = Vec::new();
+            let alone = pieces.len() == 1;
+            let with_return = rating.earthing == OutputEarthing::MidPointReturn;
+            let needed = (volts / share / 100.0).ceil() * 100.0;
+            let (needed, sort) = match with_return {
+                // One piece is one string, and needs no return.
+                true if alone => (needed, " without a mid-point return"),
+                true => (needed * 2.0, ""),
+                false => (needed, ""),
             };
-            format!(
-                "A supply of about {} no-load at {} mA, or {shape}, or a wider tube.",
-                volts_shown(Volts::from_volts((needed.volts() / 100.0).ceil() * 100.0)),
-                rating.short_circuit.ma()
-            )
+            let shown = volts_shown(Volts::from_volts(needed));
+            let (no_load, wanted) = match rating.rated_load {
+                Some(rated) if worked.window.basis == Basis::RatedLoad => (
+                    needed * (rating.no_load / rated),
+                    format!("{shown} at its rated {} mA", rating.rated.ma()),
+                ),
+                _ => (
+                    needed,
+                    format!("{shown} no-load at {} mA", rating.short_circuit.ma()),
+                ),
+            };
+            if no_load <= most_no_load(task, rating) {
+                ways.push(format!("a supply{sort} of about {wanted}"));
+            }
+            if alone && fair > pair {
+                // Each part has a pair of electrodes again.
+                let parts = ((volts - pair) / (fair - pair)).ceil().max(2.0);
+                let label = quoted(&task.pieces[pieces.start].0.label);
+                // Two are the two strings of a supply with a mid-point return.
+                let with = if with_return && parts == 2.0 {
+                    " with electrodes of their own"
+                } else {
+                    ", each with electrodes and a supply of its own"
+                };
+                ways.push(format!("the piece {label} bent as {parts:.0} pieces{with}"));
+            }
+            if volts <= fair * WIDER {
+                ways.push("a wider tube".to_owned());
+            }
+            if ways.is_empty() {
+                ways.push("less glass in a piece".to_owned());
+            }
+            let text = format!("{}.", ways.join(", or "));
+            let mut chars = text.chars();
+            chars.next().map_or_else(String::new, |first| {
+                first.to_uppercase().chain(chars).collect()
+            })
         }
     }
+}
+
+/// A wider tube takes about this much off the volts at the most.
+const WIDER: f64 = 1.5;
+/// Supplies of higher no-load volts are not made for signs.
+const MOST_NO_LOAD: f64 = 15_000.0;
+
+/// The greatest no-load volts of a supply earthed as this one that the rule set allows.
+fn most_no_load(task: &Task, rating: &Rating) -> f64 {
+    let limit = |limits| task.rules?.rule(limits)?.value;
+    let to_earth = rating.no_load_to_earth() / rating.no_load;
+    let by_earth = limit(Limits::VoltsToEarth).map(|volts| volts / to_earth);
+    [limit(Limits::NoLoadVolts), by_earth]
+        .into_iter()
+        .flatten()
+        .fold(MOST_NO_LOAD, f64::min)
 }
 
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::book::{Allowances, Loading, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry};
+    use crate::book::{Allowances, Loading, SupplyEntry, SupplyKind, TubeEntry};
     use crate::job::{Job, Row, StrokesRow, Wish};
-    use crate::plan::{Candidate, Circuit, plan};
-    use crate::rules::EarthWord;
+    use crate::plan::{Candidate, Circuit, Plan, plan};
+    use crate::rules::{RuleSet, iec_en, nec};
     use crate::takeoff::{Piece, takeoff};
     use crate::tube::TubeType;
 
@@ -292,8 +354,8 @@ mod tests {
             .collect()
     }
 
-    /// The one circuit of some lengths of a tube that takes 500 V a metre and 200 V a pair.
-    fn circuit(lengths: &str, candidates: &[Candidate], wish: Wish) -> Circuit {
+    /// The plan for some lengths of a tube that takes 500 V a metre and 200 V a pair.
+    fn planned(lengths: &str, candidates: &[Candidate], wish: Wish, rules: &RuleSet) -> Plan {
         let row = Row::Strokes(StrokesRow {
             label: "b".to_owned(),
             strokes: lengths.to_owned(),
@@ -317,14 +379,19 @@ mod tests {
         let pieces: Vec<(&Piece, &TubeType)> =
             off.pieces.iter().map(|piece| (piece, &tube)).collect();
         let loading = Loading::default();
-        let mut found = plan(&Task {
+        plan(&Task {
             pieces: &pieces,
             candidates,
             loading: &loading,
             wish,
             cold: false,
-            earth: EarthWord::Ground,
-        });
+            rules: Some(rules),
+        })
+    }
+
+    /// The one circuit of some lengths.
+    fn circuit(lengths: &str, candidates: &[Candidate], wish: Wish) -> Circuit {
+        let mut found = planned(lengths, candidates, wish, &nec());
         assert_eq!(found.circuits.len(), 1, "{found:?}");
         found.circuits.remove(0)
     }
@@ -401,6 +468,31 @@ mod tests {
             says,
             "Fits too: it would run at 60 % of no-load volts (target 50 to 65 %), 2 000 V to ground \
              with no load; costs 10 more."
+        );
+    }
+
+    #[test]
+    fn no_supply_is_wished_for_that_is_not_made_or_not_allowed() {
+        let candidates = candidates(&[supply("6 kV", 6_000.0, 30.0, 90)]);
+        let would_fit = |lengths: &str, rules: &RuleSet| {
+            let found = planned(lengths, &candidates, Wish::FewestSupplies, rules);
+            found.left_over[0].would_fit.replace('\u{202f}', " ")
+        };
+        // 7 700 V; 0.70 of 6 000 V are 4 200 V, and each of two parts takes 3 950 V.
+        assert_eq!(
+            would_fit("15 m", &nec()),
+            "A supply of about 11 000 V no-load at 30 mA, or the piece “b” bent as 2 pieces, each \
+             with electrodes and a supply of its own."
+        );
+        assert_eq!(
+            would_fit("15 m", &iec_en()),
+            "The piece “b” bent as 2 pieces, each with electrodes and a supply of its own."
+        );
+        // 5 200 V are less than half as much again as 4 200 V.
+        assert_eq!(
+            would_fit("10 m", &iec_en()),
+            "A supply of about 7 500 V no-load at 30 mA, or the piece “b” bent as 2 pieces, each \
+             with electrodes and a supply of its own, or a wider tube."
         );
     }
 }

@@ -313,8 +313,8 @@ pub(crate) fn blanks(set: &RuleSet) -> Vec<Finding> {
                 Grade::Look,
                 Place::Rules(set.name.clone()),
                 format!(
-                    "Not checked: {}. The figure was not confirmed; fill it in from the official \
-                     text in the shop book.",
+                    "Not checked: {}. No confirmed figure is known here: take it from the official \
+                     text and fill it in, in the shop book.",
                     rule.limits.caption().trim_end_matches(", at most")
                 ),
                 set.source(rule),

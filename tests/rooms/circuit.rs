@@ -259,7 +259,7 @@ fn too_much_glass_has_no_operating_point() {
         (found.input_va, found.power_factor, found.watts()),
         (None, None, None)
     );
-    assert_snapshot!(found.findings[0].says, @"Overloaded: the string wants 8 412 V where T gives at most 7 595 V; there is no current at which it runs.");
+    assert_snapshot!(found.findings[0].says, @"Overloaded: the string wants 8 412 V where the supply gives at most 7 595 V; there is no current at which it runs.");
 }
 
 #[test]
