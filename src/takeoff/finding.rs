@@ -13,8 +13,23 @@ pub(super) fn unreadable(at: usize, field: &str, error: &ReadError) -> Finding {
     row(Grade::Stop, at, format!("{field}: {error}."))
 }
 
-pub(super) fn outside(at: usize, limit: &Limit, value: f64) -> Finding {
-    row(Grade::Stop, at, format!("{limit}, but is {value}.")).with(
+/// `field` names the place in the row where the row has several of the kind.
+pub(super) fn outside(at: usize, field: Option<&str>, limit: &Limit, value: f64) -> Finding {
+    let unit = if limit.unit.is_empty() {
+        String::new()
+    } else {
+        format!(" {}", limit.unit)
+    };
+    row(
+        Grade::Stop,
+        at,
+        capital(&format!(
+            "{}{limit}, but is {}{unit}.",
+            field.map_or_else(String::new, |field| format!("{field}: ")),
+            figure(value)
+        )),
+    )
+    .with(
         value,
         if value < limit.least {
             limit.least
@@ -23,6 +38,19 @@ pub(super) fn outside(at: usize, limit: &Limit, value: f64) -> Finding {
         },
         limit.unit,
     )
+}
+
+/// A typed figure, no longer than anyone types it: 1/3 in is 8.467 mm.
+fn figure(value: f64) -> String {
+    let text = format!("{value:.3}");
+    text.trim_end_matches('0').trim_end_matches('.').to_owned()
+}
+
+fn capital(text: &str) -> String {
+    let mut chars = text.chars();
+    chars.next().map_or_else(String::new, |first| {
+        first.to_uppercase().chain(chars).collect()
+    })
 }
 
 pub(super) fn no_text(at: usize) -> Finding {
@@ -85,7 +113,9 @@ pub(super) fn too_many(limit: &Limit, value: usize) -> Finding {
     Finding::new(
         Grade::Stop,
         Place::Job,
-        format!("{limit}, but there are {value}: the rest is left out."),
+        capital(&format!(
+            "{limit}, but there are {value}: the rest is left out."
+        )),
         Source::entry(),
     )
 }
@@ -121,6 +151,28 @@ pub(super) fn too_long(
         Source::shop(),
     )
     .with(piece.column().mm(), longest.mm(), "mm")
+}
+
+/// Said once for a row of which many pieces are too long: how many of one copy, and the longest.
+pub(super) fn many_too_long(
+    at: usize,
+    many: usize,
+    (label, column): (&str, Length),
+    longest: Length,
+) -> Finding {
+    Finding::new(
+        Grade::Look,
+        Place::Row(at),
+        format!(
+            "{many} pieces of this row are longer than the shop bends in one ({}), the longest {} \
+             with {} of glass between its electrodes: give them as more pieces.",
+            length_shown(longest, Units::Metric),
+            quoted(label),
+            length_shown(column, Units::Metric),
+        ),
+        Source::shop(),
+    )
+    .with(column.mm(), longest.mm(), "mm")
 }
 
 pub(super) fn crossovers() -> Finding {

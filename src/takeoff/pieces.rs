@@ -82,19 +82,13 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
             let place = sheet.place(made.bounds);
             for drawn in &made.pieces {
                 let piece = drawn.piece(at, (copy, copies), row.tube(), tail_mm, place);
-                if let Some(longest) = longest
-                    && piece.column() > longest
-                    && copy == 0
-                {
-                    let called = (drawn.label.as_str(), copies);
-                    let at = off.pieces.len();
-                    off.findings
-                        .push(finding::too_long(at, &piece, called, longest));
-                }
                 off.pieces.push(piece);
             }
             let here = place.transform_rect_bbox(made.bounds);
             bounds = Some(bounds.map_or(here, |all| all.union(here)));
+        }
+        if let Some(longest) = longest {
+            off.too_long(at, &made.pieces, (first, copies), longest);
         }
         let pieces = first..off.pieces.len();
         off.rows.push(RowTakeoff {
@@ -112,6 +106,45 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
         off.findings.push(finding::crossovers());
     }
     off
+}
+
+/// Up to so many pieces of a row are told one by one that they are too long.
+const TOO_LONG_EACH: usize = 3;
+
+impl Takeoff {
+    /// Tells of the pieces of a row that the shop cannot bend in one; of its copies once.
+    fn too_long(
+        &mut self,
+        row: usize,
+        drawn: &[Drawn],
+        (first, copies): (usize, usize),
+        longest: Length,
+    ) {
+        let long: Vec<(usize, &Drawn)> = (first..)
+            .zip(drawn)
+            .filter(|&(at, _)| {
+                let piece = self.pieces.get(at);
+                piece.is_some_and(|piece| piece.column() > longest)
+            })
+            .collect();
+        if long.len() <= TOO_LONG_EACH {
+            for (at, drawn) in long {
+                let called = (drawn.label.as_str(), copies);
+                let said = finding::too_long(at, &self.pieces[at], called, longest);
+                self.findings.push(said);
+            }
+            return;
+        }
+        let many = long.len();
+        let most = long
+            .into_iter()
+            // Of some as long the first is named.
+            .rev()
+            .map(|(at, drawn)| (drawn.label.as_str(), self.pieces[at].column()))
+            .max_by(|a, b| a.1.mm().total_cmp(&b.1.mm()));
+        self.findings
+            .extend(most.map(|most| finding::many_too_long(row, many, most, longest)));
+    }
 }
 
 /// The plane rows are laid out on: centred, one under the other.
@@ -226,6 +259,7 @@ fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
     if !measure::TEXT_CHARACTERS.holds(characters as f64) {
         findings.push(finding::outside(
             at,
+            None,
             &measure::TEXT_CHARACTERS,
             characters as f64,
         ));
@@ -243,7 +277,12 @@ fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
         }
     };
     if !measure::LETTER_HEIGHT_MM.holds(height_mm) {
-        findings.push(finding::outside(at, &measure::LETTER_HEIGHT_MM, height_mm));
+        findings.push(finding::outside(
+            at,
+            None,
+            &measure::LETTER_HEIGHT_MM,
+            height_mm,
+        ));
         return Made::default();
     }
     // Worked out in the units of the face, where every point is a whole number, and scaled at the end:
@@ -306,6 +345,7 @@ fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
             Ok(length) => {
                 findings.push(finding::outside(
                     at,
+                    Some(&field),
                     &measure::PIECE_LENGTH_MM,
                     length.length().mm(),
                 ));
@@ -371,7 +411,7 @@ fn count(at: usize, typed: i64, findings: &mut Vec<Finding>) -> usize {
     if measure::COUNT.holds(value) {
         return usize::try_from(typed).unwrap_or(0);
     }
-    findings.push(finding::outside(at, &measure::COUNT, value));
+    findings.push(finding::outside(at, None, &measure::COUNT, value));
     0
 }
 
@@ -502,5 +542,36 @@ mod tests {
         let off = takeoff(&job, &Allowances::default());
         let says = &off.findings[1].says;
         assert!(says.contains("is 2400.3 mm of glass"), "{says}");
+    }
+
+    #[test]
+    fn a_row_of_large_letters_is_told_once_that_they_are_too_long() {
+        let off = takeoff(&texts("MINNOW", "3 m", "sans", 2), &Allowances::default());
+        let long: Vec<(&Place, &str)> = off
+            .findings
+            .iter()
+            .filter(|finding| finding.says.contains("longer than the shop bends"))
+            .map(|finding| (&finding.place, finding.says.as_str()))
+            .collect();
+        // M: two stems of 3 m and two slants of √(8² + 21²) / 21 × 3 m, which touch.
+        assert_eq!(
+            long,
+            [(
+                &Place::Row(0),
+                "6 pieces of this row are longer than the shop bends in one (2\u{202f}400 mm), the \
+                 longest “M” with 12\u{202f}421 mm of glass between its electrodes: give them as \
+                 more pieces."
+            )]
+        );
+    }
+
+    #[test]
+    fn limits_are_whole_sentences() {
+        let off = takeoff(&texts("A", "1/3 in", "sans", 1), &Allowances::default());
+        assert_eq!(
+            off.findings[0].says,
+            "Letter height must be 10 to 5000 mm (smaller cannot be bent in glass, larger is built \
+             from parts given as strokes), but is 8.467 mm."
+        );
     }
 }

@@ -515,10 +515,10 @@ fn text_that_is_too_long_or_has_no_shapes() {
     assert_sound(&job, &work);
     let sentences: Vec<String> = (0..count).map(|row| of_row(&work, row)).collect();
     insta::assert_snapshot!(sentences.join("\n"), @r"
-    stop: text must be 1 to 400 characters (a line of letters longer than this is given as several rows), but is 10000.
+    stop: Text must be 1 to 400 characters (a line of letters longer than this is given as several rows), but is 10000 characters.
     stop: The face sans has no shape for “🍕” (character 1), “É” (character 2): glass and price are without it. Give it as strokes.
     stop: Letter height: expected “+”, “x” or the end, but found “km” at character 3 of “2 km”; units are mm, cm, m, in or ft.
-    stop: letter height must be 10 to 5000 mm (smaller cannot be bent in glass, larger is built from parts given as strokes), but is 2000000.
+    stop: Letter height must be 10 to 5000 mm (smaller cannot be bent in glass, larger is built from parts given as strokes), but is 2000000 mm.
     stop: Letter height: expected a number such as 450, but found “wide” at character 1 of “wide”.
     look: Nothing to make: the row has no letters.
     stop: The face sans has no shape for “🍕” (character 2): glass and price are without it. Give it as strokes.
@@ -537,8 +537,8 @@ fn strokes_that_cannot_be_read() {
     let sentences: Vec<String> = (0..3).map(|row| of_row(&work, row)).collect();
     insta::assert_snapshot!(sentences.join("\n"), @r"
     stop: Stroke 2: expected a number such as 450, but found “abc” at character 2 of “ abc”.
-    stop: one piece of glass must be 10 to 20000 mm (no piece between two electrodes is shorter or longer than this; give it as more pieces), but is 5.
-    stop: one piece of glass must be 10 to 20000 mm (no piece between two electrodes is shorter or longer than this; give it as more pieces), but is 30000.
+    stop: Stroke 3: one piece of glass must be 10 to 20000 mm (no piece between two electrodes is shorter or longer than this; give it as more pieces), but is 5 mm.
+    stop: Stroke 4: one piece of glass must be 10 to 20000 mm (no piece between two electrodes is shorter or longer than this; give it as more pieces), but is 30000 mm.
     look: Nothing to make: the row has no stroke lengths.
     stop: Stroke 1: expected a number such as 450, but found “NaN” at character 1 of “NaN”.
     ");
@@ -555,7 +555,7 @@ fn counts_nobody_makes() {
         let work = workup(&job(vec![row]), &book());
         assert_eq!(work.takeoff.pieces.len(), 0, "{count}");
         assert!(
-            of_row(&work, 0).starts_with("stop: count must be 1 to 200"),
+            of_row(&work, 0).starts_with("stop: Count must be 1 to 200"),
             "{}",
             of_row(&work, 0)
         );
@@ -569,7 +569,7 @@ fn more_rows_and_pieces_than_a_job_may_have() {
     assert_sound(&rows, &work);
     assert_eq!(work.takeoff.rows.len(), 200);
     assert!(
-        said(&work).contains("rows must be 0 to 200"),
+        said(&work).contains("Rows must be 0 to 200"),
         "{}",
         said(&work)
     );
@@ -587,7 +587,7 @@ fn more_rows_and_pieces_than_a_job_may_have() {
     );
     assert!(work.takeoff.pieces.len() <= 4_000);
     assert!(
-        said(&work).contains("pieces of glass must be 0 to 4000"),
+        said(&work).contains("Pieces of glass must be 0 to 4000"),
         "{}",
         work.findings[0].says
     );
