@@ -113,7 +113,7 @@ pub fn Glass() -> impl IntoView {
                 </table>
             </div>
         </section>
-        <section class="panel" aria-label="Pieces">
+        <section class="panel pieces" aria-label="Pieces">
             <h2>"Pieces of glass, in reading order"</h2>
             <p class="quiet">
                 "One piece for each letter, or for each word of script. Glass is lit and painted-out length and two tails; crossovers are estimated by the shortest straight way between strokes."

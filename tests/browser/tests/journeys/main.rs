@@ -1,0 +1,8 @@
+//! Journeys through the built page, one file for each thing a person comes for.
+
+mod bad_files;
+mod demo;
+mod looks;
+mod offline;
+mod shop_book;
+mod sign;
