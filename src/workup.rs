@@ -420,7 +420,7 @@ fn no_supply(left: &LeftOverWork, pieces: &[Piece]) -> Finding {
         format!("the piece {}", label(left.pieces.first()))
     } else {
         format!(
-            "{} pieces from {} to {}",
+            "any of the {} pieces from {} to {}",
             left.pieces.len(),
             label(left.pieces.first()),
             label(left.pieces.last())
@@ -573,16 +573,16 @@ mod tests {
         };
         assert_eq!(
             says(&book),
-            "No supply runs 3 pieces from “bar (1 of 3)” to “bar (3 of 3)”. Nearest is 4 kV 30 mA: \
+            "No supply runs any of the 3 pieces from “bar (1 of 3)” to “bar (3 of 3)”. Nearest is 4 kV 30 mA: \
              Overloaded: the string wants 2 623 V where the supply gives at most 1 519 V; there is \
              no current at which it runs. Would fit: a supply of about 3 800 V no-load at 30 mA, or \
-             the piece “bar (1 of 3)” bent as 3 pieces, each with electrodes and a supply of its \
-             own."
+             the longest piece, “bar (1 of 3)”, bent as 3, each with electrodes and a supply of its \
+             own, and the others likewise."
         );
         book.supplies.clear();
         assert_eq!(
             says(&book),
-            "No supply runs 3 pieces from “bar (1 of 3)” to “bar (3 of 3)”. There is no supply to \
+            "No supply runs any of the 3 pieces from “bar (1 of 3)” to “bar (3 of 3)”. There is no supply to \
              choose from: add one to the shop book, or see why each was refused."
         );
     }

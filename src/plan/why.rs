@@ -204,7 +204,8 @@ pub(super) fn left_over(task: &Task, pieces: Range<usize>) -> LeftOver {
                 .to_owned(),
         };
     };
-    let would_fit = remedy(task, &range, supply, &worked);
+    let alone = pieces.len() == 1;
+    let would_fit = remedy(task, &range, alone, supply, &worked);
     let findings = worked
         .findings
         .into_iter()
@@ -233,8 +234,15 @@ fn miss(worked: &Assessment) -> f64 {
         .fold(0.0, f64::max)
 }
 
-/// The smallest change that would make it fit, in words.
-fn remedy(task: &Task, pieces: &Range<usize>, supply: usize, worked: &Assessment) -> String {
+/// The smallest change that would make some pieces fit, in words; unless `only`, there are others
+/// that nothing runs beside them.
+fn remedy(
+    task: &Task,
+    pieces: &Range<usize>,
+    only: bool,
+    supply: usize,
+    worked: &Assessment,
+) -> String {
     let rating = &task.candidates[supply].rating;
     let overdriven = worked
         .findings
@@ -289,7 +297,14 @@ fn remedy(task: &Task, pieces: &Range<usize>, supply: usize, worked: &Assessment
                 } else {
                     ", each with electrodes and a supply of its own"
                 };
-                ways.push(format!("the piece {label} bent as {parts:.0} pieces{with}"));
+                ways.push(if only {
+                    format!("the piece {label} bent as {parts:.0} pieces{with}")
+                } else {
+                    format!(
+                        "the longest piece, {label}, bent as {parts:.0}{with}, and the others \
+                         likewise"
+                    )
+                });
             }
             if volts <= fair * WIDER {
                 ways.push("a wider tube".to_owned());
