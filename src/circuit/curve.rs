@@ -29,7 +29,7 @@ pub struct Waveform {
 /// Exact for an ideal reactance: a closed form up to [`CONTINUOUS_TO`], beyond it the waveform with
 /// gaps. Nothing flows from r = √2 on. A negative or NaN `r` gives NaN.
 pub fn iron(r: f64) -> Waveform {
-    if !(r >= 0.0) {
+    if r.is_nan() || r < 0.0 {
         return Waveform {
             rms: f64::NAN,
             mean: f64::NAN,
@@ -69,9 +69,9 @@ fn with_gaps(u: f64) -> Waveform {
     for _ in 0..80 {
         let middle = f64::midpoint(low, high);
         if current(middle) > 0.0 {
-            low = middle
+            low = middle;
         } else {
-            high = middle
+            high = middle;
         }
     }
     let end = f64::midpoint(low, high);

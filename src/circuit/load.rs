@@ -120,9 +120,9 @@ pub fn operate(load: &Load, curve: &Curve) -> Operating {
         for _ in 0..60 {
             let middle = f64::midpoint(low, high);
             if curve.current(load.volts(middle)) >= middle {
-                low = middle
+                low = middle;
             } else {
-                high = middle
+                high = middle;
             }
         }
         let current = f64::midpoint(low, high);
@@ -139,9 +139,9 @@ pub fn operate(load: &Load, curve: &Curve) -> Operating {
                 for _ in 0..60 {
                     let middle = f64::midpoint(low, high);
                     if excess(middle) >= 0.0 {
-                        low = middle
+                        low = middle;
                     } else {
-                        high = middle
+                        high = middle;
                     }
                 }
                 return runs(load, curve, f64::midpoint(low, high), true);

@@ -112,7 +112,7 @@ impl Window {
     /// The zone of a share.
     pub fn zone(&self, share: f64) -> Zone {
         // NaN is over: nothing is known to fit.
-        if !(share < self.stop_from) {
+        if share.is_nan() || share >= self.stop_from {
             Zone::Over
         } else if share > self.look_above {
             Zone::Heavy

@@ -111,7 +111,8 @@ fn feet_inches(length: Length, parts: i64) -> String {
     let shared = 1 << over.trailing_zeros().min(parts.trailing_zeros());
     if inches > 0 || feet > 0 {
         // `4 ft 0 1/16 in`: without the nought the sixteenth is easily read as part of the feet.
-        out += &format!("{inches} ");
+        out.push_str(&inches.to_string());
+        out.push(' ');
     }
     out + &format!("{}/{} in", over / shared, parts / shared)
 }

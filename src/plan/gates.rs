@@ -202,10 +202,12 @@ impl Gates {
                 }
             })
             .collect();
-        debug_assert!(
-            CONTINUOUS_TO < 0.76,
-            "the edge of an iron supply is its last steady point"
-        );
+        const {
+            assert!(
+                CONTINUOUS_TO < 0.76,
+                "the edge of an iron supply is its last steady point"
+            );
+        }
         Self {
             pairs,
             columns,
@@ -237,17 +239,15 @@ impl Gates {
                 _ => Fit::NotYet,
             };
         }
-        match self.halves(&pieces, supply) {
-            Some((_, fitting)) => Fit::Fits(fitting),
-            // Both halves together over twice a half's limit: one of them always is.
-            None => {
-                let over = &self.supplies[supply].loads[self.neon(&pieces)].over;
-                if self.volts(&pieces, over) > 2.0 * over.volts {
-                    Fit::TooMuch
-                } else {
-                    Fit::NotYet
-                }
-            }
+        if let Some((_, fitting)) = self.halves(&pieces, supply) {
+            return Fit::Fits(fitting);
+        }
+        // Both halves together over twice a half's limit: one of them always is.
+        let over = &self.supplies[supply].loads[self.neon(&pieces)].over;
+        if self.volts(&pieces, over) > 2.0 * over.volts {
+            Fit::TooMuch
+        } else {
+            Fit::NotYet
         }
     }
 

@@ -79,10 +79,10 @@ pub fn best_split<C: Ord + Copy + Summed>(
         }
         open.clear();
         open.extend(0..supplies);
-        for to in from + 1..=pieces {
+        for (to, slot) in reached.iter_mut().enumerate().skip(from + 1) {
             open.retain(|&supply| match fit(from..to, supply) {
                 Fit::Fits(cost) => {
-                    improve(&mut reached[to], plus(cost), from, Some(supply));
+                    improve(slot, plus(cost), from, Some(supply));
                     true
                 }
                 Fit::NotYet => true,

@@ -284,7 +284,7 @@ pub(super) fn site(rating: &Rating, site: &Site) -> Vec<Finding> {
         ));
     }
     if let (Some(made_for), Some(there)) = (rating.input_volts, site.mains_volts)
-        && !((made_for - there).abs() <= MAINS_TOLERANCE * made_for)
+        && (there.is_nan() || (made_for - there).abs() > MAINS_TOLERANCE * made_for)
     {
         found.push(
             Finding::new(
