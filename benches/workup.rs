@@ -1,2 +1,156 @@
-//! t
-fn main() {}
+//! How long the core takes where a person waits for it: after every key stroke.
+
+use std::hint::black_box;
+
+use criterion::{Criterion, criterion_group, criterion_main};
+use rust_decimal::Decimal;
+use tubewright::book::{
+    Allowances, Book, Loading, OutputEarthing, SupplyEntry, SupplyKind, starter,
+};
+use tubewright::job::{Job, Row, StrokesRow, TextRow, Wish};
+use tubewright::measure::{LengthUnit, length};
+use tubewright::plan::{Candidate, Task, plan};
+use tubewright::supply::Rating;
+use tubewright::takeoff::{Piece, takeoff};
+use tubewright::tube::TubeType;
+use tubewright::workup;
+
+const NEON: &str = "12 mm neon";
+
+/// Invented supplies of all sorts, 2 to 15 kV, 18 to 60 mA.
+fn supplies(count: u32) -> Vec<SupplyEntry> {
+    use OutputEarthing::{MidPoint, MidPointReturn, OneEnd};
+    (0..count)
+        .map(|at| {
+            let no_load = f64::from(2_000 + 13_000 * at / count);
+            let short_ma = [18.0, 30.0, 30.0, 60.0][at as usize % 4];
+            let electronic = at % 5 == 4;
+            SupplyEntry {
+                name: format!("supply {at}"),
+                kind: if electronic {
+                    SupplyKind::Electronic
+                } else {
+                    SupplyKind::Iron
+                },
+                no_load_volts: Some(no_load),
+                short_circuit_ma: Some(short_ma),
+                rated_ma: electronic.then_some(0.9 * short_ma),
+                rated_load_volts: electronic.then_some(0.7 * no_load),
+                earthing: [MidPoint, MidPoint, MidPointReturn, OneEnd][at as usize % 4],
+                earth_fault_protection: true,
+                open_circuit_protection: true,
+                price: Some(Decimal::from(50 + at * 7 % 200)),
+                ..SupplyEntry::default()
+            }
+        })
+        .collect()
+}
+
+/// A sign of 200 letters: ten rows of twenty.
+fn sign() -> Job {
+    let row = |height: u32| {
+        Row::Text(TextRow {
+            text: "OPEN ALL NIGHT EVERY DAY".to_owned(),
+            height: format!("{height} mm"),
+            face: "sans".to_owned(),
+            tube: NEON.to_owned(),
+            count: 1,
+        })
+    };
+    let rows = (0..10).map(|at| row(150 + 20 * at)).collect();
+    Job {
+        rows,
+        rules: "Shop rules".to_owned(),
+        ..Job::default()
+    }
+}
+
+/// 2 000 pieces of 200 mm to 1.8 m, no two neighbours alike.
+fn pieces() -> Vec<Piece> {
+    let lengths: Vec<String> = (0..2_000_u32)
+        .map(|at| format!("{} mm", 200 + at * 617 % 1_600))
+        .collect();
+    let row = Row::Strokes(StrokesRow {
+        label: "bar".to_owned(),
+        strokes: lengths.join("; "),
+        tube: NEON.to_owned(),
+        count: 1,
+    });
+    let off = takeoff(
+        &Job {
+            rows: vec![row],
+            ..Job::default()
+        },
+        &Allowances::default(),
+    );
+    assert_eq!(off.pieces.len(), 2_000, "every length was read");
+    off.pieces
+}
+
+fn work_up(c: &mut Criterion) {
+    let (job, book) = (
+        sign(),
+        Book {
+            supplies: supplies(40),
+            ..starter()
+        },
+    );
+    let work = workup(&job, &book);
+    assert_eq!(work.takeoff.pieces.len(), 200, "as named");
+    assert!(
+        work.left_over.is_empty() && work.circuits.len() > 5,
+        "a plan was made"
+    );
+    c.bench_function("workup, 200 letters, 40 supplies", |b| {
+        b.iter(|| workup(black_box(&job), black_box(&book)));
+    });
+}
+
+fn planning(c: &mut Criterion) {
+    let entries = starter().tubes;
+    let entry = entries
+        .iter()
+        .find(|tube| tube.name == NEON)
+        .expect("a tube of the starter book");
+    let tube = TubeType::read(entry).expect("a whole tube");
+    let glass = pieces();
+    let pieces: Vec<(&Piece, &TubeType)> = glass.iter().map(|piece| (piece, &tube)).collect();
+    let candidates: Vec<Candidate> = supplies(60)
+        .iter()
+        .enumerate()
+        .map(|(entry, supply)| Candidate {
+            entry,
+            rating: Rating::read(supply).expect("a whole nameplate"),
+            look: false,
+        })
+        .collect();
+    let loading = Loading::default();
+    for (wish, name) in [
+        (Wish::FewestSupplies, "fewest"),
+        (Wish::LowestPrice, "cheapest"),
+    ] {
+        let task = Task {
+            pieces: &pieces,
+            candidates: &candidates,
+            loading: &loading,
+            wish,
+            cold: false,
+            rules: None,
+        };
+        assert!(plan(&task).circuits.len() > 50, "a plan was made");
+        c.bench_function(&format!("plan, 2000 pieces, 60 supplies, {name}"), |b| {
+            b.iter(|| plan(black_box(&task)));
+        });
+    }
+}
+
+fn reading(c: &mut Criterion) {
+    for typed in ["450", "17 5/8 in", "1' 6 1/2\"", "3 x 180 + 2 x 95"] {
+        c.bench_function(&format!("length, {typed}"), |b| {
+            b.iter(|| length(black_box(typed), LengthUnit::Millimetres));
+        });
+    }
+}
+
+criterion_group!(benches, work_up, planning, reading);
+criterion_main!(benches);
