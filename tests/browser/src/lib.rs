@@ -192,6 +192,22 @@ impl Visit {
             .await
     }
 
+    /// Chooses from a list anywhere on the place by the words shown.
+    pub async fn choose(&self, label: &str, words: &str) -> WebDriverResult<()> {
+        let list = format!(
+            "//label[span[normalize-space()={}]]//select",
+            literal(label)
+        );
+        self.find(&list).await?;
+        let option = format!("{list}/option[normalize-space()={}]", literal(words));
+        self.driver
+            .query(By::XPath(&option))
+            .first()
+            .await?
+            .click()
+            .await
+    }
+
     /// Presses a button or opens a link by its words.
     pub async fn press(&self, words: &str) -> WebDriverResult<()> {
         let words = literal(words);

@@ -95,9 +95,13 @@ pub fn Circuits() -> impl IntoView {
                     }
                 })
                 .collect();
+            let summary = match list.len() {
+                1 => "1 supply of the book was not considered for this job".to_owned(),
+                many => format!("{many} supplies of the book were not considered for this job"),
+            };
             view! {
                 <details class="panel refused">
-                    <summary>{format!("{} supplies of the book were not considered for this job", list.len())}</summary>
+                    <summary>{summary}</summary>
                     <ul>{list}</ul>
                 </details>
             }

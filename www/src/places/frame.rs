@@ -225,7 +225,7 @@ fn Strip(findings_open: RwSignal<bool>) -> impl IntoView {
                 <span>
                     <b>{circuits}</b>
                     {if circuits == 1 { " circuit" } else { " circuits" }}
-                    {(unplaced > 0).then(|| format!(", {unplaced} pieces on none"))}
+                    {(unplaced > 0).then(|| format!(", {unplaced} pieces on no supply"))}
                 </span>
                 <span class="strip-price">
                     <b>{format!("{} {}", results.quote.currency, super::price::amount(results.quote.total))}</b>

@@ -35,6 +35,7 @@ fn a_supply_typed_in_from_its_nameplate_is_used() {
             .await?;
         page.type_in("Short-circuit current, mA", "30").await?;
         page.see_no("cannot be used").await?;
+        page.choose("Made for", "wet, in the rain").await?;
         page.go("Sign").await?;
         page.press("Remove row 2").await?;
         page.choose_in_row(1, "Tube", "15 mm neon").await?;

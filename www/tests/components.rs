@@ -1,0 +1,221 @@
+//! Parts of the page alone, in a real browser: each is mounted, used and read.
+#![cfg(target_arch = "wasm32")]
+
+use leptos::mount::mount_to;
+use leptos::prelude::*;
+use leptos::task::tick;
+use tubewright::job::Row;
+use tubewright::measure::Units;
+use tubewright_www::desk::{Desk, Where};
+use tubewright_www::document::Write;
+use tubewright_www::files::{self, demo};
+use tubewright_www::keep::{Keeper, Standing};
+use tubewright_www::places::{Circuits, FindingsList, Glass, Price, Rows, ShopBook, Sign};
+use wasm_bindgen::JsCast;
+use wasm_bindgen_test::{wasm_bindgen_test, wasm_bindgen_test_configure};
+use web_sys::{Element, Event, HtmlElement, HtmlInputElement};
+
+wasm_bindgen_test_configure!(run_in_browser);
+
+/// A part of the page with a desk of its own.
+struct Mounted {
+    root: HtmlElement,
+    desk: Desk,
+    // Dropping it takes the part off the page.
+    _handle: Box<dyn core::any::Any>,
+}
+
+fn mount<N>(part: fn() -> N) -> Mounted
+where
+    N: IntoView + 'static,
+{
+    let root: HtmlElement = document()
+        .create_element("div")
+        .expect("an element")
+        .unchecked_into();
+    document()
+        .body()
+        .expect("a body")
+        .append_child(&root)
+        .expect("room in the body");
+    let slot = std::rc::Rc::new(std::cell::Cell::new(None));
+    let given = slot.clone();
+    let handle = mount_to(root.clone(), move || {
+        let desk = Desk::new(demo::document());
+        provide_context(desk);
+        given.set(Some(desk));
+        part().into_any()
+    });
+    Mounted {
+        root,
+        desk: slot.get().expect("the desk was made"),
+        _handle: Box::new(handle),
+    }
+}
+
+impl Mounted {
+    fn text(&self) -> String {
+        self.root.text_content().unwrap_or_default().replace('\u{202f}', " ")
+    }
+
+    fn all(&self, selector: &str) -> Vec<Element> {
+        let found = self.root.query_selector_all(selector).expect("a selector");
+        (0..found.length())
+            .filter_map(|at| found.item(at)?.dyn_into().ok())
+            .collect()
+    }
+
+    /// The control under a caption, in the nth place it stands.
+    fn field(&self, caption: &str, nth: usize) -> HtmlInputElement {
+        self.all("label.field")
+            .into_iter()
+            .filter(|label| {
+                label
+                    .query_selector(".caption")
+                    .ok()
+                    .flatten()
+                    .is_some_and(|found| found.text_content().as_deref() == Some(caption))
+            })
+            .nth(nth)
+            .and_then(|label| label.query_selector("input").ok().flatten())
+            .unwrap_or_else(|| panic!("wanted: the field {caption}\n   got: {}", self.text()))
+            .unchecked_into()
+    }
+
+    async fn enter(&self, field: &HtmlInputElement, text: &str, event: &str) {
+        field.set_value(text);
+        let event = Event::new(event).expect("an event");
+        field.dispatch_event(&event).expect("it is heard");
+        tick().await;
+    }
+
+    fn first_text(&self) -> String {
+        self.desk.job.with_untracked(|job| match &job.rows[0] {
+            Row::Text(row) => row.text.clone(),
+            Row::Strokes(row) => row.label.clone(),
+        })
+    }
+}
+
+#[wasm_bindgen_test]
+async fn a_row_is_edited_in_place() {
+    let rows = mount(|| view! { <Rows/> });
+    assert_eq!(rows.all(".row").len(), 2, "a card for each row");
+    let field = rows.field("What it says", 0);
+    rows.enter(&field, "WREN", "input").await;
+    assert_eq!(rows.first_text(), "WREN", "each key is taken");
+    assert!(rows.text().contains("4 pieces"), "got: {}", rows.text());
+    rows.desk.undo();
+    tick().await;
+    assert_eq!(field.value(), "QUILLMOOR", "undo is shown in the field");
+}
+
+#[wasm_bindgen_test]
+async fn a_bare_height_takes_the_unit_the_page_is_set_to() {
+    let rows = mount(|| view! { <Rows/> });
+    let field = rows.field("Letter height", 0);
+    rows.enter(&field, "250", "change").await;
+    assert_eq!(field.value(), "250 mm", "millimetres at first");
+    rows.desk.set_units(Units::FeetInches);
+    rows.enter(&field, "9 1/2", "change").await;
+    assert_eq!(field.value(), "9 1/2 in", "then inches");
+}
+
+#[wasm_bindgen_test]
+async fn a_count_that_is_none_stays_in_sight_with_a_sentence() {
+    let rows = mount(|| view! { <Rows/> });
+    let field = rows.field("Times", 0);
+    rows.enter(&field, "twice", "change").await;
+    assert_eq!(field.value(), "twice", "what was typed is not wiped out");
+    assert!(rows.text().contains("found “twice”"), "got: {}", rows.text());
+    assert_eq!(rows.desk.job.with_untracked(|job| job.rows[0].count()), 1, "the job has the old");
+    rows.enter(&field, "2", "change").await;
+    assert!(!rows.text().contains("found “twice”"), "the sentence goes");
+    assert_eq!(rows.desk.job.with_untracked(|job| job.rows[0].count()), 2, "the job has the new");
+}
+
+#[wasm_bindgen_test]
+async fn a_place_shows_what_the_work_up_says() {
+    let circuits = mount(|| view! { <Circuits/> });
+    let worked = circuits.desk.results.get_untracked();
+    assert_eq!(circuits.all(".card").len(), worked.circuits.len(), "a card for each circuit");
+    for circuit in &worked.circuits {
+        assert!(circuits.text().contains(&circuit.supply.name), "{}", circuit.supply.name);
+    }
+    assert!(circuits.text().contains("High voltage kills."), "the caution stands there");
+
+    let glass = mount(|| view! { <Glass/> });
+    assert_eq!(
+        glass.all(".pieces tbody tr").len(),
+        worked.takeoff.pieces.len(),
+        "a line for each piece"
+    );
+    let price = mount(|| view! { <Price/> });
+    assert!(
+        price.text().replace(' ', "").contains(&worked.quote.total.round_dp(2).to_string()),
+        "the total: {}",
+        price.text()
+    );
+    let findings = mount(|| view! { <FindingsList/> });
+    assert_eq!(findings.all(".finding").len(), worked.findings.len(), "every finding");
+    let book = mount(|| view! { <ShopBook/> });
+    assert_eq!(
+        book.all(".entries li").len(),
+        demo::book().supplies.len(),
+        "every supply of the book"
+    );
+}
+
+#[wasm_bindgen_test]
+async fn a_piece_tapped_on_the_picture_is_marked_and_told() {
+    let sign = mount(|| view! { <Sign/> });
+    let pieces = sign.all(".picture-piece");
+    assert_eq!(pieces.len(), 28, "every piece can be tapped");
+    let click = Event::new("click").expect("an event");
+    pieces[4].dispatch_event(&click).expect("it is heard");
+    tick().await;
+    assert_eq!(sign.desk.piece.get_untracked(), Some(4), "the fifth is marked");
+    assert!(sign.text().contains("piece 5, row 1"), "got: {}", sign.text());
+}
+
+#[wasm_bindgen_test]
+async fn a_job_opened_from_a_file_takes_the_desk_and_undo_gives_it_back() {
+    let rows = mount(|| view! { <Rows/> });
+    let opened = files::read("word.json", tubewright::job::write(&demo::jobs()[0]).as_bytes());
+    files::put(rows.desk, opened.expect("the demo job is read"));
+    tick().await;
+    assert_eq!(rows.first_text(), "Late", "the opened job");
+    assert_eq!(rows.desk.place.get_untracked(), Where::Sign, "in sight");
+    rows.desk.undo();
+    tick().await;
+    assert_eq!(rows.first_text(), "QUILLMOOR", "the one before");
+}
+
+/// Waits until all writes are told to be kept.
+async fn stored(keeper: &Keeper, writes: Vec<Write>) {
+    let (told, heard) = futures_channel::oneshot::channel();
+    let told = std::cell::RefCell::new(Some(told));
+    keeper.store(writes, move |standing| {
+        if standing != Standing::Keeping
+            && let Some(told) = told.borrow_mut().take()
+        {
+            // Nobody listening any more is no trouble.
+            let _ = told.send(standing);
+        }
+    });
+    assert_eq!(heard.await, Ok(Standing::Kept), "the store takes it");
+}
+
+#[wasm_bindgen_test]
+async fn records_are_there_when_the_store_is_opened_again() {
+    let write = |name: &str, value: Option<&str>| Write {
+        name: name.to_owned(),
+        value: value.map(str::to_owned),
+    };
+    let (keeper, _) = Keeper::open().await.expect("the browser has a store");
+    stored(&keeper, vec![write("test-a", Some("1")), write("test-b", Some("2"))]).await;
+    stored(&keeper, vec![write("test-a", Some("ü 3")), write("test-b", None)]).await;
+    let (_, kept) = Keeper::open().await.expect("it opens again");
+    assert_eq!(kept.get("test-a").map(String::as_str), Some("ü 3"), "the newest text");
+    assert_eq!(kept.get("test-b"), None, "what was removed is gone");
+}
