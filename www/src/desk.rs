@@ -147,7 +147,7 @@ impl Desk {
 
     /// The unit a bare number takes in a length field.
     pub fn bare(&self) -> LengthUnit {
-        match self.units.get() {
+        match self.units.get_untracked() {
             Units::Metric => LengthUnit::Millimetres,
             Units::FeetInches => LengthUnit::Inches,
         }

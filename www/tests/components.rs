@@ -17,6 +17,13 @@ use web_sys::{Element, Event, HtmlElement, HtmlInputElement};
 
 wasm_bindgen_test_configure!(run_in_browser);
 
+/// Waits until what follows from an edit is drawn: an edit may ripple through several effects.
+async fn settled() {
+    for _ in 0..4 {
+        tick().await;
+    }
+}
+
 /// A part of the page with a desk of its own.
 struct Mounted {
     root: HtmlElement,
@@ -86,7 +93,7 @@ impl Mounted {
         field.set_value(text);
         let event = Event::new(event).expect("an event");
         field.dispatch_event(&event).expect("it is heard");
-        tick().await;
+        settled().await;
     }
 
     fn first_text(&self) -> String {
@@ -106,7 +113,7 @@ async fn a_row_is_edited_in_place() {
     assert_eq!(rows.first_text(), "WREN", "each key is taken");
     assert!(rows.text().contains("4 pieces"), "got: {}", rows.text());
     rows.desk.undo();
-    tick().await;
+    settled().await;
     assert_eq!(field.value(), "QUILLMOOR", "undo is shown in the field");
 }
 
@@ -173,7 +180,7 @@ async fn a_piece_tapped_on_the_picture_is_marked_and_told() {
     assert_eq!(pieces.len(), 28, "every piece can be tapped");
     let click = Event::new("click").expect("an event");
     pieces[4].dispatch_event(&click).expect("it is heard");
-    tick().await;
+    settled().await;
     assert_eq!(sign.desk.piece.get_untracked(), Some(4), "the fifth is marked");
     assert!(sign.text().contains("piece 5, row 1"), "got: {}", sign.text());
 }
@@ -183,11 +190,11 @@ async fn a_job_opened_from_a_file_takes_the_desk_and_undo_gives_it_back() {
     let rows = mount(|| view! { <Rows/> });
     let opened = files::read("word.json", tubewright::job::write(&demo::jobs()[0]).as_bytes());
     files::put(rows.desk, opened.expect("the demo job is read"));
-    tick().await;
+    settled().await;
     assert_eq!(rows.first_text(), "Late", "the opened job");
     assert_eq!(rows.desk.place.get_untracked(), Where::Sign, "in sight");
     rows.desk.undo();
-    tick().await;
+    settled().await;
     assert_eq!(rows.first_text(), "QUILLMOOR", "the one before");
 }
 
