@@ -15,6 +15,11 @@ use crate::book::{Gas, SupplyKind};
 use crate::circuit::{Basis, CONTINUOUS_TO, Curve, Window};
 use crate::rules::Grade;
 
+/// More pieces than a circuit ever has: on the largest supply that can be entered, 30 kV, so many
+/// electrode pairs would have to take under 100 V each. Without a bound a mistyped pair voltage
+/// makes circuits of thousands of pieces, and the search takes hours.
+const MOST_PIECES: usize = 250;
+
 /// A fitting string.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Fitting {
@@ -71,7 +76,8 @@ pub struct Gates {
     neon: Vec<usize>,
     /// Tube type of each piece, as a place in the distinct list.
     tube: Vec<usize>,
-    tubes: usize,
+    /// By tube type of the distinct list, how many of the first i pieces are of it.
+    of_tube: Vec<Vec<usize>>,
     supplies: Vec<SupplyGates>,
 }
 
@@ -212,8 +218,16 @@ impl Gates {
             pairs,
             columns,
             neon,
+            of_tube: (0..distinct.len())
+                .map(|kind| {
+                    let so_far = tube.iter().scan(0, |count, &of| {
+                        *count += usize::from(of == kind);
+                        Some(*count)
+                    });
+                    std::iter::once(0).chain(so_far).collect()
+                })
+                .collect(),
             tube,
-            tubes: distinct.len(),
             supplies,
         }
     }
@@ -230,6 +244,9 @@ impl Gates {
 
     /// Whether some pieces fit a supply.
     pub fn fit(&self, task: &Task, pieces: Range<usize>, supply: usize) -> Fit<Fitting> {
+        if pieces.len() > MOST_PIECES {
+            return Fit::TooMuch;
+        }
         if !two_strings(&task.candidates[supply].rating) {
             return self.string(&pieces, supply, self.neon(&pieces));
         }
@@ -278,28 +295,63 @@ impl Gates {
     }
 
     /// The best halving: lightest grade, then best balance between the halves.
+    ///
+    /// Looked for from the balanced halving outwards, the better balanced side first, so that the
+    /// first one found of a grade is the best of it.
     fn halves(&self, pieces: &Range<usize>, supply: usize) -> Option<(usize, Fitting)> {
-        let middle = &self.supplies[supply].loads[0].middle;
         // One window for both strings, as `circuit::assess` holds them.
         let neon = self.neon(pieces);
-        (pieces.start + 1..pieces.end)
-            .filter_map(|from| {
-                let (first, second) = (pieces.start..from, from..pieces.end);
-                let (Fit::Fits(a), Fit::Fits(b)) = (
-                    self.string(&first, supply, neon),
-                    self.string(&second, supply, neon),
-                ) else {
-                    return None;
-                };
-                let uneven = (self.volts(&first, middle) - self.volts(&second, middle)).abs();
+        let loads = &self.supplies[supply].loads[neon];
+        // Volts of the first string beyond the second's: they only grow with its pieces.
+        let beyond = |from: usize| {
+            self.volts(&(pieces.start..from), &loads.middle)
+                - self.volts(&(from..pieces.end), &loads.middle)
+        };
+        // A string under the window's foot needs a look; so does one of two that are under it
+        // together. A hair of room is for rounding.
+        let light = self.volts(pieces, &loads.light) < 2.0 * loads.light.volts * (1.0 - 1e-9);
+        let (mut least, mut most) = (pieces.start + 1, pieces.end);
+        while least < most {
+            let middle = usize::midpoint(least, most);
+            if beyond(middle) < 0.0 {
+                least = middle + 1;
+            } else {
+                most = middle;
+            }
+        }
+        let mut left = (pieces.start + 1..least).rev().peekable();
+        let mut right = (least..pieces.end).peekable();
+        let mut look = None;
+        loop {
+            let leftwards = match (left.peek(), right.peek()) {
+                (Some(&left), Some(&right)) => -beyond(left) <= beyond(right),
+                (Some(_), None) => true,
+                (None, Some(_)) => false,
+                (None, None) => return look,
+            };
+            let from = if leftwards { left.next() } else { right.next() }?;
+            let first = self.string(&(pieces.start..from), supply, neon);
+            let second = self.string(&(from..pieces.end), supply, neon);
+            if let (Fit::Fits(a), Fit::Fits(b)) = (first, second) {
                 let fitting = Fitting {
                     grade: a.grade.max(b.grade),
                     off_middle: a.off_middle.max(b.off_middle),
                 };
-                Some((from, fitting, uneven))
-            })
-            .min_by(|a, b| a.1.grade.cmp(&b.1.grade).then(a.2.total_cmp(&b.2)))
-            .map(|(from, fitting, _)| (from, fitting))
+                if fitting.grade.is_none() {
+                    return Some((from, fitting));
+                }
+                look = look.or(Some((from, fitting)));
+                if light {
+                    return look;
+                }
+            }
+            // Farther out the string that is too much already only grows.
+            if leftwards && second == Fit::TooMuch {
+                left = (0..0).rev().peekable();
+            } else if !leftwards && first == Fit::TooMuch {
+                right = (0..0).peekable();
+            }
+        }
     }
 
     /// Whether any of some pieces is neon, as the place of its gates.
@@ -323,19 +375,23 @@ impl Gates {
                 .as_ref()
                 .is_some_and(|heavy| self.volts(pieces, heavy) > heavy.volts)
             || self.volts(pieces, &loads.light) < loads.light.volts;
-        // A string has few tube types; each is asked once.
-        let mut asked = 0_u64;
-        for &tube in &self.tube[pieces.clone()] {
-            let bit = 1_u64 << (tube % 64);
-            if self.tubes <= 64 && asked & bit != 0 {
-                continue;
-            }
-            asked |= bit;
+        // Each tube type of the string is asked, by whichever list is shorter.
+        let mut ask = |tube: usize| {
             let [nominal, high] = &gates.most[tube];
-            if !self.holds(pieces, nominal) {
-                return Fit::NotYet;
-            }
             look |= !self.holds(pieces, high) || self.breaks(pieces, &gates.least[tube]);
+            self.holds(pieces, nominal)
+        };
+        let fits = if self.of_tube.len() <= pieces.len() {
+            let in_it = |counts: &Vec<usize>| counts[pieces.end] > counts[pieces.start];
+            let tubes = self.of_tube.iter().enumerate();
+            tubes
+                .filter(|(_, counts)| in_it(counts))
+                .all(|(tube, _)| ask(tube))
+        } else {
+            self.tube[pieces.clone()].iter().all(|&tube| ask(tube))
+        };
+        if !fits {
+            return Fit::NotYet;
         }
         let share = self.volts(pieces, &loads.middle) / loads.middle.volts - 1.0;
         Fit::Fits(Fitting {
@@ -566,6 +622,12 @@ mod tests {
                         Fit::NotYet | Fit::TooMuch => Some(Grade::Stop),
                     };
                     prop_assert_eq!(gate, judged, "pieces {}..{}", from, to);
+                    if let Fit::Fits(fitting) = fit {
+                        let second_from = gates.second_from(&task, &(from..to), 0);
+                        let worked = on(&task, &(from..to), second_from, &candidates[0].rating);
+                        let grade = Finding::gravest(&worked.findings);
+                        prop_assert_eq!(grade.filter(|&grade| grade > Grade::Note), fitting.grade);
+                    }
                     // What is too much stays too much with more.
                     prop_assert!(!never || judged == Some(Grade::Stop), "{}..{} fits after all", from, to);
                     never |= fit == Fit::TooMuch;

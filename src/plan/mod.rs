@@ -1,6 +1,7 @@
 //! The plan: pieces in reading order split into circuits, and a supply for each, with the reasons.
 //!
-//! Exact over all splits into neighbouring pieces. Order of what is avoided and sought: pieces left
+//! Exact over all splits into neighbouring pieces (of at most 250 each, more than any supply can
+//! run). Order of what is avoided and sought: pieces left
 //! without a supply; circuits that need a look; then the job's wish. Ties go to the better balance
 //! (each string near the middle of its window).
 

@@ -643,3 +643,34 @@ fn a_supply_the_rules_stop_is_refused_and_never_planned() {
         said(&work)
     );
 }
+
+#[test]
+fn a_mistyped_pair_voltage_makes_no_endless_search() {
+    // 0.01 V for an electrode pair, and glass that takes next to nothing: every supply could run
+    // thousands of pieces.
+    let nothing = TubeEntry {
+        name: "odd".to_owned(),
+        outer_mm: Some(12.0),
+        pair_volts: Some(0.01),
+        volts_per_m: Some(0.01),
+        ..TubeEntry::default()
+    };
+    let mut book = book();
+    book.tubes.push(nothing);
+    book.supplies[0].earthing = OutputEarthing::MidPointReturn;
+    let row = Row::Strokes(StrokesRow {
+        label: "bar".to_owned(),
+        strokes: vec!["10 mm"; 1_000].join(";"),
+        tube: "odd".to_owned(),
+        count: 1,
+    });
+    let job = job(vec![row]);
+    let work = workup(&job, &book);
+    assert_sound(&job, &work);
+    assert!(
+        work.circuits
+            .iter()
+            .all(|circuit| circuit.pieces.len() <= 250),
+        "a bound holds"
+    );
+}
