@@ -16,37 +16,38 @@ pub fn cargo() -> Command {
 
 /// Shows the command, runs it and waits.
 pub fn run(command: &mut Command) -> Outcome {
-    let shown = shown(command);
-    println!("$ {shown}");
+    println!("$ {}", shown(command));
+    // Its environment was shown above; in a sentence it would only hide the command.
+    let typed = typed(command);
     let status = command
         .status()
-        .map_err(|error| cannot_start(&shown, &error))?;
+        .map_err(|error| cannot_start(&typed, &error))?;
     if status.success() {
         Ok(())
     } else {
-        Err(format!("`{shown}` failed: {status}."))
+        Err(format!("`{typed}` failed: {status}."))
     }
 }
 
 /// Runs a command quietly and gives what it prints.
 pub fn output(command: &mut Command) -> Result<String, String> {
-    let shown = shown(command);
+    let typed = typed(command);
     let output = command
         .output()
-        .map_err(|error| cannot_start(&shown, &error))?;
+        .map_err(|error| cannot_start(&typed, &error))?;
     if !output.status.success() {
         let says = String::from_utf8_lossy(&output.stderr);
         return Err(format!(
-            "`{shown}` failed: {}. It says: {}",
+            "`{typed}` failed: {}. It says: {}",
             output.status,
             says.trim()
         ));
     }
-    String::from_utf8(output.stdout).map_err(|_| format!("`{shown}` printed no readable text."))
+    String::from_utf8(output.stdout).map_err(|_| format!("`{typed}` printed no readable text."))
 }
 
-fn cannot_start(shown: &str, error: &std::io::Error) -> String {
-    format!("`{shown}` cannot be started: {error}.")
+fn cannot_start(typed: &str, error: &std::io::Error) -> String {
+    format!("`{typed}` cannot be started: {error}.")
 }
 
 /// A command as it would be typed: what is set in its environment, the program's name, the arguments.
@@ -54,12 +55,16 @@ pub fn shown(command: &Command) -> String {
     let set = command
         .get_envs()
         .filter_map(|(name, value)| Some(format!("{}={}", name.to_string_lossy(), quoted(value?))));
+    let words = std::iter::once(typed(command));
+    set.chain(words).collect::<Vec<_>>().join(" ")
+}
+
+/// The same without its environment.
+fn typed(command: &Command) -> String {
     let program = Path::new(command.get_program());
     let program = program.file_name().unwrap_or(program.as_os_str());
-    let words = std::iter::once(program)
-        .chain(command.get_args())
-        .map(quoted);
-    set.chain(words).collect::<Vec<_>>().join(" ")
+    let words = std::iter::once(program).chain(command.get_args());
+    words.map(quoted).collect::<Vec<_>>().join(" ")
 }
 
 fn quoted(word: &OsStr) -> String {
@@ -90,7 +95,9 @@ mod tests {
 
     #[test]
     fn a_failing_command_is_named() {
-        let said = run(cargo().arg("no-such-command-of-cargo")).unwrap_err();
+        let mut command = cargo();
+        command.arg("no-such-command-of-cargo").env("SET", "1");
+        let said = run(&mut command).unwrap_err();
         assert!(
             said.starts_with("`cargo no-such-command-of-cargo` failed: "),
             "{said}"
