@@ -62,7 +62,10 @@ where
 
 impl Mounted {
     fn text(&self) -> String {
-        self.root.text_content().unwrap_or_default().replace('\u{202f}', " ")
+        self.root
+            .text_content()
+            .unwrap_or_default()
+            .replace('\u{202f}', " ")
     }
 
     fn all(&self, selector: &str) -> Vec<Element> {
@@ -134,22 +137,45 @@ async fn a_count_that_is_none_stays_in_sight_with_a_sentence() {
     let field = rows.field("Times", 0);
     rows.enter(&field, "twice", "change").await;
     assert_eq!(field.value(), "twice", "what was typed is not wiped out");
-    assert!(rows.text().contains("found “twice”"), "got: {}", rows.text());
-    assert_eq!(rows.desk.job.with_untracked(|job| job.rows[0].count()), 1, "the job has the old");
+    assert!(
+        rows.text().contains("found “twice”"),
+        "got: {}",
+        rows.text()
+    );
+    assert_eq!(
+        rows.desk.job.with_untracked(|job| job.rows[0].count()),
+        1,
+        "the job has the old"
+    );
     rows.enter(&field, "2", "change").await;
     assert!(!rows.text().contains("found “twice”"), "the sentence goes");
-    assert_eq!(rows.desk.job.with_untracked(|job| job.rows[0].count()), 2, "the job has the new");
+    assert_eq!(
+        rows.desk.job.with_untracked(|job| job.rows[0].count()),
+        2,
+        "the job has the new"
+    );
 }
 
 #[wasm_bindgen_test]
 async fn a_place_shows_what_the_work_up_says() {
     let circuits = mount(|| view! { <Circuits/> });
     let worked = circuits.desk.results.get_untracked();
-    assert_eq!(circuits.all(".card").len(), worked.circuits.len(), "a card for each circuit");
+    assert_eq!(
+        circuits.all(".card").len(),
+        worked.circuits.len(),
+        "a card for each circuit"
+    );
     for circuit in &worked.circuits {
-        assert!(circuits.text().contains(&circuit.supply.name), "{}", circuit.supply.name);
+        assert!(
+            circuits.text().contains(&circuit.supply.name),
+            "{}",
+            circuit.supply.name
+        );
     }
-    assert!(circuits.text().contains("High voltage kills."), "the caution stands there");
+    assert!(
+        circuits.text().contains("High voltage kills."),
+        "the caution stands there"
+    );
 
     let glass = mount(|| view! { <Glass/> });
     assert_eq!(
@@ -159,12 +185,19 @@ async fn a_place_shows_what_the_work_up_says() {
     );
     let price = mount(|| view! { <Price/> });
     assert!(
-        price.text().replace(' ', "").contains(&worked.quote.total.round_dp(2).to_string()),
+        price
+            .text()
+            .replace(' ', "")
+            .contains(&worked.quote.total.round_dp(2).to_string()),
         "the total: {}",
         price.text()
     );
     let findings = mount(|| view! { <FindingsList/> });
-    assert_eq!(findings.all(".finding").len(), worked.findings.len(), "every finding");
+    assert_eq!(
+        findings.all(".finding").len(),
+        worked.findings.len(),
+        "every finding"
+    );
     let book = mount(|| view! { <ShopBook/> });
     assert_eq!(
         book.all(".entries li").len(),
@@ -181,14 +214,25 @@ async fn a_piece_tapped_on_the_picture_is_marked_and_told() {
     let click = Event::new("click").expect("an event");
     pieces[4].dispatch_event(&click).expect("it is heard");
     settled().await;
-    assert_eq!(sign.desk.piece.get_untracked(), Some(4), "the fifth is marked");
-    assert!(sign.text().contains("piece 5, row 1"), "got: {}", sign.text());
+    assert_eq!(
+        sign.desk.piece.get_untracked(),
+        Some(4),
+        "the fifth is marked"
+    );
+    assert!(
+        sign.text().contains("piece 5, row 1"),
+        "got: {}",
+        sign.text()
+    );
 }
 
 #[wasm_bindgen_test]
 async fn a_job_opened_from_a_file_takes_the_desk_and_undo_gives_it_back() {
     let rows = mount(|| view! { <Rows/> });
-    let opened = files::read("word.json", tubewright::job::write(&demo::jobs()[0]).as_bytes());
+    let opened = files::read(
+        "word.json",
+        tubewright::job::write(&demo::jobs()[0]).as_bytes(),
+    );
     files::put(rows.desk, opened.expect("the demo job is read"));
     settled().await;
     assert_eq!(rows.first_text(), "Late", "the opened job");
@@ -220,9 +264,21 @@ async fn records_are_there_when_the_store_is_opened_again() {
         value: value.map(str::to_owned),
     };
     let (keeper, _) = Keeper::open().await.expect("the browser has a store");
-    stored(&keeper, vec![write("test-a", Some("1")), write("test-b", Some("2"))]).await;
-    stored(&keeper, vec![write("test-a", Some("ü 3")), write("test-b", None)]).await;
+    stored(
+        &keeper,
+        vec![write("test-a", Some("1")), write("test-b", Some("2"))],
+    )
+    .await;
+    stored(
+        &keeper,
+        vec![write("test-a", Some("ü 3")), write("test-b", None)],
+    )
+    .await;
     let (_, kept) = Keeper::open().await.expect("it opens again");
-    assert_eq!(kept.get("test-a").map(String::as_str), Some("ü 3"), "the newest text");
+    assert_eq!(
+        kept.get("test-a").map(String::as_str),
+        Some("ü 3"),
+        "the newest text"
+    );
     assert_eq!(kept.get("test-b"), None, "what was removed is gone");
 }

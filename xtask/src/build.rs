@@ -1,8 +1,7 @@
 //! `cargo xtask build`: the page, ready to be put on any web server, in `dist/`.
 //!
 //! What lands there: `page_bg.wasm` and `page.js` made of the crate in `www/`, that folder's static
-//! files, the demonstration files in `demo/`, and the offline worker with the exact list of all of
-//! it. `dist/` is replaced whole and last: a failed build leaves the old one alone.
+//! files, and the offline worker with the exact list of all of it. `dist/` is replaced whole and last: a failed build leaves the old one alone.
 
 use std::path::{Path, PathBuf};
 use std::process::Command;
@@ -43,9 +42,8 @@ pub fn build() -> Outcome {
     files::remove(&fresh)?;
     println!("Joining the page to the browser.");
     bind(&wasm, &fresh)?;
-    println!("Copying the static files and the demonstration.");
+    println!("Copying the static files.");
     copy_static(&paths::www(), &fresh)?;
-    copy_demo(&paths::demo(), &fresh.join("demo"))?;
     println!("Listing the files for the offline worker.");
     fill_worker(&fresh)?;
     replace(&fresh, &dist)?;
@@ -167,19 +165,6 @@ fn copy_static(www: &Path, into: &Path) -> Outcome {
     Ok(())
 }
 
-/// Copies the demonstration jobs and book.
-fn copy_demo(demo: &Path, into: &Path) -> Outcome {
-    for name in files::list(demo)? {
-        if Path::new(&name)
-            .extension()
-            .is_some_and(|ending| ending == "json")
-        {
-            files::write(&into.join(&name), &files::read(&demo.join(&name))?)?;
-        }
-    }
-    Ok(())
-}
-
 /// Tells the offline worker the exact files of the page.
 fn fill_worker(dist: &Path) -> Outcome {
     let worker = dist.join(WORKER);
@@ -264,14 +249,6 @@ mod tests {
         assert!(said.contains("index.html is missing"), "{said}");
     }
 
-    #[test]
-    fn only_documents_are_demonstrated() {
-        let demo = Scratch::with(&[("book.json", "{}"), ("supplies.csv", "")]);
-        let dist = Scratch::with(&[]);
-        copy_demo(demo.path(), &dist.path().join("demo")).unwrap();
-        assert_eq!(files::list(dist.path()).unwrap(), ["demo/book.json"]);
-    }
-
     const SOURCE: &str = "const FILES = \"__FILES__\";\nconst VERSION = \"__VERSION__\";\n";
 
     #[test]
@@ -280,7 +257,7 @@ mod tests {
             let dist = Scratch::with(&[
                 ("index.html", "abc"),
                 ("style.css", style),
-                ("demo/book.json", "{}"),
+                ("icons/a.svg", "{}"),
                 ("offline.js", SOURCE),
             ]);
             fill_worker(dist.path()).unwrap();
@@ -296,7 +273,7 @@ mod tests {
             .unwrap();
         let listed: Vec<(String, String)> = serde_json::from_str(listed).unwrap();
         let names: Vec<&str> = listed.iter().map(|(name, _)| name.as_str()).collect();
-        assert_eq!(names, ["./", "demo/book.json", "index.html", "style.css"]);
+        assert_eq!(names, ["./", "icons/a.svg", "index.html", "style.css"]);
         let hash = files::sha256(b"abc");
         assert_eq!((&listed[0].1, &listed[2].1), (&hash, &hash));
 

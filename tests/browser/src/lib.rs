@@ -7,6 +7,11 @@
 //! `TUBEWRIGHT_PAGE` (its address), `TUBEWRIGHT_DRIVER` (the driver's), `TUBEWRIGHT_CHROMIUM` (the
 //! browser), `TUBEWRIGHT_DIST` (the folder).
 
+#![allow(
+    clippy::missing_panics_doc,
+    reason = "a test panics where what it wants is not there; that is what it is for"
+)]
+
 use std::path::PathBuf;
 use std::time::{Duration, Instant};
 
@@ -93,18 +98,7 @@ async fn open(size: Size) -> WebDriverResult<WebDriver> {
     let mut wanted = DesiredCapabilities::chrome();
     wanted.set_binary(&given("TUBEWRIGHT_CHROMIUM"))?;
     let (width, height) = size.pixels();
-    for argument in [
-        "--headless",
-        "--no-sandbox",
-        "--disable-gpu",
-        "--disable-quic",
-        "--no-first-run",
-        "--disable-background-networking",
-        "--disable-component-update",
-        "--disable-sync",
-        "--disable-dev-shm-usage",
-        "--hide-scrollbars",
-    ] {
+    for argument in xtask::chromium::ARGS.iter().chain(&["--hide-scrollbars"]) {
         wanted.add_arg(argument)?;
     }
     let driver = WebDriver::new(given("TUBEWRIGHT_DRIVER"), wanted).await?;

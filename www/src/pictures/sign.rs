@@ -79,7 +79,7 @@ pub fn SignPicture(
             })
             .collect();
         let tubes: Vec<_> = scene.layers.iter().map(|layer| tube(layer, px)).collect();
-        let numbers: Vec<_> = scene.badges.iter().map(|badge| number(badge, px)).collect();
+        let badges = scene.badges.clone();
         view! {
             <svg
                 class="picture-sign"
@@ -100,7 +100,7 @@ pub fn SignPicture(
                 <path class="picture-electrode-ring" d=scene.electrodes.clone() stroke-width=electrode.to_string()></path>
                 <path class="picture-electrode" d=scene.electrodes.clone() stroke-width=(0.6 * electrode).to_string()></path>
                 {hits}
-                {move || circuits.get().then(|| numbers.clone())}
+                {move || circuits.get().then(|| badges.iter().map(|badge| number(badge, px)).collect::<Vec<_>>())}
                 <path class="picture-bar" d=bar_path stroke-width=(1.2 * px).to_string()></path>
                 <text
                     class="picture-caption"
@@ -135,7 +135,7 @@ fn tube(layer: &Layer, px: f64) -> impl IntoView + use<> {
     }
 }
 
-fn number(badge: &Badge, px: f64) -> impl IntoView + Clone + use<> {
+fn number(badge: &Badge, px: f64) -> impl IntoView + use<> {
     let (x, y) = (badge.at.x - 4.0 * px, badge.at.y - 4.0 * px);
     let (number, dim) = (badge.number, badge.dim);
     view! {

@@ -116,7 +116,10 @@ pub fn Circuits() -> impl IntoView {
         <div class="picture-frame">
             <SignPicture circuits=Signal::stored(true) focus=focus most=0.26/>
         </div>
-        <p class="quiet">{aim}</p>
+        <p class="quiet">
+            {aim}
+            " Worked with an ideal supply: no winding resistance, no stray capacitance of leads and tubes, no reignition peak. Measure the current before the sign goes up."
+        </p>
         <Show when=move || desk.results.with(|results| results.circuits.is_empty() && results.left_over.is_empty())>
             <p class="quiet">"No circuits yet: the sign has no glass, or its tube types are not in the shop book."</p>
         </Show>
