@@ -2,7 +2,9 @@
 //!
 //! Strokes are kurbo paths in millimetres, x to the right, y downwards, the baseline at y = 0.
 
+mod artwork;
 mod face;
 mod jhf;
 
+pub use artwork::{ArtGroup, ArtStroke, Artwork, Unread};
 pub use face::{CAP_UNITS, Face, Letter, Shaped, face, faces};
