@@ -428,7 +428,11 @@ fn any_job() -> impl Strategy<Value = Job> {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(300))]
+    #![proptest_config(ProptestConfig {
+        // A job of thousands of pieces is slow to make smaller.
+        max_shrink_time: 10_000,
+        ..ProptestConfig::with_cases(300)
+    })]
 
     #[test]
     fn no_job_and_no_book_brings_it_down(job in any_job(), book in any_book()) {
@@ -442,8 +446,9 @@ proptest! {
         let mut rows = good.to_vec();
         rows.insert(at.min(2), bad);
         let (alone, together) = (workup(&job(good.to_vec()), &book()), workup(&job(rows), &book()));
-        // A row of thousands of pieces does crowd the others out, and the job says so.
-        prop_assume!(!said(&together).contains("pieces of glass must be"));
+        // A row that fills the job up to its 4 000 pieces does crowd the others out, and the job
+        // says so; `more_rows_and_pieces_than_a_job_may_have` holds that.
+        prop_assume!(together.takeoff.pieces.len() < 3_990);
         let others = together.takeoff.rows.iter().enumerate().filter(|&(row, _)| row != at.min(2));
         for (before, (_, after)) in alone.takeoff.rows.iter().zip(others) {
             prop_assert_eq!(before.lit, after.lit);
