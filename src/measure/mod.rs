@@ -1,4 +1,5 @@
 //! Lengths, volts and milliamperes: the types, reading what a person typed, and showing it again.
+//! Other typed figures and sums of money are read here too.
 //!
 //! Typed lengths are read as exact rationals (`17 5/8 in` is 17 5/8 x 25.4 mm, no rounding) and
 //! become floating millimetres only when a figure is worked out from them.
@@ -10,7 +11,7 @@ mod show;
 
 pub use limits::{COUNT, LETTER_HEIGHT_MM, Limit, PIECE_LENGTH_MM, PIECES, ROWS, TEXT_CHARACTERS};
 pub use quantity::{Length, Milliamps, Volts};
-pub use read::{ExactLength, LengthUnit, ReadError, length, milliamps, quoted, volts, with_units};
+pub use read::{ExactLength, LengthUnit, ReadError, figure, length, money, quoted, with_units};
 pub use show::{
     Units, glass, grouped, length_exact, length_shown, milliamps_shown, told_from, volts_shown,
 };

@@ -10,11 +10,16 @@
 //! ```
 //!
 //! A product without any unit takes the unit the field is set to, on its last factor.
+//!
+//! Figures of a nameplate are one factor, sums of money a number without fractions; all numbers are
+//! read by the one rule in [`Reader::plain`].
 
 use core::fmt;
+use core::ops::Range;
 
 use num_rational::Ratio;
 use num_traits::{CheckedAdd, CheckedMul, Zero};
+use rust_decimal::Decimal;
 
 use super::Length;
 
@@ -22,6 +27,9 @@ type Exact = Ratio<i128>;
 
 /// More digits than any real length has; keeps the exact arithmetic far from overflow.
 const MOST_DIGITS: usize = 12;
+/// As many places after the point as a floating figure above a millionth is written out with, so that
+/// every figure a list was written with is read again.
+const MOST_DECIMALS: usize = 24;
 /// More characters than any field needs. Spaces and letters are not counted: units written out by
 /// [`with_units`] must not make a text too long to be read again.
 const MOST_CHARACTERS: usize = 200;
@@ -169,19 +177,36 @@ pub fn with_units(text: &str, bare: LengthUnit) -> String {
     out
 }
 
-/// Reads volts: `7500`, `7.5 kV`.
-pub fn volts(text: &str) -> Result<f64, ReadError> {
-    plain(text, &VOLT_WORDS, "V")
+/// Reads a figure in `unit`: a decimal point or comma, and behind it nothing or a unit of the same
+/// kind. `V` takes V and kV, `mA` takes mA and A, `mm` any unit of length, `Hz` also kHz, `VA` also
+/// kVA, `s` also ms, `%` and `V/m` only themselves; any other text, such as an empty one, takes bare
+/// figures only.
+///
+/// # Errors
+/// A [`ReadError`] with the place in the text. The figure may be zero: limits are the caller's.
+pub fn figure(text: &str, unit: &str) -> Result<f64, ReadError> {
+    let words = Words::of(unit);
+    let mut reader = Reader::new(text)?;
+    let factor = reader.factor(words)?;
+    reader.end("the end", words)?;
+    // A floating figure written out comes back to the last bit only by way of the float reader.
+    Ok(Some(&factor)
+        .filter(|factor| !factor.unit)
+        .and_then(|factor| reader.written(factor.start..factor.end).parse().ok())
+        .unwrap_or_else(|| nearest(factor.value)))
 }
 
-/// Reads milliamperes: `30`, `30 mA`, `0.03 A`.
-pub fn milliamps(text: &str) -> Result<f64, ReadError> {
-    plain(text, &MILLIAMP_WORDS, "mA")
-}
-
-fn plain(text: &str, words: &Words, bare: &str) -> Result<f64, ReadError> {
-    let (total, _) = Reader::new(text)?.sum(words, bare)?;
-    Ok(nearest(total))
+/// Reads a sum of money, from 0 on, with a decimal point or comma and as many decimals as typed.
+pub fn money(text: &str) -> Result<Decimal, ReadError> {
+    let mut reader = Reader::new(text)?;
+    reader.skip_spaces();
+    reader.from_zero_on()?;
+    let start = reader.at;
+    reader.plain()?;
+    let written = reader.written(start..reader.at);
+    reader.end("the end", &NO_WORDS)?;
+    Decimal::from_str_exact(&written)
+        .map_err(|_| ReadError::new(text, start, "a figure with fewer digits"))
 }
 
 /// The float beside a fraction: at most one rounding of each part and one of the quotient.
@@ -225,14 +250,72 @@ const LENGTH_WORDS: Words = Words {
 };
 const FOOT: (i128, i128) = (1524, 5);
 const INCH: (i128, i128) = (127, 5);
-const VOLT_WORDS: Words = Words {
-    sizes: &[("kv", 1000, 1), ("v", 1, 1)],
-    examples: "V or kV",
+const NO_WORDS: Words = Words {
+    sizes: &[],
+    examples: "",
 };
-const MILLIAMP_WORDS: Words = Words {
-    sizes: &[("ma", 1, 1), ("a", 1000, 1)],
-    examples: "mA or A",
-};
+/// The units of figures that are no lengths, by the unit a bare figure takes.
+const FIGURE_WORDS: [(&str, Words); 7] = [
+    (
+        "V",
+        Words {
+            sizes: &[("kv", 1000, 1), ("v", 1, 1)],
+            examples: "V or kV",
+        },
+    ),
+    (
+        "mA",
+        Words {
+            sizes: &[("ma", 1, 1), ("a", 1000, 1)],
+            examples: "mA or A",
+        },
+    ),
+    (
+        "VA",
+        Words {
+            sizes: &[("kva", 1000, 1), ("va", 1, 1)],
+            examples: "VA or kVA",
+        },
+    ),
+    (
+        "Hz",
+        Words {
+            sizes: &[("khz", 1000, 1), ("hz", 1, 1)],
+            examples: "Hz or kHz",
+        },
+    ),
+    (
+        "s",
+        Words {
+            sizes: &[("ms", 1, 1000), ("s", 1, 1)],
+            examples: "s or ms",
+        },
+    ),
+    (
+        "%",
+        Words {
+            sizes: &[("%", 1, 1)],
+            examples: "%",
+        },
+    ),
+    (
+        "V/m",
+        Words {
+            sizes: &[("v/m", 1, 1)],
+            examples: "V/m",
+        },
+    ),
+];
+
+impl Words {
+    fn of(unit: &str) -> &'static Self {
+        match FIGURE_WORDS.iter().find(|(bare, _)| *bare == unit) {
+            Some((_, words)) => words,
+            None if unit == LengthUnit::Millimetres.word() => &LENGTH_WORDS,
+            None => &NO_WORDS,
+        }
+    }
+}
 
 /// A factor: its figure, already multiplied by its unit if it had one.
 struct Factor {
@@ -279,17 +362,30 @@ impl<'t> Reader<'t> {
                 break;
             }
         }
-        if self.at < self.chars.len() {
-            let error = ReadError::new(self.text, self.at, "“+”, “x” or the end");
-            return Err(if self.chars[self.at].is_alphabetic() {
-                error.hint(format!("units are {}", words.examples))
-            } else if self.chars[self.at].is_ascii_digit() {
+        self.end("“+”, “x” or the end", words)?;
+        Ok((total, bare_ends))
+    }
+
+    /// Nothing may follow.
+    fn end(&mut self, expected: &str, words: &Words) -> Result<(), ReadError> {
+        self.skip_spaces();
+        let Some(next) = self.peek() else {
+            return Ok(());
+        };
+        let error = ReadError::new(self.text, self.at, expected);
+        Err(
+            if next.is_ascii_digit() && core::ptr::eq(words, &LENGTH_WORDS) {
                 error.hint("write feet and inches as 1' 6 1/2\", thousands without a space")
+            } else if next.is_ascii_digit() {
+                error.hint("thousands are written without a space")
+            } else if next.is_alphabetic() && words.examples.is_empty() {
+                error.hint("this figure takes no unit")
+            } else if next.is_alphabetic() {
+                error.hint(format!("units are {}", words.examples))
             } else {
                 error
-            });
-        }
-        Ok((total, bare_ends))
+            },
+        )
     }
 
     fn product(
@@ -334,10 +430,7 @@ impl<'t> Reader<'t> {
     fn factor(&mut self, words: &Words) -> Result<Factor, ReadError> {
         self.skip_spaces();
         let start = self.at;
-        if matches!(self.peek(), Some('-' | '−')) {
-            return Err(ReadError::new(self.text, start, "a figure above zero")
-                .hint("a length, voltage or current is never negative here"));
-        }
+        self.from_zero_on()?;
         let number = self.number()?;
         let end = self.at;
         let Some((numer, denom)) = self.unit(words) else {
@@ -397,27 +490,9 @@ impl<'t> Reader<'t> {
             self.at += 1;
             return Ok(fraction);
         }
-        let (whole, _) = self.digits()?;
-        if matches!(self.peek(), Some('.' | ',')) {
-            let comma = self.peek() == Some(',');
-            let point_at = self.at;
-            self.at += 1;
-            let (decimals, count) = self.digits()?;
-            if comma && count == 3 {
-                let typed: String = self.chars[start..self.at].iter().collect();
-                return Err(
-                    ReadError::new(self.text, point_at, "a point or no comma").hint(format!(
-                        "{typed} could be {} or {}",
-                        typed.replace(',', "."),
-                        typed.replace(',', "")
-                    )),
-                );
-            }
-            if matches!(self.peek(), Some('.' | ',')) {
-                return Err(ReadError::new(self.text, self.at, "one decimal point only"));
-            }
-            let scale = 10_i128.pow(u32::try_from(count).unwrap_or(u32::MAX).min(12));
-            return Ok(Exact::new(whole * scale + decimals, scale));
+        let (whole, decimals) = self.plain()?;
+        if let Some(value) = decimals {
+            return Ok(value);
         }
         if self.peek() == Some('/') {
             return self.fraction(whole, start);
@@ -438,7 +513,7 @@ impl<'t> Reader<'t> {
             }
             let fraction_start = self.at;
             if self.peek().is_some_and(|c| c.is_ascii_digit())
-                && let Ok((over, _)) = self.digits()
+                && let Ok((over, _)) = self.digits(MOST_DIGITS)
                 && self.peek() == Some('/')
             {
                 let fraction = self.fraction(over, fraction_start)?;
@@ -449,10 +524,59 @@ impl<'t> Reader<'t> {
         Ok(Exact::from_integer(whole))
     }
 
+    fn from_zero_on(&self) -> Result<(), ReadError> {
+        if matches!(self.peek(), Some('-' | '−')) {
+            return Err(ReadError::new(self.text, self.at, "a figure from 0 on")
+                .hint("nothing here is ever negative"));
+        }
+        Ok(())
+    }
+
+    /// A number without a fraction: its whole part, and the whole figure where it has decimals.
+    ///
+    /// A comma may stand for the decimal point or between thousands; where both are possible, with
+    /// one to three digits before it and three after, the figure is not guessed at. A point is always
+    /// the decimal point.
+    fn plain(&mut self) -> Result<(i128, Option<Exact>), ReadError> {
+        let start = self.at;
+        let (whole, before) = self.digits(MOST_DIGITS)?;
+        let point_at = self.at;
+        let comma = self.peek() == Some(',');
+        if !comma && self.peek() != Some('.') {
+            return Ok((whole, None));
+        }
+        self.at += 1;
+        let (decimals, count) = self.digits(MOST_DECIMALS)?;
+        if comma && count == 3 && before <= 3 && self.chars[start] != '0' {
+            let typed: String = self.chars[start..self.at].iter().collect();
+            return Err(
+                ReadError::new(self.text, point_at, "a point or no comma").hint(format!(
+                    "{typed} could be {} or {}",
+                    typed.replace(',', "."),
+                    typed.replace(',', "")
+                )),
+            );
+        }
+        if matches!(self.peek(), Some('.' | ',')) {
+            return Err(ReadError::new(self.text, self.at, "one decimal point only"));
+        }
+        let scale = (0..count).fold(1_i128, |scale, _| scale * 10);
+        Ok((whole, Some(Exact::new(whole * scale + decimals, scale))))
+    }
+
+    /// What stands there, as programs write numbers.
+    fn written(&self, range: Range<usize>) -> String {
+        let typed = self.chars[range].iter();
+        typed
+            .filter(|c| !is_group_space(**c))
+            .map(|&c| if c == ',' { '.' } else { c })
+            .collect()
+    }
+
     fn fraction(&mut self, over: i128, start: usize) -> Result<Exact, ReadError> {
         self.at += 1;
         let under_at = self.at;
-        let (under, _) = self.digits()?;
+        let (under, _) = self.digits(MOST_DIGITS)?;
         if under == 0 {
             return Err(ReadError::new(
                 self.text,
@@ -472,23 +596,20 @@ impl<'t> Reader<'t> {
 
     /// A run of digits, its value and how many there were. Thin spaces may group them, as in the
     /// figures this program shows.
-    fn digits(&mut self) -> Result<(i128, usize), ReadError> {
+    fn digits(&mut self, most: usize) -> Result<(i128, usize), ReadError> {
         let start = self.at;
         let mut value = 0_i128;
         let mut count = 0;
         while let Some(c) = self.peek() {
             if let Some(digit) = c.to_digit(10) {
                 count += 1;
-                if count > MOST_DIGITS {
-                    return Err(ReadError::new(
-                        self.text,
-                        start,
-                        format!("at most {MOST_DIGITS} digits"),
-                    ));
+                if count > most {
+                    let expected = format!("at most {most} digits");
+                    return Err(ReadError::new(self.text, start, expected));
                 }
                 value = value * 10 + i128::from(digit);
             } else if !(count > 0
-                && matches!(c, '\u{2009}' | '\u{202f}')
+                && is_group_space(c)
                 && self
                     .chars
                     .get(self.at + 1)
@@ -546,6 +667,11 @@ impl<'t> Reader<'t> {
             self.at += 1;
         }
     }
+}
+
+/// The thin spaces this program puts between thousands.
+const fn is_group_space(c: char) -> bool {
+    matches!(c, '\u{2009}' | '\u{202f}')
 }
 
 const fn is_times(c: char) -> bool {

@@ -5,8 +5,8 @@ use insta::assert_snapshot;
 use proptest::prelude::*;
 use serde::Deserialize;
 use tubewright::measure::{
-    Length, LengthUnit, Milliamps, Units, Volts, glass, grouped, length, length_exact,
-    length_shown, milliamps, milliamps_shown, quoted, volts, volts_shown, with_units,
+    Length, LengthUnit, Milliamps, Units, Volts, figure, glass, grouped, length, length_exact,
+    length_shown, milliamps_shown, money, quoted, volts_shown, with_units,
 };
 
 /// Source: `tests/reference/electrical/PROVENANCE.md`.
@@ -91,6 +91,7 @@ fn every_way_of_typing_a_length() {
         ("1.2 m", 1200.0),
         ("1,2 m", 1200.0),
         ("0,5", 0.5),
+        ("0,125 m", 125.0),
         ("17 5/8 in", 447.675),
         ("17-5/8\"", 447.675),
         ("17⅝ in", 447.675),
@@ -148,7 +149,7 @@ fn what_is_no_length_is_refused_with_its_place() {
     assert_snapshot!(refused("   "), @"expected a number such as 450, but the text ends at character 4 of “   ”");
     assert_snapshot!(refused("abc"), @"expected a number such as 450, but found “abc” at character 1 of “abc”");
     assert_snapshot!(refused("12 parsecs"), @"expected “+”, “x” or the end, but found “parsecs” at character 4 of “12 parsecs”; units are mm, cm, m, in or ft");
-    assert_snapshot!(refused("-5"), @"expected a figure above zero, but found “-5” at character 1 of “-5”; a length, voltage or current is never negative here");
+    assert_snapshot!(refused("-5"), @"expected a figure from 0 on, but found “-5” at character 1 of “-5”; nothing here is ever negative");
     assert_snapshot!(refused("NaN"), @"expected a number such as 450, but found “NaN” at character 1 of “NaN”");
     assert_snapshot!(refused("inf"), @"expected a number such as 450, but found “inf” at character 1 of “inf”");
     assert_snapshot!(refused("1e9"), @"expected “+”, “x” or the end, but found “e9” at character 2 of “1e9”; units are mm, cm, m, in or ft");
@@ -187,29 +188,94 @@ fn the_place_of_the_trouble_is_counted_in_characters() {
 }
 
 #[test]
-fn volts_and_milliamperes() {
-    for (typed, expect) in [
-        ("7500", 7500.0),
-        ("7.5 kV", 7500.0),
-        ("7,5kv", 7500.0),
-        ("230 V", 230.0),
+fn figures_of_a_nameplate() {
+    for (typed, unit, expect) in [
+        ("7500", "V", 7500.0),
+        ("7.5 kV", "V", 7500.0),
+        ("7,5kv", "V", 7500.0),
+        (" 230 V ", "V", 230.0),
+        ("9\u{202f}000 V", "V", 9000.0),
+        ("30", "mA", 30.0),
+        ("30 mA", "mA", 30.0),
+        ("0.03 A", "mA", 30.0),
+        ("0,02 A", "mA", 20.0),
+        ("18.5ma", "mA", 18.5),
+        ("12,5", "mm", 12.5),
+        ("1.2 cm", "mm", 12.0),
+        ("1/2 in", "mm", 12.7),
+        ("1' 6", "mm", 457.2),
+        ("30 %", "%", 30.0),
+        ("33,3%", "%", 33.3),
+        ("50 Hz", "Hz", 50.0),
+        ("20 kHz", "Hz", 20_000.0),
+        ("0.45 kVA", "VA", 450.0),
+        ("450 va", "VA", 450.0),
+        ("500 ms", "s", 0.5),
+        ("0,5 s", "s", 0.5),
+        ("850 V/m", "V/m", 850.0),
+        ("0,25", "", 0.25),
+        ("0", "", 0.0),
+        // A comma that can only be a decimal one, and a point, which always is.
+        ("0,125", "", 0.125),
+        ("1234,567", "V", 1234.567),
+        ("12,5000", "V", 12.5),
+        ("1.250", "V", 1.25),
+        ("12.500", "V", 12.5),
     ] {
-        assert_eq!(volts(typed), Ok(expect), "{typed}");
+        assert_eq!(figure(typed, unit), Ok(expect), "{typed} in {unit}");
     }
+    // Every digit of a figure from a list comes back.
+    let long = 0.1_f64 + 0.2;
+    assert_eq!(figure(&long.to_string(), "V"), Ok(long));
+}
+
+#[test]
+fn figures_that_are_none() {
+    let refused = |typed: &str, unit: &str| match figure(typed, unit) {
+        Ok(read) => panic!("{typed} was read as {read}"),
+        Err(error) => error.to_string(),
+    };
+    assert_snapshot!(refused("9,000", "V"), @"expected a point or no comma, but found “,000” at character 2 of “9,000”; 9,000 could be 9.000 or 9000");
+    assert_snapshot!(refused("12,500 V", "V"), @"expected a point or no comma, but found “,500 V” at character 3 of “12,500 V”; 12,500 could be 12.500 or 12500");
+    assert_snapshot!(refused("1,200,000", "V"), @"expected a point or no comma, but found “,200,000” at character 2 of “1,200,000”; 1,200 could be 1.200 or 1200");
+    assert_snapshot!(refused("1.250.000", "V"), @"expected one decimal point only, but found “.000” at character 6 of “1.250.000”");
+    assert_snapshot!(refused("9 000", "V"), @"expected the end, but found “000” at character 3 of “9 000”; thousands are written without a space");
+    assert_snapshot!(refused("30 mA", "V"), @"expected the end, but found “mA” at character 4 of “30 mA”; units are V or kV");
+    assert_snapshot!(refused("9 kV", "mA"), @"expected the end, but found “kV” at character 3 of “9 kV”; units are mA or A");
+    assert_snapshot!(refused("230 V/m", "V"), @"expected the end, but found “/m” at character 6 of “230 V/m”");
+    assert_snapshot!(refused("30 V", ""), @"expected the end, but found “V” at character 4 of “30 V”; this figure takes no unit");
+    assert_snapshot!(refused("2 x 30", "mA"), @"expected the end, but found “x 30” at character 3 of “2 x 30”; units are mA or A");
+    assert_snapshot!(refused("-3", "%"), @"expected a figure from 0 on, but found “-3” at character 1 of “-3”; nothing here is ever negative");
+    assert_snapshot!(refused("", "mA"), @"expected a number such as 450, but the text ends at character 1 of “”");
+    assert_snapshot!(refused("1e5", "Hz"), @"expected the end, but found “e5” at character 2 of “1e5”; units are Hz or kHz");
+    assert_snapshot!(refused("NaN", "V"), @"expected a number such as 450, but found “NaN” at character 1 of “NaN”");
+    assert_snapshot!(refused("1234567890123", "V"), @"expected at most 12 digits, but found “1234567890123” at character 1 of “1234567890123”");
+}
+
+#[test]
+fn sums_of_money() {
+    let amount = |typed: &str| match money(typed) {
+        Ok(amount) => amount.to_string(),
+        Err(error) => error.to_string(),
+    };
     for (typed, expect) in [
-        ("30", 30.0),
-        ("30 mA", 30.0),
-        ("0.03 A", 30.0),
-        ("18.5ma", 18.5),
+        ("12.50", "12.50"),
+        ("12,50", "12.50"),
+        (" 1250 ", "1250"),
+        ("0", "0"),
+        ("0,125", "0.125"),
+        ("0.1250", "0.1250"),
+        ("1\u{202f}250,00", "1250.00"),
     ] {
-        assert_eq!(milliamps(typed), Ok(expect), "{typed}");
+        assert_eq!(amount(typed), expect, "{typed}");
     }
-    let sentence = |text: &str| volts(text).map_err(|error| error.to_string());
-    assert_snapshot!(sentence("30 mA").expect_err("no volts"), @"expected “+”, “x” or the end, but found “mA” at character 4 of “30 mA”; units are V or kV");
-    assert_snapshot!(sentence("9,000").expect_err("two readings"), @"expected a point or no comma, but found “,000” at character 2 of “9,000”; 9,000 could be 9.000 or 9000");
-    let sentence = |text: &str| milliamps(text).map_err(|error| error.to_string());
-    assert_snapshot!(sentence("9 kV").expect_err("no current"), @"expected “+”, “x” or the end, but found “kV” at character 3 of “9 kV”; units are mA or A");
-    assert_snapshot!(sentence("").expect_err("no current"), @"expected a number such as 450, but the text ends at character 1 of “”");
+    assert_snapshot!(amount("1,250"), @"expected a point or no comma, but found “,250” at character 2 of “1,250”; 1,250 could be 1.250 or 1250");
+    assert_snapshot!(amount("1.250,00"), @"expected one decimal point only, but found “,00” at character 6 of “1.250,00”");
+    assert_snapshot!(amount("-5"), @"expected a figure from 0 on, but found “-5” at character 1 of “-5”; nothing here is ever negative");
+    assert_snapshot!(amount("12.50 EUR"), @"expected the end, but found “EUR” at character 7 of “12.50 EUR”; this figure takes no unit");
+    assert_snapshot!(amount("1/2"), @"expected the end, but found “/2” at character 2 of “1/2”");
+    assert_snapshot!(amount(""), @"expected a number such as 450, but the text ends at character 1 of “”");
+    assert_snapshot!(amount("999999999999.123456789012345678901234"), @"expected a figure with fewer digits, but found “999999999999.12345678901…” at character 1 of “999999999999.12345678901…”");
 }
 
 #[test]
@@ -344,6 +410,10 @@ proptest! {
     #[test]
     fn no_text_brings_the_reader_down(text in any::<String>(), near in "[0-9x+/.,' \"½mifnt-]{0,40}") {
         for text in [text, near] {
+            for unit in ["V", "mm", ""] {
+                prop_assert!(figure(&text, unit).map_or(true, |found| found >= 0.0));
+            }
+            prop_assert!(money(&text).map_or(true, |found| !found.is_sign_negative()));
             for bare in [LengthUnit::Millimetres, LengthUnit::Inches] {
                 match length(&text, bare) {
                     Ok(found) => prop_assert!(found.length().mm() >= 0.0),
