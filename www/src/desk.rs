@@ -69,6 +69,19 @@ impl Where {
     }
 }
 
+/// The parts of the shop book.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum BookPart {
+    /// Supplies.
+    Supplies,
+    /// Tube types.
+    Tubes,
+    /// Rule sets.
+    Rules,
+    /// Rates and allowances.
+    Rates,
+}
+
 /// Something to tell the person at the page, until they put it away.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Message {
@@ -115,6 +128,17 @@ pub struct Desk {
     pub piece: RwSignal<Option<usize>>,
     /// The circuit opened on its place.
     pub circuit: RwSignal<usize>,
+    /// The part of the shop book in sight.
+    pub book_part: RwSignal<BookPart>,
+    /// The supply or tube type opened there, by name.
+    pub entry: RwSignal<Option<String>>,
+    /// Whether all findings are listed.
+    pub findings_open: RwSignal<bool>,
+    /// Counts every change that did not come from the field being typed in: undo, a file, a row
+    /// moved. Fields then show what is there, not what was typed into them before.
+    pub turned: RwSignal<u32>,
+    /// What undo or redo did last, until the next edit.
+    pub done: RwSignal<Option<String>>,
     /// How keeping stands.
     pub standing: RwSignal<Standing>,
     /// What to tell.
@@ -140,6 +164,11 @@ impl Desk {
             place: RwSignal::new(Where::Sign),
             piece: RwSignal::new(None),
             circuit: RwSignal::new(0),
+            book_part: RwSignal::new(BookPart::Supplies),
+            entry: RwSignal::new(None),
+            findings_open: RwSignal::new(false),
+            turned: RwSignal::new(0),
+            done: RwSignal::new(None),
             standing: RwSignal::new(Standing::Starting),
             message: RwSignal::new(None),
         }
@@ -168,12 +197,30 @@ impl Desk {
 
     /// Changes the job; see [`Document::edit_job`].
     pub fn edit_job(&self, field: &str, says: &str, edit: impl FnOnce(&mut Job)) {
+        self.edited();
         self.change(|document| document.edit_job(field, says, edit));
     }
 
     /// Changes the book; see [`Document::edit_book`].
     pub fn edit_book(&self, field: &str, says: &str, edit: impl FnOnce(&mut Book)) {
+        self.edited();
         self.change(|document| document.edit_book(field, says, edit));
+    }
+
+    /// Fields are to show what is there now.
+    pub fn turn(&self) {
+        self.turned.update(|count| *count += 1);
+    }
+
+    /// What was told of the step before is not true of the next.
+    fn edited(&self) {
+        if self.done.with_untracked(Option::is_some) {
+            self.done.set(None);
+        }
+        let told = |message: &Option<Message>| message.as_ref().is_some_and(|told| !told.trouble);
+        if self.message.with_untracked(told) {
+            self.message.set(None);
+        }
     }
 
     /// The field was left.
@@ -183,12 +230,21 @@ impl Desk {
 
     /// Takes the last step back.
     pub fn undo(&self) {
+        let says = untrack(|| self.undoes());
+        self.edited();
         self.change(Document::undo);
+        self.done.set(says.map(|says| format!("undone: {says}")));
+        self.turn();
     }
 
     /// Does an undone step again.
     pub fn redo(&self) {
+        let says = untrack(|| self.redoes());
+        self.edited();
         self.change(Document::redo);
+        self.done
+            .set(says.map(|says| format!("done again: {says}")));
+        self.turn();
     }
 
     /// What undo would take back.

@@ -332,7 +332,7 @@ mod tests {
             stored(&mut kept, &mut document);
         }
         document.edit_book("name", "Name of the book", |book| {
-            "Bench".clone_into(&mut book.name)
+            "Bench".clone_into(&mut book.name);
         });
         document.undo();
         document.undo();
@@ -379,7 +379,7 @@ mod tests {
         named(&mut document, "A");
         document.settle();
         document.edit_book("name", "Name of the book", |book| {
-            "Bench".clone_into(&mut book.name)
+            "Bench".clone_into(&mut book.name);
         });
         stored(&mut kept, &mut document);
         kept.insert("job".to_owned(), "{\"tubewright\":".to_owned());

@@ -92,12 +92,13 @@ pub fn put(desk: Desk, opened: Opened) {
         }
     }
     desk.settle();
+    desk.turn();
 }
 
 fn told(desk: Desk, what: &str, (replaced, added): (usize, usize), mut trouble: Vec<String>) {
     desk.place.set(Where::ShopBook);
     let says = format!(
-        "Into the shop book: {added} {what} added, {replaced} replaced, none removed. Undo takes it \
+        "Into the shop book, {what}: {added} added, {replaced} replaced, none removed. Undo takes it \
          back."
     );
     if trouble.is_empty() {

@@ -3,6 +3,8 @@
 //! Each batch of writes is one transaction, so a record and the state that points at it are stored
 //! together or not at all.
 
+mod others;
+
 use std::cell::RefCell;
 use std::collections::VecDeque;
 use std::rc::Rc;
@@ -11,6 +13,8 @@ use rexie::{ObjectStore, Rexie, TransactionMode};
 use wasm_bindgen::{JsCast, JsValue};
 
 use crate::document::{Kept, Write};
+
+pub use others::watch_for_others;
 
 const DATABASE: &str = "tubewright";
 const RECORDS: &str = "records";

@@ -2,14 +2,14 @@
 
 use leptos::prelude::*;
 use tubewright::book::SupplyKind;
-use tubewright::circuit::Operating;
+use tubewright::circuit::{Half, Operating};
 use tubewright::job::Wish;
 use tubewright::measure::{glass, milliamps_shown, volts_shown};
 use tubewright::rules::{EarthWord, Limits};
 use tubewright::workup::CircuitWork;
 
 use super::fields::Figure;
-use super::findings::{chip, line};
+use super::findings::{chip, line, many};
 use crate::desk::{Results, desk};
 use crate::pictures::{LoadingBar, SignPicture};
 
@@ -184,6 +184,7 @@ fn Card(number: usize, results: Results) -> impl IntoView {
                 class="panel card"
                 style:order=number.to_string()
                 class:open=move || desk.circuit.get() == number
+                on:click=move |_| desk.circuit.set(number)
                 aria-label=format!("Circuit {}", number + 1)
             >
                 <header class="card-head">
@@ -278,7 +279,7 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
         view! {
             <section class="panel detail" style:order=number.to_string() aria-label=format!("Circuit {} in full", number + 1)>
                 <header class="card-head">
-                    <h2>{format!("Circuit {}", number + 1)}<small>{format!(" {} pieces, {} of gas column in series", circuit.pieces.len(), glass(circuit.column, units))}</small></h2>
+                    <h2>{format!("Circuit {}", number + 1)}<small>{format!(" {}{}, {} of gas column in series", circuit.pieces.len(), many(circuit.pieces.len(), " piece", " pieces"), glass(circuit.column, units))}</small></h2>
                     {chip(circuit.grade())}
                 </header>
                 <p class="supply"><b>{rating.name.clone()}</b>{format!(" {}", rating.words())}</p>
@@ -298,6 +299,8 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                     {other("Next larger", &circuit.larger)}
                     <dt>{format!("Limit to {word}")}</dt>
                     <dd>{limit_says}</dd>
+                    <dt>"Mains ±10 %"</dt>
+                    <dd>{mains(&circuit.assessment.halves)}</dd>
                     <dt>"Protection"</dt>
                     <dd>{protection}</dd>
                     <dt>"Insulation"</dt>
@@ -307,6 +310,29 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
             </section>
         }
     })
+}
+
+/// Where each string runs at 90 and 110 % of the input volts.
+fn mains(halves: &[Half]) -> String {
+    let at = |operating: &Operating| match *operating {
+        Operating::Runs {
+            current, running, ..
+        } => {
+            format!("{}, {}", milliamps_shown(current), volts_shown(running))
+        }
+        Operating::Overloaded { .. } => "it does not run".to_owned(),
+    };
+    let strings: Vec<String> = halves
+        .iter()
+        .map(|half| {
+            format!(
+                "at 90 %: {}; at 110 %: {}",
+                at(&half.at_low_mains),
+                at(&half.at_high_mains)
+            )
+        })
+        .collect();
+    strings.join(". Second string ") + "."
 }
 
 /// What the supply's protection sees and does not.

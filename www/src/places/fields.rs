@@ -19,9 +19,10 @@ pub(super) fn Field(
     /// Takes what was typed.
     #[prop(into)]
     commit: Callback<String, Taken>,
-    /// Whether each key is taken at once; else only when the field is left or Enter is pressed.
-    #[prop(optional)]
-    live: bool,
+    /// Whether what is typed so far is worth taking at once; else it is taken when the field is
+    /// left or Enter is pressed.
+    #[prop(optional, into)]
+    live: Option<Callback<String, bool>>,
     /// An example, shown while the field is empty.
     #[prop(optional, into)]
     example: String,
@@ -34,9 +35,15 @@ pub(super) fn Field(
 ) -> impl IntoView {
     let desk = desk();
     let wrong = RwSignal::new(None::<String>);
-    // What is typed and not taken, so that a change elsewhere does not wipe it out.
+    // What is in the field and not, or not so, in the document: half typed, or refused. It stays
+    // in sight until the field is left well or what it stands for is changed from elsewhere.
     let typed = RwSignal::new(None::<String>);
     let shown = move || typed.get().unwrap_or_else(|| value.get());
+    Effect::new(move |_| {
+        desk.turned.track();
+        wrong.set(None);
+        typed.set(None);
+    });
     let take = move |text: String| match commit.run(text.clone()) {
         Ok(()) => {
             wrong.set(None);
@@ -59,20 +66,23 @@ pub(super) fn Field(
                 prop:value=shown
                 aria-invalid=move || wrong.get().is_some().to_string()
                 on:input:target=move |event| {
-                    if live {
-                        take(event.target().value());
+                    let text = event.target().value();
+                    typed.set(Some(text.clone()));
+                    if live.is_some_and(|live| live.run(text.clone())) && commit.run(text).is_ok() {
+                        wrong.set(None);
                     }
                 }
-                on:change:target=move |event| {
-                    if !live {
-                        take(event.target().value());
-                    }
-                }
+                on:change:target=move |event| take(event.target().value())
                 on:blur=move |_| desk.settle()
             />
             {move || wrong.get().map(|why| view! { <span class="wrong" role="alert">{why}</span> })}
         </label>
     }
+}
+
+/// For fields whose every key counts.
+pub(super) fn always() -> Callback<String, bool> {
+    Callback::new(|_: String| true)
 }
 
 /// A choice from a list.

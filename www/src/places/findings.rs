@@ -3,7 +3,7 @@
 use leptos::prelude::*;
 use tubewright::rules::{Finding, Grade, Place};
 
-use crate::desk::{Desk, Where, desk};
+use crate::desk::{BookPart, Desk, Where, desk};
 
 /// A grade as a word on its colour; without one, it fits.
 pub(super) fn chip(grade: Option<Grade>) -> impl IntoView {
@@ -13,6 +13,11 @@ pub(super) fn chip(grade: Option<Grade>) -> impl IntoView {
         Some(Grade::Note) | None => ("fits", "fits"),
     };
     view! { <span class=format!("chip {class}")>{word}</span> }
+}
+
+/// The word for one or for many.
+pub(super) const fn many(count: usize, one: &'static str, many: &'static str) -> &'static str {
+    if count == 1 { one } else { many }
 }
 
 /// One finding: its grade as a word, the sentence, where the limit comes from.
@@ -34,21 +39,58 @@ pub(super) fn line(finding: &Finding) -> impl IntoView + use<> {
     }
 }
 
-/// Goes to where a finding belongs.
+/// Goes to where a finding belongs, and brings it into sight.
 pub(super) fn go(desk: Desk, place: &Place) {
-    match place {
-        Place::Job | Place::Row(_) => desk.place.set(Where::Sign),
+    let seek = match place {
+        Place::Job => {
+            desk.place.set(Where::Sign);
+            ".job".to_owned()
+        }
+        Place::Row(row) => {
+            desk.place.set(Where::Sign);
+            format!("[data-row='{row}']")
+        }
         Place::Piece(piece) => {
             desk.piece.set(Some(*piece));
             desk.place.set(Where::Sign);
+            ".picture-frame".to_owned()
         }
         Place::Circuit(number) => {
             desk.circuit.set(*number);
             desk.place.set(Where::Circuits);
+            ".card.open".to_owned()
         }
-        Place::Supply(_) | Place::Tube(_) | Place::Rules(_) => desk.place.set(Where::ShopBook),
-        Place::Price => desk.place.set(Where::Price),
-    }
+        Place::Supply(name) => {
+            desk.book_part.set(BookPart::Supplies);
+            desk.entry.set(Some(name.clone()));
+            desk.place.set(Where::ShopBook);
+            ".entries .open".to_owned()
+        }
+        Place::Tube(name) => {
+            desk.book_part.set(BookPart::Tubes);
+            desk.entry.set(Some(name.clone()));
+            desk.place.set(Where::ShopBook);
+            ".entries .open".to_owned()
+        }
+        Place::Rules(_) => {
+            desk.book_part.set(BookPart::Rules);
+            desk.place.set(Where::ShopBook);
+            ".rule-sets".to_owned()
+        }
+        Place::Price => {
+            desk.place.set(Where::Price);
+            ".price".to_owned()
+        }
+    };
+    desk.findings_open.set(false);
+    // Two frames on, the place has been drawn and scrolled to its top.
+    request_animation_frame(move || {
+        request_animation_frame(move || {
+            if let Ok(Some(found)) = document().query_selector(&seek) {
+                found.scroll_into_view();
+            }
+        });
+    });
 }
 
 /// Where a finding belongs, in words.

@@ -5,8 +5,11 @@ use tubewright::measure::{Units, glass};
 use tubewright::rules::Grade;
 
 use super::files::FilesPanel;
+use super::findings::many;
 use super::{Circuits, FindingsList, Glass, Price, ShopBook, Sign};
-use crate::desk::{Where, desk};
+use wasm_bindgen::JsCast;
+
+use crate::desk::{Desk, Where, desk};
 use crate::files;
 use crate::keep::Standing;
 
@@ -15,8 +18,16 @@ use crate::keep::Standing;
 pub fn Frame() -> impl IntoView {
     let desk = desk();
     let files_open = RwSignal::new(false);
-    let findings_open = RwSignal::new(false);
+    let findings_open = desk.findings_open;
     follow_address();
+    keys(desk, files_open);
+    crate::keep::watch_for_others(move || {
+        desk.trouble(vec![
+            "This page is open in another window or tab as well. Use one of them: what is edited in \
+             one is written over by the other."
+                .to_owned(),
+        ]);
+    });
     let place = move || match desk.place.get() {
         Where::Sign => view! { <Sign/> }.into_any(),
         Where::Glass => view! { <Glass/> }.into_any(),
@@ -32,7 +43,6 @@ pub fn Frame() -> impl IntoView {
             on:drop=move |event| files::dropped(desk, &event)
         >
             <Header files_open=files_open/>
-            <Rail/>
             <main id="place" tabindex="-1">
                 <Told/>
                 <Show when=move || files_open.get()>
@@ -51,7 +61,10 @@ pub fn Frame() -> impl IntoView {
                     {place}
                 </Show>
             </main>
-            <Strip findings_open=findings_open/>
+            <div class="foot">
+                <Rail/>
+                <Strip/>
+            </div>
         </div>
     }
 }
@@ -81,12 +94,42 @@ fn follow_address() {
     });
 }
 
+/// Undo and redo by keyboard outside fields, which have their own; Escape puts panels away.
+fn keys(desk: Desk, files_open: RwSignal<bool>) {
+    let handle = window_event_listener(leptos::ev::keydown, move |event| {
+        let in_field = event
+            .target()
+            .and_then(|to| to.dyn_into::<web_sys::Element>().ok())
+            .is_some_and(|element| matches!(element.tag_name().as_str(), "INPUT" | "SELECT"));
+        let control = event.ctrl_key() || event.meta_key();
+        match event.key().as_str() {
+            "Escape" => {
+                files_open.set(false);
+                desk.findings_open.set(false);
+            }
+            "z" if control && !in_field => {
+                event.prevent_default();
+                desk.undo();
+            }
+            "Z" | "y" if control && !in_field => {
+                event.prevent_default();
+                desk.redo();
+            }
+            _ => {}
+        }
+    });
+    on_cleanup(move || handle.remove());
+}
+
 #[component]
 fn Header(files_open: RwSignal<bool>) -> impl IntoView {
     let desk = desk();
     let kept = move || match desk.standing.get() {
         Standing::Starting => "opening…".to_owned(),
-        Standing::Kept => "kept on this device".to_owned(),
+        Standing::Kept => match desk.done.get() {
+            Some(done) => format!("kept on this device · {done}"),
+            None => "kept on this device".to_owned(),
+        },
         Standing::Keeping => "keeping…".to_owned(),
         Standing::NotKept(why) => {
             format!("NOT kept: {why}. Save the job as a file before you close the page.")
@@ -211,21 +254,23 @@ fn Told() -> impl IntoView {
 }
 
 #[component]
-fn Strip(findings_open: RwSignal<bool>) -> impl IntoView {
+fn Strip() -> impl IntoView {
     let desk = desk();
+    let findings_open = desk.findings_open;
     let totals = move || {
         desk.results.with(|results| {
             let units = desk.units.get();
             let unplaced: usize = results.left_over.iter().map(|left| left.pieces.len()).sum();
             let circuits = results.circuits.len();
+            let pieces = results.takeoff.pieces.len();
             view! {
                 <span><b>{glass(results.lit(), units)}</b>" lit"</span>
                 <span><b>{glass(results.glass(), units)}</b>" glass"</span>
-                <span><b>{results.takeoff.pieces.len()}</b>" pieces"</span>
+                <span><b>{pieces}</b>{many(pieces, " piece", " pieces")}</span>
                 <span>
                     <b>{circuits}</b>
-                    {if circuits == 1 { " circuit" } else { " circuits" }}
-                    {(unplaced > 0).then(|| format!(", {unplaced} pieces on no supply"))}
+                    {many(circuits, " circuit", " circuits")}
+                    {(unplaced > 0).then(|| format!(", {unplaced}{} on no supply", many(unplaced, " piece", " pieces")))}
                 </span>
                 <span class="strip-price">
                     <b>{format!("{} {}", results.quote.currency, super::price::amount(results.quote.total))}</b>

@@ -1,9 +1,8 @@
 //! Glass: by tube type, and piece by piece.
 
 use leptos::prelude::*;
-use tubewright::measure::glass;
+use tubewright::measure::{glass, length_shown};
 
-use super::rows::bench_length;
 use crate::desk::desk;
 
 /// More lines than this are not drawn: the totals hold them all.
@@ -78,10 +77,10 @@ pub fn Glass() -> impl IntoView {
                             <td>{at + 1}</td>
                             <th scope="row">{piece.label.clone()}</th>
                             <td>{piece.row + 1}</td>
-                            <td>{bench_length(piece.lit, units)}</td>
-                            <td>{bench_length(piece.hidden, units)}</td>
-                            <td>{bench_length(piece.tails, units)}</td>
-                            <td><b>{bench_length(piece.glass(), units)}</b></td>
+                            <td>{length_shown(piece.lit, units)}</td>
+                            <td>{length_shown(piece.hidden, units)}</td>
+                            <td>{length_shown(piece.tails, units)}</td>
+                            <td><b>{length_shown(piece.glass(), units)}</b></td>
                             <td>{circuit.map_or_else(|| "none".to_owned(), |number: usize| number.to_string())}</td>
                         </tr>
                     }
@@ -96,7 +95,7 @@ pub fn Glass() -> impl IntoView {
         })
     };
     view! {
-        <section class="panel" aria-label="Glass by tube type">
+        <section class="panel by-tube" aria-label="Glass by tube type">
             <h2>"Glass by tube type"</h2>
             <div class="scroll">
                 <table>

@@ -76,7 +76,7 @@ pub fn Price() -> impl IntoView {
     };
     let waste = move || desk.book.with(|book| book.allowances.waste_percent);
     view! {
-        <section class="panel" aria-label="Price">
+        <section class="panel price" aria-label="Price">
             <header class="panel-head">
                 <h2>"Price"</h2>
                 <button on:click=move |_| desk.place.set(Where::ShopBook)>"Rates in the shop book"</button>

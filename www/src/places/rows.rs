@@ -4,11 +4,15 @@ use leptos::prelude::*;
 use tubewright::Job;
 use tubewright::drawing::faces;
 use tubewright::job::{Row, StrokesRow, TextRow};
-use tubewright::measure::{Units, glass, length_exact, quoted, with_units};
+use tubewright::measure::{
+    LETTER_HEIGHT_MM, PIECE_LENGTH_MM, Units, glass, length, quoted, with_units,
+};
 use tubewright::rules::Place;
 
-use super::fields::{Choice, Field};
-use super::findings::line;
+use super::fields::{Choice, Field, always};
+use super::findings::{line, many};
+use wasm_bindgen::JsCast;
+
 use crate::desk::{Desk, desk};
 
 /// All rows, and the buttons that add one.
@@ -76,6 +80,18 @@ fn add(desk: Desk, text: bool) {
     desk.settle();
     desk.edit_job("add", "Add a row", |job| job.rows.push(row));
     desk.settle();
+    let last = desk
+        .job
+        .with_untracked(|job| job.rows.len().saturating_sub(1));
+    request_animation_frame(move || {
+        let field = document().query_selector(&format!("[data-row='{last}'] input"));
+        if let Ok(Some(field)) = field
+            && let Ok(field) = field.dyn_into::<web_sys::HtmlElement>()
+        {
+            // A field that cannot be entered is still there to be tapped.
+            let _ = field.focus();
+        }
+    });
 }
 
 /// What a field of a row reads and writes.
@@ -148,7 +164,11 @@ fn RowCard(at: usize) -> impl IntoView {
                 value=read(|row| row.count().to_string())
                 commit=move |typed: String| {
                     let count = typed.trim().parse::<i64>().map_err(|_| {
-                        format!("Expected a whole number such as 2, but found {}.", quoted(&typed))
+                        format!(
+                            "Expected a whole number such as 2, but found {}; {} still counts.",
+                            quoted(&typed),
+                            desk.job.with_untracked(|job| part(job, at, Row::count))
+                        )
                     })?;
                     edit(desk, at, "times", |row| match row {
                         Row::Text(row) => row.count = count,
@@ -164,7 +184,7 @@ fn RowCard(at: usize) -> impl IntoView {
             <Field
                 label="What it says"
                 class="wide"
-                live=true
+                live=always()
                 example="OPEN"
                 value=read(|row| row.label().to_owned())
                 commit=move |typed: String| {
@@ -175,6 +195,10 @@ fn RowCard(at: usize) -> impl IntoView {
             <Field
                 label="Letter height"
                 class="narrow"
+                live=move |typed: String| {
+                    length(&typed, desk.bare())
+                        .is_ok_and(|height| LETTER_HEIGHT_MM.holds(height.length().mm()))
+                }
                 example="200 mm"
                 value=read(|row| match row {
                     Row::Text(row) => row.height.clone(),
@@ -207,7 +231,7 @@ fn RowCard(at: usize) -> impl IntoView {
             <Field
                 label="What it is"
                 class="narrow"
-                live=true
+                live=always()
                 value=read(|row| row.label().to_owned())
                 commit=move |typed: String| {
                     edit(desk, at, "label", |row| if let Row::Strokes(row) = row { row.label = typed });
@@ -217,6 +241,12 @@ fn RowCard(at: usize) -> impl IntoView {
             <Field
                 label="Lengths, a piece of glass each; part them by ;"
                 class="wide"
+                live=move |typed: String| {
+                    typed.split(';').all(|part| {
+                        length(part, desk.bare())
+                            .is_ok_and(|piece| PIECE_LENGTH_MM.holds(piece.length().mm()))
+                    })
+                }
                 example="1200 mm; 2 x 300 mm + 95 mm"
                 value=read(|row| match row {
                     Row::Strokes(row) => row.strokes.clone(),
@@ -238,7 +268,7 @@ fn RowCard(at: usize) -> impl IntoView {
             Some(view! {
                 <b>{glass(row.lit, units)}</b>" lit, "
                 <b>{glass(row.glass, units)}</b>" glass, "
-                <b>{pieces}</b>{if pieces == 1 { " piece" } else { " pieces" }}
+                <b>{pieces}</b>{many(pieces, " piece", " pieces")}
             })
         })
     };
@@ -309,6 +339,7 @@ fn shift(desk: Desk, from: usize, to: usize) {
             job.rows.swap(from, to);
         }
     });
+    desk.turn();
     desk.settle();
 }
 
@@ -319,6 +350,7 @@ fn copy(desk: Desk, at: usize) {
             job.rows.insert(at + 1, row);
         }
     });
+    desk.turn();
     desk.settle();
 }
 
@@ -329,14 +361,7 @@ fn remove(desk: Desk, at: usize) {
             job.rows.remove(at);
         }
     });
+    desk.turn();
     desk.piece.set(None);
     desk.settle();
-}
-
-/// A length of a piece, as fine as it is useful at the bench.
-pub(super) fn bench_length(length: tubewright::measure::Length, units: Units) -> String {
-    match units {
-        Units::Metric => tubewright::measure::length_shown(length, units),
-        Units::FeetInches => length_exact(length, units),
-    }
 }

@@ -2,30 +2,23 @@
 
 use leptos::prelude::*;
 use rust_decimal::Decimal;
+use tubewright::Book;
 use tubewright::book::{Gas, OutputEarthing, Rates, SupplyEntry, SupplyKind, TubeEntry};
 use tubewright::rules::Finding;
 use tubewright::supply::Rating;
 use tubewright::tube::TubeType;
 
-use super::fields::{Choice, Field, Tick, money, number, optional_number, typed};
+use super::fields::{Choice, Field, Tick, always, money, number, optional_number, typed};
 use super::findings::line;
 use super::sign::{damp, damp_options, damp_word};
-use crate::desk::{Desk, desk};
-
-#[derive(Clone, Copy, PartialEq, Eq)]
-enum Part {
-    Supplies,
-    Tubes,
-    Rules,
-    Rates,
-}
+use crate::desk::{BookPart, Desk, desk};
 
 /// The place.
 #[component]
 pub fn ShopBook() -> impl IntoView {
     let desk = desk();
-    let part = RwSignal::new(Part::Supplies);
-    let tab = move |this: Part, words: &'static str| {
+    let part = desk.book_part;
+    let tab = move |this: BookPart, words: &'static str| {
         view! {
             <button
                 class:on=move || part.get() == this
@@ -41,24 +34,23 @@ pub fn ShopBook() -> impl IntoView {
             <h2>{move || desk.book.with(|book| book.name.clone())}</h2>
             <p class="quiet">{move || desk.book.with(|book| book.note.clone())}</p>
             <div class="pair tabs" role="group" aria-label="Part of the book">
-                {tab(Part::Supplies, "Supplies")}
-                {tab(Part::Tubes, "Tube types")}
-                {tab(Part::Rules, "Rules")}
-                {tab(Part::Rates, "Rates")}
+                {tab(BookPart::Supplies, "Supplies")}
+                {tab(BookPart::Tubes, "Tube types")}
+                {tab(BookPart::Rules, "Rules")}
+                {tab(BookPart::Rates, "Rates")}
             </div>
         </section>
         {move || match part.get() {
-            Part::Supplies => view! { <Supplies/> }.into_any(),
-            Part::Tubes => view! { <Tubes/> }.into_any(),
-            Part::Rules => view! { <RuleSets/> }.into_any(),
-            Part::Rates => view! { <RatesForm/> }.into_any(),
+            BookPart::Supplies => view! { <Supplies/> }.into_any(),
+            BookPart::Tubes => view! { <Tubes/> }.into_any(),
+            BookPart::Rules => view! { <RuleSets/> }.into_any(),
+            BookPart::Rates => view! { <RatesForm/> }.into_any(),
         }}
     }
 }
 
 /// A name no entry of a list has yet.
-fn free_name<'n>(wanted: &str, taken: impl Iterator<Item = &'n str>) -> String {
-    let taken: Vec<&str> = taken.collect();
+fn free_name(wanted: &str, taken: &[&str]) -> String {
     let mut name = wanted.to_owned();
     let mut number = 2;
     while taken.contains(&name.as_str()) {
@@ -68,62 +60,149 @@ fn free_name<'n>(wanted: &str, taken: impl Iterator<Item = &'n str>) -> String {
     name
 }
 
+/// The entry that is open, by its place in a list of names. By name, so that undo or a removal
+/// elsewhere never puts another entry under one's hands.
+fn opened(desk: Desk, names: fn(&Book) -> Vec<&str>) -> Memo<Option<usize>> {
+    Memo::new(move |_| {
+        let name = desk.entry.get()?;
+        desk.book
+            .with(|book| names(book).into_iter().position(|known| known == name))
+    })
+}
+
+fn supply_names(book: &Book) -> Vec<&str> {
+    book.supplies
+        .iter()
+        .map(|supply| supply.name.as_str())
+        .collect()
+}
+
+fn tube_names(book: &Book) -> Vec<&str> {
+    book.tubes.iter().map(|tube| tube.name.as_str()).collect()
+}
+
+/// A list of entries; the open one has its form right under it.
+#[component]
+fn Entries(
+    /// Lines of the list: name, what stands beside it, colour if it has one, whether it is usable.
+    #[prop(into)]
+    lines: Signal<Vec<EntryLine>>,
+    /// Place of the open entry.
+    open: Memo<Option<usize>>,
+    /// The form of an entry.
+    form: Callback<usize, AnyView>,
+) -> impl IntoView {
+    let desk = desk();
+    let count = Memo::new(move |_| lines.with(Vec::len));
+    let line = move |at: usize| {
+        Memo::new(move |_| lines.with(|lines| lines.get(at).cloned().unwrap_or_default()))
+    };
+    view! {
+        <ul class="entries">
+            <For each=move || 0..count.get() key=|at| *at let:at>
+                {
+                    let line = line(at);
+                    view! {
+                        <li class:open=move || open.get() == Some(at)>
+                            <button
+                                class="entry"
+                                aria-expanded=move || (open.get() == Some(at)).to_string()
+                                on:click=move |_| {
+                                    let name = line.get_untracked().name;
+                                    desk.settle();
+                                    desk.entry.update(|now| {
+                                        *now = if now.as_ref() == Some(&name) { None } else { Some(name) };
+                                    });
+                                }
+                            >
+                                <b>
+                                    {move || line.get().colour.map(|colour| view! { <span class="dot" style:background=colour></span> })}
+                                    {move || line.get().name}
+                                </b>
+                                <span>{move || line.get().beside}</span>
+                                {move || line.get().wrong.then(|| view! { <span class="chip stop">"cannot be used"</span> })}
+                            </button>
+                            {move || (open.get() == Some(at)).then(|| form.run(at))}
+                        </li>
+                    }
+                }
+            </For>
+        </ul>
+    }
+}
+
+#[derive(Debug, Clone, Default, PartialEq)]
+struct EntryLine {
+    name: String,
+    beside: String,
+    colour: Option<String>,
+    wrong: bool,
+}
+
+/// A new or copied entry is opened and brought into sight.
+fn open_new(desk: Desk, name: String) {
+    desk.entry.set(Some(name));
+    desk.turn();
+    request_animation_frame(|| {
+        if let Ok(Some(found)) = document().query_selector(".entries .open") {
+            found.scroll_into_view();
+        }
+    });
+}
+
 #[component]
 fn Supplies() -> impl IntoView {
     let desk = desk();
-    let chosen = RwSignal::new(None::<usize>);
-    let list = move || {
+    let lines = Signal::derive(move || {
         desk.book.with(|book| {
             book.supplies
                 .iter()
-                .enumerate()
-                .map(|(at, supply)| {
-                    let wrong = Rating::read(supply).is_err();
+                .map(|supply| {
                     let figures = [
                         supply.no_load_volts.map(|volts| {
-                            tubewright::measure::volts_shown(tubewright::measure::Volts::from_volts(volts))
+                            tubewright::measure::volts_shown(
+                                tubewright::measure::Volts::from_volts(volts),
+                            )
                         }),
-                        supply.short_circuit_ma.or(supply.rated_ma).map(|ma| format!("{ma} mA")),
+                        supply
+                            .short_circuit_ma
+                            .or(supply.rated_ma)
+                            .map(|ma| format!("{ma} mA")),
                         Some(tubewright::supply::earthing_words(supply.earthing).to_owned()),
                         supply.input_volts.map(|volts| format!("for {volts} V")),
                         supply.price.map(super::price::amount),
                     ];
-                    let figures: Vec<String> = figures.into_iter().flatten().collect();
-                    view! {
-                        <li class:open=move || chosen.get() == Some(at)>
-                            <button class="entry" on:click=move |_| {
-                                chosen.update(|now| *now = if *now == Some(at) { None } else { Some(at) });
-                            }>
-                                <b>{supply.name.clone()}</b>
-                                <span>{figures.join(", ")}</span>
-                                {wrong.then(|| view! { <span class="chip stop">"cannot be used"</span> })}
-                            </button>
-                        </li>
+                    EntryLine {
+                        name: supply.name.clone(),
+                        beside: figures.into_iter().flatten().collect::<Vec<_>>().join(", "),
+                        colour: None,
+                        wrong: Rating::read(supply).is_err(),
                     }
                 })
-                .collect::<Vec<_>>()
+                .collect()
         })
-    };
+    });
     view! {
-        <div class="book-columns">
-            <section class="panel" aria-label="Supplies">
-                <header class="panel-head">
-                    <h2>"Supplies"</h2>
-                    <button on:click=move |_| {
-                        desk.settle();
-                        desk.edit_book("add supply", "Add a supply", |book| {
-                            let name = free_name("New supply", book.supplies.iter().map(|s| s.name.as_str()));
-                            book.supplies.push(SupplyEntry { name, ..SupplyEntry::default() });
-                            chosen.set(Some(book.supplies.len() - 1));
-                        });
-                        desk.settle();
-                    }>"Add"</button>
-                </header>
-                <p class="quiet">"As their nameplates say. A figure that is not on the plate is left empty; nothing is invented for it."</p>
-                <ul class="entries">{list}</ul>
-            </section>
-            {move || chosen.get().map(|at| view! { <SupplyForm at=at chosen=chosen/> })}
-        </div>
+        <section class="panel" aria-label="Supplies">
+            <header class="panel-head">
+                <h2>"Supplies"</h2>
+                <button on:click=move |_| {
+                    desk.settle();
+                    let name = desk.book.with_untracked(|book| free_name("New supply", &supply_names(book)));
+                    desk.edit_book("add supply", "Add a supply", |book| {
+                        book.supplies.insert(0, SupplyEntry { name: name.clone(), ..SupplyEntry::default() });
+                    });
+                    desk.settle();
+                    open_new(desk, name);
+                }>"Add"</button>
+            </header>
+            <p class="quiet">"As their nameplates say. A figure that is not on the plate is left empty; nothing is invented for it."</p>
+            <Entries
+                lines=lines
+                open=opened(desk, supply_names)
+                form=Callback::new(|at| view! { <SupplyForm at=at/> }.into_any())
+            />
+        </section>
     }
 }
 
@@ -191,7 +270,7 @@ const SUPPLY_FIGURES: [Figure<SupplyEntry>; 13] = [
 ];
 
 #[component]
-fn SupplyForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
+fn SupplyForm(at: usize) -> impl IntoView {
     let desk = desk();
     let read = move |get: fn(&SupplyEntry) -> String| {
         Signal::derive(move || {
@@ -226,22 +305,28 @@ fn SupplyForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
             })
     };
     view! {
-        <section class="panel form" aria-label="Supply">
+        <section class="form" aria-label="Supply">
             <header class="panel-head">
                 <h2>{read(|s| s.name.clone())}</h2>
                 <button on:click=move |_| {
                     desk.settle();
-                    desk.edit_book("copy supply", "Copy a supply", |book| {
-                        if let Some(mut entry) = book.supplies.get(at).cloned() {
-                            entry.name = free_name(&entry.name, book.supplies.iter().map(|s| s.name.as_str()));
-                            book.supplies.insert(at + 1, entry);
-                            chosen.set(Some(at + 1));
-                        }
+                    let name = desk.book.with_untracked(|book| {
+                        let names = supply_names(book);
+                        names.get(at).map(|name| free_name(name, &names))
                     });
-                    desk.settle();
+                    if let Some(name) = name {
+                        desk.edit_book("copy supply", "Copy a supply", |book| {
+                            if let Some(mut entry) = book.supplies.get(at).cloned() {
+                                entry.name.clone_from(&name);
+                                book.supplies.insert(at + 1, entry);
+                            }
+                        });
+                        desk.settle();
+                        open_new(desk, name);
+                    }
                 }>"Copy"</button>
                 <button on:click=move |_| {
-                    chosen.set(None);
+                    desk.entry.set(None);
                     desk.settle();
                     desk.edit_book("remove supply", "Remove a supply", |book| {
                         if at < book.supplies.len() {
@@ -249,6 +334,7 @@ fn SupplyForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
                         }
                     });
                     desk.settle();
+                    desk.turn();
                 }>"Remove"</button>
             </header>
             {said}
@@ -265,7 +351,8 @@ fn SupplyForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
                         if name.is_empty() || taken {
                             return Err("Each supply needs a name of its own.".to_owned());
                         }
-                        supply_edit(desk, at, "name", |entry| entry.name = name);
+                        supply_edit(desk, at, "name", |entry| entry.name.clone_from(&name));
+                        desk.entry.set(Some(name));
                         Ok(())
                     }
                 />
@@ -319,7 +406,7 @@ fn SupplyForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
                 <Field
                     label="Note"
                     class="wide"
-                    live=true
+                    live=always()
                     value=read(|s| s.note.clone())
                     commit=move |text: String| {
                         supply_edit(desk, at, "note", |entry| entry.note = text);
@@ -369,62 +456,55 @@ fn optional_money(text: &str) -> Result<Option<Decimal>, String> {
 #[component]
 fn Tubes() -> impl IntoView {
     let desk = desk();
-    let chosen = RwSignal::new(None::<usize>);
-    let list = move || {
+    let lines = Signal::derive(move || {
         desk.book.with(|book| {
             book.tubes
                 .iter()
-                .enumerate()
-                .map(|(at, tube)| {
-                    let read = TubeType::read(tube);
-                    let (colour, figures) = match &read {
-                        Ok(tube) => (
-                            tube.colour.clone(),
-                            format!(
-                                "{:.0} V/m at {} mA{}",
-                                tube.volts_per_m,
-                                tube.at_ma,
-                                tube.model_uncertainty_percent
-                                    .map_or_else(String::new, |percent| format!(", model, ±{percent} %"))
-                            ),
+                .map(|entry| match TubeType::read(entry) {
+                    Ok(tube) => EntryLine {
+                        name: tube.name.clone(),
+                        beside: format!(
+                            "{:.0} V/m at {} mA{}",
+                            tube.volts_per_m,
+                            tube.at_ma,
+                            tube.model_uncertainty_percent
+                                .map_or_else(String::new, |percent| format!(
+                                    ", model, ±{percent} %"
+                                ))
                         ),
-                        Err(_) => (String::new(), String::new()),
-                    };
-                    view! {
-                        <li class:open=move || chosen.get() == Some(at)>
-                            <button class="entry" on:click=move |_| {
-                                chosen.update(|now| *now = if *now == Some(at) { None } else { Some(at) });
-                            }>
-                                <b><span class="dot" style:background=colour></span>{tube.name.clone()}</b>
-                                <span>{figures}</span>
-                                {read.is_err().then(|| view! { <span class="chip stop">"cannot be used"</span> })}
-                            </button>
-                        </li>
-                    }
+                        colour: Some(tube.colour),
+                        wrong: false,
+                    },
+                    Err(_) => EntryLine {
+                        name: entry.name.clone(),
+                        wrong: true,
+                        ..EntryLine::default()
+                    },
                 })
-                .collect::<Vec<_>>()
+                .collect()
         })
-    };
+    });
     view! {
-        <div class="book-columns">
-            <section class="panel" aria-label="Tube types">
-                <header class="panel-head">
-                    <h2>"Tube types"</h2>
-                    <button on:click=move |_| {
-                        desk.settle();
-                        desk.edit_book("add tube", "Add a tube type", |book| {
-                            let name = free_name("New tube type", book.tubes.iter().map(|t| t.name.as_str()));
-                            book.tubes.push(TubeEntry { name, outer_mm: Some(12.0), ..TubeEntry::default() });
-                            chosen.set(Some(book.tubes.len() - 1));
-                        });
-                        desk.settle();
-                    }>"Add"</button>
-                </header>
-                <p class="quiet">"Electrical figures left empty come from the default model, ±15 to ±25 %, and say so wherever they are used."</p>
-                <ul class="entries">{list}</ul>
-            </section>
-            {move || chosen.get().map(|at| view! { <TubeForm at=at chosen=chosen/> })}
-        </div>
+        <section class="panel" aria-label="Tube types">
+            <header class="panel-head">
+                <h2>"Tube types"</h2>
+                <button on:click=move |_| {
+                    desk.settle();
+                    let name = desk.book.with_untracked(|book| free_name("New tube type", &tube_names(book)));
+                    desk.edit_book("add tube", "Add a tube type", |book| {
+                        book.tubes.insert(0, TubeEntry { name: name.clone(), ..TubeEntry::default() });
+                    });
+                    desk.settle();
+                    open_new(desk, name);
+                }>"Add"</button>
+            </header>
+            <p class="quiet">"Electrical figures left empty come from the default model, ±15 to ±25 %, and say so wherever they are used."</p>
+            <Entries
+                lines=lines
+                open=opened(desk, tube_names)
+                form=Callback::new(|at| view! { <TubeForm at=at/> }.into_any())
+            />
+        </section>
     }
 }
 
@@ -473,7 +553,7 @@ const TUBE_FIGURES: [Figure<TubeEntry>; 9] = [
 ];
 
 #[component]
-fn TubeForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
+fn TubeForm(at: usize) -> impl IntoView {
     let desk = desk();
     let read = move |get: fn(&TubeEntry) -> String| {
         Signal::derive(move || {
@@ -508,22 +588,28 @@ fn TubeForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
             })
     };
     view! {
-        <section class="panel form" aria-label="Tube type">
+        <section class="form" aria-label="Tube type">
             <header class="panel-head">
                 <h2>{read(|t| t.name.clone())}</h2>
                 <button on:click=move |_| {
                     desk.settle();
-                    desk.edit_book("copy tube", "Copy a tube type", |book| {
-                        if let Some(mut entry) = book.tubes.get(at).cloned() {
-                            entry.name = free_name(&entry.name, book.tubes.iter().map(|t| t.name.as_str()));
-                            book.tubes.insert(at + 1, entry);
-                            chosen.set(Some(at + 1));
-                        }
+                    let name = desk.book.with_untracked(|book| {
+                        let names = tube_names(book);
+                        names.get(at).map(|name| free_name(name, &names))
                     });
-                    desk.settle();
+                    if let Some(name) = name {
+                        desk.edit_book("copy tube", "Copy a tube type", |book| {
+                            if let Some(mut entry) = book.tubes.get(at).cloned() {
+                                entry.name.clone_from(&name);
+                                book.tubes.insert(at + 1, entry);
+                            }
+                        });
+                        desk.settle();
+                        open_new(desk, name);
+                    }
                 }>"Copy"</button>
                 <button on:click=move |_| {
-                    chosen.set(None);
+                    desk.entry.set(None);
                     desk.settle();
                     desk.edit_book("remove tube", "Remove a tube type", |book| {
                         if at < book.tubes.len() {
@@ -531,6 +617,7 @@ fn TubeForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
                         }
                     });
                     desk.settle();
+                    desk.turn();
                 }>"Remove"</button>
             </header>
             {said}
@@ -547,7 +634,8 @@ fn TubeForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
                         if name.is_empty() || taken {
                             return Err("Each tube type needs a name of its own.".to_owned());
                         }
-                        tube_edit(desk, at, "name", |entry| entry.name = name);
+                        tube_edit(desk, at, "name", |entry| entry.name.clone_from(&name));
+                        desk.entry.set(Some(name));
                         Ok(())
                     }
                 />
@@ -587,7 +675,7 @@ fn TubeForm(at: usize, chosen: RwSignal<Option<usize>>) -> impl IntoView {
                 <Field
                     label="Where the figures came from"
                     class="wide"
-                    live=true
+                    live=always()
                     value=read(|t| t.source.clone())
                     commit=move |text: String| {
                         tube_edit(desk, at, "source", |entry| entry.source = text);
@@ -667,7 +755,7 @@ fn RuleSets() -> impl IntoView {
     };
     view! {
         <p class="danger">"The official text of the code and the local authority govern, not these figures. A blank is not known here: fill it in from the official text."</p>
-        {sets}
+        <div class="rule-sets">{sets}</div>
     }
 }
 
@@ -778,7 +866,7 @@ mod tests {
 
     #[test]
     fn a_new_entry_gets_a_name_of_its_own() {
-        assert_eq!(free_name("A", ["B"].into_iter()), "A");
-        assert_eq!(free_name("A", ["A", "A (2)"].into_iter()), "A (3)");
+        assert_eq!(free_name("A", &["B"]), "A");
+        assert_eq!(free_name("A", &["A", "A (2)"]), "A (3)");
     }
 }

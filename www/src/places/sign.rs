@@ -8,7 +8,7 @@ use tubewright::measure::{length_shown, milliamps_shown};
 use tubewright::rules::Place;
 
 use super::Rows;
-use super::fields::{Choice, Field, Figure, Tick, optional_number, typed};
+use super::fields::{Choice, Field, Figure, Tick, always, optional_number, typed};
 use super::findings::line;
 use crate::desk::{Where, desk};
 use crate::pictures::SignPicture;
@@ -128,9 +128,9 @@ fn JobPanel() -> impl IntoView {
     view! {
         <section class="panel job" aria-label="This job">
             <h2>"This job"</h2>
-            <Field label="Name" live=true value=text(|job| &job.name) commit=set("Name", |job, typed| job.name = typed)/>
-            <Field label="Customer" live=true value=text(|job| &job.customer) commit=set("Customer", |job, typed| job.customer = typed)/>
-            <Field label="Note" live=true value=text(|job| &job.note) commit=set("Note", |job, typed| job.note = typed)/>
+            <Field label="Name" live=always() value=text(|job| &job.name) commit=set("Name", |job, typed| job.name = typed)/>
+            <Field label="Customer" live=always() value=text(|job| &job.customer) commit=set("Customer", |job, typed| job.customer = typed)/>
+            <Field label="Note" live=always() value=text(|job| &job.note) commit=set("Note", |job, typed| job.note = typed)/>
             <Choice
                 label="Rules it is held against"
                 value=text(|job| &job.rules)

@@ -66,7 +66,7 @@ fn a_list_half_right_is_taken_half_and_says_which() {
         );
         page.press("Files").await?;
         page.open_file(&path).await?;
-        page.see("1 supplies added, 0 replaced, none removed")
+        page.see("supplies: 1 added, 0 replaced, none removed")
             .await?;
         page.see("viel").await?;
         page.see("Unser 8 kV").await?;
