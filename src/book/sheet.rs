@@ -2,14 +2,15 @@
 //!
 //! One table of columns for each list says how a cell is written and read; the file's first line
 //! names the columns, units in the names. Order is free, columns may be missing, a cell left empty
-//! is a figure not given.
+//! is a figure not given. Figures are read as those typed into a field are: `6 kV` and `6000` in a
+//! column of volts are the same, `9,000` is not guessed at.
 
 use std::collections::HashSet;
 
 use rust_decimal::Decimal;
 
 use super::{Dampness, Gas, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry};
-use crate::measure::quoted;
+use crate::measure::{self, quoted};
 
 /// What a file held.
 #[derive(Debug, Clone, PartialEq)]
@@ -56,41 +57,17 @@ struct Column<T> {
 /// A cell that is not empty.
 struct Cell<'t> {
     text: &'t str,
-    /// Whether the file's separator leaves the comma free to be a decimal comma.
-    decimal_comma: bool,
 }
 
 impl Cell<'_> {
-    fn figure(&self) -> String {
-        if self.decimal_comma {
-            self.text.replace(',', ".")
-        } else {
-            self.text.to_owned()
-        }
-    }
-
-    fn number(&self) -> Result<Option<f64>, String> {
-        match self.figure().parse::<f64>() {
-            Ok(value) if value.is_finite() => Ok(Some(value)),
-            _ => Err(format!(
-                "expected a number, but found {}",
-                quoted(self.text)
-            )),
-        }
+    fn figure(&self, unit: &str) -> Result<Option<f64>, String> {
+        let read = measure::figure(self.text, unit);
+        read.map(Some).map_err(|error| error.to_string())
     }
 
     fn money(&self) -> Result<Option<Decimal>, String> {
-        self.figure()
-            .parse::<Decimal>()
-            .ok()
-            .filter(|price| !price.is_sign_negative())
-            .map(Some)
-            .ok_or_else(|| {
-                format!(
-                    "expected a price such as 12.50, but found {}",
-                    quoted(self.text)
-                )
-            })
+        let read = measure::money(self.text);
+        read.map(Some).map_err(|error| error.to_string())
     }
 
     fn count(&self) -> Result<Option<u32>, String> {
@@ -185,6 +162,13 @@ macro_rules! column {
             set: |entry, cell| cell.word($words).map(|value| entry.$name = value),
         }
     };
+    ($name:ident in $unit:literal) => {
+        Column {
+            name: stringify!($name),
+            get: |entry| shown(entry.$name),
+            set: |entry, cell| cell.figure($unit).map(|value| entry.$name = value),
+        }
+    };
     ($name:ident as $kind:ident) => {
         Column {
             name: stringify!($name),
@@ -197,21 +181,21 @@ macro_rules! column {
 const SUPPLY: &[Column<SupplyEntry>] = &[
     column!(name as text),
     column!(kind as word KINDS),
-    column!(input_volts as number),
-    column!(input_hertz as number),
-    column!(input_va as number),
-    column!(no_load_volts as number),
-    column!(short_circuit_ma as number),
-    column!(rated_ma as number),
-    column!(rated_load_volts as number),
+    column!(input_volts in "V"),
+    column!(input_hertz in "Hz"),
+    column!(input_va in "VA"),
+    column!(no_load_volts in "V"),
+    column!(short_circuit_ma in "mA"),
+    column!(rated_ma in "mA"),
+    column!(rated_load_volts in "V"),
     column!(earthing as word EARTHINGS),
     column!(earth_fault_protection as yes),
-    column!(trip_ma as number),
-    column!(trip_seconds as number),
+    column!(trip_ma in "mA"),
+    column!(trip_seconds in "s"),
     column!(open_circuit_protection as yes),
-    column!(output_hertz as number),
-    column!(least_load_percent as number),
-    column!(most_load_percent as number),
+    column!(output_hertz in "Hz"),
+    column!(least_load_percent in "%"),
+    column!(most_load_percent in "%"),
     column!(place as word PLACES),
     column!(price as money),
     column!(stock as count),
@@ -221,16 +205,16 @@ const SUPPLY: &[Column<SupplyEntry>] = &[
 const TUBE: &[Column<TubeEntry>] = &[
     column!(name as text),
     column!(gas as word GASES),
-    column!(outer_mm as number),
-    column!(wall_mm as number),
+    column!(outer_mm in "mm"),
+    column!(wall_mm in "mm"),
     column!(colour as text),
-    column!(least_ma as number),
-    column!(most_ma as number),
-    column!(volts_per_m as number),
-    column!(at_ma as number),
-    column!(exponent as number),
-    column!(pair_volts as number),
-    column!(cold_factor as number),
+    column!(least_ma in "mA"),
+    column!(most_ma in "mA"),
+    column!(volts_per_m in "V/m"),
+    column!(at_ma in "mA"),
+    column!(exponent in ""),
+    column!(pair_volts in "V"),
+    column!(cold_factor in ""),
     column!(price_per_m as money),
     column!(source as text),
 ];
@@ -345,11 +329,7 @@ fn read<T: Default>(
             if text.is_empty() {
                 continue;
             }
-            let cell = Cell {
-                text,
-                decimal_comma: separator != ',',
-            };
-            if let Err(error) = (column.set)(&mut entry, &cell) {
+            if let Err(error) = (column.set)(&mut entry, &Cell { text }) {
                 trouble.push(format!(
                     "Line {line} was left out: column {}, {error}.",
                     column.name

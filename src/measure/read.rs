@@ -202,6 +202,9 @@ pub fn money(text: &str) -> Result<Decimal, ReadError> {
     reader.skip_spaces();
     reader.from_zero_on()?;
     let start = reader.at;
+    if !reader.peek().is_some_and(|c| c.is_ascii_digit()) {
+        return Err(ReadError::new(text, start, "an amount such as 12.50"));
+    }
     reader.plain()?;
     let written = reader.written(start..reader.at);
     reader.end("the end", &NO_WORDS)?;

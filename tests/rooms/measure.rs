@@ -274,7 +274,7 @@ fn sums_of_money() {
     assert_snapshot!(amount("-5"), @"expected a figure from 0 on, but found “-5” at character 1 of “-5”; nothing here is ever negative");
     assert_snapshot!(amount("12.50 EUR"), @"expected the end, but found “EUR” at character 7 of “12.50 EUR”; this figure takes no unit");
     assert_snapshot!(amount("1/2"), @"expected the end, but found “/2” at character 2 of “1/2”");
-    assert_snapshot!(amount(""), @"expected a number such as 450, but the text ends at character 1 of “”");
+    assert_snapshot!(amount(""), @"expected an amount such as 12.50, but the text ends at character 1 of “”");
     assert_snapshot!(amount("999999999999.123456789012345678901234"), @"expected a figure with fewer digits, but found “999999999999.12345678901…” at character 1 of “999999999999.12345678901…”");
 }
 
