@@ -1,6 +1,7 @@
 //! Fields: a caption, a control, and a sentence where what was typed cannot be taken.
 
 use leptos::prelude::*;
+use tubewright::measure;
 
 use crate::desk::desk;
 
@@ -194,24 +195,19 @@ pub(super) fn Figure(
     }
 }
 
-/// Reads an optional figure: empty is "not given", a decimal comma is taken.
-pub(super) fn optional_number(text: &str) -> Result<Option<f64>, String> {
-    let text = text.trim();
-    if text.is_empty() {
+/// Reads an optional figure in a unit, as a nameplate gives it; empty is "not given".
+pub(super) fn optional_figure(text: &str, unit: &str) -> Result<Option<f64>, String> {
+    if text.trim().is_empty() {
         return Ok(None);
     }
-    match text.replace(',', ".").parse::<f64>() {
-        Ok(figure) if figure.is_finite() => Ok(Some(figure)),
-        _ => Err(format!(
-            "Expected a number such as 12.5, but found {}.",
-            tubewright::measure::quoted(text)
-        )),
-    }
+    measure::figure(text, unit)
+        .map(Some)
+        .map_err(|error| sentence(&error))
 }
 
 /// Reads a figure that must be there, from 0 on.
-pub(super) fn number(text: &str) -> Result<f64, String> {
-    match optional_number(text)? {
+pub(super) fn figure(text: &str, unit: &str) -> Result<f64, String> {
+    match optional_figure(text, unit)? {
         Some(figure) if figure >= 0.0 => Ok(figure),
         Some(figure) => Err(format!("Expected 0 or more, but found {figure}.")),
         None => Err("Expected a number such as 12.5, but the field is empty.".to_owned()),
@@ -220,17 +216,19 @@ pub(super) fn number(text: &str) -> Result<f64, String> {
 
 /// Reads an amount of money, from 0 on.
 pub(super) fn money(text: &str) -> Result<rust_decimal::Decimal, String> {
-    let text = text.trim();
-    text.replace(',', ".")
-        .parse::<rust_decimal::Decimal>()
-        .ok()
-        .filter(|amount| !amount.is_sign_negative())
-        .ok_or_else(|| {
-            format!(
-                "Expected an amount such as 12.50, but found {}.",
-                tubewright::measure::quoted(text)
-            )
-        })
+    measure::money(text).map_err(|error| sentence(&error))
+}
+
+fn sentence(error: &measure::ReadError) -> String {
+    let says = error.to_string();
+    let mut letters = says.chars();
+    let first: String = letters
+        .next()
+        .map(char::to_uppercase)
+        .into_iter()
+        .flatten()
+        .collect();
+    format!("{first}{}.", letters.as_str())
 }
 
 /// A figure as it is put into a field.
@@ -243,14 +241,20 @@ mod tests {
     use super::*;
 
     #[test]
-    fn figures_are_read_or_explained() {
-        assert_eq!(optional_number("  "), Ok(None), "empty is not given");
-        assert_eq!(optional_number("7,5"), Ok(Some(7.5)), "decimal comma");
-        assert!(optional_number("NaN").is_err(), "not a number");
-        assert!(optional_number("1e999").is_err(), "beyond all numbers");
+    fn figures_are_read_as_a_nameplate_gives_them_or_explained() {
+        assert_eq!(optional_figure("  ", "V"), Ok(None), "empty is not given");
+        assert_eq!(
+            optional_figure("7,5 kV", "V"),
+            Ok(Some(7_500.0)),
+            "decimal comma, kilovolts"
+        );
+        let thousands = optional_figure("9,000", "V").expect_err("nobody knows which");
+        assert!(thousands.contains("9000"), "{thousands}");
+        assert!(optional_figure("NaN", "V").is_err(), "not a number");
+        assert!(optional_figure("30 mA", "V").is_err(), "another unit");
         assert!(
-            number("-3").is_err_and(|why| why.contains("0 or more")),
-            "negative"
+            figure("", "mm").is_err_and(|why| why.contains("empty")),
+            "must be there"
         );
         assert!(money("12.345.6").is_err(), "two points");
         assert_eq!(

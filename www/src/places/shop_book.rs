@@ -8,7 +8,7 @@ use tubewright::rules::Finding;
 use tubewright::supply::Rating;
 use tubewright::tube::TubeType;
 
-use super::fields::{Choice, Field, Tick, always, money, number, optional_number, typed};
+use super::fields::{Choice, Field, Tick, always, figure, money, optional_figure, typed};
 use super::findings::line;
 use super::sign::{damp, damp_options, damp_word};
 use crate::desk::{BookPart, Desk, desk};
@@ -218,47 +218,80 @@ fn supply_edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut Supply
     );
 }
 
-type Figure<T> = (&'static str, fn(&T) -> Option<f64>, fn(&mut T, Option<f64>));
+/// A figure of an entry: caption, unit, how it is read and written.
+type Figure<T> = (
+    &'static str,
+    &'static str,
+    fn(&T) -> Option<f64>,
+    fn(&mut T, Option<f64>),
+);
 
 const SUPPLY_FIGURES: [Figure<SupplyEntry>; 13] = [
     (
         "No-load volts, V",
+        "V",
         |s| s.no_load_volts,
         |s, v| s.no_load_volts = v,
     ),
     (
         "Short-circuit current, mA",
+        "mA",
         |s| s.short_circuit_ma,
         |s, v| s.short_circuit_ma = v,
     ),
-    ("Rated current, mA", |s| s.rated_ma, |s, v| s.rated_ma = v),
+    (
+        "Rated current, mA",
+        "mA",
+        |s| s.rated_ma,
+        |s, v| s.rated_ma = v,
+    ),
     (
         "Volts at rated current (electronic), V",
+        "V",
         |s| s.rated_load_volts,
         |s, v| s.rated_load_volts = v,
     ),
-    ("Input, V", |s| s.input_volts, |s, v| s.input_volts = v),
-    ("Input, Hz", |s| s.input_hertz, |s, v| s.input_hertz = v),
-    ("Input, VA", |s| s.input_va, |s, v| s.input_va = v),
-    ("Trip current, mA", |s| s.trip_ma, |s, v| s.trip_ma = v),
+    ("Input, V", "V", |s| s.input_volts, |s, v| s.input_volts = v),
+    (
+        "Input, Hz",
+        "Hz",
+        |s| s.input_hertz,
+        |s, v| s.input_hertz = v,
+    ),
+    ("Input, VA", "VA", |s| s.input_va, |s, v| s.input_va = v),
+    (
+        "Trip current, mA",
+        "mA",
+        |s| s.trip_ma,
+        |s, v| s.trip_ma = v,
+    ),
     (
         "Trip time, s",
+        "s",
         |s| s.trip_seconds,
         |s, v| s.trip_seconds = v,
     ),
-    ("Output, Hz", |s| s.output_hertz, |s, v| s.output_hertz = v),
+    (
+        "Output, Hz",
+        "Hz",
+        |s| s.output_hertz,
+        |s, v| s.output_hertz = v,
+    ),
     (
         "Plate's least load, % of no-load volts",
+        "%",
         |s| s.least_load_percent,
         |s, v| s.least_load_percent = v,
     ),
     (
         "Plate's most load, % of no-load volts",
+        "%",
         |s| s.most_load_percent,
         |s, v| s.most_load_percent = v,
     ),
     (
         "On the shelf",
+        "",
         |s| s.stock.map(f64::from),
         #[allow(
             clippy::cast_possible_truncation,
@@ -280,7 +313,7 @@ fn SupplyForm(at: usize) -> impl IntoView {
     };
     let figures: Vec<_> = SUPPLY_FIGURES
         .into_iter()
-        .map(|(label, get, set)| {
+        .map(|(label, unit, get, set)| {
             view! {
                 <Field
                     label=label
@@ -289,7 +322,7 @@ fn SupplyForm(at: usize) -> impl IntoView {
                         typed(desk.book.with(|book| book.supplies.get(at).and_then(get)))
                     })
                     commit=move |text: String| {
-                        let figure = optional_number(&text)?;
+                        let figure = optional_figure(&text, unit)?;
                         supply_edit(desk, at, label, |entry| set(entry, figure));
                         Ok(())
                     }
@@ -521,32 +554,57 @@ fn tube_edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut TubeEntr
 }
 
 const TUBE_FIGURES: [Figure<TubeEntry>; 9] = [
-    ("Outer diameter, mm", |t| t.outer_mm, |t, v| t.outer_mm = v),
+    (
+        "Outer diameter, mm",
+        "mm",
+        |t| t.outer_mm,
+        |t, v| t.outer_mm = v,
+    ),
     (
         "Wall, mm (1 when empty)",
+        "mm",
         |t| t.wall_mm,
         |t, v| t.wall_mm = v,
     ),
-    ("Least current, mA", |t| t.least_ma, |t, v| t.least_ma = v),
-    ("Greatest current, mA", |t| t.most_ma, |t, v| t.most_ma = v),
+    (
+        "Least current, mA",
+        "mA",
+        |t| t.least_ma,
+        |t, v| t.least_ma = v,
+    ),
+    (
+        "Greatest current, mA",
+        "mA",
+        |t| t.most_ma,
+        |t, v| t.most_ma = v,
+    ),
     (
         "Running volts, V/m",
+        "V/m",
         |t| t.volts_per_m,
         |t, v| t.volts_per_m = v,
     ),
-    ("… at, mA (25 when empty)", |t| t.at_ma, |t, v| t.at_ma = v),
+    (
+        "… at, mA (25 when empty)",
+        "mA",
+        |t| t.at_ma,
+        |t, v| t.at_ma = v,
+    ),
     (
         "Exponent of the fall with current",
+        "",
         |t| t.exponent,
         |t, v| t.exponent = v,
     ),
     (
         "Electrode pair, V",
+        "V",
         |t| t.pair_volts,
         |t, v| t.pair_volts = v,
     ),
     (
         "Cold factor below 0 °C",
+        "",
         |t| t.cold_factor,
         |t, v| t.cold_factor = v,
     ),
@@ -563,7 +621,7 @@ fn TubeForm(at: usize) -> impl IntoView {
     };
     let figures: Vec<_> = TUBE_FIGURES
         .into_iter()
-        .map(|(label, get, set)| {
+        .map(|(label, unit, get, set)| {
             view! {
                 <Field
                     label=label
@@ -572,7 +630,7 @@ fn TubeForm(at: usize) -> impl IntoView {
                         typed(desk.book.with(|book| book.tubes.get(at).and_then(get)))
                     })
                     commit=move |text: String| {
-                        let figure = optional_number(&text)?;
+                        let figure = optional_figure(&text, unit)?;
                         tube_edit(desk, at, label, |entry| set(entry, figure));
                         Ok(())
                     }
@@ -718,7 +776,7 @@ fn RuleSets() -> impl IntoView {
                                         book.rule_sets.get(at).and_then(|set| set.rules.get(row)).and_then(|rule| rule.value)
                                     })))
                                     commit=move |text: String| {
-                                        let figure = optional_number(&text)?;
+                                        let figure = optional_figure(&text, unit)?;
                                         desk.edit_book(&field, "A rule's figure", |book| {
                                             if let Some(rule) = book.rule_sets.get_mut(at).and_then(|set| set.rules.get_mut(row)) {
                                                 // A figure typed here is the shop's, whoever's clause it stands under.
@@ -829,7 +887,7 @@ fn RatesForm() -> impl IntoView {
                     number=true
                     value=Signal::derive(move || desk.book.with(|book| book.allowances.tail_mm.to_string()))
                     commit=move |text: String| {
-                        let figure = number(&text)?;
+                        let figure = figure(&text, "mm")?;
                         desk.edit_book("tail", "Tail", |book| book.allowances.tail_mm = figure);
                         Ok(())
                     }
@@ -839,7 +897,7 @@ fn RatesForm() -> impl IntoView {
                     number=true
                     value=Signal::derive(move || desk.book.with(|book| book.allowances.waste_percent.to_string()))
                     commit=move |text: String| {
-                        let figure = number(&text)?;
+                        let figure = figure(&text, "%")?;
                         desk.edit_book("waste", "Waste", |book| book.allowances.waste_percent = figure);
                         Ok(())
                     }
@@ -849,7 +907,7 @@ fn RatesForm() -> impl IntoView {
                     number=true
                     value=Signal::derive(move || desk.book.with(|book| book.allowances.longest_piece_mm.to_string()))
                     commit=move |text: String| {
-                        let figure = number(&text)?;
+                        let figure = figure(&text, "mm")?;
                         desk.edit_book("longest", "Longest piece", |book| book.allowances.longest_piece_mm = figure);
                         Ok(())
                     }

@@ -8,7 +8,7 @@ use tubewright::measure::{length_shown, milliamps_shown};
 use tubewright::rules::Place;
 
 use super::Rows;
-use super::fields::{Choice, Field, Figure, Tick, always, optional_number, typed};
+use super::fields::{Choice, Field, Figure, Tick, always, optional_figure, typed};
 use super::findings::line;
 use crate::desk::{Where, desk};
 use crate::pictures::SignPicture;
@@ -157,7 +157,7 @@ fn JobPanel() -> impl IntoView {
                 example="not checked"
                 value=Signal::derive(move || typed(desk.job.with(|job| job.site.mains_volts)))
                 commit=move |typed: String| {
-                    let volts = optional_number(&typed)?;
+                    let volts = optional_figure(&typed, "V")?;
                     desk.edit_job("mains", "Mains volts", |job| job.site.mains_volts = volts);
                     Ok(())
                 }
