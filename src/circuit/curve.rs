@@ -64,17 +64,18 @@ fn with_gaps(u: f64) -> Waveform {
     let start = u.asin();
     let cos_start = start.cos();
     let current = |phi: f64| cos_start - (start + phi).cos() - u * phi;
-    // The current rises until sin θ falls to u again, at φ = π − 2 θ₀, then falls through zero.
-    let (mut low, mut high) = (PI - 2.0 * start, PI);
-    for _ in 0..80 {
-        let middle = f64::midpoint(low, high);
-        if current(middle) > 0.0 {
-            low = middle;
-        } else {
-            high = middle;
+    // The current rises until sin θ falls to u again, at φ = π − 2 θ₀, then falls through zero before
+    // π. There it bends downwards, so Newton's steps from π come down on the zero from above and
+    // never beyond it.
+    let mut end = PI;
+    for _ in 0..64 {
+        let step = current(end) / ((start + end).sin() - u);
+        // Past the zero by rounding, or a step too small to be one: this is it.
+        if step <= 1e-16 * end || !step.is_finite() {
+            break;
         }
+        end -= step;
     }
-    let end = f64::midpoint(low, high);
     // Integrals of i and i² over 0..end, i = a − cos θ − u φ with a = cos θ₀, written out.
     let theta = start + end;
     let (sin_s, cos_s, sin_e, cos_e) = (start.sin(), cos_start, theta.sin(), theta.cos());

@@ -51,7 +51,7 @@ pub fn SignPicture(
             bar_x + long.mm()
         );
         // Electrodes are drawn larger than they are, but never so large that letters drown in them.
-        let electrode = (0.9 * scene.layers.first().map_or(10.0, |layer| layer.width_mm))
+        let electrode = (1.2 * scene.layers.first().map_or(10.0, |layer| layer.width_mm))
             .clamp(4.0 * px, 9.0 * px);
         let says = says(
             &scene.layers,
