@@ -153,6 +153,13 @@ impl Visit {
         self.retype(&field, text).await
     }
 
+    /// Types a text into a field of a row and stays in the field.
+    pub async fn begin_in_row(&self, row: usize, label: &str, text: &str) -> WebDriverResult<()> {
+        let field = self.find(&Self::in_row(row, label, "input")).await?;
+        field.send_keys(Key::Control + "a").await?;
+        field.send_keys(text).await
+    }
+
     /// Types a text into a field anywhere on the place.
     pub async fn type_in(&self, label: &str, text: &str) -> WebDriverResult<()> {
         let path = format!("//label[span[normalize-space()={}]]//input", literal(label));
@@ -206,7 +213,7 @@ impl Visit {
     pub async fn press(&self, words: &str) -> WebDriverResult<()> {
         let words = literal(words);
         let path = format!(
-            "//*[self::button or self::a or self::summary][normalize-space()={words} or @aria-label={words}]"
+            "//*[self::button or self::a or self::summary][normalize-space()={words} or @aria-label={words} or @title={words}]"
         );
         self.find(&path).await?.click().await
     }

@@ -1,6 +1,7 @@
 //! Journeys through the built page, one file for each thing a person comes for.
 
 mod bad_files;
+mod care;
 mod demo;
 mod looks;
 mod offline;
