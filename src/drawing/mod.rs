@@ -5,6 +5,7 @@
 mod artwork;
 mod face;
 mod jhf;
+pub mod svg;
 
 pub use artwork::{ArtGroup, ArtStroke, Artwork, Unread};
 pub use face::{CAP_UNITS, Face, Letter, Shaped, face, faces};

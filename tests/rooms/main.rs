@@ -19,6 +19,9 @@ mod rules;
 /// Strokes of the faces against published lengths; characters without a shape.
 mod drawing;
 
+/// SVG files: exact lengths, what is left unread, what is refused.
+mod svg;
+
 /// Nameplates: what is missing or contradicts itself, and the site.
 mod supply;
 
