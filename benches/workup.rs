@@ -27,16 +27,16 @@ fn supplies(count: u32) -> Vec<SupplyEntry> {
             let electronic = at % 5 == 4;
             SupplyEntry {
                 name: format!("supply {at}"),
-                kind: if electronic {
+                kind: Some(if electronic {
                     SupplyKind::Electronic
                 } else {
                     SupplyKind::Iron
-                },
+                }),
                 no_load_volts: Some(no_load),
                 short_circuit_ma: Some(short_ma),
                 rated_ma: electronic.then_some(0.9 * short_ma),
                 rated_load_volts: electronic.then_some(0.7 * no_load),
-                earthing: [MidPoint, MidPoint, MidPointReturn, OneEnd][at as usize % 4],
+                earthing: Some([MidPoint, MidPoint, MidPointReturn, OneEnd][at as usize % 4]),
                 earth_fault_protection: true,
                 open_circuit_protection: true,
                 price: Some(Decimal::from(50 + at * 7 % 200)),

@@ -529,7 +529,7 @@ fn parts(book: &Book, tubes: &[TubeTotal], circuits: &[CircuitWork], pieces: usi
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::book::{SupplyEntry, TubeEntry};
+    use crate::book::{OutputEarthing, SupplyEntry, SupplyKind, TubeEntry};
     use crate::job::{Row, StrokesRow};
 
     /// Three bars that need a supply each, and a book with one supply.
@@ -547,6 +547,8 @@ mod tests {
         let book = Book {
             supplies: vec![SupplyEntry {
                 name: "4 kV 30 mA".to_owned(),
+                kind: Some(SupplyKind::Iron),
+                earthing: Some(OutputEarthing::MidPoint),
                 no_load_volts: Some(4_000.0),
                 short_circuit_ma: Some(30.0),
                 ..SupplyEntry::default()

@@ -70,22 +70,20 @@ impl Default for Book {
 }
 
 /// How a supply limits its current.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize, Deserialize)]
 #[serde(rename_all = "kebab-case")]
 pub enum SupplyKind {
     /// Iron leakage transformer.
-    #[default]
     Iron,
     /// Electronic (high-frequency) supply.
     Electronic,
 }
 
 /// What of the output is joined to earth.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize, Deserialize)]
 #[serde(rename_all = "kebab-case")]
 pub enum OutputEarthing {
     /// The mid-point of the output is earthed; one string between the two leads.
-    #[default]
     MidPoint,
     /// The mid-point is earthed and brought out; two strings, each from a lead to the mid-point.
     MidPointReturn,
@@ -114,8 +112,8 @@ pub enum Dampness {
 pub struct SupplyEntry {
     /// The shop's name for it.
     pub name: String,
-    /// Iron or electronic.
-    pub kind: SupplyKind,
+    /// Iron or electronic; None: not known, and the supply cannot be worked with.
+    pub kind: Option<SupplyKind>,
     /// Mains volts it is made for.
     pub input_volts: Option<f64>,
     /// Mains frequency it is made for.
@@ -130,8 +128,8 @@ pub struct SupplyEntry {
     pub rated_ma: Option<f64>,
     /// Electronic supplies: output volts at the rated current.
     pub rated_load_volts: Option<f64>,
-    /// What of the output is earthed.
-    pub earthing: OutputEarthing,
+    /// What of the output is earthed; None: not known, and the supply cannot be worked with.
+    pub earthing: Option<OutputEarthing>,
     /// Whether it switches off on an earth fault of the output.
     pub earth_fault_protection: bool,
     /// Trip current of that protection.

@@ -155,6 +155,17 @@ macro_rules! column {
             set: |entry, cell| cell.yes().map(|value| entry.$name = value),
         }
     };
+    ($name:ident as known word $words:ident) => {
+        Column {
+            name: stringify!($name),
+            get: |entry| {
+                entry
+                    .$name
+                    .map_or_else(String::new, |value| said(value, $words))
+            },
+            set: |entry, cell| cell.word($words).map(|value| entry.$name = Some(value)),
+        }
+    };
     ($name:ident as word $words:ident) => {
         Column {
             name: stringify!($name),
@@ -180,7 +191,7 @@ macro_rules! column {
 
 const SUPPLY: &[Column<SupplyEntry>] = &[
     column!(name as text),
-    column!(kind as word KINDS),
+    column!(kind as known word KINDS),
     column!(input_volts in "V"),
     column!(input_hertz in "Hz"),
     column!(input_va in "VA"),
@@ -188,7 +199,7 @@ const SUPPLY: &[Column<SupplyEntry>] = &[
     column!(short_circuit_ma in "mA"),
     column!(rated_ma in "mA"),
     column!(rated_load_volts in "V"),
-    column!(earthing as word EARTHINGS),
+    column!(earthing as known word EARTHINGS),
     column!(earth_fault_protection as yes),
     column!(trip_ma in "mA"),
     column!(trip_seconds in "s"),

@@ -226,14 +226,15 @@ pub(super) fn mixed() -> Finding {
 mod tests {
     use super::super::{Load, assess};
     use super::*;
-    use crate::book::{Loading, SupplyEntry};
+    use crate::book::{Loading, SupplyEntry, SupplyKind};
 
     fn rating(earthing: OutputEarthing) -> Rating {
         Rating::read(&SupplyEntry {
             name: "T".to_owned(),
             no_load_volts: Some(8_000.0),
             short_circuit_ma: Some(30.0),
-            earthing,
+            kind: Some(SupplyKind::Iron),
+            earthing: Some(earthing),
             ..SupplyEntry::default()
         })
         .expect("a whole plate")

@@ -200,7 +200,7 @@ pub fn figure(text: &str, unit: &str) -> Result<f64, ReadError> {
 pub fn money(text: &str) -> Result<Decimal, ReadError> {
     let mut reader = Reader::new(text)?;
     reader.skip_spaces();
-    reader.from_zero_on()?;
+    reader.not_negative()?;
     let start = reader.at;
     if !reader.peek().is_some_and(|c| c.is_ascii_digit()) {
         return Err(ReadError::new(text, start, "an amount such as 12.50"));
@@ -433,7 +433,7 @@ impl<'t> Reader<'t> {
     fn factor(&mut self, words: &Words) -> Result<Factor, ReadError> {
         self.skip_spaces();
         let start = self.at;
-        self.from_zero_on()?;
+        self.not_negative()?;
         let number = self.number()?;
         let end = self.at;
         let Some((numer, denom)) = self.unit(words) else {
@@ -527,7 +527,7 @@ impl<'t> Reader<'t> {
         Ok(Exact::from_integer(whole))
     }
 
-    fn from_zero_on(&self) -> Result<(), ReadError> {
+    fn not_negative(&self) -> Result<(), ReadError> {
         if matches!(self.peek(), Some('-' | '−')) {
             return Err(ReadError::new(self.text, self.at, "a figure from 0 on")
                 .hint("nothing here is ever negative"));

@@ -495,8 +495,8 @@ mod tests {
             let no_load = (self.times * takes_volts).clamp(200.0, 30_000.0);
             let electronic = self.kind == SupplyKind::Electronic;
             let entry = SupplyEntry {
-                kind: self.kind,
-                earthing: self.earthing,
+                kind: Some(self.kind),
+                earthing: Some(self.earthing),
                 no_load_volts: Some(no_load),
                 short_circuit_ma: Some(self.short_ma),
                 rated_ma: electronic.then_some(self.rated_share * self.short_ma),

@@ -350,6 +350,8 @@ mod tests {
     fn supply(name: &str, volts: f64, ma: f64, price: i64) -> SupplyEntry {
         SupplyEntry {
             name: name.to_owned(),
+            kind: Some(SupplyKind::Iron),
+            earthing: Some(OutputEarthing::MidPoint),
             no_load_volts: Some(volts),
             short_circuit_ma: Some(ma),
             price: Some(price.into()),
@@ -423,9 +425,9 @@ mod tests {
         let mut with_return = supply("6.5 kV return", 6_500.0, 30.0, 158);
         // By volt-amperes it would be the next below the 270 VA of 9 kV.
         with_return.input_va = Some(240.0);
-        with_return.earthing = OutputEarthing::MidPointReturn;
+        with_return.earthing = Some(OutputEarthing::MidPointReturn);
         let mut electronic = supply("Electronic 10 kV", 10_000.0, 30.0, 149);
-        electronic.kind = SupplyKind::Electronic;
+        electronic.kind = Some(SupplyKind::Electronic);
         (electronic.rated_ma, electronic.rated_load_volts) = (Some(30.0), Some(9_000.0));
         let candidates = candidates(&[
             supply("7.5 kV", 7_500.0, 30.0, 134),
@@ -454,7 +456,7 @@ mod tests {
     #[test]
     fn where_none_is_alike_the_nearest_of_any_is_named() {
         let mut one_end = supply("3 kV one end", 3_000.0, 30.0, 57);
-        one_end.earthing = OutputEarthing::OneEnd;
+        one_end.earthing = Some(OutputEarthing::OneEnd);
         let candidates = candidates(&[one_end, supply("4 kV", 4_000.0, 30.0, 70)]);
         // 2 400 V: 60 % of 4 000 V, 80 % of 3 000 V.
         let found = circuit("2200 mm; 1800 mm", &candidates, Wish::FewestSupplies);

@@ -51,12 +51,17 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
         stop("No-load volts are missing: copy them from the nameplate.".to_owned());
     }
     match entry.kind {
-        SupplyKind::Iron => {
+        None => stop(
+            "The kind of the supply is not given: iron transformer or electronic. How it holds its \
+             current depends on it."
+                .to_owned(),
+        ),
+        Some(SupplyKind::Iron) => {
             if entry.short_circuit_ma.is_none() {
                 stop("Short-circuit current is missing: copy it from the nameplate.".to_owned());
             }
         }
-        SupplyKind::Electronic => {
+        Some(SupplyKind::Electronic) => {
             if entry.rated_ma.is_none() {
                 stop(
                     "Rated current is missing: an electronic supply is worked out from its rated \
@@ -80,7 +85,14 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
             "The rated current, {rated} mA, is above the short-circuit current, {short} mA."
         ));
     }
-    if let (Some(rated), Some(short), SupplyKind::Electronic) =
+    if entry.earthing.is_none() {
+        stop(
+            "The earthing of the output is not given: mid-point, one end, isolated, or mid-point \
+             with return. Volts to earth depend on it."
+                .to_owned(),
+        );
+    }
+    if let (Some(rated), Some(short), Some(SupplyKind::Electronic)) =
         (entry.rated_ma, entry.short_circuit_ma, entry.kind)
         && short > MOST_DROOP * rated
     {

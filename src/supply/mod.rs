@@ -55,12 +55,14 @@ impl Rating {
     /// Everything that is missing or contradicts itself, as findings at the supply.
     pub fn read(entry: &SupplyEntry) -> Result<Self, Vec<Finding>> {
         let wrong = finding::contradictions(entry);
-        let (Some(no_load), Some(short_circuit), true) = (
+        let (Some(kind), Some(earthing), Some(no_load), Some(short_circuit), true) = (
+            entry.kind,
+            entry.earthing,
             entry.no_load_volts,
             entry.short_circuit_ma.or(match entry.kind {
                 // An electronic supply that names only its rated current is taken to hold it.
-                SupplyKind::Electronic => entry.rated_ma,
-                SupplyKind::Iron => None,
+                Some(SupplyKind::Electronic) => entry.rated_ma,
+                Some(SupplyKind::Iron) | None => None,
             }),
             wrong.is_empty(),
         ) else {
@@ -69,12 +71,12 @@ impl Rating {
         let share = |percent: f64| percent / 100.0;
         Ok(Self {
             name: entry.name.clone(),
-            kind: entry.kind,
+            kind,
             no_load: Volts::from_volts(no_load),
             short_circuit: Milliamps::from_ma(short_circuit),
             rated: Milliamps::from_ma(entry.rated_ma.unwrap_or(short_circuit)),
             rated_load: entry.rated_load_volts.map(Volts::from_volts),
-            earthing: entry.earthing,
+            earthing,
             earth_fault_protection: entry.earth_fault_protection,
             trip: entry.trip_ma.map(Milliamps::from_ma),
             open_circuit_protection: entry.open_circuit_protection,

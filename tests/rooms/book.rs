@@ -40,6 +40,8 @@ fn a_whole_line() {
     );
     let expect = SupplyEntry {
         name: "Big".to_owned(),
+        kind: Some(SupplyKind::Iron),
+        earthing: Some(OutputEarthing::MidPoint),
         no_load_volts: Some(15_000.0),
         short_circuit_ma: Some(30.0),
         earth_fault_protection: true,
@@ -66,9 +68,11 @@ fn columns_in_any_order_missing_or_unknown() {
     assert_snapshot!(refused(b"title,volts\nT,9000\n"), @"This is not a list of supplies: its first line has no column “name”. The columns are: name, kind, input_volts, input_hertz, input_va, no_load_volts, short_circuit_ma, rated_ma, rated_load_volts, earthing, earth_fault_protection, trip_ma, trip_seconds, open_circuit_protection, output_hertz, least_load_percent, most_load_percent, place, price, stock, note.");
     assert_snapshot!(refused(b"9000,30\n"), @"This is not a list of supplies: its first line has no column “name”. The columns are: name, kind, input_volts, input_hertz, input_va, no_load_volts, short_circuit_ma, rated_ma, rated_load_volts, earthing, earth_fault_protection, trip_ma, trip_seconds, open_circuit_protection, output_hertz, least_load_percent, most_load_percent, place, price, stock, note.");
     let missing = supplies("name\nT\n");
+    let entry = &missing.entries[0];
     assert_eq!(
-        missing.entries[0].no_load_volts, None,
-        "a figure not given stays unknown"
+        (entry.no_load_volts, entry.kind, entry.earthing),
+        (None, None, None),
+        "what is not given stays unknown"
     );
 }
 
@@ -324,12 +328,17 @@ fn supply() -> impl Strategy<Value = SupplyEntry> {
     (
         (
             text(),
-            select(vec![SupplyKind::Iron, SupplyKind::Electronic]),
             select(vec![
-                OutputEarthing::MidPoint,
-                OutputEarthing::MidPointReturn,
-                OutputEarthing::OneEnd,
-                OutputEarthing::Isolated,
+                None,
+                Some(SupplyKind::Iron),
+                Some(SupplyKind::Electronic),
+            ]),
+            select(vec![
+                None,
+                Some(OutputEarthing::MidPoint),
+                Some(OutputEarthing::MidPointReturn),
+                Some(OutputEarthing::OneEnd),
+                Some(OutputEarthing::Isolated),
             ]),
             select(vec![Dampness::Dry, Dampness::Damp, Dampness::Wet]),
         ),

@@ -3,7 +3,9 @@
 
 use insta::assert_snapshot;
 use proptest::prelude::*;
-use tubewright::book::{Allowances, Gas, Loading, OutputEarthing, SupplyEntry, TubeEntry};
+use tubewright::book::{
+    Allowances, Gas, Loading, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry,
+};
 use tubewright::circuit::{Assessment, Curve, Load, Operating, assess, iron, operate};
 use tubewright::job::{Job, Row, StrokesRow};
 use tubewright::supply::Rating;
@@ -143,6 +145,8 @@ fn a_large_and_a_middling_transformer_at_known_volts() {
 
 fn iron_rating(no_load: f64, short_ma: f64) -> SupplyEntry {
     SupplyEntry {
+        kind: Some(SupplyKind::Iron),
+        earthing: Some(OutputEarthing::MidPoint),
         name: "T".to_owned(),
         no_load_volts: Some(no_load),
         short_circuit_ma: Some(short_ma),
@@ -277,7 +281,7 @@ fn volts_to_earth_by_earthing() {
     let load = string(&[(2, "1000", tube(Gas::Neon, 12.0))]);
     let to_earth = |earthing| {
         let entry = SupplyEntry {
-            earthing,
+            earthing: Some(earthing),
             ..iron_rating(6_000.0, 30.0)
         };
         let found = worked(&load, &entry);
@@ -300,7 +304,7 @@ fn volts_to_earth_by_earthing() {
 fn a_mid_point_return_wants_two_strings() {
     let load = string(&[(1, "1000", tube(Gas::Neon, 12.0))]);
     let entry = SupplyEntry {
-        earthing: OutputEarthing::MidPointReturn,
+        earthing: Some(OutputEarthing::MidPointReturn),
         ..iron_rating(6_000.0, 30.0)
     };
     let alone = worked(&load, &entry);

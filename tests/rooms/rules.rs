@@ -14,7 +14,8 @@ fn entry(no_load_volts: f64, ma: f64, earthing: OutputEarthing) -> SupplyEntry {
         name: "T".to_owned(),
         no_load_volts: Some(no_load_volts),
         short_circuit_ma: Some(ma),
-        earthing,
+        kind: Some(SupplyKind::Iron),
+        earthing: Some(earthing),
         earth_fault_protection: true,
         open_circuit_protection: true,
         ..SupplyEntry::default()
@@ -93,7 +94,7 @@ fn a_mid_point_halves_the_volts_to_ground_and_an_earthed_end_does_not() {
 fn an_electronic_supply_is_never_exempt_from_protection() {
     // 600.23(B) exempts transformers; an isolated electronic supply of 6 kV still needs it.
     let electronic = |earth_fault_protection| SupplyEntry {
-        kind: SupplyKind::Electronic,
+        kind: Some(SupplyKind::Electronic),
         rated_ma: Some(30.0),
         rated_load_volts: Some(4_500.0),
         earth_fault_protection,

@@ -9,6 +9,8 @@ use tubewright::supply::Rating;
 fn iron() -> SupplyEntry {
     SupplyEntry {
         name: "T".to_owned(),
+        kind: Some(SupplyKind::Iron),
+        earthing: Some(OutputEarthing::MidPoint),
         no_load_volts: Some(9_000.0),
         short_circuit_ma: Some(30.0),
         ..SupplyEntry::default()
@@ -18,7 +20,8 @@ fn iron() -> SupplyEntry {
 fn electronic() -> SupplyEntry {
     SupplyEntry {
         name: "E".to_owned(),
-        kind: SupplyKind::Electronic,
+        kind: Some(SupplyKind::Electronic),
+        earthing: Some(OutputEarthing::MidPoint),
         no_load_volts: Some(8_000.0),
         rated_ma: Some(28.0),
         rated_load_volts: Some(6_000.0),
@@ -67,9 +70,12 @@ fn missing_figures() {
     assert_snapshot!(refused(&SupplyEntry { short_circuit_ma: None, ..iron() }), @"Short-circuit current is missing: copy it from the nameplate.");
     assert_snapshot!(refused(&SupplyEntry { rated_ma: None, ..electronic() }), @"Rated current is missing: an electronic supply is worked out from its rated current and the volts at it.");
     assert_snapshot!(refused(&SupplyEntry { rated_load_volts: None, ..electronic() }), @"Rated load volts are missing: an electronic supply is worked out from the volts at its rated current.");
+    assert_snapshot!(refused(&SupplyEntry { earthing: None, ..iron() }), @"The earthing of the output is not given: mid-point, one end, isolated, or mid-point with return. Volts to earth depend on it.");
+    assert_snapshot!(refused(&SupplyEntry { kind: None, ..iron() }), @"The kind of the supply is not given: iron transformer or electronic. How it holds its current depends on it.");
     assert_snapshot!(refused(&SupplyEntry::default()), @r"
     No-load volts are missing: copy them from the nameplate.
-    Short-circuit current is missing: copy it from the nameplate.
+    The kind of the supply is not given: iron transformer or electronic. How it holds its current depends on it.
+    The earthing of the output is not given: mid-point, one end, isolated, or mid-point with return. Volts to earth depend on it.
     ");
     assert_snapshot!(refused(&SupplyEntry { least_load_percent: Some(50.0), ..iron() }), @"The plate's loading window needs both its ends, least and greatest.");
 }
@@ -164,9 +170,11 @@ fn against_the_site() {
 #[test]
 fn a_rating_in_words() {
     let words = |earthing| {
-        Rating::read(&SupplyEntry { earthing, ..iron() })
-            .expect("whole")
-            .words()
+        let entry = SupplyEntry {
+            earthing: Some(earthing),
+            ..iron()
+        };
+        Rating::read(&entry).expect("whole").words()
     };
     assert_snapshot!(words(OutputEarthing::MidPointReturn).replace('\u{202f}', "_"), @"9_000 V, 30 mA, mid-point earthed with return");
 }

@@ -44,6 +44,8 @@ fn job(rows: Vec<Row>) -> Job {
 fn iron(name: &str, no_load_volts: f64, ma: f64, price: i64) -> SupplyEntry {
     SupplyEntry {
         name: name.to_owned(),
+        kind: Some(SupplyKind::Iron),
+        earthing: Some(OutputEarthing::MidPoint),
         no_load_volts: Some(no_load_volts),
         short_circuit_ma: Some(ma),
         earth_fault_protection: true,
@@ -295,8 +297,8 @@ fn supply() -> impl Strategy<Value = SupplyEntry> {
                 (earth_fault_protection, open_circuit_protection, price, stock),
             )| SupplyEntry {
                 name,
-                kind,
-                earthing,
+                kind: Some(kind),
+                earthing: Some(earthing),
                 place,
                 no_load_volts,
                 short_circuit_ma,
@@ -662,7 +664,7 @@ fn a_mistyped_pair_voltage_makes_no_endless_search() {
     };
     let mut book = book();
     book.tubes.push(nothing);
-    book.supplies[0].earthing = OutputEarthing::MidPointReturn;
+    book.supplies[0].earthing = Some(OutputEarthing::MidPointReturn);
     let row = Row::Strokes(StrokesRow {
         label: "bar".to_owned(),
         strokes: vec!["10 mm"; 1_000].join(";"),

@@ -574,7 +574,7 @@ impl Lines {
 
 #[cfg(test)]
 mod tests {
-    use tubewright::book::{OutputEarthing, SupplyEntry};
+    use tubewright::book::{OutputEarthing, SupplyEntry, SupplyKind};
     use tubewright::job::{Row, StrokesRow};
 
     use super::*;
@@ -602,7 +602,8 @@ mod tests {
             name: "3 kV".to_owned(),
             no_load_volts: Some(3_000.0),
             short_circuit_ma: Some(30.0),
-            earthing: OutputEarthing::MidPoint,
+            kind: Some(SupplyKind::Iron),
+            earthing: Some(OutputEarthing::MidPoint),
             price: Some("66.10".parse().unwrap()),
             ..SupplyEntry::default()
         });

@@ -168,7 +168,7 @@ fn Supplies() -> impl IntoView {
                             .short_circuit_ma
                             .or(supply.rated_ma)
                             .map(|ma| format!("{ma} mA")),
-                        Some(tubewright::supply::earthing_words(supply.earthing).to_owned()),
+                        supply.earthing.map(|earthing| tubewright::supply::earthing_words(earthing).to_owned()),
                         supply.input_volts.map(|volts| format!("for {volts} V")),
                         supply.price.map(super::price::amount),
                     ];
@@ -391,22 +391,20 @@ fn SupplyForm(at: usize) -> impl IntoView {
                 />
                 <Choice
                     label="Kind"
-                    value=read(|s| match s.kind { SupplyKind::Iron => "iron", SupplyKind::Electronic => "electronic" }.to_owned())
+                    value=read(|s| match s.kind { None => "", Some(SupplyKind::Iron) => "iron", Some(SupplyKind::Electronic) => "electronic" }.to_owned())
                     options=Signal::stored(pairs(&[("iron", "iron transformer"), ("electronic", "electronic")]))
                     commit=move |word: String| supply_edit(desk, at, "kind", |entry| {
-                        entry.kind = if word == "electronic" { SupplyKind::Electronic } else { SupplyKind::Iron };
+                        entry.kind = match word.as_str() { "iron" => Some(SupplyKind::Iron), "electronic" => Some(SupplyKind::Electronic), _ => None };
                     })
                 />
                 <Choice
                     label="Output"
-                    value=read(|s| earthing_key(s.earthing).to_owned())
+                    value=read(|s| s.earthing.map_or("", earthing_key).to_owned())
                     options=Signal::stored(EARTHINGS.iter().map(|&earthing| {
                         (earthing_key(earthing).to_owned(), tubewright::supply::earthing_words(earthing).to_owned())
                     }).collect::<Vec<_>>())
                     commit=move |word: String| supply_edit(desk, at, "output", |entry| {
-                        if let Some(&earthing) = EARTHINGS.iter().find(|&&e| earthing_key(e) == word) {
-                            entry.earthing = earthing;
-                        }
+                        entry.earthing = EARTHINGS.iter().copied().find(|&e| earthing_key(e) == word);
                     })
                 />
                 <Choice
