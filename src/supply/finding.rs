@@ -209,6 +209,14 @@ pub(super) fn rules(rating: &Rating, set: &RuleSet) -> Vec<Finding> {
                     trip.ma(),
                     format!("The trip current {} mA is above {limit}.", trip.ma()),
                 ),
+                None if rating.earth_fault_protection && rule.value.is_some() => Some(Finding::new(
+                    Grade::Look,
+                    place(),
+                    format!(
+                        "Not checked: the trip current is not in the shop book; the limit is {limit}."
+                    ),
+                    set.source(rule),
+                )),
                 _ => None,
             },
             // Held by the plan: no circuit ever has more than one supply. Nothing of one rating.
@@ -311,22 +319,29 @@ pub(super) fn site(rating: &Rating, site: &Site) -> Vec<Finding> {
     found
 }
 
-/// Blank values of a rule set that only the user can fill in.
+/// Rules of a set that want a figure and have none: whatever their standing, they are not checked,
+/// and nothing may count as meeting them.
 pub(crate) fn blanks(set: &RuleSet) -> Vec<Finding> {
     set.rules
         .iter()
-        .filter(|rule| {
-            rule.limits.needs_value()
-                && rule.value.is_none()
-                && rule.standing == Standing::ToBeFilledIn
-        })
+        .filter(|rule| rule.limits.needs_value() && rule.value.is_none())
         .map(|rule| {
+            let why = match rule.standing {
+                Standing::ToBeFilledIn => {
+                    "No confirmed figure is known here: take it from the official text and fill it \
+                     in, in the shop book."
+                }
+                Standing::ShopSetting => "The shop book has no figure for it: fill it in there.",
+                Standing::ReadInText | Standing::Reported | Standing::FromMemory => {
+                    "The shop book has no figure for it any more: take it from the official text \
+                     and fill it in there."
+                }
+            };
             Finding::new(
                 Grade::Look,
                 Place::Rules(set.name.clone()),
                 format!(
-                    "Not checked: {}. No confirmed figure is known here: take it from the official \
-                     text and fill it in, in the shop book.",
+                    "Not checked: {}. {why}",
                     rule.limits.caption().trim_end_matches(", at most")
                 ),
                 set.source(rule),

@@ -220,6 +220,12 @@ fn a_figure_the_user_fills_in_is_checked() {
     };
     assert_eq!(stops(&trip(25.0), &set), "");
     assert_snapshot!(stops(&trip(26.0), &set), @"The trip current 26 mA is above 25 mA. [EN 50107-2]");
+    // A plate that does not say is not taken to be inside the limit.
+    let unknown = entry(8_000.0, 30.0, OutputEarthing::MidPoint);
+    let found = against(&unknown, &set);
+    assert_eq!(Finding::gravest(&found), Some(Grade::Look));
+    assert_snapshot!(found[0].says, @"Not checked: the trip current is not in the shop book; the limit is 25 mA.");
+    assert_eq!(against(&unknown, &iec_en()), [], "no figure, no limit");
 }
 
 #[test]

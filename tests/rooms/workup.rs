@@ -1,5 +1,6 @@
 //! The whole flow on jobs and books nobody should type, and on such as a shop does.
 
+use insta::assert_snapshot;
 use proptest::prelude::*;
 use proptest::sample::select;
 use rust_decimal::Decimal;
@@ -680,4 +681,39 @@ fn a_mistyped_pair_voltage_makes_no_endless_search() {
             .all(|circuit| circuit.pieces.len() <= 250),
         "a bound holds"
     );
+}
+
+#[test]
+fn a_rule_without_a_figure_is_never_taken_as_met() {
+    let unchecked = |job: &Job, book: &Book| {
+        let all = said(&workup(job, book));
+        let lines: Vec<&str> = all
+            .lines()
+            .filter(|line| line.contains("Not checked"))
+            .collect();
+        lines.join("\n")
+    };
+    let mut job = job(vec![letters("OPEN", "300 mm")]);
+    assert_eq!(unchecked(&job, &book()), "");
+    // A figure of the code that the user cleared.
+    let mut cleared = book();
+    let nec = cleared
+        .rule_sets
+        .iter_mut()
+        .find(|set| set.name == job.rules)
+        .expect("the set");
+    nec.rules[0].value = None;
+    assert_snapshot!(unchecked(&job, &cleared), @r#"look Rules("NEC Article 600"): Not checked: no-load volts. The shop book has no figure for it any more: take it from the official text and fill it in there."#);
+    // The shop's own rules, before anything is filled in.
+    job.rules = "Shop rules".to_owned();
+    assert_snapshot!(unchecked(&job, &book()), @r#"
+    look Rules("Shop rules"): Not checked: no-load volts. The shop book has no figure for it: fill it in there.
+    look Rules("Shop rules"): Not checked: volts to earth at any terminal. The shop book has no figure for it: fill it in there.
+    look Rules("Shop rules"): Not checked: rated current. The shop book has no figure for it: fill it in there.
+    "#);
+    job.rules = "IEC/EN 1 to 10 kV".to_owned();
+    assert_snapshot!(unchecked(&job, &book()), @r#"
+    look Rules("IEC/EN 1 to 10 kV"): Not checked: volts to earth at any terminal. No confirmed figure is known here: take it from the official text and fill it in, in the shop book.
+    look Rules("IEC/EN 1 to 10 kV"): Not checked: trip current of the earth-fault protection. No confirmed figure is known here: take it from the official text and fill it in, in the shop book.
+    "#);
 }
