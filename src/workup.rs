@@ -11,7 +11,7 @@ use crate::job::Job;
 use crate::measure::{Length, quoted};
 use crate::plan::{self, Candidate, Task};
 use crate::quote::{self, GlassPart, Parts, Quote};
-use crate::rules::{Finding, Grade, Place, RuleSet, Source};
+use crate::rules::{EarthWord, Finding, Grade, Place, RuleSet, Source};
 use crate::supply::{self, Rating};
 use crate::takeoff::{Piece, Takeoff, takeoff};
 use crate::tube::TubeType;
@@ -116,6 +116,13 @@ impl Workup {
     /// The gravest grade of all findings.
     pub fn grade(&self) -> Option<Grade> {
         Finding::gravest(&self.findings)
+    }
+
+    /// The word of the rule set the job is held against.
+    pub fn earth_word(&self) -> EarthWord {
+        self.rules
+            .as_ref()
+            .map_or_else(EarthWord::default, |rules| rules.earth_word)
     }
 
     /// The circuit a piece is on.

@@ -50,6 +50,14 @@ impl EarthWord {
             Self::Ground => "ground",
         }
     }
+
+    /// What is joined to it: "earthed", "grounded".
+    pub const fn joined(self) -> &'static str {
+        match self {
+            Self::Earth => "earthed",
+            Self::Ground => "grounded",
+        }
+    }
 }
 
 /// One limit of a rule set.
@@ -107,19 +115,30 @@ impl Limits {
         }
     }
 
-    /// The rule in words, as a caption.
-    pub const fn caption(self) -> &'static str {
+    /// The rule in words, as a caption, with the word of its set.
+    pub const fn caption(self, word: EarthWord) -> &'static str {
         match self {
             Self::NoLoadVolts => "no-load volts, at most",
             Self::NoLoadVoltsAbove => "applies to no-load volts above",
-            Self::VoltsToEarth => "volts to earth at any terminal, at most",
+            Self::VoltsToEarth => match word {
+                EarthWord::Earth => "volts to earth at any terminal, at most",
+                EarthWord::Ground => "volts to ground at any terminal, at most",
+            },
             Self::RatedCurrent => "rated current, at most",
             Self::RatedVoltAmperes => "no-load volts x rated current, at most",
-            Self::EarthFaultProtection => {
-                "earth-fault protection required; isolated transformers exempt up to"
-            }
+            Self::EarthFaultProtection => match word {
+                EarthWord::Earth => {
+                    "earth-fault protection required; isolated transformers exempt up to"
+                }
+                EarthWord::Ground => {
+                    "ground-fault protection required; isolated transformers exempt up to"
+                }
+            },
             Self::OpenCircuitProtection => "open-circuit protection required",
-            Self::TripCurrent => "trip current of the earth-fault protection, at most",
+            Self::TripCurrent => match word {
+                EarthWord::Earth => "trip current of the earth-fault protection, at most",
+                EarthWord::Ground => "trip current of the ground-fault protection, at most",
+            },
             Self::OutputsApart => "outputs not in series, not in parallel",
         }
     }

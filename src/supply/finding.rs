@@ -173,7 +173,7 @@ pub(super) fn rules(rating: &Rating, set: &RuleSet) -> Vec<Finding> {
                 format!(
                     "Volts to {earth} reach {} on an output that is {}; the limit is {limit}.",
                     volts_shown(rating.no_load_to_earth()),
-                    earthing_words(rating.earthing)
+                    earthing_words(rating.earthing, set.earth_word)
                 ),
             ),
             Limits::RatedCurrent => over(
@@ -342,7 +342,9 @@ pub(crate) fn blanks(set: &RuleSet) -> Vec<Finding> {
                 Place::Rules(set.name.clone()),
                 format!(
                     "Not checked: {}. {why}",
-                    rule.limits.caption().trim_end_matches(", at most")
+                    rule.limits
+                        .caption(set.earth_word)
+                        .trim_end_matches(", at most")
                 ),
                 set.source(rule),
             )

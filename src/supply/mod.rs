@@ -9,7 +9,7 @@ use rust_decimal::Decimal;
 use crate::book::{Dampness, OutputEarthing, SupplyEntry, SupplyKind};
 use crate::job::Site;
 use crate::measure::{Milliamps, Volts};
-use crate::rules::{Finding, RuleSet};
+use crate::rules::{EarthWord, Finding, RuleSet};
 
 pub(crate) use finding::blanks;
 
@@ -117,23 +117,29 @@ impl Rating {
         self.kind == SupplyKind::Iron && self.earthing == OutputEarthing::Isolated
     }
 
-    /// The rating in words: `9 000 V, 30 mA, mid-point earthed`.
-    pub fn words(&self) -> String {
+    /// The rating in words: `9 000 V, 30 mA, mid-point earthed`, or `grounded` by the word.
+    pub fn words(&self, word: EarthWord) -> String {
         format!(
             "{}, {} mA, {}",
             crate::measure::volts_shown(self.no_load),
             self.short_circuit.ma(),
-            earthing_words(self.earthing)
+            earthing_words(self.earthing, word)
         )
     }
 }
 
-/// The earthing of an output in words.
-pub const fn earthing_words(earthing: OutputEarthing) -> &'static str {
-    match earthing {
-        OutputEarthing::MidPoint => "mid-point earthed",
-        OutputEarthing::MidPointReturn => "mid-point earthed with return",
-        OutputEarthing::OneEnd => "one end earthed",
-        OutputEarthing::Isolated => "isolated",
+/// The earthing of an output in words: `mid-point earthed`, or `mid-point grounded` by the word of the
+/// rule set in use.
+pub const fn earthing_words(earthing: OutputEarthing, word: EarthWord) -> &'static str {
+    use EarthWord::{Earth, Ground};
+    use OutputEarthing::{Isolated, MidPoint, MidPointReturn, OneEnd};
+    match (earthing, word) {
+        (MidPoint, Earth) => "mid-point earthed",
+        (MidPoint, Ground) => "mid-point grounded",
+        (MidPointReturn, Earth) => "mid-point earthed with return",
+        (MidPointReturn, Ground) => "mid-point grounded with return",
+        (OneEnd, Earth) => "one end earthed",
+        (OneEnd, Ground) => "one end grounded",
+        (Isolated, Earth | Ground) => "isolated",
     }
 }

@@ -5,7 +5,7 @@
 
 use insta::assert_snapshot;
 use tubewright::book::{OutputEarthing, SupplyEntry, SupplyKind};
-use tubewright::rules::{Finding, Grade, Limits, RuleSet, Standing, iec_en, nec, shop};
+use tubewright::rules::{EarthWord, Finding, Grade, Limits, RuleSet, Standing, iec_en, nec, shop};
 use tubewright::supply::Rating;
 
 /// An iron supply with earth-fault protection and open-circuit protection.
@@ -85,9 +85,9 @@ fn a_mid_point_halves_the_volts_to_ground_and_an_earthed_end_does_not() {
     }
     assert_snapshot!(stops(&entry(15_001.0, 30.0, MidPoint), &nec()), @r"
     No-load volts 15_001 V are above 15_000 V. [600.23(C)]
-    Volts to ground reach 7_501 V on an output that is mid-point earthed; the limit is 7_500 V. [600.23(C), Article 100]
+    Volts to ground reach 7_501 V on an output that is mid-point grounded; the limit is 7_500 V. [600.23(C), Article 100]
     ");
-    assert_snapshot!(stops(&entry(7_501.0, 30.0, OneEnd), &nec()), @"Volts to ground reach 7_501 V on an output that is one end earthed; the limit is 7_500 V. [600.23(C), Article 100]");
+    assert_snapshot!(stops(&entry(7_501.0, 30.0, OneEnd), &nec()), @"Volts to ground reach 7_501 V on an output that is one end grounded; the limit is 7_500 V. [600.23(C), Article 100]");
 }
 
 #[test]
@@ -226,6 +226,31 @@ fn a_figure_the_user_fills_in_is_checked() {
     assert_eq!(Finding::gravest(&found), Some(Grade::Look));
     assert_snapshot!(found[0].says, @"Not checked: the trip current is not in the shop book; the limit is 25 mA.");
     assert_eq!(against(&unknown, &iec_en()), [], "no figure, no limit");
+}
+
+#[test]
+fn sentences_use_the_word_of_the_set() {
+    let one_end = entry(9_000.0, 30.0, OutputEarthing::OneEnd);
+    assert_snapshot!(stops(&one_end, &nec()), @"Volts to ground reach 9_000 V on an output that is one end grounded; the limit is 7_500 V. [600.23(C), Article 100]");
+    let mut set = iec_en();
+    for rule in &mut set.rules {
+        if rule.limits == Limits::VoltsToEarth {
+            rule.value = Some(5_000.0);
+        }
+    }
+    assert_snapshot!(stops(&one_end, &set), @"Volts to earth reach 9_000 V on an output that is one end earthed; the limit is 5_000 V. [EN 50107-1]");
+    for (limits, earth, ground) in [
+        (Limits::VoltsToEarth, "volts to earth", "volts to ground"),
+        (Limits::EarthFaultProtection, "earth-fault", "ground-fault"),
+        (Limits::TripCurrent, "earth-fault", "ground-fault"),
+    ] {
+        let caption = limits.caption(EarthWord::Earth);
+        assert!(caption.contains(earth), "{caption}");
+        assert_eq!(
+            limits.caption(EarthWord::Ground),
+            caption.replace(earth, ground)
+        );
+    }
 }
 
 #[test]

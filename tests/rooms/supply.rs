@@ -3,7 +3,7 @@
 use insta::assert_snapshot;
 use tubewright::book::{Dampness, OutputEarthing, SupplyEntry, SupplyKind};
 use tubewright::job::Site;
-use tubewright::rules::{Finding, Grade, Place};
+use tubewright::rules::{EarthWord, Finding, Grade, Place};
 use tubewright::supply::Rating;
 
 fn iron() -> SupplyEntry {
@@ -169,12 +169,13 @@ fn against_the_site() {
 
 #[test]
 fn a_rating_in_words() {
-    let words = |earthing| {
+    let words = |earthing, word| {
         let entry = SupplyEntry {
             earthing: Some(earthing),
             ..iron()
         };
-        Rating::read(&entry).expect("whole").words()
+        Rating::read(&entry).expect("whole").words(word)
     };
-    assert_snapshot!(words(OutputEarthing::MidPointReturn).replace('\u{202f}', "_"), @"9_000 V, 30 mA, mid-point earthed with return");
+    assert_snapshot!(words(OutputEarthing::MidPointReturn, EarthWord::Earth).replace('\u{202f}', "_"), @"9_000 V, 30 mA, mid-point earthed with return");
+    assert_snapshot!(words(OutputEarthing::OneEnd, EarthWord::Ground).replace('\u{202f}', "_"), @"9_000 V, 30 mA, one end grounded");
 }

@@ -450,7 +450,7 @@ fn circuit_lines(circuit: &CircuitWork, work: &Workup, out: &mut Lines) {
     out.item(format!(
         "supply: {} ({})",
         circuit.supply.name,
-        circuit.supply.words()
+        circuit.supply.words(work.earth_word())
     ));
     let halves = found.halves.len();
     for (number, (half, pieces)) in strings(circuit).enumerate() {

@@ -5,7 +5,7 @@ use tubewright::book::SupplyKind;
 use tubewright::circuit::{Half, Operating};
 use tubewright::job::Wish;
 use tubewright::measure::{glass, milliamps_shown, volts_shown};
-use tubewright::rules::{EarthWord, Limits};
+use tubewright::rules::Limits;
 use tubewright::workup::CircuitWork;
 
 use super::fields::Figure;
@@ -165,11 +165,7 @@ fn current_and_volts(operating: &Operating) -> (String, String) {
 }
 
 fn earth_word(results: &Results) -> &'static str {
-    results
-        .rules
-        .as_ref()
-        .map_or(EarthWord::Earth, |rules| rules.earth_word)
-        .word()
+    results.earth_word().word()
 }
 
 #[component]
@@ -282,7 +278,7 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                     <h2>{format!("Circuit {}", number + 1)}<small>{format!(" {}{}, {} of gas column in series", circuit.pieces.len(), many(circuit.pieces.len(), " piece", " pieces"), glass(circuit.column, units))}</small></h2>
                     {chip(circuit.grade())}
                 </header>
-                <p class="supply"><b>{rating.name.clone()}</b>{format!(" {}", rating.words())}</p>
+                <p class="supply"><b>{rating.name.clone()}</b>{format!(" {}", rating.words(results.earth_word()))}</p>
                 <LoadingBar assessment=worked.clone()/>
                 {strings}
                 <div class="figures">

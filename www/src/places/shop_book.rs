@@ -168,7 +168,13 @@ fn Supplies() -> impl IntoView {
                             .short_circuit_ma
                             .or(supply.rated_ma)
                             .map(|ma| format!("{ma} mA")),
-                        supply.earthing.map(|earthing| tubewright::supply::earthing_words(earthing).to_owned()),
+                        supply.earthing.map(|earthing| {
+                            tubewright::supply::earthing_words(
+                                earthing,
+                                desk.results.with(|work| work.earth_word()),
+                            )
+                            .to_owned()
+                        }),
                         supply.input_volts.map(|volts| format!("for {volts} V")),
                         supply.price.map(super::price::amount),
                     ];
@@ -400,9 +406,12 @@ fn SupplyForm(at: usize) -> impl IntoView {
                 <Choice
                     label="Output"
                     value=read(|s| s.earthing.map_or("", earthing_key).to_owned())
-                    options=Signal::stored(EARTHINGS.iter().map(|&earthing| {
-                        (earthing_key(earthing).to_owned(), tubewright::supply::earthing_words(earthing).to_owned())
-                    }).collect::<Vec<_>>())
+                    options=Signal::derive(move || {
+                        let word = desk.results.with(|work| work.earth_word());
+                        EARTHINGS.iter().map(|&earthing| {
+                            (earthing_key(earthing).to_owned(), tubewright::supply::earthing_words(earthing, word).to_owned())
+                        }).collect::<Vec<_>>()
+                    })
                     commit=move |word: String| supply_edit(desk, at, "output", |entry| {
                         entry.earthing = EARTHINGS.iter().copied().find(|&e| earthing_key(e) == word);
                     })
@@ -763,7 +772,7 @@ fn RuleSets() -> impl IntoView {
                         .enumerate()
                         .map(|(row, rule)| {
                             let unit = rule.limits.unit();
-                            let label = format!("{}{}{}", rule.limits.caption(), if unit.is_empty() { "" } else { ", " }, unit);
+                            let label = format!("{}{}{}", rule.limits.caption(set.earth_word), if unit.is_empty() { "" } else { ", " }, unit);
                             let field = format!("rule {at} {row}");
                             let field = (!unit.is_empty()).then(|| view! {
                                 <Field
