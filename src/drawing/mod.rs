@@ -3,6 +3,7 @@
 //! Strokes are kurbo paths in millimetres, x to the right, y downwards, the baseline at y = 0.
 
 mod artwork;
+pub mod dxf;
 mod face;
 mod jhf;
 pub mod svg;

@@ -22,6 +22,9 @@ mod drawing;
 /// SVG files: exact lengths, what is left unread, what is refused.
 mod svg;
 
+/// DXF drawings: lengths and places against another library, what is named as not read, refusals.
+mod dxf;
+
 /// Nameplates: what is missing or contradicts itself, and the site.
 mod supply;
 
