@@ -6,6 +6,7 @@ mod artwork;
 pub mod dxf;
 mod face;
 mod jhf;
+pub mod outline;
 pub mod svg;
 
 pub use artwork::{ArtGroup, ArtStroke, Artwork, Unread};

@@ -25,6 +25,9 @@ mod svg;
 /// DXF drawings: lengths and places against another library, what is named as not read, refusals.
 mod dxf;
 
+/// Outlines of a font and their insets against independent tools and closed forms; damaged fonts.
+mod outline;
+
 /// Nameplates: what is missing or contradicts itself, and the site.
 mod supply;
 
