@@ -390,9 +390,10 @@ fn what_is_no_shape_or_no_distance() {
 fn star() -> impl Strategy<Value = BezPath> {
     let arms = prop::collection::vec(10.0..100.0_f64, 3..24);
     arms.prop_map(|arms| {
-        let step = std::f64::consts::TAU / arms.len() as f64;
-        let corners = arms.iter().enumerate().map(|(at, arm)| {
-            let (sin, cos) = (at as f64 * step).sin_cos();
+        let count = u8::try_from(arms.len()).expect("few arms");
+        let step = std::f64::consts::TAU / f64::from(count);
+        let corners = (0..count).zip(&arms).map(|(at, arm)| {
+            let (sin, cos) = (f64::from(at) * step).sin_cos();
             (arm * cos, arm * sin)
         });
         polygon(&corners.collect::<Vec<_>>())
@@ -416,7 +417,7 @@ fn to_outline(path: &BezPath, point: Point) -> f64 {
 }
 
 fn corners(paths: &[BezPath]) -> Vec<Point> {
-    let ends = paths.iter().flat_map(|path| path.elements());
+    let ends = paths.iter().flat_map(BezPath::elements);
     ends.filter_map(kurbo::PathEl::end_point).collect()
 }
 
@@ -432,7 +433,7 @@ proptest! {
             let away = to_outline(&path, corner);
             prop_assert!((away - distance).abs() < 0.01 + 1e-3 * distance, "{away} away");
         }
-        let mut before = area(&[path.clone()]) + 1e-6;
+        let mut before = area(std::slice::from_ref(&path)) + 1e-6;
         for share in [0.25, 0.5, 1.0, 1.5] {
             let now = area(&inset(std::slice::from_ref(&path), distance * share, Join::Round).paths);
             prop_assert!(now <= before + 1e-3, "{now} after {before}");
