@@ -180,6 +180,7 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
             let rating = candidates[circuit.candidate].rating.clone();
             let mut found = circuit.assessment.findings.clone();
             found.extend(rules.iter().flat_map(|rules| rating.against_rules(rules)));
+            found.extend(rating.against_site(&job.site));
             for finding in &mut found {
                 finding.place = Place::Circuit(number);
             }
@@ -222,6 +223,7 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         })
         .collect();
 
+    findings.extend(unknown_mains(job, &circuits));
     let parts = parts(book, &tubes, &circuits, off.pieces.len());
     let quote = quote::quote(&parts, &book.rates);
     findings.extend(short_of(book, &parts));
@@ -455,6 +457,36 @@ fn small_first(text: &str) -> String {
     chars.next().map_or_else(String::new, |first| {
         first.to_lowercase().chain(chars).collect()
     })
+}
+
+/// What is not known of the supplies of a plan where the site's mains volts are not given.
+fn unknown_mains(job: &Job, circuits: &[CircuitWork]) -> Vec<Finding> {
+    if job.site.mains_volts.is_some() || circuits.is_empty() {
+        return Vec::new();
+    }
+    let mut found = vec![Finding::new(
+        Grade::Look,
+        Place::Job,
+        "Mains volts are not given, so it was not checked that the supplies suit them.",
+        Source::entry(),
+    )];
+    let made_for = circuits
+        .iter()
+        .filter_map(|circuit| circuit.supply.input_volts);
+    let least = made_for.clone().fold(f64::INFINITY, f64::min);
+    let most = made_for.fold(0.0, f64::max);
+    if !supply::one_mains(least, most) {
+        found.push(Finding::new(
+            Grade::Stop,
+            Place::Job,
+            format!(
+                "The plan takes supplies for {least} V and for {most} V: no mains suit both. Give \
+                 the mains volts, and only supplies for them are taken."
+            ),
+            Source::entry(),
+        ));
+    }
+    found
 }
 
 /// Where the volts of a tube came from the default model, by how much they may be off.

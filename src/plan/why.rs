@@ -117,7 +117,8 @@ fn neighbour(
     let says = match grave {
         Some(finding) => finding.says.clone(),
         None if there.look => {
-            "Would run it, but the supply itself needs a look under the rule set.".to_owned()
+            "Would run it, but the supply itself needs a look, under the rule set or at this site."
+                .to_owned()
         }
         None => {
             let here = &task.candidates[taken].rating;

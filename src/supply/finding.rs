@@ -303,6 +303,17 @@ pub(super) fn site(rating: &Rating, site: &Site) -> Vec<Finding> {
             Source::entry(),
         ));
     }
+    if let (None, Some(there)) = (rating.input_volts, site.mains_volts) {
+        found.push(Finding::new(
+            Grade::Look,
+            place(),
+            format!(
+                "The supply's input volts are not in the shop book, so it was not checked that it \
+                 suits the site's {there} V."
+            ),
+            Source::entry(),
+        ));
+    }
     if let (Some(made_for), Some(there)) = (rating.input_volts, site.mains_volts)
         && (there.is_nan() || (made_for - there).abs() > MAINS_TOLERANCE * made_for)
     {
@@ -317,6 +328,11 @@ pub(super) fn site(rating: &Rating, site: &Site) -> Vec<Finding> {
         );
     }
     found
+}
+
+/// Whether some mains suit supplies made for these least and greatest volts.
+pub(crate) fn one_mains(least: f64, most: f64) -> bool {
+    (1.0 - MAINS_TOLERANCE) * most <= (1.0 + MAINS_TOLERANCE) * least
 }
 
 /// Rules of a set that want a figure and have none: whatever their standing, they are not checked,

@@ -11,7 +11,7 @@ use crate::job::Site;
 use crate::measure::{Milliamps, Volts};
 use crate::rules::{EarthWord, Finding, RuleSet};
 
-pub(crate) use finding::blanks;
+pub(crate) use finding::{blanks, one_mains};
 
 /// A checked rating.
 #[derive(Debug, Clone, PartialEq)]

@@ -717,3 +717,45 @@ fn a_rule_without_a_figure_is_never_taken_as_met() {
     look Rules("IEC/EN 1 to 10 kV"): Not checked: trip current of the earth-fault protection. No confirmed figure is known here: take it from the official text and fill it in, in the shop book.
     "#);
 }
+
+#[test]
+fn supplies_that_no_mains_suit_are_not_put_together_silently() {
+    let mut book = book();
+    let mut job = job(vec![strokes("3 m; 3 m"), strokes("9 m; 9 m")]);
+    let mut at_job = |first: Option<f64>, other: Option<f64>, mains: Option<f64>| {
+        for supply in &mut book.supplies {
+            supply.input_volts = if supply.name == "S6" { first } else { other };
+        }
+        job.site.mains_volts = mains;
+        let work = workup(&job, &book);
+        let mut taken: Vec<&str> = work
+            .circuits
+            .iter()
+            .map(|circuit| circuit.supply.name.as_str())
+            .collect();
+        taken.sort_unstable();
+        taken.dedup();
+        let told = said(&work);
+        let lines: Vec<&str> = told.lines().filter(|line| line.contains("suit")).collect();
+        format!("{}\n{}", taken.join(", "), lines.join("\n"))
+    };
+    assert_snapshot!(at_job(Some(120.0), Some(230.0), None), @r"
+    S15, S6
+    stop Job: The plan takes supplies for 120 V and for 230 V: no mains suit both. Give the mains volts, and only supplies for them are taken.
+    look Job: Mains volts are not given, so it was not checked that the supplies suit them.
+    ");
+    assert_snapshot!(at_job(Some(220.0), Some(240.0), None), @r"
+    S15, S6
+    look Job: Mains volts are not given, so it was not checked that the supplies suit them.
+    ");
+    assert_snapshot!(at_job(None, None, None), @r"
+    S15, S6
+    look Job: Mains volts are not given, so it was not checked that the supplies suit them.
+    ");
+    assert_snapshot!(at_job(Some(230.0), None, Some(230.0)), @"S6");
+    assert_snapshot!(at_job(Some(230.0), Some(220.0), Some(230.0)), @"S15, S6");
+    assert_snapshot!(at_job(None, None, Some(230.0)), @r"
+    S15
+    look Circuit(0): The supply's input volts are not in the shop book, so it was not checked that it suits the site's 230 V.
+    ");
+}
