@@ -254,7 +254,7 @@ fn rule_set(job: &Job, book: &Book, findings: &mut Vec<Finding>) -> Option<RuleS
             Grade::Look,
             Place::Job,
             "No rule set is chosen: no limit of any code is checked.",
-            Source::entry(),
+            Source::entry("the job's choice of rules"),
         )),
         None => findings.push(Finding::new(
             Grade::Stop,
@@ -263,7 +263,7 @@ fn rule_set(job: &Job, book: &Book, findings: &mut Vec<Finding>) -> Option<RuleS
                 "The rule set {} is not in the shop book: no limit of it is checked.",
                 quoted(&job.rules)
             ),
-            Source::entry(),
+            Source::entry("the job's choice of rules"),
         )),
     }
     found.cloned()
@@ -332,7 +332,7 @@ fn tube_totals(
                         "The tube type {} is not in the shop book: glass is counted, volts are not.",
                         quoted(name)
                     ),
-                    Source::entry(),
+                    Source::entry("as typed in the row"),
                 ));
                 None
             }
@@ -345,7 +345,7 @@ fn tube_totals(
                     "Two tube types are called {}: the first is used.",
                     quoted(name)
                 ),
-                Source::entry(),
+                Source::entry("the tubes' entries"),
             ));
         }
         totals.push(TubeTotal {
@@ -386,7 +386,7 @@ fn candidates(
                     "Two supplies are called {}: the first is used.",
                     quoted(&supply.name)
                 ),
-                Source::entry(),
+                Source::entry("the supplies' entries"),
             ));
             continue;
         }
@@ -468,7 +468,7 @@ fn unknown_mains(job: &Job, circuits: &[CircuitWork]) -> Vec<Finding> {
         Grade::Look,
         Place::Job,
         "Mains volts are not given, so it was not checked that the supplies suit them.",
-        Source::entry(),
+        Source::entry("the job's site"),
     )];
     let made_for = circuits
         .iter()
@@ -483,7 +483,7 @@ fn unknown_mains(job: &Job, circuits: &[CircuitWork]) -> Vec<Finding> {
                 "The plan takes supplies for {least} V and for {most} V: no mains suit both. Give \
                  the mains volts, and only supplies for them are taken."
             ),
-            Source::entry(),
+            Source::entry("the job's site"),
         ));
     }
     found

@@ -14,7 +14,7 @@ fn found(grade: Grade, says: String, source: Source) -> Finding {
 
 fn source(window: &Window) -> Source {
     if window.from_plate {
-        Source::entry()
+        Source::entry("the supply's entry")
     } else {
         Source::model()
     }
@@ -99,7 +99,7 @@ pub(super) fn overdriven(current: Milliamps, most: Milliamps, tube: &str) -> Fin
             told_from(current.ma(), most.ma(), 1),
             most.ma()
         ),
-        Source::entry(),
+        Source::entry("the tube's entry"),
     )
     .with(current.ma(), most.ma(), "mA")
 }
@@ -125,7 +125,7 @@ pub(super) fn too_little_current(current: Milliamps, least: Milliamps, tube: &st
             told_from(current.ma(), least.ma(), 1),
             least.ma()
         ),
-        Source::entry(),
+        Source::entry("the tube's entry"),
     )
     .with(current.ma(), least.ma(), "mA")
 }

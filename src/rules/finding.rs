@@ -48,7 +48,7 @@ pub enum Place {
 pub struct Source {
     /// Clause, where the source has clauses.
     pub clause: String,
-    /// Rule set and edition, or "shop setting", "common practice", "the model", "this program".
+    /// Rule set and edition, or "shop book", "common practice", "electrical model", or which entry.
     pub from: String,
     /// How the limit is known.
     pub standing: &'static str,
@@ -82,12 +82,13 @@ impl Source {
         }
     }
 
-    /// The entry itself: a nameplate, a row, a file.
-    pub fn entry() -> Self {
+    /// What was entered itself, in a word for which entry it is: "as typed in the row", "the supply's
+    /// entry".
+    pub fn entry(which: &'static str) -> Self {
         Self {
             clause: String::new(),
-            from: "as entered".to_owned(),
-            standing: "as entered",
+            from: which.to_owned(),
+            standing: which,
         }
     }
 

@@ -18,7 +18,12 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
     let mut wrong = Vec::new();
     let mut stop = |says: String| {
         let place = Place::Supply(entry.name.clone());
-        wrong.push(Finding::new(Grade::Stop, place, says, Source::entry()));
+        wrong.push(Finding::new(
+            Grade::Stop,
+            place,
+            says,
+            Source::entry("the supply's entry"),
+        ));
     };
     for (name, value, most, unit) in [
         ("No-load volts", entry.no_load_volts, 30_000.0, "V"),
@@ -300,7 +305,7 @@ pub(super) fn site(rating: &Rating, site: &Site) -> Vec<Finding> {
                 damp_words(rating.place),
                 damp_words(site.place)
             ),
-            Source::entry(),
+            Source::entry("the supply's entry"),
         ));
     }
     if let (None, Some(there)) = (rating.input_volts, site.mains_volts) {
@@ -311,7 +316,7 @@ pub(super) fn site(rating: &Rating, site: &Site) -> Vec<Finding> {
                 "The supply's input volts are not in the shop book, so it was not checked that it \
                  suits the site's {there} V."
             ),
-            Source::entry(),
+            Source::entry("the supply's entry"),
         ));
     }
     if let (Some(made_for), Some(there)) = (rating.input_volts, site.mains_volts)
@@ -322,7 +327,7 @@ pub(super) fn site(rating: &Rating, site: &Site) -> Vec<Finding> {
                 Grade::Stop,
                 place(),
                 format!("Made for {made_for} V mains; the site has {there} V."),
-                Source::entry(),
+                Source::entry("the supply's entry"),
             )
             .with(there, made_for, "V"),
         );

@@ -6,7 +6,12 @@ use crate::measure::{Length, Limit, ReadError, Units, length_exact, length_shown
 use crate::rules::{Finding, Grade, Place, Source};
 
 fn row(grade: Grade, row: usize, says: String) -> Finding {
-    Finding::new(grade, Place::Row(row), says, Source::entry())
+    Finding::new(
+        grade,
+        Place::Row(row),
+        says,
+        Source::entry("as typed in the row"),
+    )
 }
 
 pub(super) fn unreadable(at: usize, field: &str, error: &ReadError) -> Finding {
@@ -116,7 +121,7 @@ pub(super) fn too_many(limit: &Limit, value: usize) -> Finding {
         capital(&format!(
             "{limit}, but there are {value}: the rest is left out."
         )),
-        Source::entry(),
+        Source::entry("the rows of the job"),
     )
 }
 

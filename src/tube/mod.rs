@@ -94,7 +94,7 @@ impl TubeType {
                 Grade::Stop,
                 Place::Tube(entry.name.clone()),
                 says,
-                Source::entry(),
+                Source::entry("the tube's entry"),
             ));
         };
         let mut above_zero = |name: &str, value: Option<f64>, most: f64, unit: &str| {

@@ -759,3 +759,28 @@ fn supplies_that_no_mains_suit_are_not_put_together_silently() {
     look Circuit(0): The supply's input volts are not in the shop book, so it was not checked that it suits the site's 230 V.
     ");
 }
+
+#[test]
+fn a_source_says_which_entry_it_is() {
+    let mut book = book();
+    book.supplies[0].no_load_volts = None;
+    let mut job = job(vec![letters("OPEN", "5 mm")]);
+    job.rules = String::new();
+    let work = workup(&job, &book);
+    let row = work
+        .findings
+        .iter()
+        .find(|finding| finding.place == Place::Row(0))
+        .expect("letters too small");
+    assert_eq!(row.source.words(), "as typed in the row");
+    let rules = work
+        .findings
+        .iter()
+        .find(|finding| finding.says.starts_with("No rule set"))
+        .expect("no rules");
+    assert_eq!(rules.source.words(), "the job's choice of rules");
+    assert_eq!(
+        work.refused[0].findings[0].source.words(),
+        "the supply's entry"
+    );
+}
