@@ -181,6 +181,7 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
             let mut found = circuit.assessment.findings.clone();
             found.extend(rules.iter().flat_map(|rules| rating.against_rules(rules)));
             found.extend(rating.against_site(&job.site));
+            found.extend(over_plate(&rating, circuit.assessment.input_va));
             for finding in &mut found {
                 finding.place = Place::Circuit(number);
             }
@@ -456,6 +457,27 @@ fn small_first(text: &str) -> String {
     let mut chars = text.chars();
     chars.next().map_or_else(String::new, |first| {
         first.to_lowercase().chain(chars).collect()
+    })
+}
+
+/// Volt-amperes drawn may be worked out this much above the plate's before something must be wrong
+/// with either (the model leaves out the supply's losses and its capacitor).
+const OVER_PLATE: f64 = 0.10;
+
+/// A circuit that is worked out to draw more than its supply's plate says.
+fn over_plate(rating: &Rating, drawn: Option<f64>) -> Option<Finding> {
+    let (drawn, plate) = (drawn?, rating.input_va?);
+    (drawn > (1.0 + OVER_PLATE) * plate).then(|| {
+        Finding::new(
+            Grade::Look,
+            Place::Supply(rating.name.clone()),
+            format!(
+                "It is worked out to draw {drawn:.0} VA from the mains, more than the {plate} VA of \
+                 its plate: one of the plate's figures may be wrong, and the feed must carry it."
+            ),
+            Source::entry("the supply's entry"),
+        )
+        .with(drawn, plate, "VA")
     })
 }
 

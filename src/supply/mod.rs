@@ -38,6 +38,8 @@ pub struct Rating {
     pub open_circuit_protection: bool,
     /// Rated size: the plate's volt-amperes, or no-load volts times short-circuit current.
     pub rated_va: f64,
+    /// The plate's input volt-amperes.
+    pub input_va: Option<f64>,
     /// The plate's loading window, shares of no-load volts (least, most).
     pub plate_window: Option<(f64, f64)>,
     /// Mains volts it is made for.
@@ -81,6 +83,7 @@ impl Rating {
             trip: entry.trip_ma.map(Milliamps::from_ma),
             open_circuit_protection: entry.open_circuit_protection,
             rated_va: entry.input_va.unwrap_or(no_load * short_circuit / 1000.0),
+            input_va: entry.input_va,
             plate_window: entry
                 .least_load_percent
                 .map(share)

@@ -784,3 +784,35 @@ fn a_source_says_which_entry_it_is() {
         "the supply's entry"
     );
 }
+
+#[test]
+fn a_circuit_that_draws_more_than_the_plate_says_is_looked_at() {
+    let job = job(vec![letters("OPEN", "300 mm")]);
+    let drawn = workup(&job, &book()).circuits[0]
+        .assessment
+        .input_va
+        .expect("it runs");
+    let told = |plate_va: f64| {
+        let mut book = book();
+        for supply in &mut book.supplies {
+            supply.input_va = Some(plate_va);
+        }
+        let work = workup(&job, &book);
+        let mut looks = work.circuits[0]
+            .findings
+            .iter()
+            .filter(|finding| finding.grade == Grade::Look);
+        looks
+            .next()
+            .map_or_else(String::new, |finding| finding.says.clone())
+    };
+    assert_eq!(told(drawn / 1.09), "");
+    assert_eq!(
+        told((drawn / 1.11).floor()),
+        format!(
+            "It is worked out to draw {drawn:.0} VA from the mains, more than the {} VA of its \
+             plate: one of the plate's figures may be wrong, and the feed must carry it.",
+            (drawn / 1.11).floor()
+        )
+    );
+}
