@@ -8,7 +8,7 @@ use std::collections::HashSet;
 use crate::book::Book;
 use crate::circuit::Assessment;
 use crate::job::Job;
-use crate::measure::{Length, quoted};
+use crate::measure::{Length, quoted, small_first};
 use crate::plan::{self, Candidate, Task};
 use crate::quote::{self, GlassPart, Parts, Quote};
 use crate::rules::{EarthWord, Finding, Grade, Place, RuleSet, Source};
@@ -450,14 +450,6 @@ fn no_supply(left: &LeftOverWork, pieces: &[Piece]) -> Finding {
         format!("No supply runs {which}. {rest}"),
         Source::model(),
     )
-}
-
-/// A sentence as it stands after a colon.
-fn small_first(text: &str) -> String {
-    let mut chars = text.chars();
-    chars.next().map_or_else(String::new, |first| {
-        first.to_lowercase().chain(chars).collect()
-    })
 }
 
 /// Volt-amperes drawn may be worked out this much above the plate's before something must be wrong

@@ -1,10 +1,10 @@
 //! The sentences of this room. The place is set by whoever works the circuit up.
 
-use super::assess::{Half, STRIKE_LOOK};
+use super::assess::{Assessment, Half, STRIKE_LOOK};
 use super::load::Operating;
 use super::window::{Window, Zone};
 use crate::book::OutputEarthing;
-use crate::measure::{Milliamps, Volts, told_from, volts_shown};
+use crate::measure::{Milliamps, Volts, small_first, told_from, volts_shown};
 use crate::rules::{Finding, Grade, Place, Source};
 use crate::supply::Rating;
 
@@ -60,7 +60,7 @@ pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Find
                 found(
                     Grade::Stop,
                     format!(
-                        "Overloaded: the string wants {} where the supply gives {} {}; there is no \
+                        "{OVERLOADED}the string wants {} where the supply gives {} {}; there is no \
                          current at which it runs.",
                         volts_shown(wanted),
                         if half_of(rating) {
@@ -77,7 +77,7 @@ pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Find
             Operating::Runs { gaps, .. } => finding(
                 Grade::Stop,
                 format!(
-                    "Overloaded: running volts are {percent:.0} % {of_what}, at or over {:.0} %{}.",
+                    "{OVERLOADED}running volts are {percent:.0} % {of_what}, at or over {:.0} %{}.",
                     window.stop_from * 100.0,
                     if gaps {
                         "; the current has gaps and the tube flickers"
@@ -221,6 +221,32 @@ pub(super) fn mixed() -> Finding {
         Source::practice(),
     )
 }
+
+/// What stops a circuit whose tubes take so much `off` (as in "15 % more") of what the default model
+/// says, as a look at the circuit that is fine without it.
+pub(crate) fn model_off(worked: &Assessment, off: &str) -> Option<Finding> {
+    let stop = worked
+        .findings
+        .iter()
+        .find(|finding| finding.grade == Grade::Stop)?;
+    let says = stop.says.trim_end_matches('.');
+    let what = match (says.strip_prefix(OVERLOADED), stop.unit) {
+        (Some(how), _) => format!("it is overloaded: {how}"),
+        (None, "mA") => format!("it is overdriven: {says}"),
+        (None, _) => format!("it will not strike: {}", small_first(says)),
+    };
+    Some(Finding {
+        grade: Grade::Look,
+        says: format!(
+            "If its tubes take {off} than the default model says, {what}; bench readings of your own \
+             glass settle it."
+        ),
+        source: Source::model(),
+        ..stop.clone()
+    })
+}
+
+const OVERLOADED: &str = "Overloaded: ";
 
 #[cfg(test)]
 mod tests {

@@ -16,5 +16,6 @@ mod window;
 pub use assess::{Assessment, Half, assess};
 pub(crate) use assess::{MAINS_SPREAD, STRIKE_LOOK};
 pub use curve::{CONTINUOUS_TO, Curve, Waveform, iron};
+pub(crate) use finding::model_off;
 pub use load::{Load, Operating, operate};
 pub use window::{Basis, Window, Zone};

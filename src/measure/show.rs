@@ -90,6 +90,14 @@ pub fn told_from(value: f64, limit: f64, decimals: usize) -> String {
         .unwrap_or_else(|| format!("{value:.MOST$}"))
 }
 
+/// A sentence as it stands after a colon.
+pub(crate) fn small_first(text: &str) -> String {
+    let mut chars = text.chars();
+    chars.next().map_or_else(String::new, |first| {
+        first.to_lowercase().chain(chars).collect()
+    })
+}
+
 #[allow(
     clippy::cast_possible_truncation,
     reason = "rounded and kept inside i64 just before"

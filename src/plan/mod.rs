@@ -12,9 +12,9 @@ mod why;
 use std::ops::Range;
 
 use crate::book::{Loading, OutputEarthing};
-use crate::circuit::{Assessment, Load, assess};
+use crate::circuit::{Assessment, Load, assess, model_off};
 use crate::job::Wish;
-use crate::rules::{Grade, RuleSet};
+use crate::rules::{Finding, Grade, RuleSet};
 use crate::supply::Rating;
 use crate::takeoff::Piece;
 use crate::tube::TubeType;
@@ -163,14 +163,64 @@ fn scaled(value: f64, by: f64) -> u64 {
 fn circuit(task: &Task, gates: &Gates, pieces: Range<usize>, candidate: usize) -> Circuit {
     let second_from = gates.second_from(task, &pieces, candidate);
     let rating = &task.candidates[candidate].rating;
+    let mut assessment = on(task, &pieces, second_from, rating);
+    let unsure = unsure(task, &pieces, second_from, rating, &assessment);
+    assessment.findings.extend(unsure);
     Circuit {
-        assessment: on(task, &pieces, second_from, rating),
+        assessment,
         smaller: why::smaller(task, gates, &pieces, candidate),
         larger: why::larger(task, gates, &pieces, candidate),
         pieces,
         second_from,
         candidate,
     }
+}
+
+/// What would stop a circuit that is fine as worked out, were its tubes at either end of what the
+/// default model may be off by. It speaks of the circuit chosen; the choice is made without it.
+fn unsure(
+    task: &Task,
+    pieces: &Range<usize>,
+    second_from: Option<usize>,
+    rating: &Rating,
+    nominal: &Assessment,
+) -> Vec<Finding> {
+    let percents = || {
+        let tubes = task.pieces[pieces.clone()].iter();
+        tubes.filter_map(|(_, tube)| tube.model_uncertainty_percent)
+    };
+    let least = percents().fold(f64::INFINITY, f64::min);
+    let most = percents().fold(0.0, f64::max);
+    if most == 0.0 || nominal.grade() == Some(Grade::Stop) {
+        return Vec::new();
+    }
+    let at = |sign: f64| {
+        let here = &task.pieces[pieces.clone()];
+        let moved = |(_, tube): &(&Piece, &TubeType)| {
+            let percent = tube.model_uncertainty_percent.unwrap_or(0.0);
+            TubeType {
+                volts_per_m: tube.volts_per_m * (1.0 + sign * percent / 100.0),
+                ..(*tube).clone()
+            }
+        };
+        let tubes: Vec<TubeType> = here.iter().map(moved).collect();
+        let alone: Vec<(&Piece, &TubeType)> = here.iter().map(|here| here.0).zip(&tubes).collect();
+        let alone = Task {
+            pieces: &alone,
+            ..*task
+        };
+        let second_from = second_from.map(|from| from - pieces.start);
+        on(&alone, &(0..pieces.len()), second_from, rating)
+    };
+    let percent = if least == most {
+        format!("{most} %")
+    } else {
+        format!("{least} to {most} %")
+    };
+    [(1.0, "more"), (-1.0, "less")]
+        .into_iter()
+        .filter_map(|(sign, way)| model_off(&at(sign), &format!("{percent} {way}")))
+        .collect()
 }
 
 /// Some pieces on a rating, worked up in full.

@@ -816,3 +816,40 @@ fn a_circuit_that_draws_more_than_the_plate_says_is_looked_at() {
         )
     );
 }
+
+#[test]
+fn a_circuit_that_the_model_is_not_sure_of_is_looked_at() {
+    let told = |length: &str, edit: fn(&mut Book)| {
+        let mut book = Book {
+            supplies: vec![iron("S4", 4_000.0, 30.0, 90)],
+            ..book()
+        };
+        book.tubes.retain(|tube| tube.name == NEON);
+        edit(&mut book);
+        let row = Row::Strokes(StrokesRow {
+            label: "bar".to_owned(),
+            strokes: length.to_owned(),
+            tube: NEON.to_owned(),
+            count: 1,
+        });
+        let work = workup(&job(vec![row]), &book);
+        assert_eq!(work.circuits.len(), 1, "{}", said(&work));
+        let says: Vec<String> = work.circuits[0]
+            .findings
+            .iter()
+            .filter(|finding| finding.says.contains("than the default model says"))
+            .map(|finding| format!("{}: {}", finding.grade.word(), finding.says))
+            .collect();
+        says.join("\n").replace('\u{202f}', "_")
+    };
+    // 2.5 m take about half of the no-load volts, 3.3 m about two thirds.
+    assert_eq!(told("2500 mm", |_| ()), "");
+    assert_snapshot!(told("3300 mm", |_| ()), @"look: If its tubes take 15 % more than the default model says, it is overloaded: running volts are 85 % of no-load volts, at or over 76 %; the current has gaps and the tube flickers; bench readings of your own glass settle it.");
+    // The shop's own reading is believed.
+    assert_eq!(
+        told("3300 mm", |book| book.tubes[0].volts_per_m = Some(720.0)),
+        ""
+    );
+    assert_snapshot!(told("2500 mm", |book| book.tubes[0].most_ma = Some(26.0)), @"look: If its tubes take 15 % less than the default model says, it is overdriven: 26.7 mA is above the 26 mA that 12 mm neon stands: more glass on it, or a supply of less current; bench readings of your own glass settle it.");
+    assert_snapshot!(told("2900 mm", |book| book.loading.strike_factor = 2.2), @"look: If its tubes take 15 % more than the default model says, it will not strike: striking needs about 5_957 V; the no-load peak is 5_657 V; bench readings of your own glass settle it.");
+}
