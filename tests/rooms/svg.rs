@@ -730,27 +730,28 @@ fn what_is_larger_than_any_drawing_is_refused_in_a_sentence() {
     near(drawing(&enough).length(), 200_000.0);
     let shapes = format!("<svg>{}</svg>", "<circle r='5'/>".repeat(4_200));
     assert_eq!(refused(&shapes), too_many, "48 curves each");
-    let attributes: String = (0..1_001).map(|at| format!(" a{at}='='")).collect();
+    let attributes = each(0..1_001, |at| format!(" a{at}='='"));
     assert_eq!(
         refused(&format!("<svg{attributes}/>")),
         "The element at line 1 has more than 1000 attributes or 100 namespaces, and no drawing needs as many."
     );
-    let spaces: String = (0..101)
-        .map(|at| format!("<g xmlns:a{at}='b{at}'>"))
-        .collect();
+    let spaces = each(0..101, |at| format!("<g xmlns:a{at}='b{at}'>"));
     assert!(refused(&format!("<svg>{spaces}")).starts_with("The element at line 1 has more than"));
+}
+
+/// A text for each number, one after the other.
+fn each(numbers: impl IntoIterator<Item = usize>, text: impl Fn(usize) -> String) -> String {
+    let texts: Vec<String> = numbers.into_iter().map(text).collect();
+    texts.concat()
 }
 
 /// Groups that each use the one before ten times, ten to the power of `depth` of what is innermost.
 fn bomb(innermost: &str, depth: usize) -> String {
-    let mut text = format!("<svg><defs><g id='a0'>{innermost}</g>");
-    for level in 1..=depth {
-        let below = level - 1;
-        let uses = format!("<use href='#a{below}'/>").repeat(10);
-        text.push_str(&format!("<g id='a{level}'>{uses}</g>"));
-    }
-    text.push_str(&format!("</defs><use href='#a{depth}'/></svg>"));
-    text
+    let levels = each(1..=depth, |level| {
+        let uses = format!("<use href='#a{}'/>", level - 1).repeat(10);
+        format!("<g id='a{level}'>{uses}</g>")
+    });
+    format!("<svg><defs><g id='a0'>{innermost}</g>{levels}</defs><use href='#a{depth}'/></svg>")
 }
 
 #[test]
@@ -760,7 +761,6 @@ fn parts_that_use_each_other_without_end_are_refused() {
     let over = "The drawing uses its own parts, or its style rules, over and over again, far \
                 beyond what a drawing needs; expand the parts and keep the lines only.";
     assert_eq!(refused(&bomb("", 20)), over, "even of nothing");
-    assert_eq!(refused(&bomb("<symbol/><text/>", 20)), over);
     assert!(
         refused(&bomb("<circle r='5'/>", 20)).starts_with("A drawing must have at most"),
         "lines are counted"
@@ -771,15 +771,15 @@ fn parts_that_use_each_other_without_end_are_refused() {
         "work on what draws nothing is counted too"
     );
     // One after the other: as deep as so many groups.
-    let chain: String = (0..300)
-        .map(|at| format!("<g id='a{at}'><use href='#a{}'/></g>", at + 1))
-        .collect();
+    let chain = each(0..300, |at| {
+        format!("<g id='a{at}'><use href='#a{}'/></g>", at + 1)
+    });
     assert!(refused(&format!("<svg>{chain}</svg>")).starts_with("Elements must be at most 200"));
     // In a ring.
     let art = drawing("<svg><g id='a'><use href='#b'/></g><g id='b'><use href='#a'/></g></svg>");
     assert_eq!(art.unread.len(), 2, "{:?}", art.unread);
     // Rules against elements, and rules that look back at every step.
-    let rules: String = (0..5_000).map(|at| format!(".a{at}{{fill:red}}")).collect();
+    let rules = each(0..5_000, |at| format!(".a{at}{{fill:red}}"));
     let elements = "<g/>".repeat(50_000);
     assert_eq!(
         refused(&format!("<svg><style>{rules}</style>{elements}</svg>")),
@@ -916,7 +916,7 @@ proptest! {
         path in "[MmLlAaCcQqTtSsZzHhVv0-9.,eE+\\- é]{0,40}",
         number in "[0-9.eE+\\-%a-z(),é ]{0,12}",
     ) {
-        let css = css.replace(']', "").replace('<', "");
+        let css = css.replace([']', '<'], "");
         check(&format!(
             "<svg width=\"{number}\" viewBox=\"{number} 5\"><style><![CDATA[{css}]]></style>\
              <g class='a b' transform=\"{number}\"><path id='c' style=\"{}\" d='{path}'/>\

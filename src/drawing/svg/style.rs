@@ -4,6 +4,9 @@ use roxmltree::Node;
 use simplecss::{AttributeOperator, PseudoClass, Selector};
 use std::cell::Cell;
 
+/// Most rules that are followed, a selector being one; drawings have hundreds.
+const MOST_RULES: usize = 20_000;
+
 /// One property set by a style.
 #[derive(Clone, Copy)]
 struct Declaration<'a> {
@@ -115,6 +118,13 @@ impl<'a> Sheet<'a> {
         let mut sheet = Self::default();
         let mut rest = text;
         loop {
+            if sheet.rules.len() + sheet.unread.len() > MOST_RULES {
+                sheet.rules.truncate(MOST_RULES);
+                sheet
+                    .unread
+                    .push(format!("what is behind {MOST_RULES} rules"));
+                break;
+            }
             // What older pages hid their style sheets with.
             rest = rest.trim_start();
             rest = rest.strip_prefix("<!--").unwrap_or(rest);
@@ -152,7 +162,8 @@ impl<'a> Sheet<'a> {
 
     fn rule(&mut self, selectors: &'a str, inside: &'a str) {
         let declarations: std::rc::Rc<[_]> = declarations(inside).collect();
-        for text in cut(selectors, b',') {
+        // One more than may be, so that it shows that there are more.
+        for text in cut(selectors, b',').take(MOST_RULES + 1) {
             let text = text.trim();
             // The parser of selectors stops with a fault at one that begins between two elements.
             let begins = text
@@ -254,6 +265,8 @@ impl simplecss::Element for Matched<'_, '_, '_> {
     }
 
     fn attribute_matches(&self, name: &str, operator: AttributeOperator<'_>) -> bool {
+        // The attribute is searched among all of them.
+        spend(self.left, self.node.attributes().len() as u64 / 16);
         let Some(value) = self.node.attribute(name) else {
             return false;
         };

@@ -14,7 +14,7 @@ use svgtypes::{Color, Paint, PaintFallback};
 
 /// Work that may be done for a file, in steps of some nanoseconds: elements that use each other, or
 /// style rules against elements, grow to any size in a file of a few lines.
-const MOST_WORK: u64 = 25_000_000;
+const MOST_WORK: u64 = 20_000_000;
 /// What looking at one element costs of it.
 const ELEMENT_WORK: u64 = 100;
 /// Things not read that are named one by one; the rest is counted.
@@ -269,7 +269,9 @@ impl<'a, 'i> Walk<'a, 'i> {
             _ => {}
         }
         let letters: usize = node.attributes().map(|one| one.value().len()).sum();
-        spend(&self.left, ELEMENT_WORK + letters as u64 / 4);
+        // What stands in the file once is bounded by its size, what is used again is not.
+        let letters = letters as u64 / if outside.used_at.is_some() { 1 } else { 8 };
+        spend(&self.left, ELEMENT_WORK + letters);
         let style = Style::of(node, self.sheet, &self.left);
         if self.left.get() == 0 {
             return Err(
