@@ -1,18 +1,12 @@
 //! The faces, and laying a text out in one of them.
 
+use std::collections::BTreeMap;
 use std::sync::OnceLock;
 
 use kurbo::{Affine, BezPath, Rect, Shape};
 
 use super::jhf::{self, Glyph};
-
-/// Height of a capital in the units of the face files: shaped at this height, every point of a letter
-/// is a whole number.
-pub const CAP_UNITS: f64 = 21.0;
-/// The baseline in those units.
-const BASELINE_UNITS: f64 = 9.0;
-/// First character of the files.
-const FIRST: u32 = ' ' as u32;
+use super::plain;
 
 /// A letter face.
 #[derive(Debug)]
@@ -23,7 +17,12 @@ pub struct Face {
     pub says: &'static str,
     /// Whether the letters of a word run into each other and are bent as one piece.
     pub joined: bool,
-    glyphs: Vec<Glyph>,
+    /// Height of a capital in the units of the face's file: shaped at this height, the points of a
+    /// letter are the figures of the file.
+    pub cap_units: f64,
+    /// The baseline in those units, y downwards.
+    baseline: f64,
+    glyphs: BTreeMap<char, Glyph>,
 }
 
 /// A letter of a text, in place.
@@ -53,20 +52,56 @@ pub fn faces() -> &'static [Face] {
     static FACES: OnceLock<Vec<Face>> = OnceLock::new();
     FACES.get_or_init(|| {
         vec![
-            Face {
-                name: "sans",
-                says: "plain, one stroke",
-                joined: false,
-                glyphs: jhf::read(include_str!("faces/rowmans.jhf")),
-            },
-            Face {
-                name: "script",
-                says: "joined within a word",
-                joined: true,
-                glyphs: jhf::read(include_str!("faces/scripts.jhf")),
-            },
+            hershey(
+                "sans",
+                "plain, one stroke",
+                false,
+                include_str!("faces/rowmans.jhf"),
+            ),
+            hershey(
+                "script",
+                "joined within a word",
+                true,
+                include_str!("faces/scripts.jhf"),
+            ),
+            readability(),
         ]
     })
+}
+
+/// A face of a Hershey file: the characters from the space to the tilde, capitals of 21 units.
+fn hershey(name: &'static str, says: &'static str, joined: bool, file: &str) -> Face {
+    Face {
+        name,
+        says,
+        joined,
+        cap_units: 21.0,
+        baseline: 9.0,
+        // The files go on past the tilde with a shape of their own, which stands for no character a
+        // person types.
+        glyphs: (' '..='~')
+            .zip(jhf::read(file))
+            .filter(|(character, glyph)| *character == ' ' || !glyph.strokes.is_empty())
+            .collect(),
+    }
+}
+
+/// The face with accents. Nothing in its file tells the height of its capitals: H is measured.
+fn readability() -> Face {
+    let glyphs = plain::read(include_str!("faces/readability.txt"));
+    let strokes = glyphs.get(&'H').into_iter().flat_map(|h| &h.strokes);
+    let h = strokes
+        .map(Shape::bounding_box)
+        .reduce(|all, one| all.union(one))
+        .unwrap_or(Rect::ZERO);
+    Face {
+        name: "accents",
+        says: "plain, with accents",
+        joined: false,
+        cap_units: h.height(),
+        baseline: h.y1,
+        glyphs,
+    }
 }
 
 /// The face of a name.
@@ -77,7 +112,7 @@ pub fn face(name: &str) -> Option<&'static Face> {
 impl Face {
     /// Lays out one line of text with capitals `height_mm` high, starting at x = 0 on y = 0.
     pub fn shape(&self, text: &str, height_mm: f64) -> Shaped {
-        let scale = height_mm / CAP_UNITS;
+        let scale = height_mm / self.cap_units;
         let mut shaped = Shaped {
             letters: Vec::new(),
             missing: Vec::new(),
@@ -95,7 +130,7 @@ impl Face {
             if glyph.strokes.is_empty() {
                 word += 1;
             } else {
-                let place = Affine::scale(scale) * Affine::translate((pen - left, -BASELINE_UNITS));
+                let place = Affine::scale(scale) * Affine::translate((pen - left, -self.baseline));
                 let strokes: Vec<BezPath> =
                     glyph.strokes.iter().map(|stroke| place * stroke).collect();
                 for stroke in &strokes {
@@ -115,16 +150,12 @@ impl Face {
     }
 
     fn glyph(&self, character: char) -> Option<&Glyph> {
-        // Spaces of every kind are a gap. The files go on past the tilde with a shape of their own,
-        // which stands for no character a person types.
-        let code = match character {
-            _ if character.is_whitespace() => FIRST,
-            ' '..='~' => u32::from(character),
-            _ => return None,
+        // Spaces of every kind are a gap.
+        let wanted = if character.is_whitespace() {
+            ' '
+        } else {
+            character
         };
-        let index = usize::try_from(code.checked_sub(FIRST)?).ok()?;
-        let glyph = self.glyphs.get(index)?;
-        let space = index == 0;
-        (space || !glyph.strokes.is_empty()).then_some(glyph)
+        self.glyphs.get(&wanted)
     }
 }

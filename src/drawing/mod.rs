@@ -7,7 +7,8 @@ pub mod dxf;
 mod face;
 mod jhf;
 pub mod outline;
+mod plain;
 pub mod svg;
 
 pub use artwork::{ArtGroup, ArtStroke, Artwork, Unread};
-pub use face::{CAP_UNITS, Face, Letter, Shaped, face, faces};
+pub use face::{Face, Letter, Shaped, face, faces};

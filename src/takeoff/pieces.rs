@@ -7,7 +7,7 @@ use kurbo::{Affine, BezPath, ParamCurveArclen, Point, Rect, Shape};
 use super::route::{Route, route};
 use super::{Piece, RowTakeoff, finding};
 use crate::book::Allowances;
-use crate::drawing::{CAP_UNITS, Letter, face};
+use crate::drawing::{Letter, face};
 use crate::job::{Job, Row, StrokesRow, TextRow};
 use crate::measure::{self, Length, LengthUnit};
 use crate::rules::Finding;
@@ -285,10 +285,10 @@ fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
         ));
         return Made::default();
     }
-    // Worked out in the units of the face, where every point is a whole number, and scaled at the end:
-    // twice the height is exactly twice the glass.
-    let scale = height_mm / CAP_UNITS;
-    let shaped = face.shape(&row.text, CAP_UNITS);
+    // Worked out in the units of the face, where points are the figures of its file, and scaled at the
+    // end: twice the height is exactly twice the glass.
+    let scale = height_mm / face.cap_units;
+    let shaped = face.shape(&row.text, face.cap_units);
     if !shaped.missing.is_empty() {
         findings.push(finding::no_shape(at, face, &shaped.missing));
     }

@@ -1,6 +1,6 @@
 //! The faces against the stroke lengths in `tests/reference/letters`.
 
-use kurbo::{BezPath, ParamCurveArclen};
+use kurbo::{BezPath, ParamCurveArclen, Shape};
 use tubewright::drawing::{Shaped, face, faces};
 
 /// Source: `tests/reference/letters/PROVENANCE.md`; an independent reader of the same files.
@@ -85,19 +85,80 @@ fn capitals_of_the_script_face() {
     check("script", "scripts", 103.715_126);
 }
 
+/// Source: `tests/reference/letters/PROVENANCE.md`; two other readers of the file the face was made of.
+const ACCENTS: &str = include_str!("../reference/letters/readability_lengths.csv");
+/// Height of H in that file, from the same source.
+const ACCENTS_CAP: f64 = 629.9;
+
+#[test]
+fn every_letter_of_the_face_with_accents() {
+    let face = face("accents").expect("the face is shipped");
+    let (mut letters, mut capitals) = (0, 0.0);
+    for record in csv::Reader::from_reader(ACCENTS.as_bytes()).records() {
+        let record = record.expect("a row of the table");
+        let code = u32::from_str_radix(&record[0], 16).expect("a code point");
+        let letter = char::from_u32(code).expect("a character");
+        let once: f64 = record[3].parse().expect("a length");
+        for height_mm in [100.0, 457.2] {
+            let shaped = face.shape(&letter.to_string(), height_mm);
+            assert_eq!(shaped.missing, [], "{letter}");
+            let (found, per_cap) = (strokes_mm(&shaped) / height_mm, once / ACCENTS_CAP);
+            assert!(
+                (found - per_cap).abs() < 1e-9,
+                "{letter} at {height_mm} mm: {found}, reference {per_cap}"
+            );
+        }
+        // How far the pen moves on: where the next letter begins, less where it begins after nothing.
+        let advance: f64 = record[1].parse().expect("a figure");
+        let x = |text: &str| face.shape(text, ACCENTS_CAP).letters.pop();
+        let left = |text: &str| x(text).expect("a letter").strokes[0].bounding_box().x0;
+        let moved = left(&format!("{letter}I")) - left("I");
+        assert!((moved - advance).abs() < 1e-9, "{letter}: {moved}");
+        letters += 1;
+        if letter.is_ascii_uppercase() {
+            capitals += once / ACCENTS_CAP;
+        }
+    }
+    assert_eq!(letters, 206, "the table is whole");
+    assert!((capitals - 65.475_990).abs() < 5e-7, "{capitals}");
+}
+
+#[test]
+fn what_a_shop_abroad_writes_is_there() {
+    let shaped = |text: &str| face("accents").expect("shipped").shape(text, 100.0);
+    for text in [
+        "CAFÉ NOËL",
+        "Käsespätzle Grüße",
+        "Smørrebrød på Ås",
+        "Año ¿Qué?",
+        "Œ",
+        "ÇA VA “été” – 5 €",
+        "PÃO",
+        "İstanbul ğış",
+    ] {
+        let missing = shaped(text).missing;
+        let expected: &[(usize, char)] = if text == "Œ" { &[(0, 'Œ')] } else { &[] };
+        assert_eq!(missing, expected, "{text}");
+    }
+    // Named as missing, never drawn as something like it.
+    assert_eq!(shaped("Łódź’").missing, [(0, 'Ł'), (3, 'ź'), (4, '’')]);
+}
+
 #[test]
 fn a_capital_is_as_high_as_asked() {
-    // H of the sans face is the cap height by definition; it stands on the baseline.
-    let bounds = faces()[0].shape("H", 250.0).bounds;
-    assert!(
-        (bounds.y0 + 250.0).abs() < 1e-9 && bounds.y1.abs() < 1e-9,
-        "{bounds:?}"
-    );
+    // H is the cap height by definition; it stands on the baseline.
+    for name in ["sans", "accents"] {
+        let bounds = face(name).expect("shipped").shape("H", 250.0).bounds;
+        assert!(
+            (bounds.y0 + 250.0).abs() < 1e-9 && bounds.y1.abs() < 1e-9,
+            "{name}: {bounds:?}"
+        );
+    }
 }
 
 #[test]
 fn characters_without_a_shape_are_named_with_their_place() {
-    for face in faces() {
+    for face in faces().iter().filter(|face| face.name != "accents") {
         let missing = |text: &str| face.shape(text, 100.0).missing;
         assert_eq!(missing("CAFÉ"), [(3, 'É')], "{}", face.name);
         assert_eq!(

@@ -62,6 +62,19 @@ fn the_glass_of_an_h() {
 }
 
 #[test]
+fn glass_that_lies_on_glass_shines_once() {
+    // The H of the face with accents is drawn in one, running back over both stems. In units of its
+    // file: stems of 629.9 and 626.9 and a bar of 400 shine; from the top of the left stem back to the
+    // bar, 293, and from the top of the right one, 290, the glass is painted out. Together it is what
+    // the pen runs, 2239.8 (tests/reference/letters/readability_lengths.csv).
+    let off = off(vec![letters("H", "accents", "629.9 mm")]);
+    let piece = &off.pieces[0];
+    near(piece.lit.mm(), 1656.8);
+    near(piece.hidden.mm(), 583.0);
+    near(piece.column().mm(), 2239.8);
+}
+
+#[test]
 fn letters_are_pieces_and_a_joined_word_is_one() {
     assert_eq!(
         labels(&off(vec![letters("ab cd", "sans", "100 mm")])),
