@@ -41,7 +41,7 @@ const FARTHEST: f64 = 1e9;
 ///     r#"<svg width="60mm" viewBox="0 0 300 200"><path stroke="red" d="M0 0 L30 40"/></svg>"#,
 /// )?;
 /// assert_eq!(art.strokes[0].length(), 50.0);
-/// assert_eq!(art.mm_per_unit, Some(0.2));
+/// assert!(art.mm_per_unit.is_some_and(|size| (size - 0.2).abs() < 1e-12));
 /// # Ok::<(), String>(())
 /// ```
 pub fn read(text: &str) -> Result<Artwork, String> {
