@@ -226,7 +226,9 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
 
     findings.extend(unknown_mains(job, &circuits));
     let parts = parts(book, &tubes, &circuits, off.pieces.len());
-    let quote = quote::quote(&parts, &book.rates);
+    let mut quote = quote::quote(&parts, &book.rates);
+    let left_out = not_in_sum(job, &off, &circuits, &findings);
+    quote.findings.splice(0..0, left_out);
     findings.extend(short_of(book, &parts));
     findings.extend(quote.findings.iter().cloned());
     findings.extend(model_notes(&tubes));
@@ -523,6 +525,70 @@ fn model_notes(tubes: &[TubeTotal]) -> Vec<Finding> {
             ))
         })
         .collect()
+}
+
+/// What the sum is without: a customer is not to be told a price that leaves out half of the sign.
+fn not_in_sum(
+    job: &Job,
+    off: &Takeoff,
+    circuits: &[CircuitWork],
+    findings: &[Finding],
+) -> Vec<Finding> {
+    let stopped = |place: &Place| {
+        let mut stops = findings.iter().filter(|found| found.grade == Grade::Stop);
+        stops.any(|found| found.place == *place)
+    };
+    let made = |row: usize| off.rows.get(row).map_or(0, |row| row.pieces.len());
+    let beyond = |row: usize| row >= off.rows.len();
+    let (mut without, mut partly) = (Vec::new(), Vec::new());
+    for row in 0..job.rows.len() {
+        if beyond(row) || (stopped(&Place::Row(row)) && made(row) == 0) {
+            without.push(row);
+        } else if stopped(&Place::Row(row)) {
+            partly.push(row);
+        }
+    }
+    let on_supplies: usize = circuits.iter().map(|circuit| circuit.pieces.len()).sum();
+    let mut says = Vec::new();
+    if !without.is_empty() {
+        says.push(format!("{} not in this sum.", rows_are(&without)));
+    }
+    if !partly.is_empty() {
+        says.push(format!("{} not wholly in this sum.", rows_are(&partly)));
+    }
+    // More pieces than a job may have are cut off, and allowances without sense counted as none.
+    let job_stops = |found: &Finding| found.grade == Grade::Stop && found.place == Place::Job;
+    if off.findings.iter().any(job_stops) {
+        says.push("What the stops of the job leave out is not in this sum.".to_owned());
+    }
+    match off.pieces.len().saturating_sub(on_supplies) {
+        0 => {}
+        1 => says.push("The supply for 1 piece is not in this sum.".to_owned()),
+        pieces => says.push(format!(
+            "The supply for {pieces} pieces is not in this sum."
+        )),
+    }
+    says.into_iter()
+        .map(|says| Finding::new(Grade::Stop, Place::Price, says, Source::entry("the sum")))
+        .collect()
+}
+
+/// Rows by number, as they begin a sentence: "Rows 1, 3 and 4 are".
+fn rows_are(rows: &[usize]) -> String {
+    const MOST_NAMED: usize = 5;
+    let mut named: Vec<String> = rows
+        .iter()
+        .take(MOST_NAMED)
+        .map(|row| (row + 1).to_string())
+        .collect();
+    if rows.len() > MOST_NAMED {
+        named.push(format!("{} more", rows.len() - MOST_NAMED));
+    }
+    match named.pop() {
+        Some(last) if named.is_empty() => format!("Row {last} is"),
+        Some(last) => format!("Rows {} and {last} are", named.join(", ")),
+        None => String::new(),
+    }
 }
 
 /// Supplies the plan takes more of than are on the shelf, where the book says how many there are.

@@ -853,3 +853,58 @@ fn a_circuit_that_the_model_is_not_sure_of_is_looked_at() {
     assert_snapshot!(told("2500 mm", |book| book.tubes[0].most_ma = Some(26.0)), @"look: If its tubes take 15 % less than the default model says, it is overdriven: 26.7 mA is above the 26 mA that 12 mm neon stands: more glass on it, or a supply of less current; bench readings of your own glass settle it.");
     assert_snapshot!(told("2900 mm", |book| book.loading.strike_factor = 2.2), @"look: If its tubes take 15 % more than the default model says, it will not strike: striking needs about 5_957 V; the no-load peak is 5_657 V; bench readings of your own glass settle it.");
 }
+
+#[test]
+fn a_sum_says_what_it_is_without() {
+    let told = |rows: Vec<Row>, book: &Book| {
+        let work = workup(&job(rows), book);
+        let says: Vec<String> = work
+            .quote
+            .findings
+            .iter()
+            .filter(|finding| finding.says.ends_with("in this sum."))
+            .map(|finding| {
+                assert_eq!(
+                    (finding.grade, &finding.place),
+                    (Grade::Stop, &Place::Price)
+                );
+                assert!(work.findings.contains(finding), "among all findings too");
+                finding.says.clone()
+            })
+            .collect();
+        says.join("\n")
+    };
+    let small = || letters("OPEN", "5 mm");
+    let good = || letters("OPEN", "300 mm");
+    assert_eq!(told(vec![good()], &book()), "");
+    assert_snapshot!(told(vec![small()], &book()), @"Row 1 is not in this sum.");
+    assert_snapshot!(told(vec![small(), good(), small()], &book()), @"Rows 1 and 3 are not in this sum.");
+    assert_snapshot!(told(vec![small(); 9], &book()), @"Rows 1, 2, 3, 4, 5 and 4 more are not in this sum.");
+    // One stroke of two that can be read.
+    assert_snapshot!(told(vec![strokes("1 m; 1 parsec")], &book()), @"Row 1 is not wholly in this sum.");
+    // No supply runs the long one.
+    assert_snapshot!(told(vec![good(), strokes("19 m")], &Book { supplies: vec![iron("S4", 4_000.0, 30.0, 90)], ..book() }), @"The supply for 1 piece is not in this sum.");
+    assert_snapshot!(told(vec![good()], &Book { supplies: vec![], ..book() }), @"The supply for 4 pieces is not in this sum.");
+    // A tube type that is not in the book, and one that contradicts itself.
+    let unknown = |tube: &str| {
+        Row::Strokes(StrokesRow {
+            label: "bar".to_owned(),
+            strokes: "1 m".to_owned(),
+            tube: tube.to_owned(),
+            count: 1,
+        })
+    };
+    assert_snapshot!(told(vec![unknown("none such")], &book()), @r"
+    Row 1 is not wholly in this sum.
+    The supply for 1 piece is not in this sum.
+    ");
+    let mut odd = book();
+    odd.tubes[0].wall_mm = Some(9.0);
+    let name = odd.tubes[0].name.clone();
+    assert_snapshot!(told(vec![unknown(&name)], &odd), @"The supply for 1 piece is not in this sum.");
+    // Cut off at what a job may have.
+    assert_snapshot!(told(vec![strokes("1 m"); 203], &book()), @r"
+    Rows 201, 202 and 203 are not in this sum.
+    What the stops of the job leave out is not in this sum.
+    ");
+}
