@@ -553,6 +553,36 @@ fn a_drawing_that_is_too_large_is_refused_with_a_sentence() {
 }
 
 #[test]
+fn splines_that_are_too_much_to_measure_are_refused_or_named() {
+    let spline = |degree: usize, weights: [&str; 4], count: usize| {
+        let ends = format!(" 40 0{}", " 40 0".repeat(degree));
+        let knots = format!("{ends}{}", ends.replace("40 0", "40 1"));
+        let points: String = (0..=degree)
+            .flat_map(|i| {
+                [
+                    " 10 ",
+                    ["0", "9"][i % 2],
+                    " 20 ",
+                    ["0", "5", "8"][i % 3],
+                    " 41 ",
+                    weights[i % 4],
+                ]
+            })
+            .collect();
+        with(
+            "",
+            "",
+            &format!("0 SPLINE 71 {degree}{knots}{points} ").repeat(count),
+        )
+    };
+    let refused = |text: &str| dxf::read(text.as_bytes()).expect_err("a sentence");
+    insta::assert_snapshot!(refused(&spline(7, ["1", "40", "1", "0.1"], 9000)), @"The drawing has more splines of high degree or with weights than can be measured. Save it with arcs and polylines in their place.");
+    // Weights from one end of the numbers to the other give a stroke or a reason, in no long time.
+    let art = read(&spline(15, ["1e-9", "1e9", "1", "1e9"], 3));
+    assert_eq!(art.strokes.len() + art.unread.len(), 3);
+}
+
+#[test]
 fn blocks_deeper_than_any_drawing_are_named() {
     let mut blocks = String::from("0 BLOCK 2 B0 0 LINE 10 0 20 0 11 1 21 0 0 ENDBLK");
     for level in 1..40 {

@@ -81,11 +81,11 @@ pub(super) struct Spline {
 impl Spline {
     /// The spline as Bézier segments, span for span of the knots. Up to degree three they are the
     /// spline itself; others, and rational ones, are met in length, with the distance below a
-    /// ten-millionth of the span.
+    /// ten-millionth of the span. Each try to meet a stretch of it takes one of `fits`.
     ///
     /// # Errors
     /// Why it is no spline, as the rest of a sentence.
-    pub(super) fn path(&self) -> Result<BezPath, String> {
+    pub(super) fn path(&self, fits: &mut usize) -> Result<BezPath, String> {
         let (degree, count) = (self.degree, self.points.len());
         if !(1..=DEGREE_MOST).contains(&degree) {
             return Err(format!(
@@ -133,7 +133,7 @@ impl Spline {
                 continue;
             }
             let piece = self.piece(span, rational);
-            Self::add(&mut path, &piece, rational)?;
+            Self::add(&mut path, &piece, rational, fits)?;
             if path.elements().len() > SEGMENTS_MOST {
                 break;
             }
@@ -172,7 +172,12 @@ impl Spline {
     }
 
     /// Adds the curve over one span.
-    fn add(path: &mut BezPath, piece: &[Weighted], rational: bool) -> Result<(), String> {
+    fn add(
+        path: &mut BezPath,
+        piece: &[Weighted],
+        rational: bool,
+        fits: &mut usize,
+    ) -> Result<(), String> {
         let points: Vec<Point> = piece.iter().map(|&weighted| point(weighted)).collect();
         let size: f64 = points.windows(2).map(|two| two[0].distance(two[1])).sum();
         if !size.is_finite() {
@@ -203,6 +208,7 @@ impl Spline {
                     origin,
                     size,
                     cubics: 0,
+                    fits,
                 };
                 if !fit.add(path, (0.0, 1.0), 0) {
                     return Err("its weights are too far apart to measure it".to_owned());
@@ -222,6 +228,8 @@ struct Fit<'a> {
     size: f64,
     /// How many there are so far.
     cubics: usize,
+    /// How many more tries there may be.
+    fits: &'a mut usize,
 }
 
 impl Fit<'_> {
@@ -259,6 +267,10 @@ impl Fit<'_> {
     fn add(&mut self, path: &mut BezPath, (from, to): (f64, f64), depth: u32) -> bool {
         const HALVINGS_MOST: u32 = 40;
         const CUBICS_MOST: usize = 2000;
+        let Some(left) = self.fits.checked_sub(1) else {
+            return false;
+        };
+        *self.fits = left;
         if depth == HALVINGS_MOST {
             path.line_to(self.at(to).0 + self.origin);
         } else if let Some(cubic) = self.cubic(from, to) {

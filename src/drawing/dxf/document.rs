@@ -15,6 +15,10 @@ const ELEMENTS_MOST: usize = 500_000;
 /// Most groups of one element; a spline of all segments there may be has fewer.
 const GROUPS_MOST: usize = 1_500_000;
 
+/// Most tries to meet splines that are no Bézier curves: some seconds of work, or several hundred
+/// circles written as splines.
+const FITS_MOST: usize = 50_000;
+
 /// What a file holds.
 #[derive(Default)]
 pub(super) struct Document {
@@ -153,6 +157,7 @@ struct Reader {
     polyline: Option<Polyline>,
     elements: usize,
     segments: usize,
+    fits: usize,
 }
 
 impl Reader {
@@ -273,7 +278,19 @@ impl Reader {
                 self.polyline = Some(record.polyline());
                 Ok(())
             }
-            _ => self.push(record.common(), record.shape()),
+            _ => {
+                let mut fits = FITS_MOST - self.fits;
+                let shape = record.shape(&mut fits);
+                self.fits = FITS_MOST - fits;
+                if fits == 0 {
+                    return Err(
+                        "The drawing has more splines of high degree or with weights than can be \
+                         measured. Save it with arcs and polylines in their place."
+                            .to_owned(),
+                    );
+                }
+                self.push(record.common(), shape)
+            }
         }
     }
 

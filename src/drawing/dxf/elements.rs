@@ -163,8 +163,9 @@ impl Record<'_> {
         }
     }
 
-    /// The element as a path or a placed block, or why it is neither.
-    pub(super) fn shape(&self) -> Shape {
+    /// The element as a path or a placed block, or why it is neither. Splines that are no Bézier
+    /// curves take from `fits`.
+    pub(super) fn shape(&self, fits: &mut usize) -> Shape {
         if let Some(why) = self.hidden() {
             return Shape::Unread(why);
         }
@@ -174,7 +175,7 @@ impl Record<'_> {
             b"CIRCLE" => self.circle(),
             b"ELLIPSE" => self.ellipse(),
             b"LWPOLYLINE" => self.lwpolyline(),
-            b"SPLINE" => self.spline(),
+            b"SPLINE" => self.spline(fits),
             b"INSERT" => {
                 return self.insert().map_or_else(Shape::Unread, Shape::Insert);
             }
@@ -269,7 +270,7 @@ impl Record<'_> {
         Ok((self.plane()? * path, closed))
     }
 
-    fn spline(&self) -> Result<(BezPath, bool), String> {
+    fn spline(&self, fits: &mut usize) -> Result<(BezPath, bool), String> {
         let all = |code: i32| -> Result<Vec<f64>, String> {
             let groups = self.groups.iter().filter(|group| group.code == code);
             groups.map(Group::number).collect()
@@ -295,7 +296,7 @@ impl Record<'_> {
             points: flat_points,
             weights: all(41)?,
         };
-        let mut elements = spline.path()?.into_elements();
+        let mut elements = spline.path(fits)?.into_elements();
         // Ends that differ by rounding only are meant to be the same.
         let begin = elements.first().and_then(kurbo::PathEl::end_point);
         if let (Some(begin), Some(last)) = (begin, elements.last_mut()) {
