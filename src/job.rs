@@ -169,7 +169,10 @@ const fn one() -> i64 {
 pub fn read(text: &str) -> Result<Job, String> {
     let text = crate::book::without_mark(text);
     crate::book::check_kind(text, KIND, VERSION)?;
-    serde_json::from_str(text).map_err(|error| format!("This job file cannot be read: {error}."))
+    serde_json::from_str(text).map_err(|error| {
+        let trouble = crate::book::json_trouble(&error);
+        format!("This job file cannot be read: {trouble}.")
+    })
 }
 
 /// The job as the text of a file.

@@ -5,6 +5,7 @@
 
 mod sheet;
 mod starter;
+mod text;
 
 use rust_decimal::Decimal;
 use serde::{Deserialize, Serialize};
@@ -13,6 +14,8 @@ use crate::rules::RuleSet;
 
 pub use sheet::{Sheet, read_supplies, read_tubes, write_supplies, write_tubes};
 pub use starter::starter;
+pub use text::text_of;
+pub(crate) use text::{json_trouble, without_mark};
 
 /// What the `tubewright` field of a book file says.
 pub const KIND: &str = "book";
@@ -303,7 +306,8 @@ impl Default for Loading {
 pub fn read(text: &str) -> Result<Book, String> {
     let text = without_mark(text);
     check_kind(text, KIND, VERSION)?;
-    serde_json::from_str(text).map_err(|error| format!("This book file cannot be read: {error}."))
+    serde_json::from_str(text)
+        .map_err(|error| format!("This book file cannot be read: {}.", json_trouble(&error)))
 }
 
 /// The book as the text of a file.
@@ -312,15 +316,13 @@ pub fn write(book: &Book) -> String {
     serde_json::to_string_pretty(book).unwrap_or_default()
 }
 
-/// The text without the byte-order mark some editors put before it.
-pub(crate) fn without_mark(text: &str) -> &str {
-    text.trim_start_matches('\u{feff}')
-}
-
 /// Whether a text is JSON at all, of the wanted kind and of a version this program knows.
 pub(crate) fn check_kind(text: &str, kind: &str, version: u32) -> Result<(), String> {
     let head: serde_json::Value = serde_json::from_str(text).map_err(|error| {
-        format!("This is not a {kind} file: expected JSON written by this program, but {error}.")
+        format!(
+            "This is not a {kind} file: expected JSON written by this program, but {}.",
+            json_trouble(&error)
+        )
     })?;
     match head.get("tubewright").and_then(serde_json::Value::as_str) {
         Some(found) if found == kind => {}

@@ -309,6 +309,14 @@ fn read<T: Default>(
             known()
         ));
     }
+    let open = open_quotes(&text, separator, chosen.len());
+    if let Some(quote) = open.first().filter(|quote| quote.lines[0] == 1) {
+        return Err(format!(
+            "The file of {what} cannot be read: {}.",
+            not_closed(quote)
+        ));
+    }
+    let mut open = open.into_iter().peekable();
     let mut entries: Vec<T> = Vec::new();
     let mut names: HashSet<String> = HashSet::new();
     let mut lines = Lines::of(&text);
@@ -321,6 +329,15 @@ fn read<T: Default>(
             }
         };
         let line = lines.of_byte(record.position().map_or(0, csv::Position::byte));
+        if let Some(quote) = open.next_if(|quote| quote.record <= lines.byte) {
+            while open.next_if(|quote| quote.record <= lines.byte).is_some() {}
+            let out = match quote.lines {
+                [first, _, last] if first == last => format!("Line {first} was"),
+                [first, _, last] => format!("Lines {first} to {last} were"),
+            };
+            trouble.push(format!("{out} left out: {}.", not_closed(&quote)));
+            continue;
+        }
         if record.iter().all(str::is_empty) {
             continue;
         }
@@ -440,7 +457,7 @@ impl<'t> Lines<'t> {
     }
 }
 
-/// Text of a file: UTF-8 with or without a mark, else Latin-1.
+/// Text of a file of fair size.
 fn decoded(bytes: &[u8]) -> Result<String, String> {
     const MOST_BYTES: usize = 4_000_000;
     if bytes.len() > MOST_BYTES {
@@ -449,14 +466,80 @@ fn decoded(bytes: &[u8]) -> Result<String, String> {
             MOST_BYTES / 1_000_000
         ));
     }
-    if bytes.starts_with(&[0xff, 0xfe]) || bytes.starts_with(&[0xfe, 0xff]) || bytes.contains(&0) {
-        return Err(
-            "The file is not plain text in UTF-8 or Latin-1: save it as “CSV UTF-8”.".to_owned(),
-        );
+    super::text_of(bytes)
+}
+
+/// A quote that opens a cell and takes whole lines into it, because it is not closed where the cell
+/// ends.
+struct OpenQuote {
+    /// Byte the record begins at.
+    record: usize,
+    /// Line the record begins in, line the quote opens in and line its cell ends in.
+    lines: [usize; 3],
+}
+
+fn not_closed(quote: &OpenQuote) -> String {
+    format!(
+        "the quote that opens in line {} is not closed where its cell ends; close it or take it \
+         away, and read the file again",
+        quote.lines[1]
+    )
+}
+
+/// Finds the cells of a file that swallow others: never closed, closed only by a quote of a later
+/// line, or with a line inside that has all the separators of a line of `columns` columns.
+///
+/// Records and cells are told apart as the csv reader does.
+fn open_quotes(text: &str, separator: char, columns: usize) -> Vec<OpenQuote> {
+    let whole_line = columns.saturating_sub(1).max(1);
+    let ends_line = |c: char| matches!(c, '\r' | '\n');
+    let mut found = Vec::new();
+    let mut line = 1;
+    let (mut record, mut record_line) = (0, 1);
+    let (mut at_record, mut at_cell) = (true, true);
+    let mut chars = text.char_indices().peekable();
+    while let Some((at, c)) = chars.next() {
+        if ends_line(c) {
+            line += usize::from(c == '\n');
+            (at_record, at_cell) = (true, true);
+            continue;
+        }
+        if at_record {
+            (record, record_line, at_record) = (at, line, false);
+        }
+        if c != '"' || !at_cell {
+            at_cell = c == separator;
+            continue;
+        }
+        at_cell = false;
+        let opened = line;
+        let (mut separators, mut swallows, mut closed) = (0, false, false);
+        while let Some((_, c)) = chars.next() {
+            if c == '"' {
+                if chars.next_if(|&(_, next)| next == '"').is_none() {
+                    closed = true;
+                    break;
+                }
+            } else if c == separator {
+                separators += 1;
+            } else if ends_line(c) {
+                line += usize::from(c == '\n');
+                swallows |= separators >= whole_line;
+                separators = 0;
+            }
+        }
+        swallows |= separators >= whole_line && line > opened;
+        let follows = chars.peek().map(|&(_, next)| next);
+        let cut_short =
+            line > opened && follows.is_some_and(|next| next != separator && !next.is_whitespace());
+        if !closed || swallows || cut_short {
+            // After the last line end there is no further line.
+            let past_end = !closed && line > opened && text.ends_with(ends_line);
+            found.push(OpenQuote {
+                record,
+                lines: [record_line, opened, line - usize::from(past_end)],
+            });
+        }
     }
-    Ok(match std::str::from_utf8(bytes) {
-        Ok(text) => super::without_mark(text).to_owned(),
-        // Every byte is a Latin-1 character.
-        Err(_) => bytes.iter().map(|&byte| char::from(byte)).collect(),
-    })
+    found
 }

@@ -61,29 +61,29 @@ fn a_job_with_little_in_it_is_read_with_the_defaults() {
 
 #[test]
 fn job_files_that_cannot_be_read() {
-    assert_snapshot!(error("OPEN"), @"This is not a job file: expected JSON written by this program, but expected value at line 1 column 1.");
+    assert_snapshot!(error("OPEN"), @"This is not a job file: expected JSON written by this program, but no value stands there (line 1, column 1).");
     assert_snapshot!(error(r#"{"tubewright": "book", "version": 1, "name": "x"}"#), @"Expected a job file, but this is a “book” file.");
     assert_snapshot!(error(r#"{"tubewright": "<b>", "version": 1, "name": "x"}"#), @"Expected a job file, but this is a “<b>” file.");
     assert_snapshot!(error(r#"{"tubewright": "job", "version": 99, "name": "x"}"#), @"This job file has version 99; this program knows versions up to 1. Open it with a newer program.");
     assert_snapshot!(error(r#"{"tubewright": "job", "version": "1", "name": "x"}"#), @"This job file names no version that exists; this program knows versions up to 1.");
-    assert_snapshot!(error(r#"{"tubewright": "job", "version": 1}"#), @"This job file cannot be read: missing field `name` at line 1 column 35.");
-    assert_snapshot!(error(r#"{"tubewright": "job", "version": 1, "name": "x", "price": 1}"#), @"This job file cannot be read: unknown field `price`, expected one of `tubewright`, `version`, `name`, `customer`, `note`, `rows`, `rules`, `wish`, `site` at line 1 column 56.");
+    assert_snapshot!(error(r#"{"tubewright": "job", "version": 1}"#), @"This job file cannot be read: “name” is missing (line 1, column 35).");
+    assert_snapshot!(error(r#"{"tubewright": "job", "version": 1, "name": "x", "price": 1}"#), @"This job file cannot be read: unknown field “price” (line 1, column 56).");
     assert_snapshot!(
         error(r#"{"tubewright": "job", "version": 1, "name": "x", "rows": [{"row": "circle"}]}"#),
-        @"This job file cannot be read: unknown variant `circle`, expected `text` or `strokes` at line 1 column 74."
+        @"This job file cannot be read: expected text or strokes, but found “circle” (line 1, column 74)."
     );
     assert_snapshot!(
         error(r#"{"tubewright": "job", "version": 1, "name": "x", "rows": [{"row": "text", "text": "A"}]}"#),
-        @"This job file cannot be read: missing field `height` at line 1 column 87."
+        @"This job file cannot be read: “height” is missing (line 1, column 87)."
     );
     assert_snapshot!(
         error(
             r#"{"tubewright": "job", "version": 1, "name": "x", "rows": [
                 {"row": "text", "text": "A", "height": "1", "tube": "t", "bold": true}]}"#
         ),
-        @"This job file cannot be read: unknown field `bold`, expected one of `text`, `height`, `face`, `tube`, `count` at line 2 column 87."
+        @"This job file cannot be read: unknown field “bold” (line 2, column 87)."
     );
-    assert_snapshot!(error(r#"{"tubewright": "job", "version": 1, "name": "x", "wish": "best"}"#), @"This job file cannot be read: unknown variant `best`, expected `fewest-supplies` or `lowest-price` at line 1 column 63.");
+    assert_snapshot!(error(r#"{"tubewright": "job", "version": 1, "name": "x", "wish": "best"}"#), @"This job file cannot be read: expected fewest-supplies or lowest-price, but found “best” (line 1, column 63).");
 }
 
 #[test]
