@@ -3,7 +3,9 @@
 //! Lengths stay as typed, with their unit (`"450 mm"`, `"1' 6 1/2\""`); a bare number in a file is
 //! millimetres.
 
-use serde::{Deserialize, Serialize};
+use std::sync::Arc;
+
+use serde::{Deserialize, Deserializer, Serialize, Serializer};
 
 use crate::book::Dampness;
 
@@ -31,6 +33,9 @@ pub struct Job {
     /// What the sign says and is made of, top to bottom; also the order of the pieces.
     #[serde(default)]
     pub rows: Vec<Row>,
+    /// The artwork files that rows take their lines from, each once.
+    #[serde(default, skip_serializing_if = "Vec::is_empty")]
+    pub artwork: Vec<ArtworkFile>,
     /// Name of the rule set in the book that this job is held against.
     #[serde(default)]
     pub rules: String,
@@ -51,6 +56,7 @@ impl Default for Job {
             customer: String::new(),
             note: String::new(),
             rows: Vec::new(),
+            artwork: Vec::new(),
             rules: String::new(),
             wish: Wish::default(),
             site: Site::default(),
@@ -66,6 +72,61 @@ pub enum Row {
     Text(TextRow),
     /// Pieces of glass given by their stroke lengths.
     Strokes(StrokesRow),
+    /// The lines of an artwork file.
+    Artwork(ArtworkRow),
+}
+
+/// An artwork file as it was opened. Copies share the text: a drawing may be large, and every step
+/// that can be undone holds the job.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct ArtworkFile {
+    /// Its name; a row names it so.
+    pub name: String,
+    /// What is in it.
+    #[serde(serialize_with = "write_text", deserialize_with = "read_text")]
+    pub text: Arc<str>,
+}
+
+fn write_text<S: Serializer>(text: &Arc<str>, to: S) -> Result<S::Ok, S::Error> {
+    to.serialize_str(text)
+}
+
+fn read_text<'de, D: Deserializer<'de>>(from: D) -> Result<Arc<str>, D::Error> {
+    String::deserialize(from).map(Arc::from)
+}
+
+/// The lines of an artwork file, each colour and layer in a tube of its own.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct ArtworkRow {
+    /// What it is.
+    pub label: String,
+    /// The file, by its name in the job.
+    pub file: String,
+    /// How wide it is made, as typed; empty: as large as the file says.
+    #[serde(default)]
+    pub width: String,
+    /// What each kind of line is made of. Kinds that are not named are not decided.
+    #[serde(default)]
+    pub lines: Vec<ArtworkLines>,
+    /// How many times this row is made.
+    #[serde(default = "one")]
+    pub count: i64,
+}
+
+/// The lines of one colour in one layer of an artwork.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct ArtworkLines {
+    /// Their colour, `#rrggbb`, where they have one.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub colour: Option<String>,
+    /// Their layer, where they have one.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub layer: Option<String>,
+    /// Tube type, by its name in the book; empty: these lines are not tube.
+    pub tube: String,
 }
 
 /// A word or line of letters in one face, height and tube.
@@ -103,11 +164,15 @@ pub struct StrokesRow {
 }
 
 impl Row {
-    /// Tube type, by its name in the book.
-    pub fn tube(&self) -> &str {
+    /// Tube types, by their names in the book. An artwork has as many as it has kinds of lines.
+    pub fn tubes(&self) -> Vec<&str> {
         match self {
-            Self::Text(row) => &row.tube,
-            Self::Strokes(row) => &row.tube,
+            Self::Text(row) => vec![&row.tube],
+            Self::Strokes(row) => vec![&row.tube],
+            Self::Artwork(row) => {
+                let named = row.lines.iter().map(|lines| lines.tube.as_str());
+                named.filter(|tube| !tube.is_empty()).collect()
+            }
         }
     }
 
@@ -116,6 +181,7 @@ impl Row {
         match self {
             Self::Text(row) => row.count,
             Self::Strokes(row) => row.count,
+            Self::Artwork(row) => row.count,
         }
     }
 
@@ -124,6 +190,7 @@ impl Row {
         match self {
             Self::Text(row) => &row.text,
             Self::Strokes(row) => &row.label,
+            Self::Artwork(row) => &row.label,
         }
     }
 }

@@ -315,8 +315,14 @@ fn tube_totals(
     findings: &mut Vec<Finding>,
 ) -> Vec<TubeTotal> {
     let mut totals: Vec<TubeTotal> = Vec::new();
-    for (at, row) in job.rows.iter().enumerate() {
-        let name = row.tube();
+    let named = |(at, row): (usize, &crate::job::Row)| -> Vec<(usize, String)> {
+        row.tubes()
+            .into_iter()
+            .map(|name| (at, name.to_owned()))
+            .collect()
+    };
+    for (at, name) in job.rows.iter().enumerate().flat_map(named) {
+        let name = name.as_str();
         if totals.iter().any(|total| total.name == name) {
             continue;
         }

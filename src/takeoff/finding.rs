@@ -1,7 +1,7 @@
 //! The sentences of this room.
 
 use super::Piece;
-use crate::drawing::{Face, faces};
+use crate::drawing::{ArtGroup, Face, Unread, faces};
 use crate::measure::{Length, Limit, ReadError, Units, length_exact, length_shown, quoted};
 use crate::rules::{Finding, Grade, Place, Source};
 
@@ -200,4 +200,109 @@ pub(super) fn drawn_straight(at: usize) -> Finding {
 
 pub(super) fn allowance(says: String) -> Finding {
     Finding::new(Grade::Stop, Place::Job, says, Source::shop())
+}
+
+pub(super) fn no_artwork(at: usize, file: &str) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        format!(
+            "The artwork file {} is not in this job: open it again.",
+            quoted(file)
+        ),
+    )
+}
+
+pub(super) fn bad_artwork(at: usize, file: &str, why: &str) -> Finding {
+    row(Grade::Stop, at, format!("{}: {why}", quoted(file)))
+}
+
+pub(super) fn empty_artwork(at: usize) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        "The artwork has no lines that can be measured.".to_owned(),
+    )
+}
+
+pub(super) fn no_size(at: usize) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        "The artwork does not say how large it is: type how wide it is to be made.".to_owned(),
+    )
+}
+
+pub(super) fn no_width(at: usize) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        "The artwork is one upright line and has no width to be scaled by: leave the width empty, or \
+         give the line as strokes."
+            .to_owned(),
+    )
+}
+
+/// How many parts that were not read are told one by one.
+const UNREAD_EACH: usize = 5;
+
+/// What of an artwork was not read: each part, then how many more.
+pub(super) fn unread(at: usize, parts: &[Unread]) -> Vec<Finding> {
+    let mut said: Vec<Finding> = parts
+        .iter()
+        .take(UNREAD_EACH)
+        .map(|part| {
+            row(
+                Grade::Look,
+                at,
+                format!(
+                    "Not read: {}: {}.",
+                    part.element,
+                    part.why.trim_end_matches('.')
+                ),
+            )
+        })
+        .collect();
+    if parts.len() > UNREAD_EACH {
+        let more = parts.len() - UNREAD_EACH;
+        said.push(row(
+            Grade::Look,
+            at,
+            format!("And {more} more parts of the artwork were not read."),
+        ));
+    }
+    said
+}
+
+fn lines_of(group: &ArtGroup) -> String {
+    let colour = group.colour.as_deref().unwrap_or("no colour");
+    let layer = group
+        .layer
+        .as_ref()
+        .map_or_else(String::new, |layer| format!(" in layer {}", quoted(layer)));
+    format!("{colour}{layer}")
+}
+
+pub(super) fn undecided(at: usize, group: &ArtGroup, mm_per_unit: f64) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "The lines of {}, {} in all, have no tube yet: choose one, or say that they are not tube.",
+            lines_of(group),
+            length_shown(Length::from_mm(group.length * mm_per_unit), Units::Metric)
+        ),
+    )
+}
+
+pub(super) fn filled(at: usize, group: &ArtGroup) -> Finding {
+    row(
+        Grade::Note,
+        at,
+        format!(
+            "{} of the lines of {} are edges of filled areas: the tube follows the edge itself.",
+            group.filled,
+            lines_of(group)
+        ),
+    )
 }

@@ -7,6 +7,7 @@
 //!
 //! First cut: crossovers are estimated by those jumps, bends are not counted.
 
+mod artwork;
 mod finding;
 mod pieces;
 mod route;
@@ -15,6 +16,7 @@ use kurbo::{BezPath, Point, Rect};
 
 use crate::measure::Length;
 
+pub use artwork::artwork;
 pub use pieces::{Takeoff, takeoff};
 
 /// One continuous glass with a pair of electrodes.

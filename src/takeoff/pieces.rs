@@ -5,7 +5,7 @@ use std::collections::HashMap;
 use kurbo::{Affine, BezPath, ParamCurveArclen, Point, Rect, Shape};
 
 use super::route::{Route, route};
-use super::{Piece, RowTakeoff, finding};
+use super::{Piece, RowTakeoff, artwork, finding};
 use crate::book::Allowances;
 use crate::drawing::{Letter, face};
 use crate::job::{Job, Row, StrokesRow, TextRow};
@@ -66,6 +66,7 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
         let mut made = match row {
             Row::Text(row) => text(at, row, &mut off.findings),
             Row::Strokes(row) => strokes(at, row, &mut off.findings),
+            Row::Artwork(row) => artwork::row(at, row, &job.artwork, &mut off.findings),
         };
         let copies = count(at, row.count(), &mut off.findings);
         let wanted = made.pieces.len() * copies;
@@ -74,6 +75,7 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
                 .push(finding::too_many(&measure::PIECES, first + wanted));
             made.pieces.truncate(room / copies.max(1));
         }
+        let own = row.tubes().first().copied().unwrap_or_default();
         let mut bounds: Option<Rect> = None;
         for copy in 0..copies {
             if made.pieces.is_empty() {
@@ -81,7 +83,7 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
             }
             let place = sheet.place(made.bounds);
             for drawn in &made.pieces {
-                let piece = drawn.piece(at, (copy, copies), row.tube(), tail_mm, place);
+                let piece = drawn.piece(at, (copy, copies), own, tail_mm, place);
                 off.pieces.push(piece);
             }
             let here = place.transform_rect_bbox(made.bounds);
@@ -173,20 +175,22 @@ impl Sheet {
 
 /// A row's pieces before they are placed.
 #[derive(Default)]
-struct Made {
-    pieces: Vec<Drawn>,
-    bounds: Rect,
+pub(super) struct Made {
+    pub(super) pieces: Vec<Drawn>,
+    pub(super) bounds: Rect,
 }
 
-struct Drawn {
-    label: String,
-    lit_mm: f64,
+pub(super) struct Drawn {
+    pub(super) label: String,
+    pub(super) lit_mm: f64,
+    /// Its tube, where the pieces of a row are not all of one.
+    pub(super) tube: Option<String>,
     strokes: Vec<BezPath>,
     route: Route,
 }
 
 impl Drawn {
-    fn new(label: String, strokes: Vec<BezPath>, route: Route) -> Self {
+    pub(super) fn new(label: String, strokes: Vec<BezPath>, route: Route) -> Self {
         let lit_mm = strokes
             .iter()
             .flat_map(BezPath::segments)
@@ -195,9 +199,16 @@ impl Drawn {
         Self {
             label,
             lit_mm,
+            tube: None,
             strokes,
             route,
         }
+    }
+
+    /// The same in a tube of its own.
+    pub(super) fn of(mut self, tube: &str) -> Self {
+        self.tube = Some(tube.to_owned());
+        self
     }
 
     /// The same drawing so many times as large.
@@ -205,6 +216,7 @@ impl Drawn {
         Self {
             label: self.label.clone(),
             lit_mm: self.lit_mm * by,
+            tube: self.tube.clone(),
             strokes: self
                 .strokes
                 .iter()
@@ -238,7 +250,7 @@ impl Drawn {
             row,
             copy,
             label,
-            tube: tube.to_owned(),
+            tube: self.tube.as_deref().unwrap_or(tube).to_owned(),
             lit: Length::from_mm(self.lit_mm),
             hidden: Length::from_mm(self.route.jumped),
             tails: Length::from_mm(2.0 * tail_mm),

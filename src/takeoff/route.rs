@@ -45,7 +45,7 @@ impl Route {
 }
 
 /// First and last point of a path.
-fn ends(path: &BezPath) -> [Point; 2] {
+pub(super) fn ends(path: &BezPath) -> [Point; 2] {
     let point = |element: &PathEl| element.end_point();
     let first = path
         .elements()
@@ -85,10 +85,22 @@ pub(super) fn route(strokes: &[BezPath]) -> Route {
     } else {
         good(&ends, tie)
     };
+    along(&ends, &order, tie)
+}
+
+/// The way through the strokes in the order and direction they are drawn in.
+pub(super) fn as_drawn(strokes: &[BezPath]) -> Route {
+    let ends: Vec<[Point; 2]> = strokes.iter().map(ends).collect();
+    let order: Vec<Step> = (0..ends.len()).map(|stroke| (stroke, 0)).collect();
+    along(&ends, &order, 0.0)
+}
+
+/// The way through the strokes in a given order.
+fn along(ends: &[[Point; 2]], order: &[Step], tie: f64) -> Route {
     let mut jumps = Vec::new();
     let mut jumped = 0.0;
     for pair in order.windows(2) {
-        let (from, to) = (leaves(&ends, pair[0]), enters(&ends, pair[1]));
+        let (from, to) = (leaves(ends, pair[0]), enters(ends, pair[1]));
         let length = from.distance(to);
         if length > tie {
             jumped += length;
@@ -97,10 +109,8 @@ pub(super) fn route(strokes: &[BezPath]) -> Route {
     }
     let start = order
         .first()
-        .map_or(Point::ZERO, |&step| enters(&ends, step));
-    let finish = order
-        .last()
-        .map_or(Point::ZERO, |&step| leaves(&ends, step));
+        .map_or(Point::ZERO, |&step| enters(ends, step));
+    let finish = order.last().map_or(Point::ZERO, |&step| leaves(ends, step));
     Route {
         jumped,
         jumps,

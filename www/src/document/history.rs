@@ -1,6 +1,6 @@
 //! Steps, undo and redo.
 
-use std::collections::VecDeque;
+use std::collections::{HashSet, VecDeque};
 
 use tubewright::{Book, Job};
 
@@ -40,6 +40,8 @@ pub struct Document {
     writes: Vec<Write>,
     /// Documents that were kept and cannot be read, as they are: never written over.
     aside: Vec<Write>,
+    /// Names of the artwork files that are stored already.
+    filed: HashSet<String>,
 }
 
 impl Document {
@@ -54,6 +56,7 @@ impl Document {
             field: None,
             writes: Vec::new(),
             aside: Vec::new(),
+            filed: HashSet::new(),
         }
     }
 
@@ -76,6 +79,18 @@ impl Document {
             }
         }
         document.writes.clone_from(&document.aside);
+        // Files that neither the job nor a step holds any more are let go.
+        let held = document.files();
+        for name in kept.keys().filter(|name| records::is_file(name)) {
+            if held.iter().any(|write| write.name == *name) {
+                document.filed.insert(name.clone());
+            } else {
+                document.writes.push(Write {
+                    name: name.clone(),
+                    value: None,
+                });
+            }
+        }
         (document, trouble)
     }
 
@@ -198,12 +213,25 @@ impl Document {
 
     /// Everything there is to keep: for a store that has nothing yet.
     pub fn all_writes(&self) -> Vec<Write> {
-        let mut writes = vec![records::job(&self.job), records::book(&self.book)];
+        let mut writes = self.files();
+        writes.extend([records::job(&self.job), records::book(&self.book)]);
         for (number, step) in (self.first..).zip(&self.steps) {
             writes.push(records::step(number, step));
         }
         writes.push(records::state(self.first, self.done, self.steps.len()));
         writes
+    }
+
+    /// The artwork files of the job and of every step.
+    fn files(&self) -> Vec<Write> {
+        let mut files = records::files(&self.job);
+        for step in &self.steps {
+            if let Change::Job(both) = &step.change {
+                files.extend(records::files(&both.0));
+                files.extend(records::files(&both.1));
+            }
+        }
+        files
     }
 
     /// The step an edit of this field goes on with.
@@ -233,6 +261,14 @@ impl Document {
     }
 
     fn write_last(&mut self, job: bool) {
+        if job {
+            // First the text, then what points at it.
+            for file in records::files(&self.job) {
+                if self.filed.insert(file.name.clone()) {
+                    self.writes.push(file);
+                }
+            }
+        }
         if let Some(step) = self.steps.back() {
             let write = records::step(self.number(self.steps.len() - 1), step);
             self.writes.push(write);
@@ -258,6 +294,7 @@ impl Document {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use tubewright::job::ArtworkFile;
 
     fn named(document: &mut Document, name: &str) {
         document.edit_job("name", "Name", |job| name.clone_into(&mut job.name));
@@ -371,6 +408,50 @@ mod tests {
             back.undo();
         }
         assert_eq!(back.job().name, "24", "undo ends at the oldest step kept");
+    }
+
+    #[test]
+    fn a_drawing_is_stored_once_however_many_steps_hold_it() {
+        let (mut kept, mut document) = (Kept::new(), fresh());
+        let drawing = format!("<svg>{}</svg>", " ".repeat(10_000));
+        document.edit_job("open", "Open artwork", |job| {
+            job.artwork.push(ArtworkFile {
+                name: "a.svg".to_owned(),
+                text: drawing.as_str().into(),
+            });
+        });
+        document.settle();
+        for name in ["A", "B", "C"] {
+            named(&mut document, name);
+            document.settle();
+            stored(&mut kept, &mut document);
+        }
+        let bytes: usize = kept.values().map(String::len).sum();
+        assert!(
+            bytes < 20_000,
+            "stored {bytes} bytes for a drawing of {}",
+            drawing.len()
+        );
+        let (mut back, trouble) = Document::restore(&kept, Job::default(), Book::default());
+        assert_eq!(trouble, Vec::<String>::new(), "all of it can be read");
+        assert_eq!(
+            &*back.job().artwork[0].text,
+            drawing,
+            "the drawing is whole"
+        );
+        back.undo();
+        assert_eq!(&*back.job().artwork[0].text, drawing, "and in every step");
+
+        // Without any step or job that holds it, its record goes at the next start.
+        let mut bare = kept.clone();
+        bare.retain(|name, _| !name.starts_with("step-") && name != "job" && name != "state");
+        let (mut after, _) = Document::restore(&bare, Job::default(), Book::default());
+        stored(&mut bare, &mut after);
+        assert!(
+            !bare.keys().any(|name| name.starts_with("file-")),
+            "{:?}",
+            bare.keys()
+        );
     }
 
     #[test]

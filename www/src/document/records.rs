@@ -1,8 +1,11 @@
-//! The document as named records: `job`, `book`, `state`, and `step-<number>` for each step.
+//! The document as named records: `job`, `book`, `state`, `step-<number>` for each step, and
+//! `file-<mark>` for each artwork file, so that a large drawing is stored once and not with every
+//! step that holds it.
 
 use std::collections::HashMap;
 
 use serde::{Deserialize, Serialize};
+use tubewright::job::ArtworkFile;
 use tubewright::{Book, Job, book, job};
 
 use super::history::{Change, Step};
@@ -43,7 +46,55 @@ fn write(name: impl Into<String>, value: String) -> Write {
 }
 
 pub(super) fn job(job: &Job) -> Write {
-    write("job", job::write(job))
+    write("job", job::write(&light(job)))
+}
+
+/// What stands in a record in place of an artwork's text: no drawing begins so.
+const ELSEWHERE: &str = "in record ";
+const FILE: &str = "file-";
+
+/// Name of the record of a text: FNV-1a over it, and its length. Two texts of one name would have
+/// to be made on purpose, by the person whose device it is.
+fn file_name(text: &str) -> String {
+    let mark = text.bytes().fold(0xcbf2_9ce4_8422_2325_u64, |mark, byte| {
+        (mark ^ u64::from(byte)).wrapping_mul(0x0100_0000_01b3)
+    });
+    format!("{FILE}{mark:016x}-{}", text.len())
+}
+
+/// The records of a job's artwork files.
+pub(super) fn files(job: &Job) -> Vec<Write> {
+    let file = |file: &ArtworkFile| write(file_name(&file.text), file.text.to_string());
+    job.artwork.iter().map(file).collect()
+}
+
+/// Whether a record is that of an artwork file.
+pub(super) fn is_file(name: &str) -> bool {
+    name.starts_with(FILE)
+}
+
+/// The job with its artwork's texts elsewhere.
+fn light(job: &Job) -> Job {
+    let mut light = job.clone();
+    for file in &mut light.artwork {
+        file.text = format!("{ELSEWHERE}{}", file_name(&file.text)).into();
+    }
+    light
+}
+
+/// The job with its artwork's texts again; a text that is lost stays the name of its record, which
+/// then is an artwork that cannot be read.
+fn whole(mut job: Job, kept: &Kept) -> Job {
+    for file in &mut job.artwork {
+        let text = file
+            .text
+            .strip_prefix(ELSEWHERE)
+            .and_then(|name| kept.get(name));
+        if let Some(text) = text {
+            file.text = text.as_str().into();
+        }
+    }
+    job
 }
 
 pub(super) fn book(book: &Book) -> Write {
@@ -59,7 +110,7 @@ pub(super) fn state(first: u64, done: usize, steps: usize) -> Write {
 
 pub(super) fn step(number: u64, step: &Step) -> Write {
     let (job, book) = match &step.change {
-        Change::Job(both) => (Some((**both).clone()), None),
+        Change::Job(both) => (Some((light(&both.0), light(&both.1))), None),
         Change::Book(both) => (None, Some((**both).clone())),
     };
     let record = StepRecord {
@@ -112,7 +163,7 @@ pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
         for number in (state.first..).take(state.steps) {
             let Some(step) = kept
                 .get(&step_name(number))
-                .and_then(|text| read_step(text))
+                .and_then(|text| read_step(text, kept))
             else {
                 trouble.push(
                     "A part of the undo history could not be read and was let go.".to_owned(),
@@ -125,7 +176,7 @@ pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
         }
     }
     match kept.get("job").map(|text| job::read(text)) {
-        Some(Ok(job)) => found.job = Some(job),
+        Some(Ok(job)) => found.job = Some(whole(job, kept)),
         Some(Err(why)) => {
             let done = found.done.min(found.steps.len());
             found.job = found.steps[..done]
@@ -167,10 +218,12 @@ pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
     (found, trouble)
 }
 
-fn read_step(text: &str) -> Option<Step> {
+fn read_step(text: &str, kept: &Kept) -> Option<Step> {
     let record: StepRecord = serde_json::from_str(text).ok()?;
     let change = match (record.job, record.book) {
-        (Some(both), None) => Change::Job(Box::new(both)),
+        (Some((before, after)), None) => {
+            Change::Job(Box::new((whole(before, kept), whole(after, kept))))
+        }
         (None, Some(both)) => Change::Book(Box::new(both)),
         _ => return None,
     };

@@ -1,11 +1,14 @@
 //! Taking a file from the browser and putting what it holds on the desk.
 
 use leptos::prelude::*;
+use tubewright::drawing::Artwork;
+use tubewright::job::{ArtworkFile, ArtworkLines, ArtworkRow, Row};
 use wasm_bindgen::JsCast;
 use wasm_bindgen_futures::JsFuture;
 
 use super::read::{Opened, merge, read};
 use crate::desk::{Desk, Where};
+use crate::places::usual_tube;
 
 /// The file of an input element was chosen.
 pub fn choose(desk: Desk, event: &web_sys::Event) {
@@ -83,6 +86,7 @@ pub fn put(desk: Desk, opened: Opened) {
             });
             told(desk, "supplies", counted, trouble);
         }
+        Opened::Artwork(file) => artwork(desk, file),
         Opened::Tubes(entries, trouble) => {
             let mut counted = (0, 0);
             desk.edit_book("open", "Take in tube types", |book| {
@@ -93,6 +97,58 @@ pub fn put(desk: Desk, opened: Opened) {
     }
     desk.settle();
     desk.turn();
+}
+
+/// Puts an artwork into the job, with a row of its own. Lines of one kind get the usual tube; where
+/// there are more kinds a person says what each is.
+fn artwork(desk: Desk, mut file: ArtworkFile) {
+    let taken = desk.job.with_untracked(|job| {
+        job.artwork
+            .iter()
+            .map(|file| file.name.clone())
+            .collect::<Vec<_>>()
+    });
+    let wanted = file.name.clone();
+    let mut number = 2;
+    while taken.contains(&file.name) {
+        file.name = format!("{number} {wanted}");
+        number += 1;
+    }
+    let tube = usual_tube(desk);
+    let groups = tubewright::takeoff::artwork(&file)
+        .as_ref()
+        .as_ref()
+        .map(Artwork::groups)
+        .unwrap_or_default();
+    let lines = match groups.as_slice() {
+        [only] => vec![ArtworkLines {
+            colour: only.colour.clone(),
+            layer: only.layer.clone(),
+            tube,
+        }],
+        _ => Vec::new(),
+    };
+    let row = Row::Artwork(ArtworkRow {
+        label: wanted
+            .rsplit_once('.')
+            .map_or(wanted.as_str(), |(name, _)| name)
+            .to_owned(),
+        file: file.name.clone(),
+        width: String::new(),
+        lines,
+        count: 1,
+    });
+    let kinds = groups.len();
+    desk.edit_job("open", "Take in artwork", |job| {
+        job.artwork.push(file);
+        job.rows.push(row);
+    });
+    desk.place.set(Where::Sign);
+    desk.tell(if kinds > 1 {
+        format!("“{wanted}” is in the sign, with {kinds} kinds of lines: say below what each is made of.")
+    } else {
+        format!("“{wanted}” is in the sign.")
+    });
 }
 
 fn told(desk: Desk, what: &str, (replaced, added): (usize, usize), mut trouble: Vec<String>) {

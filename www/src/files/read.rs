@@ -1,6 +1,8 @@
 //! What a file holds.
 
 use tubewright::book::{SupplyEntry, TubeEntry, read_supplies, read_tubes};
+use tubewright::drawing::{self, Artwork};
+use tubewright::job::ArtworkFile;
 use tubewright::measure::quoted;
 use tubewright::{Book, Job, book, job};
 
@@ -18,6 +20,8 @@ pub enum Opened {
     Supplies(Vec<SupplyEntry>, Vec<String>),
     /// Tube types, likewise.
     Tubes(Vec<TubeEntry>, Vec<String>),
+    /// Artwork, to be put into the open job.
+    Artwork(ArtworkFile),
 }
 
 /// Reads a file by what is in it; its name serves only the sentences.
@@ -52,6 +56,23 @@ pub fn read(name: &str, bytes: &[u8]) -> Result<Opened, String> {
                 .map_err(told)
         };
     }
+    if start.starts_with(b"<") {
+        let text = core::str::from_utf8(bytes)
+            .map_err(|error| told(format!("It is not UTF-8 text: {error}.")))?;
+        return artwork(name, text, drawing::svg::read(text)).map_err(told);
+    }
+    let drawn = std::path::Path::new(name)
+        .extension()
+        .is_some_and(|ending| ending.eq_ignore_ascii_case("dxf"));
+    if drawn || start.starts_with(b"0\n") || start.starts_with(b"0\r\n") {
+        let read = drawing::dxf::read(bytes);
+        // Older files are not UTF-8; the names of their layers are then read as Latin-1.
+        let text = core::str::from_utf8(bytes).map_or_else(
+            |_| bytes.iter().copied().map(char::from).collect(),
+            str::to_owned,
+        );
+        return artwork(name, &text, read).map_err(told);
+    }
     let line = start
         .split(|&byte| byte == b'\n')
         .next()
@@ -73,10 +94,21 @@ pub fn read(name: &str, bytes: &[u8]) -> Result<Opened, String> {
         Err(told(
             "It is neither a job or shop book of this program (JSON), nor a list of supplies or \
              tube types (CSV with column names such as name, no_load_volts or outer_mm in its \
-             first line)."
+             first line), nor artwork (SVG or DXF)."
                 .to_owned(),
         ))
     }
+}
+
+/// Artwork that was read well enough to be of use.
+fn artwork(name: &str, text: &str, read: Result<Artwork, String>) -> Result<Opened, String> {
+    if read?.strokes.is_empty() {
+        return Err("It has no lines that can be measured.".to_owned());
+    }
+    Ok(Opened::Artwork(ArtworkFile {
+        name: name.to_owned(),
+        text: text.into(),
+    }))
 }
 
 /// Whether a JSON text says it is a book; anything unclear is left for the job reader to explain.
@@ -176,7 +208,7 @@ mod tests {
             "a picture"
         );
         assert!(
-            why("x.csv", b"name,no_load_volts\n").contains("no lines"),
+            why("x.csv", b"name,no_load_volts\n").contains("nothing under it"),
             "a list of nothing"
         );
         let newer = "{\"tubewright\":\"book\",\"version\":9,\"name\":\"x\"}";

@@ -17,5 +17,6 @@ pub use frame::Frame;
 pub use glass::Glass;
 pub use price::Price;
 pub use rows::Rows;
+pub(crate) use rows::usual_tube;
 pub use shop_book::ShopBook;
 pub use sign::Sign;

@@ -3,17 +3,20 @@
 use leptos::prelude::*;
 use tubewright::Job;
 use tubewright::drawing::faces;
-use tubewright::job::{Row, StrokesRow, TextRow};
+use tubewright::job::{ArtworkLines, ArtworkRow, Row, StrokesRow, TextRow};
 use tubewright::measure::{
-    LETTER_HEIGHT_MM, PIECE_LENGTH_MM, Units, glass, length, quoted, with_units,
+    LETTER_HEIGHT_MM, Length, LengthUnit, PIECE_LENGTH_MM, Units, glass, length, length_shown,
+    quoted, with_units,
 };
 use tubewright::rules::Place;
+use tubewright::takeoff::artwork;
 
 use super::fields::{Choice, Field, always};
 use super::findings::{line, many};
 use wasm_bindgen::JsCast;
 
 use crate::desk::{Desk, desk};
+use crate::files;
 
 /// All rows, and the buttons that add one.
 #[component]
@@ -33,6 +36,15 @@ pub fn Rows() -> impl IntoView {
             <div class="buttons">
                 <button class="act" on:click=move |_| add(desk, true)>"+ Word"</button>
                 <button class="act" on:click=move |_| add(desk, false)>"+ Strokes"</button>
+                <label class="button act">
+                    "+ Artwork file"
+                    <input
+                        class="unseen"
+                        type="file"
+                        accept=".svg,.dxf,image/svg+xml"
+                        on:change=move |event| files::choose(desk, &event)
+                    />
+                </label>
             </div>
         </section>
     }
@@ -40,21 +52,11 @@ pub fn Rows() -> impl IntoView {
 
 /// A new row takes height, face and tube of the last of its kind.
 fn add(desk: Desk, text: bool) {
-    let tube = desk
-        .job
-        .with_untracked(|job| job.rows.last().map(|row| row.tube().to_owned()));
-    let tube = tube.unwrap_or_else(|| {
-        desk.book.with_untracked(|book| {
-            book.tubes
-                .first()
-                .map(|tube| tube.name.clone())
-                .unwrap_or_default()
-        })
-    });
+    let tube = usual_tube(desk);
     let last = desk.job.with_untracked(|job| {
         job.rows.iter().rev().find_map(|row| match row {
             Row::Text(row) => Some(row.clone()),
-            Row::Strokes(_) => None,
+            Row::Strokes(_) | Row::Artwork(_) => None,
         })
     });
     let inches = desk.units.get_untracked() == Units::FeetInches;
@@ -94,6 +96,22 @@ fn add(desk: Desk, text: bool) {
     });
 }
 
+/// The tube a new row begins with: that of the last row, else the first of the book.
+pub(crate) fn usual_tube(desk: Desk) -> String {
+    let last = desk.job.with_untracked(|job| {
+        let tubes = job.rows.iter().rev().flat_map(Row::tubes);
+        tubes.map(str::to_owned).next()
+    });
+    last.unwrap_or_else(|| {
+        desk.book.with_untracked(|book| {
+            book.tubes
+                .first()
+                .map(|tube| tube.name.clone())
+                .unwrap_or_default()
+        })
+    })
+}
+
 /// What a field of a row reads and writes.
 fn part<T: Default>(job: &Job, at: usize, get: impl Fn(&Row) -> T) -> T {
     job.rows.get(at).map(get).unwrap_or_default()
@@ -108,12 +126,22 @@ fn edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut Row)) {
     });
 }
 
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+enum Kind {
+    Text,
+    Strokes,
+    Artwork,
+}
+
 #[component]
 fn RowCard(at: usize) -> impl IntoView {
     let desk = desk();
-    let is_text = Memo::new(move |_| {
-        desk.job
-            .with(|job| matches!(job.rows.get(at), Some(Row::Text(_))))
+    let kind = Memo::new(move |_| {
+        desk.job.with(|job| match job.rows.get(at) {
+            Some(Row::Text(_)) => Kind::Text,
+            Some(Row::Artwork(_)) => Kind::Artwork,
+            _ => Kind::Strokes,
+        })
     });
     let read = move |get: fn(&Row) -> String| {
         Signal::derive(move || desk.job.with(|job| part(job, at, get)))
@@ -128,9 +156,7 @@ fn RowCard(at: usize) -> impl IntoView {
     });
     let colour = Memo::new(move |_| {
         desk.results.with(|results| {
-            let name = desk
-                .job
-                .with(|job| part(job, at, |row| row.tube().to_owned()));
+            let name = desk.job.with(|job| part(job, at, first_tube));
             results
                 .tubes
                 .iter()
@@ -145,11 +171,12 @@ fn RowCard(at: usize) -> impl IntoView {
                 <span class="dot" style:background=move || colour.get().unwrap_or_default()></span>
                 <Choice
                     label="Tube"
-                    value=read(|row| row.tube().to_owned())
+                    value=read(first_tube)
                     options=tubes
                     commit=move |name: String| edit(desk, at, "tube", |row| match row {
                         Row::Text(row) => row.tube = name,
                         Row::Strokes(row) => row.tube = name,
+                        Row::Artwork(_) => {}
                     })
                 />
             </div>
@@ -173,6 +200,7 @@ fn RowCard(at: usize) -> impl IntoView {
                     edit(desk, at, "times", |row| match row {
                         Row::Text(row) => row.count = count,
                         Row::Strokes(row) => row.count = count,
+                        Row::Artwork(row) => row.count = count,
                     });
                     Ok(())
                 }
@@ -202,7 +230,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 example="200 mm"
                 value=read(|row| match row {
                     Row::Text(row) => row.height.clone(),
-                    Row::Strokes(_) => String::new(),
+                    Row::Strokes(_) | Row::Artwork(_) => String::new(),
                 })
                 commit=move |typed: String| {
                     let typed = with_units(typed.trim(), desk.bare());
@@ -215,7 +243,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 class="narrow"
                 value=read(|row| match row {
                     Row::Text(row) => row.face.clone(),
-                    Row::Strokes(_) => String::new(),
+                    Row::Strokes(_) | Row::Artwork(_) => String::new(),
                 })
                 options=Signal::derive(|| {
                     faces().iter().map(|face| (face.name.to_owned(), face.name.to_owned())).collect()
@@ -250,7 +278,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 example="1200 mm; 2 x 300 mm + 95 mm"
                 value=read(|row| match row {
                     Row::Strokes(row) => row.strokes.clone(),
-                    Row::Text(_) => String::new(),
+                    Row::Text(_) | Row::Artwork(_) => String::new(),
                 })
                 commit=move |typed: String| {
                     let typed = with_units(typed.trim(), desk.bare());
@@ -303,8 +331,11 @@ fn RowCard(at: usize) -> impl IntoView {
     view! {
         <li class="row" data-row=at.to_string()>
             <div class="row-fields">
-                {move || if is_text.get() { text_fields().into_any() } else { stroke_fields().into_any() }}
-                {tube()}
+                {move || match kind.get() {
+                    Kind::Text => view! { {text_fields()} {tube()} }.into_any(),
+                    Kind::Strokes => view! { {stroke_fields()} {tube()} }.into_any(),
+                    Kind::Artwork => view! { <ArtworkFields at=at/> }.into_any(),
+                }}
                 {times()}
             </div>
             <div class="row-foot">
@@ -329,6 +360,153 @@ fn RowCard(at: usize) -> impl IntoView {
             </div>
             {said}
         </li>
+    }
+}
+
+fn first_tube(row: &Row) -> String {
+    row.tubes().first().copied().unwrap_or_default().to_owned()
+}
+
+/// The words of the choice that lines are not tube; no tube type has an empty name.
+const NO_TUBE: &str = "not tube";
+
+/// An artwork: how wide it is made, and what each kind of its lines is.
+#[component]
+fn ArtworkFields(at: usize) -> impl IntoView {
+    let desk = desk();
+    let row = Memo::new(move |_| {
+        desk.job.with(|job| match job.rows.get(at) {
+            Some(Row::Artwork(row)) => Some(row.clone()),
+            _ => None,
+        })
+    });
+    let read = Memo::new(move |_| {
+        let name = row.get()?.file;
+        desk.job.with(|job| {
+            let file = job.artwork.iter().find(|file| file.name == name)?;
+            let art = artwork(file);
+            let art = art.as_ref().as_ref().ok()?;
+            Some((art.groups(), art.mm_per_unit, art.bounds.width()))
+        })
+    });
+    let mm_per_unit = move || {
+        let (_, own, wide) = read.get()?;
+        let typed = row.get()?.width;
+        match length(&typed, LengthUnit::Millimetres) {
+            Ok(width) if wide > 0.0 => Some(width.length().mm() / wide),
+            _ => own,
+        }
+    };
+    let own_width = move || {
+        read.get()
+            .and_then(|(_, mm, wide)| Some(Length::from_mm(mm? * wide)))
+            .map_or_else(
+                || "the file does not say".to_owned(),
+                |wide| format!("as in the file, {}", length_shown(wide, desk.units.get())),
+            )
+    };
+    let change = move |field: &str, change: &dyn Fn(&mut ArtworkRow)| {
+        edit(desk, at, field, |row| {
+            if let Row::Artwork(row) = row {
+                change(row);
+            }
+        });
+    };
+    let options = Signal::derive(move || {
+        let mut options = vec![(NO_TUBE.to_owned(), NO_TUBE.to_owned())];
+        desk.book.with(|book| {
+            options.extend(
+                book.tubes
+                    .iter()
+                    .map(|tube| (tube.name.clone(), tube.name.clone())),
+            );
+        });
+        options
+    });
+    let groups = move || {
+        let (groups, ..) = read.get()?;
+        let lines: Vec<_> = groups
+            .into_iter()
+            .map(|group| {
+                let (colour, layer) = (group.colour.clone(), group.layer.clone());
+                let same = {
+                    let (colour, layer) = (colour.clone(), layer.clone());
+                    move |lines: &ArtworkLines| lines.colour == colour && lines.layer == layer
+                };
+                let value = {
+                    let same = same.clone();
+                    Signal::derive(move || {
+                        let row = row.get()?;
+                        let lines = row.lines.iter().find(|lines| same(lines))?;
+                        Some(if lines.tube.is_empty() { NO_TUBE.to_owned() } else { lines.tube.clone() })
+                    })
+                };
+                let commit = move |name: String| {
+                    let tube = if name == NO_TUBE { String::new() } else { name };
+                    change("lines", &|row| match row.lines.iter_mut().find(|lines| same(lines)) {
+                        Some(lines) => lines.tube.clone_from(&tube),
+                        None => row.lines.push(ArtworkLines {
+                            colour: colour.clone(),
+                            layer: layer.clone(),
+                            tube: tube.clone(),
+                        }),
+                    });
+                };
+                let called = [
+                    group.layer.clone().map(|layer| format!("Layer {layer}")),
+                    group.colour.clone(),
+                ];
+                let called: Vec<String> = called.into_iter().flatten().collect();
+                let called = if called.is_empty() { "Lines".to_owned() } else { called.join(", ") };
+                let long = move || {
+                    mm_per_unit().map_or_else(String::new, |mm| {
+                        format!(", {}", glass(Length::from_mm(group.length * mm), desk.units.get()))
+                    })
+                };
+                let count = format!("{}{}", group.strokes, many(group.strokes, " line", " lines"));
+                view! {
+                    <li>
+                        <span class="dot" style:background=group.colour.clone().unwrap_or_default()></span>
+                        <Choice
+                            label=called
+                            value=Signal::derive(move || value.get().unwrap_or_default())
+                            options=options
+                            commit=commit
+                        />
+                        <span class="quiet">{count}{long}</span>
+                    </li>
+                }
+            })
+            .collect();
+        Some(lines)
+    };
+    view! {
+        <Field
+            label="What it is"
+            class="narrow"
+            live=always()
+            value=Signal::derive(move || row.get().map(|row| row.label).unwrap_or_default())
+            commit=move |typed: String| {
+                change("label", &|row| row.label.clone_from(&typed));
+                Ok(())
+            }
+        />
+        <label class="field narrow">
+            <span class="caption">"File"</span>
+            <input type="text" readonly=true prop:value=move || row.get().map(|row| row.file).unwrap_or_default()/>
+        </label>
+        <Field
+            label="Make it this wide"
+            class="narrow"
+            value=Signal::derive(move || row.get().map(|row| row.width).unwrap_or_default())
+            commit=move |typed: String| {
+                let typed = with_units(typed.trim(), desk.bare());
+                change("width", &|row| row.width.clone_from(&typed));
+                Ok(())
+            }
+        />
+        <p class="quiet artwork-size">"Left empty: "{own_width}"."</p>
+        <ul class="artwork-lines">{groups}</ul>
     }
 }
 
@@ -359,6 +537,12 @@ fn remove(desk: Desk, at: usize) {
     desk.edit_job("remove", &format!("Remove row {}", at + 1), |job| {
         if at < job.rows.len() {
             job.rows.remove(at);
+            // A file no row takes lines from any more is let go; undo brings it back.
+            let rows = &job.rows;
+            job.artwork.retain(|file| {
+                rows.iter()
+                    .any(|row| matches!(row, Row::Artwork(row) if row.file == file.name))
+            });
         }
     });
     desk.turn();

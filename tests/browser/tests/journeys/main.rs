@@ -1,5 +1,6 @@
 //! Journeys through the built page, one file for each thing a person comes for.
 
+mod artwork;
 mod bad_files;
 mod care;
 mod demo;

@@ -31,9 +31,13 @@ fn a_supply_typed_in_from_its_nameplate_is_used() {
         page.see("cannot be used").await?;
         page.type_in("No-load volts, V", "9000").await?;
         page.type_in("Short-circuit current, mA", "thirty").await?;
-        page.see("Expected a number such as 12.5, but found “thirty”.")
+        page.see("Expected a number such as 450, but found “thirty”")
             .await?;
         page.type_in("Short-circuit current, mA", "30").await?;
+        // What the plate does not say is not taken for granted: kind and earthing are asked for.
+        page.see("The earthing of the output is not given").await?;
+        page.choose("Kind", "iron transformer").await?;
+        page.choose("Output", "mid-point earthed").await?;
         page.see_no("cannot be used").await?;
         page.choose("Made for", "wet, in the rain").await?;
         page.go("Sign").await?;

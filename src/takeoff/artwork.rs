@@ -1,0 +1,330 @@
+//! A row of artwork: the lines of a file, at the wanted size, as pieces of glass.
+//!
+//! Lines of one tube that touch at their ends are one piece; each piece is run through like a
+//! letter. Lines that touch elsewhere than at an end, as the bar of a T does, stay pieces of their
+//! own.
+
+use std::cell::RefCell;
+use std::collections::HashMap;
+use std::rc::Rc;
+use std::sync::Arc;
+
+use kurbo::{Affine, BezPath, Point, Rect, Shape};
+
+use super::finding;
+use super::pieces::{Drawn, Made};
+use super::route::{ends, route};
+use crate::drawing::{ArtGroup, Artwork, dxf, svg};
+use crate::job::{ArtworkFile, ArtworkRow};
+use crate::measure::{self, LengthUnit, Limit};
+use crate::rules::Finding;
+
+/// Ends nearer than this are one place: less than glass can be bent to.
+const TOUCH_MM: f64 = 0.5;
+/// A piece of more lines than this is run through as drawn: no shorter way is looked for.
+const MOST_ROUTED: usize = 120;
+/// Files remembered once read.
+const REMEMBERED: usize = 6;
+
+/// The wanted width of an artwork.
+const WIDTH_MM: Limit = Limit {
+    name: "the artwork's width",
+    least: 10.0,
+    most: 50_000.0,
+    unit: "mm",
+    why: "smaller cannot be bent in glass, larger is planned as several jobs",
+};
+
+type Read = Rc<Result<Artwork, String>>;
+
+thread_local! {
+    // Reading a large drawing takes longer than all the rest of a work-up, and the same file is
+    // read at every keystroke. What is remembered is what reading it again would give.
+    static READ: RefCell<Vec<(Arc<str>, Read)>> = const { RefCell::new(Vec::new()) };
+}
+
+/// What an artwork file holds; a sentence where it cannot be read.
+pub fn artwork(file: &ArtworkFile) -> Read {
+    READ.with_borrow_mut(|known| {
+        let same = |text: &Arc<str>| Arc::ptr_eq(text, &file.text) || *text == file.text;
+        if let Some(at) = known.iter().position(|(text, _)| same(text)) {
+            return known[at].1.clone();
+        }
+        // An SVG file is XML and begins with it; DXF begins with a group code.
+        let read = if file
+            .text
+            .trim_start_matches('\u{feff}')
+            .trim_start()
+            .starts_with('<')
+        {
+            svg::read(&file.text)
+        } else {
+            dxf::read(file.text.as_bytes())
+        };
+        let read = Rc::new(read);
+        known.insert(0, (file.text.clone(), read.clone()));
+        known.truncate(REMEMBERED);
+        read
+    })
+}
+
+/// Takes a row of artwork off.
+pub(super) fn row(
+    at: usize,
+    row: &ArtworkRow,
+    files: &[ArtworkFile],
+    findings: &mut Vec<Finding>,
+) -> Made {
+    let Some(file) = files.iter().find(|file| file.name == row.file) else {
+        findings.push(finding::no_artwork(at, &row.file));
+        return Made::default();
+    };
+    let read = artwork(file);
+    let art = match &*read {
+        Ok(art) => art,
+        Err(why) => {
+            findings.push(finding::bad_artwork(at, &file.name, why));
+            return Made::default();
+        }
+    };
+    findings.extend(finding::unread(at, &art.unread));
+    let Some(mm_per_unit) = size(at, row, art, findings) else {
+        return Made::default();
+    };
+    let mut made = Made::default();
+    let mut bounds: Option<Rect> = None;
+    for group in art.groups() {
+        let Some(lines) = row
+            .lines
+            .iter()
+            .find(|lines| lines.colour == group.colour && lines.layer == group.layer)
+        else {
+            findings.push(finding::undecided(at, &group, mm_per_unit));
+            continue;
+        };
+        if lines.tube.is_empty() {
+            continue;
+        }
+        if group.filled > 0 {
+            findings.push(finding::filled(at, &group));
+        }
+        for strokes in runs(art, &group, mm_per_unit) {
+            for stroke in &strokes {
+                let here = stroke.bounding_box();
+                bounds = Some(bounds.map_or(here, |all| all.union(here)));
+            }
+            let way = if strokes.len() > MOST_ROUTED {
+                super::route::as_drawn(&strokes)
+            } else {
+                route(&strokes)
+            };
+            let label = match row.label.trim() {
+                "" => format!("line {}", made.pieces.len() + 1),
+                label => format!("{label} {}", made.pieces.len() + 1),
+            };
+            made.pieces
+                .push(Drawn::new(label, strokes, way).of(&lines.tube));
+        }
+    }
+    made.bounds = bounds.unwrap_or(Rect::ZERO);
+    made
+}
+
+/// Millimetres in a unit of the artwork at the wanted size.
+fn size(at: usize, row: &ArtworkRow, art: &Artwork, findings: &mut Vec<Finding>) -> Option<f64> {
+    if art.strokes.is_empty() {
+        findings.push(finding::empty_artwork(at));
+        return None;
+    }
+    if row.width.trim().is_empty() {
+        let wide = art
+            .mm_per_unit
+            .map(|mm| mm * art.bounds.width().max(art.bounds.height()));
+        return match (art.mm_per_unit, wide) {
+            (Some(mm), Some(wide)) if WIDTH_MM.holds(wide) => Some(mm),
+            (Some(_), Some(wide)) => {
+                findings.push(finding::outside(at, None, &WIDTH_MM, wide));
+                None
+            }
+            _ => {
+                findings.push(finding::no_size(at));
+                None
+            }
+        };
+    }
+    match measure::length(&row.width, LengthUnit::Millimetres) {
+        Ok(wide) if WIDTH_MM.holds(wide.length().mm()) => {
+            if art.bounds.width() > 0.0 {
+                Some(wide.length().mm() / art.bounds.width())
+            } else {
+                findings.push(finding::no_width(at));
+                None
+            }
+        }
+        Ok(wide) => {
+            findings.push(finding::outside(at, None, &WIDTH_MM, wide.length().mm()));
+            None
+        }
+        Err(error) => {
+            findings.push(finding::unreadable(at, "Width", &error));
+            None
+        }
+    }
+}
+
+/// The lines of a group at their size, those that touch at their ends together.
+fn runs(art: &Artwork, group: &ArtGroup, mm_per_unit: f64) -> Vec<Vec<BezPath>> {
+    let place = Affine::scale(mm_per_unit);
+    let strokes: Vec<BezPath> = art
+        .of_group(group)
+        .map(|stroke| place * &stroke.path)
+        .collect();
+    let mut run: Vec<usize> = (0..strokes.len()).collect();
+    // Ends by the square they lie in; what is near lies in the same or a neighbouring one.
+    let mut squares: HashMap<(i64, i64), Vec<(Point, usize)>> = HashMap::new();
+    #[allow(
+        clippy::cast_possible_truncation,
+        reason = "a cast to i64 stops at its limits"
+    )]
+    let square = |point: Point| ((point.x / TOUCH_MM) as i64, (point.y / TOUCH_MM) as i64);
+    for (at, stroke) in strokes.iter().enumerate() {
+        for end in ends(stroke) {
+            let (x, y) = square(end);
+            for near_x in x.saturating_sub(1)..=x.saturating_add(1) {
+                for near_y in y.saturating_sub(1)..=y.saturating_add(1) {
+                    for &(other, of) in squares.get(&(near_x, near_y)).into_iter().flatten() {
+                        if other.distance(end) <= TOUCH_MM {
+                            join(&mut run, at, of);
+                        }
+                    }
+                }
+            }
+            squares.entry((x, y)).or_default().push((end, at));
+        }
+    }
+    let mut runs: Vec<(usize, Vec<BezPath>)> = Vec::new();
+    let mut known: HashMap<usize, usize> = HashMap::new();
+    for (at, stroke) in strokes.into_iter().enumerate() {
+        let root = root(&mut run, at);
+        let slot = *known.entry(root).or_insert_with(|| {
+            runs.push((root, Vec::new()));
+            runs.len() - 1
+        });
+        runs[slot].1.push(stroke);
+    }
+    runs.into_iter().map(|(_, strokes)| strokes).collect()
+}
+
+fn root(run: &mut [usize], mut at: usize) -> usize {
+    while run[at] != at {
+        run[at] = run[run[at]];
+        at = run[at];
+    }
+    at
+}
+
+fn join(run: &mut [usize], a: usize, b: usize) {
+    let (a, b) = (root(run, a), root(run, b));
+    // The earlier line names the run, so that runs keep the order of the file.
+    run[a.max(b)] = a.min(b);
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::job::ArtworkLines;
+    use crate::rules::{Finding, Grade};
+
+    const ART: &str = r##"<svg xmlns="http://www.w3.org/2000/svg" width="100mm" height="50mm" viewBox="0 0 100 50">
+        <path stroke="#ff0000" fill="none" d="M0 0 H40"/>
+        <path stroke="#ff0000" fill="none" d="M40 0 V30"/>
+        <path stroke="#ff0000" fill="none" d="M60 0 H100"/>
+        <circle stroke="#0000ff" fill="none" cx="50" cy="25" r="10"/>
+        <text x="1" y="1">hello</text></svg>"##;
+
+    fn made(width: &str, lines: Vec<ArtworkLines>) -> (Made, Vec<Finding>) {
+        let files = [ArtworkFile {
+            name: "a.svg".to_owned(),
+            text: ART.into(),
+        }];
+        let taken = ArtworkRow {
+            label: "Ornament".to_owned(),
+            file: "a.svg".to_owned(),
+            width: width.to_owned(),
+            lines,
+            count: 1,
+        };
+        let mut findings = Vec::new();
+        (row(0, &taken, &files, &mut findings), findings)
+    }
+
+    fn lines(colour: &str, tube: &str) -> ArtworkLines {
+        ArtworkLines {
+            colour: Some(colour.to_owned()),
+            layer: None,
+            tube: tube.to_owned(),
+        }
+    }
+
+    #[test]
+    fn lines_that_touch_are_one_piece_at_the_wanted_size() {
+        let (made, findings) = made(
+            "1000 mm",
+            vec![
+                lines("#ff0000", "12 mm neon"),
+                lines("#0000ff", "10 mm blue"),
+            ],
+        );
+        let lit: Vec<f64> = made
+            .pieces
+            .iter()
+            .map(|piece| piece.lit_mm.round())
+            .collect();
+        // Ten times the file: 40 + 30 joined at the corner, 40 alone, a circle of 10 round.
+        assert_eq!(lit, [700.0, 400.0, (200.0 * std::f64::consts::PI).round()]);
+        assert!(
+            (made.pieces[2].lit_mm - 200.0 * std::f64::consts::PI).abs() < 1e-6,
+            "exact"
+        );
+        assert_eq!(
+            made.pieces[2].tube.as_deref(),
+            Some("10 mm blue"),
+            "its own tube"
+        );
+        let unread: Vec<&Finding> = findings
+            .iter()
+            .filter(|f| f.says.contains("text"))
+            .collect();
+        assert_eq!(unread.len(), 1, "the text is told of: {findings:?}");
+    }
+
+    #[test]
+    fn what_is_not_decided_is_asked_and_what_is_no_tube_is_left_out() {
+        let (made, findings) = made("", vec![lines("#0000ff", "")]);
+        assert_eq!(made.pieces.len(), 0, "nothing is tube yet");
+        let asked: Vec<&Finding> = findings
+            .iter()
+            .filter(|f| f.says.contains("#ff0000"))
+            .collect();
+        assert_eq!(
+            asked.len(),
+            1,
+            "red is asked for, blue is decided: {findings:?}"
+        );
+        assert_eq!(asked[0].grade, Grade::Look, "a person decides");
+    }
+
+    #[test]
+    fn a_width_that_cannot_be_gets_a_sentence() {
+        for (width, says) in [("2 km", "expected"), ("1 mm", "width"), ("60 m", "width")] {
+            let (made, findings) = made(width, vec![lines("#ff0000", "t")]);
+            assert!(made.pieces.is_empty(), "{width}: nothing is made");
+            assert!(
+                findings
+                    .iter()
+                    .any(|f| f.grade == Grade::Stop && f.says.contains(says)),
+                "{width}: {findings:?}"
+            );
+        }
+    }
+}
