@@ -11,7 +11,9 @@ mod show;
 
 pub use limits::{COUNT, LETTER_HEIGHT_MM, Limit, PIECE_LENGTH_MM, PIECES, ROWS, TEXT_CHARACTERS};
 pub use quantity::{Length, Milliamps, Volts};
-pub use read::{ExactLength, LengthUnit, ReadError, figure, length, money, quoted, with_units};
+pub use read::{
+    ExactLength, LengthUnit, ReadError, figure, length, money, quoted, repeated, with_units,
+};
 pub(crate) use show::small_first;
 pub use show::{
     Units, glass, grouped, length_exact, length_shown, milliamps_shown, told_from, volts_shown,

@@ -18,7 +18,7 @@ use core::fmt;
 use core::ops::Range;
 
 use num_rational::Ratio;
-use num_traits::{CheckedAdd, CheckedMul, Zero};
+use num_traits::{CheckedAdd, CheckedMul, One, Zero};
 use rust_decimal::Decimal;
 
 use super::Length;
@@ -144,6 +144,32 @@ pub fn quoted(text: &str) -> String {
 pub fn length(text: &str, bare: LengthUnit) -> Result<ExactLength, ReadError> {
     let (total, _) = Reader::new(text)?.sum(&LENGTH_WORDS, bare.word())?;
     Ok(ExactLength(total))
+}
+
+/// The count and the length of a text that is a whole number of times one length and nothing more, as
+/// `4 x 1200 mm` is; `1200 mm` and `2 x 180 + 95` are not.
+pub fn repeated(text: &str, bare: LengthUnit) -> Option<(i128, ExactLength)> {
+    let mut reader = Reader::new(text).ok()?;
+    let first = reader.factor(&LENGTH_WORDS).ok()?;
+    reader.skip_spaces();
+    if !reader.takes_times() {
+        return None;
+    }
+    let second = reader.factor(&LENGTH_WORDS).ok()?;
+    reader.end("the end", &LENGTH_WORDS).ok()?;
+    let (count, each) = if first.unit {
+        (second, first)
+    } else {
+        (first, second)
+    };
+    let size = if each.unit {
+        Exact::from_integer(1)
+    } else {
+        LENGTH_WORDS.size(bare.word())
+    };
+    let whole = !count.unit && count.value.is_integer() && *count.value.numer() > 1;
+    let length = each.value.checked_mul(&size).filter(|_| whole)?;
+    Some((*count.value.numer(), ExactLength(length)))
 }
 
 /// The text with `bare` written out wherever a number had no unit, so that it reads the same
@@ -318,6 +344,14 @@ impl Words {
             None => &NO_WORDS,
         }
     }
+
+    /// The size of a unit by its word.
+    fn size(&self, unit: &str) -> Exact {
+        let mut sizes = self.sizes.iter();
+        sizes
+            .find(|(word, ..)| word.eq_ignore_ascii_case(unit))
+            .map_or_else(One::one, |&(_, numer, denom)| Exact::new(numer, denom))
+    }
 }
 
 /// A factor: its figure, already multiplied by its unit if it had one.
@@ -400,7 +434,7 @@ impl<'t> Reader<'t> {
         let mut factors = vec![self.factor(words)?];
         loop {
             self.skip_spaces();
-            if self.take('x') || self.take('X') || self.take('×') || self.take('*') {
+            if self.takes_times() {
                 factors.push(self.factor(words)?);
             } else {
                 break;
@@ -413,13 +447,7 @@ impl<'t> Reader<'t> {
         }
         let mut size = Exact::from_integer(1);
         if factors.iter().all(|factor| !factor.unit) {
-            let (_, numer, denom) = words
-                .sizes
-                .iter()
-                .find(|(word, ..)| word.eq_ignore_ascii_case(bare))
-                .copied()
-                .unwrap_or(("", 1, 1));
-            size = Exact::new(numer, denom);
+            size = words.size(bare);
             bare_ends.extend(factors.last().map(|factor| factor.end));
         }
         let start = factors.first().map_or(0, |factor| factor.start);
@@ -663,6 +691,10 @@ impl<'t> Reader<'t> {
         let found = self.peek() == Some(wanted);
         self.at += usize::from(found);
         found
+    }
+
+    fn takes_times(&mut self) -> bool {
+        ['x', 'X', '×', '*'].iter().any(|&sign| self.take(sign))
     }
 
     fn skip_spaces(&mut self) {

@@ -198,6 +198,24 @@ pub(super) fn drawn_straight(at: usize) -> Finding {
     )
 }
 
+/// A product is one piece of glass; who means as many pieces learns how to say so.
+pub(super) fn one_piece(at: usize, typed: &str, count: i128, each: Length) -> Finding {
+    let shown = |length| length_shown(length, Units::Metric);
+    #[allow(clippy::cast_precision_loss, reason = "a small count of pieces")]
+    let whole = each * count as f64;
+    row(
+        Grade::Note,
+        at,
+        format!(
+            "{} is one piece of {}. For {count} pieces of {} write the length {count} times, with \
+             semicolons between.",
+            quoted(typed.trim()),
+            shown(whole),
+            shown(each)
+        ),
+    )
+}
+
 pub(super) fn allowance(says: String) -> Finding {
     Finding::new(Grade::Stop, Place::Job, says, Source::shop())
 }

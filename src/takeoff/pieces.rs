@@ -345,6 +345,7 @@ fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
 
 fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
     let mut lengths_mm = Vec::new();
+    let mut product = None;
     for (number, typed) in row.strokes.split(';').enumerate() {
         if typed.trim().is_empty() {
             continue;
@@ -353,6 +354,8 @@ fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
         match measure::length(typed, LengthUnit::Millimetres) {
             Ok(length) if measure::PIECE_LENGTH_MM.holds(length.length().mm()) => {
                 lengths_mm.push(length.length().mm());
+                let count = measure::repeated(typed, LengthUnit::Millimetres);
+                product = product.or(count.map(|(count, each)| (typed, count, each)));
             }
             Ok(length) => {
                 findings.push(finding::outside(
@@ -375,6 +378,9 @@ fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
         return Made::default();
     }
     findings.push(finding::drawn_straight(at));
+    if let Some((typed, count, each)) = product {
+        findings.push(finding::one_piece(at, typed, count, each.length()));
+    }
     let longest = lengths_mm.iter().copied().fold(0.0, f64::max);
     let alone = lengths_mm.len() == 1;
     // "The piece “”" would be no name.

@@ -6,7 +6,7 @@ use proptest::prelude::*;
 use serde::Deserialize;
 use tubewright::measure::{
     Length, LengthUnit, Milliamps, Units, Volts, figure, glass, grouped, length, length_exact,
-    length_shown, milliamps_shown, money, quoted, volts_shown, with_units,
+    length_shown, milliamps_shown, money, quoted, repeated, volts_shown, with_units,
 };
 
 /// Source: `tests/reference/electrical/PROVENANCE.md`.
@@ -185,6 +185,31 @@ fn the_place_of_the_trouble_is_counted_in_characters() {
     assert_eq!(at("½ in ½"), Err(5));
     assert_eq!(at("450 parsecs"), Err(4));
     assert_eq!(at(""), Err(0));
+}
+
+#[test]
+fn a_product_is_told_from_a_sum_and_a_length() {
+    let found = |typed: &str, bare| {
+        let (count, each) = repeated(typed, bare)?;
+        Some((count, each.length().mm()))
+    };
+    for (typed, expect) in [
+        ("4 x 1200 mm", Some((4, 1200.0))),
+        ("4x1200", Some((4, 1200.0))),
+        ("1200 mm x 4", Some((4, 1200.0))),
+        ("2 × 1' 6\"", Some((2, 457.2))),
+        ("1200 mm", None),
+        ("1 x 1200 mm", None),
+        ("1.5 x 1200 mm", None),
+        ("4 x 1200 mm + 95 mm", None),
+        ("2 x 3 x 10 mm", None),
+        ("4 x", None),
+        ("2 mm x 3 mm", None),
+        ("", None),
+    ] {
+        assert_eq!(found(typed, LengthUnit::Millimetres), expect, "{typed}");
+    }
+    assert_eq!(found("3 x 10", LengthUnit::Inches), Some((3, 254.0)));
 }
 
 #[test]

@@ -908,3 +908,25 @@ fn a_sum_says_what_it_is_without() {
     What the stops of the job leave out is not in this sum.
     ");
 }
+
+#[test]
+fn a_product_of_a_length_is_said_to_be_one_piece() {
+    let notes = |typed: &str| {
+        let work = workup(&job(vec![strokes(typed)]), &book());
+        let says: Vec<String> = work
+            .takeoff
+            .findings
+            .iter()
+            .filter(|finding| finding.says.contains("one piece of"))
+            .map(|finding| format!("{}: {}", finding.grade.word(), finding.says))
+            .collect();
+        (
+            work.takeoff.pieces.len(),
+            says.join("\n").replace('\u{202f}', "_"),
+        )
+    };
+    let (pieces, says) = notes("4 x 1200 mm; 2 x 300 mm");
+    assert_eq!(pieces, 2);
+    assert_snapshot!(says, @"note: “4 x 1200 mm” is one piece of 4_800 mm. For 4 pieces of 1_200 mm write the length 4 times, with semicolons between.");
+    assert_eq!(notes("1200 mm; 2 x 300 mm + 95 mm"), (2, String::new()));
+}
