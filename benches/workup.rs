@@ -55,6 +55,7 @@ fn sign() -> Job {
             face: "sans".to_owned(),
             tube: NEON.to_owned(),
             count: 1,
+            ..TextRow::default()
         })
     };
     let rows = (0..10).map(|at| row(150 + 20 * at)).collect();

@@ -11,8 +11,11 @@ use crate::book::Dampness;
 
 /// What the `tubewright` field of a job file says.
 pub const KIND: &str = "job";
-/// The version of the job file written by this program.
-pub const VERSION: u32 = 1;
+/// The newest version of the job file that this program knows. A job that uses nothing newer than
+/// version 1 is written as one, so that an older program still opens it.
+pub const VERSION: u32 = 2;
+/// The oldest version that is read.
+const OLDEST: u32 = 1;
 
 /// One sign.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
@@ -20,7 +23,7 @@ pub const VERSION: u32 = 1;
 pub struct Job {
     /// Always [`KIND`]; tells a job file from a book file.
     pub tubewright: String,
-    /// File version, [`VERSION`] when written by this program.
+    /// File version; [`VERSION`] for every job in hand.
     pub version: u32,
     /// What the job is called.
     pub name: String,
@@ -129,11 +132,13 @@ pub struct ArtworkLines {
     pub tube: String,
 }
 
-/// A word or line of letters in one face, height and tube.
+/// A word, or lines of letters, in one face, height and tube.
+///
+/// What is not given of the layout is as it is usual, and is not written to the file.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
 #[serde(deny_unknown_fields)]
 pub struct TextRow {
-    /// What it says.
+    /// What it says; a line break begins another line.
     pub text: String,
     /// Height of a capital letter, as typed.
     pub height: String,
@@ -145,6 +150,89 @@ pub struct TextRow {
     /// How many times this row is made.
     #[serde(default = "one")]
     pub count: i64,
+    /// How wide the letters are, in percent of how the face draws them.
+    #[serde(default = "hundred", skip_serializing_if = "is_hundred")]
+    pub width_percent: f64,
+    /// What is added to the space after each letter, in percent of the letter height.
+    #[serde(default, skip_serializing_if = "is_zero")]
+    pub spacing_percent: f64,
+    /// How several lines stand to each other.
+    #[serde(default, skip_serializing_if = "is_centre")]
+    pub align: Align,
+    /// Clear space between a baseline and the capitals of the next line, in percent of the letter
+    /// height.
+    #[serde(default = "sixty", skip_serializing_if = "is_sixty")]
+    pub line_gap_percent: f64,
+    /// The arc the letters stand on; none: they stand on a straight line.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub arc: Option<Curve>,
+    /// How far the whole is turned; above zero it rises to the right.
+    #[serde(default, skip_serializing_if = "is_zero")]
+    pub rotation_degrees: f64,
+}
+
+impl Default for TextRow {
+    fn default() -> Self {
+        Self {
+            text: String::new(),
+            height: String::new(),
+            face: sans(),
+            tube: String::new(),
+            count: one(),
+            width_percent: hundred(),
+            spacing_percent: 0.0,
+            align: Align::default(),
+            line_gap_percent: sixty(),
+            arc: None,
+            rotation_degrees: 0.0,
+        }
+    }
+}
+
+impl TextRow {
+    /// Whether the layout is the usual one in everything.
+    fn is_plain(&self) -> bool {
+        is_hundred(&self.width_percent)
+            && is_zero(&self.spacing_percent)
+            && is_centre(&self.align)
+            && is_sixty(&self.line_gap_percent)
+            && self.arc.is_none()
+            && is_zero(&self.rotation_degrees)
+    }
+}
+
+/// How the lines of a text stand to each other.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[serde(rename_all = "lowercase")]
+pub enum Align {
+    /// They begin under each other.
+    Left,
+    /// Their middles are under each other.
+    #[default]
+    Centre,
+    /// They end under each other.
+    Right,
+}
+
+/// The arc a text stands on, by one length as typed. A minus before it turns the arc over: the middle
+/// hangs down instead of standing up.
+#[derive(Debug, Clone, PartialEq, Eq, Serialize, Deserialize)]
+#[serde(rename_all = "lowercase")]
+pub enum Curve {
+    /// By the radius of the first line's baseline.
+    Radius(String),
+    /// By how much higher the middle of the first line stands than its ends.
+    Rise(String),
+}
+
+impl Curve {
+    /// Whether the middle hangs down, and the length without its sign.
+    pub fn parts(&self) -> (bool, &str) {
+        let (Self::Radius(typed) | Self::Rise(typed)) = self;
+        let typed = typed.trim();
+        let hangs = typed.strip_prefix(['-', '\u{2212}']);
+        hangs.map_or((false, typed), |typed| (true, typed.trim_start()))
+    }
 }
 
 /// Pieces of glass given by length: borders, underlines, anything measured on a drawing.
@@ -229,22 +317,65 @@ const fn one() -> i64 {
     1
 }
 
+const fn hundred() -> f64 {
+    100.0
+}
+
+const fn sixty() -> f64 {
+    60.0
+}
+
+// What is no number is not written either: JSON has no word for it, and it could not be read back.
+
+#[allow(clippy::trivially_copy_pass_by_ref, reason = "asked so by serde")]
+fn is_hundred(value: &f64) -> bool {
+    *value == hundred() || !value.is_finite()
+}
+
+#[allow(clippy::trivially_copy_pass_by_ref, reason = "asked so by serde")]
+fn is_sixty(value: &f64) -> bool {
+    *value == sixty() || !value.is_finite()
+}
+
+#[allow(clippy::trivially_copy_pass_by_ref, reason = "asked so by serde")]
+fn is_zero(value: &f64) -> bool {
+    *value == 0.0 || !value.is_finite()
+}
+
+#[allow(clippy::trivially_copy_pass_by_ref, reason = "asked so by serde")]
+fn is_centre(align: &Align) -> bool {
+    *align == Align::Centre
+}
+
 /// Reads a job file.
 ///
 /// # Errors
 /// A sentence saying what is wrong and where, for text that is not a job of a known version.
 pub fn read(text: &str) -> Result<Job, String> {
     let text = crate::book::without_mark(text);
-    crate::book::check_kind(text, KIND, VERSION)?;
-    serde_json::from_str(text).map_err(|error| {
+    crate::book::check_kind(text, KIND, VERSION)
+        .or_else(|newest| crate::book::check_kind(text, KIND, OLDEST).map_err(|_| newest))?;
+    let mut job: Job = serde_json::from_str(text).map_err(|error| {
         let trouble = crate::book::json_trouble(&error);
         format!("This job file cannot be read: {trouble}.")
-    })
+    })?;
+    job.version = VERSION;
+    Ok(job)
 }
 
-/// The job as the text of a file.
+/// The job as the text of a file, of the oldest version that can hold it.
 pub fn write(job: &Job) -> String {
-    // A job holds only strings, whole numbers and optional floats; JSON takes all but NaN, which
-    // becomes null and reads back as "not given".
-    serde_json::to_string_pretty(job).unwrap_or_default()
+    let plain = |row: &Row| match row {
+        Row::Text(row) => row.is_plain(),
+        Row::Strokes(_) => true,
+        Row::Artwork(_) => false,
+    };
+    let old = job.artwork.is_empty() && job.rows.iter().all(plain);
+    let job = Job {
+        version: if old { OLDEST } else { VERSION },
+        ..job.clone()
+    };
+    // A job holds only strings, whole numbers and floats. JSON takes all but NaN: of a layout it is
+    // left out, and where a float may be absent it becomes null and reads back as "not given".
+    serde_json::to_string_pretty(&job).unwrap_or_default()
 }

@@ -1,12 +1,12 @@
-//! The faces, and laying a text out in one of them.
+//! The faces: which there are, and their letters.
 
 use std::collections::BTreeMap;
 use std::sync::OnceLock;
 
 use kurbo::{Affine, BezPath, Rect, Shape};
 
-use super::jhf::{self, Glyph};
-use super::plain;
+use super::layout::{Layout, NoArc, layout};
+use super::{jhf, plain};
 
 /// A letter face.
 #[derive(Debug)]
@@ -21,29 +21,48 @@ pub struct Face {
     /// letter are the figures of the file.
     pub cap_units: f64,
     /// The baseline in those units, y downwards.
-    baseline: f64,
+    pub(super) baseline: f64,
     glyphs: BTreeMap<char, Glyph>,
 }
 
-/// A letter of a text, in place.
+/// A letter as its file has it, in the units of the file, y downwards.
+#[derive(Debug, Clone, Default)]
+pub(super) struct Glyph {
+    /// Left and right bearing.
+    pub(super) bearings: (f64, f64),
+    /// One path for each stroke of the pen.
+    pub(super) strokes: Vec<BezPath>,
+}
+
+/// A letter of a text.
 #[derive(Debug, Clone)]
 pub struct Letter {
     /// The character.
     pub character: char,
     /// Number of the word it belongs to, from 0.
     pub word: usize,
-    /// Its strokes.
-    pub strokes: Vec<BezPath>,
+    /// Its strokes where the pen writes it: from x = 0 on the baseline. The same letter has the same
+    /// ones wherever it stands.
+    pub own: Vec<BezPath>,
+    /// From there to its place: moved and turned, never stretched.
+    pub place: Affine,
+}
+
+impl Letter {
+    /// Its strokes in place.
+    pub fn strokes(&self) -> Vec<BezPath> {
+        self.own.iter().map(|stroke| self.place * stroke).collect()
+    }
 }
 
 /// A text in a face and height.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Default)]
 pub struct Shaped {
     /// Letters with strokes, in reading order. Spaces are left out.
     pub letters: Vec<Letter>,
     /// Characters the face has no shape for, with their place in the text, from 0.
     pub missing: Vec<(usize, char)>,
-    /// Box around all strokes in millimetres, baseline at 0; empty for no letters.
+    /// Box around all strokes, the middle of the first baseline at y = 0; empty for no letters.
     pub bounds: Rect,
 }
 
@@ -110,46 +129,23 @@ pub fn face(name: &str) -> Option<&'static Face> {
 }
 
 impl Face {
-    /// Lays out one line of text with capitals `height_mm` high, starting at x = 0 on y = 0.
+    /// Lays out a text with capitals `height_mm` high and nothing else changed; the first line starts
+    /// at x = 0 on y = 0.
     pub fn shape(&self, text: &str, height_mm: f64) -> Shaped {
-        let scale = height_mm / self.cap_units;
-        let mut shaped = Shaped {
-            letters: Vec::new(),
-            missing: Vec::new(),
-            bounds: Rect::ZERO,
-        };
-        let mut bounds: Option<Rect> = None;
-        let mut pen = 0.0;
-        let mut word = 0;
-        for (at, character) in text.chars().enumerate() {
-            let Some(glyph) = self.glyph(character) else {
-                shaped.missing.push((at, character));
-                continue;
-            };
-            let (left, right) = glyph.bearings;
-            if glyph.strokes.is_empty() {
-                word += 1;
-            } else {
-                let place = Affine::scale(scale) * Affine::translate((pen - left, -self.baseline));
-                let strokes: Vec<BezPath> =
-                    glyph.strokes.iter().map(|stroke| place * stroke).collect();
-                for stroke in &strokes {
-                    let stroke_box = stroke.bounding_box();
-                    bounds = Some(bounds.map_or(stroke_box, |all| all.union(stroke_box)));
-                }
-                shaped.letters.push(Letter {
-                    character,
-                    word,
-                    strokes,
-                });
-            }
-            pen += right - left;
-        }
-        shaped.bounds = bounds.unwrap_or(Rect::ZERO);
-        shaped
+        // There is no arc that it could not stand on.
+        self.lay_out(text, &Layout::plain(height_mm))
+            .unwrap_or_default()
     }
 
-    fn glyph(&self, character: char) -> Option<&Glyph> {
+    /// Lays out a text.
+    ///
+    /// # Errors
+    /// Where it cannot stand on the arc that is asked for.
+    pub fn lay_out(&self, text: &str, how: &Layout) -> Result<Shaped, NoArc> {
+        layout(self, text, how)
+    }
+
+    pub(super) fn glyph(&self, character: char) -> Option<&Glyph> {
         // Spaces of every kind are a gap.
         let wanted = if character.is_whitespace() {
             ' '

@@ -1,4 +1,4 @@
-//! Reader of the Hershey letter files (JHF).
+//! Reader of the Hershey letter files (JHF): y downwards, capitals from -12 to 9.
 //!
 //! A line holds a glyph: columns 0 to 4 a number, 5 to 7 the count of coordinate pairs, then the
 //! pairs as two characters each, value = ASCII code - 82. The first pair is the left and right
@@ -9,14 +9,7 @@
 
 use kurbo::{BezPath, Point};
 
-/// A glyph in the units of its file: y downwards, capitals from -12 to 9.
-#[derive(Debug, Clone, Default)]
-pub(super) struct Glyph {
-    /// Left and right bearing.
-    pub(super) bearings: (f64, f64),
-    /// One path for each stroke of the pen.
-    pub(super) strokes: Vec<BezPath>,
-}
+use super::face::Glyph;
 
 /// All glyphs of a file, in order; the first belongs to the space character.
 ///

@@ -6,9 +6,11 @@ mod artwork;
 pub mod dxf;
 mod face;
 mod jhf;
+mod layout;
 pub mod outline;
 mod plain;
 pub mod svg;
 
 pub use artwork::{ArtGroup, ArtStroke, Artwork, Unread};
 pub use face::{Face, Letter, Shaped, face, faces};
+pub use layout::{Align, Bend, BendBy, Layout, NoArc};

@@ -13,7 +13,7 @@ use std::collections::BTreeMap;
 
 use kurbo::{BezPath, Line, ParamCurve, PathEl, Point};
 
-use super::jhf::Glyph;
+use super::face::Glyph;
 
 /// Lines are on each other up to here, in units of the file. Its figures are rounded to a tenth, and
 /// lines that are meant to lie on each other have the same figures.

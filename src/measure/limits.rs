@@ -76,6 +76,60 @@ pub const TEXT_CHARACTERS: Limit = Limit {
     why: "a line of letters longer than this is given as several rows",
 };
 
+/// Width of letters.
+pub const WIDTH_PERCENT: Limit = Limit {
+    name: "letter width",
+    least: 50.0,
+    most: 200.0,
+    unit: "%",
+    why: "further from what the face draws it is another face",
+};
+
+/// Space added after each letter, as a share of the letter height.
+pub const SPACING_PERCENT: Limit = Limit {
+    name: "letter spacing",
+    least: -20.0,
+    most: 100.0,
+    unit: "%",
+    why: "of the letter height; nearer letters touch, further ones are no word",
+};
+
+/// Clear space between two lines of a text, as a share of the letter height.
+pub const LINE_GAP_PERCENT: Limit = Limit {
+    name: "line gap",
+    least: 0.0,
+    most: 300.0,
+    unit: "%",
+    why: "of the letter height; nearer lines run into each other, further ones are rows",
+};
+
+/// How far a text is turned.
+pub const ROTATION_DEGREES: Limit = Limit {
+    name: "rotation",
+    least: -180.0,
+    most: 180.0,
+    unit: "degrees",
+    why: "half a turn either way is every direction there is",
+};
+
+/// Radius of an arc letters stand on.
+pub const ARC_RADIUS_MM: Limit = Limit {
+    name: "arc radius",
+    least: 10.0,
+    most: 100_000.0,
+    unit: "mm",
+    why: "a larger one is a straight line",
+};
+
+/// How much higher the middle of an arc stands than its ends.
+pub const ARC_RISE_MM: Limit = Limit {
+    name: "arc rise",
+    least: 1.0,
+    most: 20_000.0,
+    unit: "mm",
+    why: "with less the line is straight",
+};
+
 /// Rows in a job.
 pub const ROWS: Limit = Limit {
     name: "rows",

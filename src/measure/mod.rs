@@ -9,7 +9,10 @@ mod quantity;
 mod read;
 mod show;
 
-pub use limits::{COUNT, LETTER_HEIGHT_MM, Limit, PIECE_LENGTH_MM, PIECES, ROWS, TEXT_CHARACTERS};
+pub use limits::{
+    ARC_RADIUS_MM, ARC_RISE_MM, COUNT, LETTER_HEIGHT_MM, LINE_GAP_PERCENT, Limit, PIECE_LENGTH_MM,
+    PIECES, ROTATION_DEGREES, ROWS, SPACING_PERCENT, TEXT_CHARACTERS, WIDTH_PERCENT,
+};
 pub use quantity::{Length, Milliamps, Volts};
 pub use read::{
     ExactLength, LengthUnit, ReadError, figure, length, money, quoted, repeated, with_units,

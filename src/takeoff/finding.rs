@@ -1,7 +1,7 @@
 //! The sentences of this room.
 
 use super::Piece;
-use crate::drawing::{ArtGroup, Face, Unread, faces};
+use crate::drawing::{ArtGroup, Face, NoArc, Unread, faces};
 use crate::measure::{Length, Limit, ReadError, Units, length_exact, length_shown, quoted};
 use crate::rules::{Finding, Grade, Place, Source};
 
@@ -87,16 +87,16 @@ pub(super) fn no_face(at: usize, name: &str) -> Finding {
     )
 }
 
-pub(super) fn no_shape(at: usize, face: &Face, missing: &[(usize, char)]) -> Finding {
+pub(super) fn no_shape(at: usize, face: &Face, text: &str, missing: &[(usize, char)]) -> Finding {
     const MOST_NAMED: usize = 5;
     let mut named: Vec<String> = missing
         .iter()
         .take(MOST_NAMED)
         .map(|&(place, character)| {
             format!(
-                "{} (character {})",
+                "{} ({})",
                 quoted(&character.to_string()),
-                place + 1
+                place_in(text, place)
             )
         })
         .collect();
@@ -110,6 +110,79 @@ pub(super) fn no_shape(at: usize, face: &Face, missing: &[(usize, char)]) -> Fin
             "The face {} has no shape for {}: glass and price are without it. Give it as strokes.",
             face.name,
             named.join(", ")
+        ),
+    )
+}
+
+/// Where a character of a text stands, as a person counts: in its line where there are several.
+fn place_in(text: &str, place: usize) -> String {
+    let before: Vec<char> = text.chars().take(place).collect();
+    let lines = before.iter().filter(|c| **c == '\n').count();
+    let in_line = before.iter().rev().take_while(|c| **c != '\n').count();
+    if text.contains('\n') {
+        format!("line {}, character {}", lines + 1, in_line + 1)
+    } else {
+        format!("character {}", in_line + 1)
+    }
+}
+
+/// A figure of the layout that is not taken; `instead` says what is drawn.
+pub(super) fn not_laid_out(at: usize, limit: &Limit, value: f64, instead: &str) -> Finding {
+    let mut finding = outside(at, None, limit, value);
+    finding.says = format!("{}: {instead}.", finding.says.trim_end_matches('.'));
+    finding
+}
+
+/// The arc cannot be read: the text is drawn straight.
+pub(super) fn unreadable_arc(at: usize, field: &str, error: &ReadError) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        format!("{field}: {error}: drawn straight."),
+    )
+}
+
+/// The letters cannot stand on the arc: they are drawn straight. `limit` is in millimetres.
+pub(super) fn no_arc(at: usize, typed_mm: f64, why: NoArc, by: f64) -> Finding {
+    // Rounded to the safe side, so that what the sentence asks for will do.
+    let (limit, says) = match why {
+        NoArc::Radius { least } => {
+            let least = (least * by * 10.0).ceil() / 10.0;
+            (
+                least,
+                format!(
+                    "The arc's radius must be at least {} mm (a line goes round once at most, and no \
+                     letter reaches beyond the centre), but is {} mm: drawn straight.",
+                    figure(least),
+                    figure(typed_mm)
+                ),
+            )
+        }
+        NoArc::Rise { most } => {
+            let most = (most * by * 10.0).floor() / 10.0;
+            (
+                most,
+                format!(
+                    "The arc's rise must be at most {} mm (a line as short as the first one rises no \
+                     higher), but is {} mm: drawn straight.",
+                    figure(most),
+                    figure(typed_mm)
+                ),
+            )
+        }
+    };
+    row(Grade::Stop, at, says).with(typed_mm, limit, "mm")
+}
+
+/// Letters of a joined face that are set apart or turned do not meet as drawn.
+pub(super) fn joints(at: usize, face: &Face) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "The letters of {} run into each other, but are set one by one here, so that their ends do \
+             not meet: what lies between them is counted as painted out. Have the joints drawn.",
+            face.name
         ),
     )
 }

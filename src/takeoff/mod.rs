@@ -9,6 +9,7 @@
 
 mod artwork;
 mod finding;
+mod letters;
 mod pieces;
 mod route;
 

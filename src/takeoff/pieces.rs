@@ -1,14 +1,11 @@
 //! Rows into placed pieces.
 
-use std::collections::HashMap;
+use kurbo::{Affine, BezPath, ParamCurveArclen, Point, Rect};
 
-use kurbo::{Affine, BezPath, ParamCurveArclen, Point, Rect, Shape};
-
-use super::route::{Route, route};
-use super::{Piece, RowTakeoff, artwork, finding};
+use super::route::Route;
+use super::{Piece, RowTakeoff, artwork, finding, letters};
 use crate::book::Allowances;
-use crate::drawing::{Letter, face};
-use crate::job::{Job, Row, StrokesRow, TextRow};
+use crate::job::{Job, Row, StrokesRow};
 use crate::measure::{self, Length, LengthUnit};
 use crate::rules::Finding;
 
@@ -64,7 +61,7 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
         let first = off.pieces.len();
         let room = whole(measure::PIECES.most).saturating_sub(first);
         let mut made = match row {
-            Row::Text(row) => text(at, row, &mut off.findings),
+            Row::Text(row) => letters::row(at, row, &mut off.findings),
             Row::Strokes(row) => strokes(at, row, &mut off.findings),
             Row::Artwork(row) => artwork::row(at, row, &job.artwork, &mut off.findings),
         };
@@ -180,6 +177,7 @@ pub(super) struct Made {
     pub(super) bounds: Rect,
 }
 
+#[derive(Clone)]
 pub(super) struct Drawn {
     pub(super) label: String,
     pub(super) lit_mm: f64,
@@ -211,18 +209,15 @@ impl Drawn {
         self
     }
 
-    /// The same drawing so many times as large.
-    fn scaled(&self, by: f64) -> Self {
+    /// The same drawing moved or turned, then so many times as large. What it measures is not worked
+    /// out again: it is so many times as much.
+    pub(super) fn placed(&self, place: Affine, by: f64) -> Self {
+        let to = Affine::scale(by) * place;
         Self {
-            label: self.label.clone(),
             lit_mm: self.lit_mm * by,
-            tube: self.tube.clone(),
-            strokes: self
-                .strokes
-                .iter()
-                .map(|stroke| Affine::scale(by) * stroke)
-                .collect(),
-            route: self.route.scaled(by),
+            strokes: self.strokes.iter().map(|stroke| to * stroke).collect(),
+            route: self.route.placed(to, self.route.jumped * by),
+            ..self.clone()
         }
     }
 
@@ -258,88 +253,6 @@ impl Drawn {
             jumps: self.route.jumps.iter().map(jump).collect(),
             electrodes: self.route.ends.map(|end| place * end),
         }
-    }
-}
-
-fn text(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
-    if row.text.trim().is_empty() {
-        findings.push(finding::no_text(at));
-        return Made::default();
-    }
-    let characters = row.text.chars().count();
-    #[allow(clippy::cast_precision_loss, reason = "a count of characters")]
-    if !measure::TEXT_CHARACTERS.holds(characters as f64) {
-        findings.push(finding::outside(
-            at,
-            None,
-            &measure::TEXT_CHARACTERS,
-            characters as f64,
-        ));
-        return Made::default();
-    }
-    let Some(face) = face(&row.face) else {
-        findings.push(finding::no_face(at, &row.face));
-        return Made::default();
-    };
-    let height_mm = match measure::length(&row.height, LengthUnit::Millimetres) {
-        Ok(height) => height.length().mm(),
-        Err(error) => {
-            findings.push(finding::unreadable(at, "Letter height", &error));
-            return Made::default();
-        }
-    };
-    if !measure::LETTER_HEIGHT_MM.holds(height_mm) {
-        findings.push(finding::outside(
-            at,
-            None,
-            &measure::LETTER_HEIGHT_MM,
-            height_mm,
-        ));
-        return Made::default();
-    }
-    // Worked out in the units of the face, where points are the figures of its file, and scaled at the
-    // end: twice the height is exactly twice the glass.
-    let scale = height_mm / face.cap_units;
-    let shaped = face.shape(&row.text, face.cap_units);
-    if !shaped.missing.is_empty() {
-        findings.push(finding::no_shape(at, face, &shaped.missing));
-    }
-    let mut pieces: Vec<(usize, String, Vec<BezPath>)> = Vec::new();
-    for Letter {
-        character,
-        word,
-        strokes,
-    } in shaped.letters
-    {
-        match pieces.last_mut() {
-            Some((last, label, all)) if face.joined && *last == word => {
-                label.push(character);
-                all.extend(strokes);
-            }
-            _ => pieces.push((word, character.to_string(), strokes)),
-        }
-    }
-    // The same letter is run through the same way wherever it stands in the row.
-    let mut known: HashMap<String, (Point, Route)> = HashMap::new();
-    let pieces = pieces
-        .into_iter()
-        .map(|(_, label, strokes)| {
-            let here = strokes
-                .first()
-                .map_or(Point::ZERO, |stroke| stroke.bounding_box().origin());
-            let route = match known.get(&label) {
-                Some((there, route)) => route.moved(here - *there),
-                None => route(&strokes),
-            };
-            known
-                .entry(label.clone())
-                .or_insert_with(|| (here, route.clone()));
-            Drawn::new(label, strokes, route).scaled(scale)
-        })
-        .collect();
-    Made {
-        pieces,
-        bounds: shaped.bounds.scale_from_origin(scale),
     }
 }
 
@@ -449,6 +362,7 @@ fn whole(limit: f64) -> usize {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::job::TextRow;
     use crate::rules::Place;
 
     /// A job of one text row.
@@ -460,6 +374,7 @@ mod tests {
                 face: face.to_owned(),
                 tube: "t".to_owned(),
                 count,
+                ..TextRow::default()
             })],
             ..Job::default()
         }

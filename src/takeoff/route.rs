@@ -1,6 +1,6 @@
 //! Running through the strokes of a piece: their order and direction with the shortest jumps.
 
-use kurbo::{BezPath, PathEl, Point, Rect, Vec2};
+use kurbo::{Affine, BezPath, PathEl, Point, Rect};
 
 /// Up to here every order is weighed; beyond, a good one is improved until nothing gains.
 const EXACT_STROKES: usize = 10;
@@ -25,21 +25,12 @@ pub(super) struct Route {
 }
 
 impl Route {
-    /// The same way elsewhere.
-    pub(super) fn moved(&self, by: Vec2) -> Self {
-        self.mapped(self.jumped, |point| point + by)
-    }
-
-    /// The same way through strokes so many times as large.
-    pub(super) fn scaled(&self, by: f64) -> Self {
-        self.mapped(self.jumped * by, |point| (point.to_vec2() * by).to_point())
-    }
-
-    fn mapped(&self, jumped: f64, to: impl Fn(Point) -> Point) -> Self {
+    /// The same way elsewhere, where its jumps are so long together.
+    pub(super) fn placed(&self, to: Affine, jumped: f64) -> Self {
         Self {
             jumped,
-            jumps: self.jumps.iter().map(|&(a, b)| (to(a), to(b))).collect(),
-            ends: self.ends.map(to),
+            jumps: self.jumps.iter().map(|&(a, b)| (to * a, to * b)).collect(),
+            ends: self.ends.map(|end| to * end),
         }
     }
 }

@@ -2,7 +2,7 @@
 
 use insta::assert_snapshot;
 use tubewright::book::Dampness;
-use tubewright::job::{self, Job, Row, Site, StrokesRow, TextRow, Wish};
+use tubewright::job::{self, Align, Curve, Job, Row, Site, StrokesRow, TextRow, Wish};
 
 fn error(text: &str) -> String {
     job::read(text).expect_err("no job")
@@ -19,6 +19,7 @@ fn job() -> Job {
                 face: "sans".to_owned(),
                 tube: "12 mm neon".to_owned(),
                 count: -3,
+                ..TextRow::default()
             }),
             Row::Strokes(StrokesRow {
                 label: String::new(),
@@ -60,17 +61,76 @@ fn a_job_with_little_in_it_is_read_with_the_defaults() {
 }
 
 #[test]
+fn a_layout_is_written_where_it_is_not_the_usual_one() {
+    let mut changed = job();
+    assert!(
+        job::write(&changed).contains("\"version\": 1,"),
+        "an older program opens it"
+    );
+    let Row::Text(row) = &mut changed.rows[0] else {
+        panic!("a row of letters");
+    };
+    let plain = serde_json::to_value(&*row).expect("a row");
+    assert_eq!(
+        plain.as_object().map(serde_json::Map::len),
+        Some(5),
+        "{plain}"
+    );
+    row.text = "OPEN\nLATE".to_owned();
+    row.width_percent = 120.0;
+    row.spacing_percent = -5.0;
+    row.align = Align::Right;
+    row.line_gap_percent = 80.0;
+    row.arc = Some(Curve::Rise("-120 mm".to_owned()));
+    row.rotation_degrees = 7.5;
+    let laid_out = r#"{"row": "text", "text": "OPEN\nLATE", "height": "1' 6 1/2\"", "face": "sans",
+        "tube": "12 mm neon", "count": -3, "width_percent": 120, "spacing_percent": -5,
+        "align": "right", "line_gap_percent": 80, "arc": {"rise": "-120 mm"},
+        "rotation_degrees": 7.5}"#;
+    assert_eq!(
+        serde_json::from_str::<Row>(laid_out).ok().as_ref(),
+        changed.rows.first()
+    );
+    assert_eq!(job::read(&job::write(&changed)), Ok(changed.clone()));
+    assert!(
+        job::write(&changed).contains("\"version\": 2,"),
+        "an older program says it is too old"
+    );
+    // What is no number is left out, or the file could not be read again.
+    let Row::Text(row) = &mut changed.rows[0] else {
+        panic!("a row of letters");
+    };
+    row.width_percent = f64::NAN;
+    row.rotation_degrees = f64::INFINITY;
+    let back = job::read(&job::write(&changed)).expect("a job");
+    let Row::Text(row) = &back.rows[0] else {
+        panic!("a row of letters");
+    };
+    assert_eq!((row.width_percent, row.rotation_degrees), (100.0, 0.0));
+}
+
+#[test]
+fn a_minus_turns_an_arc_over() {
+    let parts = |typed: &str| Curve::Radius(typed.to_owned()).parts().1.to_owned();
+    for typed in ["120 mm", " 120 mm ", "-120 mm", "\u{2212} 120 mm"] {
+        assert_eq!(parts(typed), "120 mm");
+    }
+    assert!(!Curve::Rise("1 m".to_owned()).parts().0);
+    assert!(Curve::Rise(" \u{2212}1 m".to_owned()).parts().0);
+}
+
+#[test]
 fn job_files_that_cannot_be_read() {
     assert_snapshot!(error("OPEN"), @"This is not a job file: expected JSON written by this program, but no value stands there (line 1, column 1).");
     assert_snapshot!(error(r#"{"tubewright": "book", "version": 1, "name": "x"}"#), @"Expected a job file, but this is a “book” file.");
     assert_snapshot!(error(r#"{"tubewright": "<b>", "version": 1, "name": "x"}"#), @"Expected a job file, but this is a “<b>” file.");
-    assert_snapshot!(error(r#"{"tubewright": "job", "version": 99, "name": "x"}"#), @"This job file has version 99; this program knows versions up to 1. Open it with a newer program.");
-    assert_snapshot!(error(r#"{"tubewright": "job", "version": "1", "name": "x"}"#), @"This job file names no version that exists; this program knows versions up to 1.");
+    assert_snapshot!(error(r#"{"tubewright": "job", "version": 99, "name": "x"}"#), @"This job file has version 99; this program knows versions up to 2. Open it with a newer program.");
+    assert_snapshot!(error(r#"{"tubewright": "job", "version": "1", "name": "x"}"#), @"This job file names no version that exists; this program knows versions up to 2.");
     assert_snapshot!(error(r#"{"tubewright": "job", "version": 1}"#), @"This job file cannot be read: “name” is missing (line 1, column 35).");
     assert_snapshot!(error(r#"{"tubewright": "job", "version": 1, "name": "x", "price": 1}"#), @"This job file cannot be read: unknown field “price” (line 1, column 56).");
     assert_snapshot!(
         error(r#"{"tubewright": "job", "version": 1, "name": "x", "rows": [{"row": "circle"}]}"#),
-        @"This job file cannot be read: expected text or strokes, but found “circle” (line 1, column 74)."
+        @"This job file cannot be read: expected text or strokes or artwork, but found “circle” (line 1, column 74)."
     );
     assert_snapshot!(
         error(r#"{"tubewright": "job", "version": 1, "name": "x", "rows": [{"row": "text", "text": "A"}]}"#),

@@ -22,6 +22,7 @@ fn letters(text: &str, height: &str) -> Row {
         face: "sans".to_owned(),
         tube: NEON.to_owned(),
         count: 1,
+        ..TextRow::default()
     })
 }
 
@@ -213,7 +214,8 @@ fn row() -> impl Strategy<Value = Row> {
                 height,
                 face,
                 tube,
-                count
+                count,
+                ..TextRow::default()
             })
         ),
         (awkward(), length(), tube_name(), count()).prop_map(|(label, strokes, tube, count)| {

@@ -70,6 +70,7 @@ fn add(desk: Desk, text: bool) {
             face: last.map_or_else(|| "sans".to_owned(), |row| row.face),
             tube,
             count: 1,
+            ..TextRow::default()
         })
     } else {
         Row::Strokes(StrokesRow {
