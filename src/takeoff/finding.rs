@@ -103,11 +103,19 @@ pub(super) fn no_shape(at: usize, face: &Face, text: &str, missing: &[(usize, ch
     if missing.len() > MOST_NAMED {
         named.push(format!("{} more", missing.len() - MOST_NAMED));
     }
+    let wanted: String = missing.iter().map(|&(_, character)| character).collect();
+    let instead = faces()
+        .iter()
+        .find(|other| other.shape(&wanted, other.cap_units).missing.is_empty())
+        .map_or_else(
+            || "Give it as strokes.".to_owned(),
+            |other| format!("The face {} has it; or give it as strokes.", other.name),
+        );
     row(
         Grade::Stop,
         at,
         format!(
-            "The face {} has no shape for {}: glass and price are without it. Give it as strokes.",
+            "The face {} has no shape for {}: glass and price are without it. {instead}",
             face.name,
             named.join(", ")
         ),

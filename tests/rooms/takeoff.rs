@@ -306,8 +306,8 @@ fn characters_without_a_shape_are_found_in_their_line() {
     let off = set("HI\nHÉ", "sans", TextRow::default());
     assert_eq!(
         off.findings[0].says,
-        "The face sans has no shape for “É” (line 2, character 2): glass and price are without it. Give \
-         it as strokes."
+        "The face sans has no shape for “É” (line 2, character 2): glass and price are without it. The \
+         face accents has it; or give it as strokes."
     );
 }
 
