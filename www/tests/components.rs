@@ -4,7 +4,6 @@
 use leptos::mount::mount_to;
 use leptos::prelude::*;
 use leptos::task::tick;
-use tubewright::job::Row;
 use tubewright::measure::Units;
 use tubewright_www::desk::{Desk, Where};
 use tubewright_www::document::Write;
@@ -100,10 +99,9 @@ impl Mounted {
     }
 
     fn first_text(&self) -> String {
-        self.desk.job.with_untracked(|job| match &job.rows[0] {
-            Row::Text(row) => row.text.clone(),
-            Row::Strokes(row) => row.label.clone(),
-        })
+        self.desk
+            .job
+            .with_untracked(|job| job.rows[0].label().to_owned())
     }
 }
 
