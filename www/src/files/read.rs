@@ -1,6 +1,6 @@
 //! What a file holds.
 
-use tubewright::book::{SupplyEntry, TubeEntry, read_supplies, read_tubes};
+use tubewright::book::{SupplyEntry, TubeEntry, read_supplies, read_tubes, text_of};
 use tubewright::drawing::{self, Artwork};
 use tubewright::job::ArtworkFile;
 use tubewright::measure::quoted;
@@ -55,6 +55,9 @@ pub fn read(name: &str, bytes: &[u8]) -> Result<Opened, String> {
                 .map(|job| Opened::Job(Box::new(job)))
                 .map_err(told)
         };
+    }
+    if let (Err(why), [0xff, 0xfe, ..] | [0xfe, 0xff, ..]) = (text_of(bytes), bytes) {
+        return Err(told(why));
     }
     if start.starts_with(b"<") {
         let text = core::str::from_utf8(bytes)
@@ -210,6 +213,10 @@ mod tests {
         assert!(
             why("x.csv", b"name,no_load_volts\n").contains("nothing under it"),
             "a list of nothing"
+        );
+        assert!(
+            why("x.csv", b"\xff\xfen\0a\0m\0e\0").contains("UTF-16"),
+            "a spreadsheet's other kind of text"
         );
         let newer = "{\"tubewright\":\"book\",\"version\":9,\"name\":\"x\"}";
         assert!(
