@@ -209,7 +209,10 @@ fn Card(number: usize, results: Results) -> impl IntoView {
 fn Detail(number: usize, results: Results) -> impl IntoView {
     let desk = desk();
     results.circuits.get(number).map(|circuit| {
-        let units = desk.units.get();
+        let count = circuit.pieces.len();
+        let pieces = format!(" {count}{}, ", many(count, " piece", " pieces"));
+        let column = circuit.column;
+        let long = move || glass(column, desk.units.get());
         let worked = &circuit.assessment;
         let rating = &circuit.supply;
         let word = earth_word(&results);
@@ -275,7 +278,7 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
         view! {
             <section class="panel detail" style:order=number.to_string() aria-label=format!("Circuit {} in full", number + 1)>
                 <header class="card-head">
-                    <h2>{format!("Circuit {}", number + 1)}<small>{format!(" {}{}, {} of gas column in series", circuit.pieces.len(), many(circuit.pieces.len(), " piece", " pieces"), glass(circuit.column, units))}</small></h2>
+                    <h2>{format!("Circuit {}", number + 1)}<small>{pieces}{long}" of gas column in series"</small></h2>
                     {chip(circuit.grade())}
                 </header>
                 <p class="supply"><b>{rating.name.clone()}</b>{format!(" {}", rating.words(results.earth_word()))}</p>

@@ -40,10 +40,13 @@ pub(super) fn Field(
     // in sight until the field is left well or what it stands for is changed from elsewhere.
     let typed = RwSignal::new(None::<String>);
     let shown = move || typed.get().unwrap_or_else(|| value.get());
-    Effect::new(move |_| {
+    Effect::new(move |before: Option<()>| {
         desk.turned.track();
-        wrong.set(None);
-        typed.set(None);
+        // The first run is not a turn: a person may have begun to type before it.
+        if before.is_some() {
+            wrong.set(None);
+            typed.set(None);
+        }
     });
     let take = move |text: String| match commit.run(text.clone()) {
         Ok(()) => {
