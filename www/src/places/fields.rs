@@ -48,15 +48,15 @@ pub(super) fn Field(
             typed.set(None);
         }
     });
-    let take = move |text: String| match commit.run(text.clone()) {
-        Ok(()) => {
-            wrong.set(None);
-            typed.set(None);
-        }
-        Err(why) => {
-            wrong.set(Some(why));
-            typed.set(Some(text));
-        }
+    // A field that is taken off the page while it is being typed in is told of it by the browser
+    // when all of this is gone: hence the `try_` everywhere.
+    let take = move |text: String| {
+        let (why, left) = match commit.try_run(text.clone()) {
+            Some(Err(why)) => (Some(why), Some(text)),
+            Some(Ok(())) | None => (None, None),
+        };
+        wrong.try_set(why);
+        typed.try_set(left);
     };
     view! {
         <label class=format!("field {class}") class:bad=move || wrong.get().is_some()>
@@ -71,9 +71,10 @@ pub(super) fn Field(
                 aria-invalid=move || wrong.get().is_some().to_string()
                 on:input:target=move |event| {
                     let text = event.target().value();
-                    typed.set(Some(text.clone()));
-                    if live.is_some_and(|live| live.run(text.clone())) && commit.run(text).is_ok() {
-                        wrong.set(None);
+                    typed.try_set(Some(text.clone()));
+                    let worth = live.and_then(|live| live.try_run(text.clone()));
+                    if worth == Some(true) && matches!(commit.try_run(text), Some(Ok(()))) {
+                        wrong.try_set(None);
                     }
                 }
                 on:change:target=move |event| take(event.target().value())
@@ -141,7 +142,7 @@ pub(super) fn Choice(
             <span class="caption">{label}</span>
             <select
                 on:change:target=move |event| {
-                    commit.run(event.target().value());
+                    commit.try_run(event.target().value());
                     desk.settle();
                 }
             >
@@ -171,7 +172,7 @@ pub(super) fn Tick(
                 type="checkbox"
                 prop:checked=value
                 on:change:target=move |event| {
-                    commit.run(event.target().checked());
+                    commit.try_run(event.target().checked());
                     desk.settle();
                 }
             />

@@ -73,6 +73,25 @@ fn a_second_tab_is_told_of_in_both() {
 }
 
 #[test]
+fn leaving_a_place_in_the_middle_of_a_word_loses_nothing() {
+    visit(Size::UprightTablet, async |page| {
+        page.see("28 pieces").await?;
+        page.begin_in_row(1, "What it says", "WREN").await?;
+        page.run("location.hash = '#circuits'").await?;
+        page.see("High voltage kills.").await?;
+        page.run("location.hash = '#sign'").await?;
+        assert_eq!(page.in_field(1, "What it says").await?, "WREN");
+        page.begin_in_row(1, "Times", "tw").await?;
+        page.run("history.back()").await?;
+        page.see("High voltage kills.").await?;
+        page.go("Price").await?;
+        page.see("Total, €").await?;
+        page.see_no("Something went wrong").await?;
+        Ok(())
+    });
+}
+
+#[test]
 fn half_typed_heights_are_kept_through_a_reload() {
     visit(Size::LyingTablet, async |page| {
         page.see("28 pieces").await?;
