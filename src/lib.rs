@@ -11,7 +11,7 @@
 //! | [`measure`] | lengths, volts, milliamperes: reading what was typed, showing it | knows of signs |
 //! | [`job`], [`book`] | the two documents, the only serialisable types | works anything out |
 //! | [`rules`] | rule sets and findings | decides what a finding leads to |
-//! | [`drawing`] | letter faces as strokes | knows of glass or volts |
+//! | [`drawing`] | letter faces, outline fonts and artwork files as strokes | knows of glass or volts |
 //! | [`tube`] | volts a column of gas needs | knows of supplies |
 //! | [`supply`] | ratings, checked; what a rule set says of them | invents a missing rating |
 //! | [`takeoff`] | rows to strokes to pieces of glass | knows of volts |
