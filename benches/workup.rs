@@ -76,6 +76,7 @@ fn pieces() -> Vec<Piece> {
         strokes: lengths.join("; "),
         tube: NEON.to_owned(),
         count: 1,
+        ..StrokesRow::default()
     });
     let off = takeoff(
         &Job {

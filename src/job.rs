@@ -11,9 +11,10 @@ use crate::book::Dampness;
 
 /// What the `tubewright` field of a job file says.
 pub const KIND: &str = "job";
-/// The newest version of the job file that this program knows. A job that uses nothing newer than
-/// version 1 is written as one, so that an older program still opens it.
-pub const VERSION: u32 = 2;
+/// The newest version of the job file that this program knows. A job is written in the oldest version
+/// that can hold it, so that an older program still opens what it understands: 2 brought artwork and
+/// the layout of letters; 3 brought groups, choices of pieces and the sign's outline.
+pub const VERSION: u32 = 3;
 /// The oldest version that is read.
 const OLDEST: u32 = 1;
 
@@ -48,6 +49,21 @@ pub struct Job {
     /// Where the sign hangs.
     #[serde(default)]
     pub site: Site,
+    /// The size the whole sign has to stay inside, where one is given.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub outline: Option<Outline>,
+}
+
+/// The outer size of a sign: of its board, box or the space on the wall. As typed.
+#[derive(Debug, Clone, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct Outline {
+    /// Width; empty: not limited.
+    #[serde(default)]
+    pub width: String,
+    /// Height; empty: not limited.
+    #[serde(default)]
+    pub height: String,
 }
 
 impl Default for Job {
@@ -63,6 +79,7 @@ impl Default for Job {
             rules: String::new(),
             wish: Wish::default(),
             site: Site::default(),
+            outline: None,
         }
     }
 }
@@ -116,6 +133,26 @@ pub struct ArtworkRow {
     /// How many times this row is made.
     #[serde(default = "one")]
     pub count: i64,
+    /// Rows of one group light together; rows of another group are never on one circuit with them.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub group: String,
+    /// How its strokes become pieces of glass, where that is not as usual.
+    #[serde(default, skip_serializing_if = "Pieces::is_usual")]
+    pub pieces: Pieces,
+}
+
+impl Default for ArtworkRow {
+    fn default() -> Self {
+        Self {
+            label: String::new(),
+            file: String::new(),
+            width: String::new(),
+            lines: Vec::new(),
+            count: one(),
+            group: String::new(),
+            pieces: Pieces::default(),
+        }
+    }
 }
 
 /// The lines of one colour in one layer of an artwork.
@@ -169,6 +206,12 @@ pub struct TextRow {
     /// How far the whole is turned; above zero it rises to the right.
     #[serde(default, skip_serializing_if = "is_zero")]
     pub rotation_degrees: f64,
+    /// Rows of one group light together; rows of another group are never on one circuit with them.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub group: String,
+    /// How its strokes become pieces of glass, where that is not as usual.
+    #[serde(default, skip_serializing_if = "Pieces::is_usual")]
+    pub pieces: Pieces,
 }
 
 impl Default for TextRow {
@@ -185,6 +228,8 @@ impl Default for TextRow {
             line_gap_percent: sixty(),
             arc: None,
             rotation_degrees: 0.0,
+            group: String::new(),
+            pieces: Pieces::default(),
         }
     }
 }
@@ -249,6 +294,87 @@ pub struct StrokesRow {
     /// How many times this row is made.
     #[serde(default = "one")]
     pub count: i64,
+    /// Rows of one group light together; rows of another group are never on one circuit with them.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub group: String,
+    /// How its strokes become pieces of glass, where that is not as usual.
+    #[serde(default, skip_serializing_if = "Pieces::is_usual")]
+    pub pieces: Pieces,
+}
+
+impl Default for StrokesRow {
+    fn default() -> Self {
+        Self {
+            label: String::new(),
+            strokes: String::new(),
+            tube: String::new(),
+            count: one(),
+            group: String::new(),
+            pieces: Pieces::default(),
+        }
+    }
+}
+
+/// How the strokes of a row become pieces of glass.
+///
+/// Usually each letter, each word of a joined face and each line of touching strokes is a piece. What
+/// a person chose otherwise is kept here. Strokes are called by the names the takeoff gives them
+/// ([`crate::takeoff::Piece::strokes`]); a choice whose strokes are not there any more is told of and
+/// has no effect.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize)]
+#[serde(deny_unknown_fields, default)]
+pub struct Pieces {
+    /// What is one piece before anything is joined or parted.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub each: Each,
+    /// Pairs of strokes whose pieces are made as one.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub joined: Vec<[String; 2]>,
+    /// Pairs of strokes that follow each other in a piece, which ends between them.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub parted: Vec<[String; 2]>,
+    /// Places on strokes where a piece ends and another begins.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub cuts: Vec<Cut>,
+    /// Pieces by the names the takeoff gives them, in the order they are wired in; others keep
+    /// their place in reading order behind these.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub order: Vec<String>,
+}
+
+impl Pieces {
+    /// Whether nothing was chosen.
+    pub fn is_usual(&self) -> bool {
+        *self == Self::default()
+    }
+}
+
+/// What is one piece of glass.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
+#[serde(rename_all = "kebab-case")]
+pub enum Each {
+    /// A letter, a word of a joined face, or strokes that touch.
+    #[default]
+    Usual,
+    /// Strokes that touch, and no others.
+    Touching,
+    /// A word; of a drawing, all lines of one tube.
+    Whole,
+}
+
+#[allow(clippy::trivially_copy_pass_by_ref, reason = "asked so by serde")]
+fn is_usual(each: &Each) -> bool {
+    *each == Each::Usual
+}
+
+/// A place on a stroke.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct Cut {
+    /// The stroke, by the name the takeoff gives it.
+    pub stroke: String,
+    /// How far along it from its drawn beginning, as a share of its length.
+    pub share: f64,
 }
 
 impl Row {
@@ -261,6 +387,42 @@ impl Row {
                 let named = row.lines.iter().map(|lines| lines.tube.as_str());
                 named.filter(|tube| !tube.is_empty()).collect()
             }
+        }
+    }
+
+    /// The group it lights with; empty: with all rows of no group.
+    pub fn group(&self) -> &str {
+        match self {
+            Self::Text(row) => &row.group,
+            Self::Strokes(row) => &row.group,
+            Self::Artwork(row) => &row.group,
+        }
+    }
+
+    /// The group, to be changed.
+    pub fn group_mut(&mut self) -> &mut String {
+        match self {
+            Self::Text(row) => &mut row.group,
+            Self::Strokes(row) => &mut row.group,
+            Self::Artwork(row) => &mut row.group,
+        }
+    }
+
+    /// How its strokes become pieces.
+    pub fn pieces(&self) -> &Pieces {
+        match self {
+            Self::Text(row) => &row.pieces,
+            Self::Strokes(row) => &row.pieces,
+            Self::Artwork(row) => &row.pieces,
+        }
+    }
+
+    /// How its strokes become pieces, to be changed.
+    pub fn pieces_mut(&mut self) -> &mut Pieces {
+        match self {
+            Self::Text(row) => &mut row.pieces,
+            Self::Strokes(row) => &mut row.pieces,
+            Self::Artwork(row) => &mut row.pieces,
         }
     }
 
@@ -353,8 +515,7 @@ fn is_centre(align: &Align) -> bool {
 /// A sentence saying what is wrong and where, for text that is not a job of a known version.
 pub fn read(text: &str) -> Result<Job, String> {
     let text = crate::book::without_mark(text);
-    crate::book::check_kind(text, KIND, VERSION)
-        .or_else(|newest| crate::book::check_kind(text, KIND, OLDEST).map_err(|_| newest))?;
+    crate::book::check_kind(text, KIND, OLDEST..=VERSION)?;
     let mut job: Job = serde_json::from_str(text).map_err(|error| {
         let trouble = crate::book::json_trouble(&error);
         format!("This job file cannot be read: {trouble}.")
@@ -365,17 +526,29 @@ pub fn read(text: &str) -> Result<Job, String> {
 
 /// The job as the text of a file, of the oldest version that can hold it.
 pub fn write(job: &Job) -> String {
-    let plain = |row: &Row| match row {
-        Row::Text(row) => row.is_plain(),
-        Row::Strokes(_) => true,
-        Row::Artwork(_) => false,
-    };
-    let old = job.artwork.is_empty() && job.rows.iter().all(plain);
     let job = Job {
-        version: if old { OLDEST } else { VERSION },
+        version: oldest(job),
         ..job.clone()
     };
     // A job holds only strings, whole numbers and floats. JSON takes all but NaN: of a layout it is
     // left out, and where a float may be absent it becomes null and reads back as "not given".
     serde_json::to_string_pretty(&job).unwrap_or_default()
+}
+
+/// The oldest version that can hold a job.
+fn oldest(job: &Job) -> u32 {
+    let of_row = |row: &Row| {
+        if !row.group().is_empty() || !row.pieces().is_usual() {
+            return 3;
+        }
+        match row {
+            Row::Text(row) if row.is_plain() => OLDEST,
+            Row::Strokes(_) => OLDEST,
+            Row::Text(_) | Row::Artwork(_) => 2,
+        }
+    };
+    let of_rows = job.rows.iter().map(of_row).max().unwrap_or(OLDEST);
+    of_rows
+        .max(if job.artwork.is_empty() { OLDEST } else { 2 })
+        .max(if job.outline.is_none() { OLDEST } else { 3 })
 }

@@ -664,6 +664,7 @@ mod tests {
             strokes: "4 m".to_owned(),
             tube: "t".to_owned(),
             count: 3,
+            ..StrokesRow::default()
         });
         let job = Job {
             rows: vec![row],

@@ -7,6 +7,8 @@ mod sheet;
 mod starter;
 mod text;
 
+use std::ops::RangeInclusive;
+
 use rust_decimal::Decimal;
 use serde::{Deserialize, Serialize};
 
@@ -19,8 +21,11 @@ pub(crate) use text::{json_trouble, without_mark};
 
 /// What the `tubewright` field of a book file says.
 pub const KIND: &str = "book";
-/// The version of the book file written by this program.
-pub const VERSION: u32 = 1;
+/// The newest version of the book file that this program knows. A book is written in the oldest
+/// version that can hold it: 2 brought the limits of bending.
+pub const VERSION: u32 = 2;
+/// The oldest version that is read.
+const OLDEST: u32 = 1;
 
 /// The shop.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
@@ -53,6 +58,9 @@ pub struct Book {
     /// When a circuit is called well loaded.
     #[serde(default)]
     pub loading: Loading,
+    /// What the shop bends and how near its tubes may come.
+    #[serde(default, skip_serializing_if = "Bending::is_usual")]
+    pub bending: Bending,
 }
 
 impl Default for Book {
@@ -68,6 +76,7 @@ impl Default for Book {
             rates: Rates::default(),
             allowances: Allowances::default(),
             loading: Loading::default(),
+            bending: Bending::default(),
         }
     }
 }
@@ -261,6 +270,44 @@ impl Default for Allowances {
     }
 }
 
+/// What the shop bends and how near its tubes may come, as multiples of the tube's outer diameter
+/// where they say so. None: not checked. Defaults are common practice without a source, but for the
+/// spacing: a column on pattern-making (Signs of the Times) sets parallel tubes one diameter apart,
+/// which is two from centre to centre.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields, default)]
+pub struct Bending {
+    /// Tightest radius of a bend, to the middle of the tube, in outer diameters.
+    pub least_radius_diameters: Option<f64>,
+    /// Least height of a letter, in outer diameters.
+    pub least_letter_diameters: Option<f64>,
+    /// Least distance of two tubes, from centre to centre, in outer diameters.
+    pub least_spacing_diameters: Option<f64>,
+    /// Least distance of electrodes of two pieces.
+    pub least_electrode_spacing_mm: Option<f64>,
+    /// Glass added for each crossover between strokes, for stepping back behind the sign and forward
+    /// again.
+    pub crossover_mm: f64,
+}
+
+impl Bending {
+    fn is_usual(&self) -> bool {
+        *self == Self::default()
+    }
+}
+
+impl Default for Bending {
+    fn default() -> Self {
+        Self {
+            least_radius_diameters: Some(1.5),
+            least_letter_diameters: Some(8.0),
+            least_spacing_diameters: Some(2.0),
+            least_electrode_spacing_mm: None,
+            crossover_mm: 0.0,
+        }
+    }
+}
+
 /// The default loading windows, as shares of no-load volts. From the square-wave model and the
 /// reignition of the gases; a rating's own plate window replaces them.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
@@ -305,19 +352,31 @@ impl Default for Loading {
 /// A sentence saying what is wrong and where, for text that is not a book of a known version.
 pub fn read(text: &str) -> Result<Book, String> {
     let text = without_mark(text);
-    check_kind(text, KIND, VERSION)?;
-    serde_json::from_str(text)
-        .map_err(|error| format!("This book file cannot be read: {}.", json_trouble(&error)))
+    check_kind(text, KIND, OLDEST..=VERSION)?;
+    let mut book: Book = serde_json::from_str(text)
+        .map_err(|error| format!("This book file cannot be read: {}.", json_trouble(&error)))?;
+    book.version = VERSION;
+    Ok(book)
 }
 
-/// The book as the text of a file.
+/// The book as the text of a file, of the oldest version that can hold it.
 pub fn write(book: &Book) -> String {
+    let plain = book.bending == Bending::default();
+    let book = &Book {
+        version: if plain { OLDEST } else { VERSION },
+        ..book.clone()
+    };
     // Floats that are not finite cannot be typed or read in; JSON would write them as null.
     serde_json::to_string_pretty(book).unwrap_or_default()
 }
 
 /// Whether a text is JSON at all, of the wanted kind and of a version this program knows.
-pub(crate) fn check_kind(text: &str, kind: &str, version: u32) -> Result<(), String> {
+pub(crate) fn check_kind(
+    text: &str,
+    kind: &str,
+    versions: RangeInclusive<u32>,
+) -> Result<(), String> {
+    let newest = *versions.end();
     let head: serde_json::Value = serde_json::from_str(text).map_err(|error| {
         format!(
             "This is not a {kind} file: expected JSON written by this program, but {}.",
@@ -339,14 +398,14 @@ pub(crate) fn check_kind(text: &str, kind: &str, version: u32) -> Result<(), Str
         }
     }
     match head.get("version").and_then(serde_json::Value::as_u64) {
-        Some(found) if found == u64::from(version) => Ok(()),
-        Some(found) if found > u64::from(version) => Err(format!(
-            "This {kind} file has version {found}; this program knows versions up to {version}. \
+        Some(found) if u32::try_from(found).is_ok_and(|found| versions.contains(&found)) => Ok(()),
+        Some(found) if found > u64::from(newest) => Err(format!(
+            "This {kind} file has version {found}; this program knows versions up to {newest}. \
              Open it with a newer program."
         )),
         _ => Err(format!(
             "This {kind} file names no version that exists; this program knows versions up to \
-             {version}."
+             {newest}."
         )),
     }
 }

@@ -379,6 +379,7 @@ mod tests {
             strokes: lengths.to_owned(),
             tube: "t".to_owned(),
             count: 1,
+            ..StrokesRow::default()
         });
         let job = Job {
             rows: vec![row],

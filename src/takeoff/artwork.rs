@@ -253,6 +253,7 @@ mod tests {
             width: width.to_owned(),
             lines,
             count: 1,
+            ..ArtworkRow::default()
         };
         let mut findings = Vec::new();
         (row(0, &taken, &files, &mut findings), findings)

@@ -410,12 +410,14 @@ mod tests {
                     strokes: "1850 mm; 3057 mm".to_owned(),
                     tube: "t".to_owned(),
                     count: 2,
+                    ..StrokesRow::default()
                 }),
                 Row::Strokes(StrokesRow {
                     label: String::new(),
                     strokes: "300 mm; 300 mm".to_owned(),
                     tube: "t".to_owned(),
                     count: 1,
+                    ..StrokesRow::default()
                 }),
                 texts("Hi", "100 mm", "sans", 1).rows.remove(0),
             ],
@@ -467,6 +469,7 @@ mod tests {
             strokes: "2400.3 mm".to_owned(),
             tube: "t".to_owned(),
             count: 1,
+            ..StrokesRow::default()
         });
         let job = Job {
             rows: vec![row],

@@ -515,10 +515,10 @@ fn book_files_that_cannot_be_read() {
     assert_snapshot!(book_error("{}"), @"This is not a book file: it has no “tubewright” field that says “book”.");
     assert_snapshot!(book_error(r#"{"tubewright": "job", "version": 1, "name": "x"}"#), @"Expected a book file, but this is a “job” file.");
     assert_snapshot!(book_error(r#"{"tubewright": 7, "version": 1, "name": "x"}"#), @"This is not a book file: it has no “tubewright” field that says “book”.");
-    assert_snapshot!(book_error(r#"{"tubewright": "book", "name": "x"}"#), @"This book file names no version that exists; this program knows versions up to 1.");
-    assert_snapshot!(book_error(r#"{"tubewright": "book", "version": 2, "name": "x"}"#), @"This book file has version 2; this program knows versions up to 1. Open it with a newer program.");
-    assert_snapshot!(book_error(r#"{"tubewright": "book", "version": 0, "name": "x"}"#), @"This book file names no version that exists; this program knows versions up to 1.");
-    assert_snapshot!(book_error(r#"{"tubewright": "book", "version": -1, "name": "x"}"#), @"This book file names no version that exists; this program knows versions up to 1.");
+    assert_snapshot!(book_error(r#"{"tubewright": "book", "name": "x"}"#), @"This book file names no version that exists; this program knows versions up to 2.");
+    assert_snapshot!(book_error(r#"{"tubewright": "book", "version": 3, "name": "x"}"#), @"This book file has version 3; this program knows versions up to 2. Open it with a newer program.");
+    assert_snapshot!(book_error(r#"{"tubewright": "book", "version": 0, "name": "x"}"#), @"This book file names no version that exists; this program knows versions up to 2.");
+    assert_snapshot!(book_error(r#"{"tubewright": "book", "version": -1, "name": "x"}"#), @"This book file names no version that exists; this program knows versions up to 2.");
     assert_snapshot!(book_error(r#"{"tubewright": "book", "version": 1}"#), @"This book file cannot be read: “name” is missing (line 1, column 36).");
     assert_snapshot!(book_error(r#"{"tubewright": "book", "version": 1, "name": "x", "shop": 1}"#), @"This book file cannot be read: unknown field “shop” (line 1, column 56).");
     assert_snapshot!(

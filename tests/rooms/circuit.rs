@@ -176,6 +176,7 @@ fn pieces(strokes: &str) -> Vec<Piece> {
         strokes: strokes.to_owned(),
         tube: "t".to_owned(),
         count: 1,
+        ..StrokesRow::default()
     });
     let off = takeoff(
         &Job {

@@ -26,6 +26,7 @@ fn job() -> Job {
                 strokes: "3 x 180 mm; 95 mm".to_owned(),
                 tube: String::new(),
                 count: i64::MAX,
+                ..StrokesRow::default()
             }),
         ],
         rules: "NEC Article 600".to_owned(),
@@ -124,8 +125,8 @@ fn job_files_that_cannot_be_read() {
     assert_snapshot!(error("OPEN"), @"This is not a job file: expected JSON written by this program, but no value stands there (line 1, column 1).");
     assert_snapshot!(error(r#"{"tubewright": "book", "version": 1, "name": "x"}"#), @"Expected a job file, but this is a “book” file.");
     assert_snapshot!(error(r#"{"tubewright": "<b>", "version": 1, "name": "x"}"#), @"Expected a job file, but this is a “<b>” file.");
-    assert_snapshot!(error(r#"{"tubewright": "job", "version": 99, "name": "x"}"#), @"This job file has version 99; this program knows versions up to 2. Open it with a newer program.");
-    assert_snapshot!(error(r#"{"tubewright": "job", "version": "1", "name": "x"}"#), @"This job file names no version that exists; this program knows versions up to 2.");
+    assert_snapshot!(error(r#"{"tubewright": "job", "version": 99, "name": "x"}"#), @"This job file has version 99; this program knows versions up to 3. Open it with a newer program.");
+    assert_snapshot!(error(r#"{"tubewright": "job", "version": "1", "name": "x"}"#), @"This job file names no version that exists; this program knows versions up to 3.");
     assert_snapshot!(error(r#"{"tubewright": "job", "version": 1}"#), @"This job file cannot be read: “name” is missing (line 1, column 35).");
     assert_snapshot!(error(r#"{"tubewright": "job", "version": 1, "name": "x", "price": 1}"#), @"This job file cannot be read: unknown field “price” (line 1, column 56).");
     assert_snapshot!(

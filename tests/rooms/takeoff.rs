@@ -24,6 +24,7 @@ fn strokes(strokes: &str, count: i64) -> Row {
         strokes: strokes.to_owned(),
         tube: "t".to_owned(),
         count,
+        ..StrokesRow::default()
     })
 }
 

@@ -32,6 +32,7 @@ fn strokes(strokes: &str) -> Row {
         strokes: strokes.to_owned(),
         tube: MERCURY.to_owned(),
         count: 1,
+        ..StrokesRow::default()
     })
 }
 
@@ -224,6 +225,7 @@ fn row() -> impl Strategy<Value = Row> {
                 strokes,
                 tube,
                 count,
+                ..StrokesRow::default()
             })
         }),
     ]
@@ -673,6 +675,7 @@ fn a_mistyped_pair_voltage_makes_no_endless_search() {
         strokes: vec!["10 mm"; 1_000].join(";"),
         tube: "odd".to_owned(),
         count: 1,
+        ..StrokesRow::default()
     });
     let job = job(vec![row]);
     let work = workup(&job, &book);
@@ -833,6 +836,7 @@ fn a_circuit_that_the_model_is_not_sure_of_is_looked_at() {
             strokes: length.to_owned(),
             tube: NEON.to_owned(),
             count: 1,
+            ..StrokesRow::default()
         });
         let work = workup(&job(vec![row]), &book);
         assert_eq!(work.circuits.len(), 1, "{}", said(&work));
@@ -894,6 +898,7 @@ fn a_sum_says_what_it_is_without() {
             strokes: "1 m".to_owned(),
             tube: tube.to_owned(),
             count: 1,
+            ..StrokesRow::default()
         })
     };
     assert_snapshot!(told(vec![unknown("none such")], &book()), @r"

@@ -589,6 +589,7 @@ mod tests {
                 strokes: strokes.to_owned(),
                 tube: tube.clone(),
                 count: 1,
+                ..StrokesRow::default()
             })
         };
         let job = Job {

@@ -137,6 +137,7 @@ fn artwork(desk: Desk, mut file: ArtworkFile) {
         width: String::new(),
         lines,
         count: 1,
+        ..ArtworkRow::default()
     });
     let kinds = groups.len();
     desk.edit_job("open", "Take in artwork", |job| {

@@ -78,6 +78,7 @@ fn add(desk: Desk, text: bool) {
             strokes: String::new(),
             tube,
             count: 1,
+            ..StrokesRow::default()
         })
     };
     desk.settle();
