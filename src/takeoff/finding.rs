@@ -342,28 +342,42 @@ pub(super) fn no_width(at: usize) -> Finding {
     )
 }
 
-/// How many parts that were not read are told one by one.
+/// Reasons that are each given a sentence.
 const UNREAD_EACH: usize = 5;
 
-/// What of an artwork was not read: each part, then how many more.
+/// What of an artwork was not read: a sentence for each reason, then how many more parts. What is
+/// read no worse for it, such as lines of no length, must not hide the one text that is missing.
 pub(super) fn unread(at: usize, parts: &[Unread]) -> Vec<Finding> {
-    let mut said: Vec<Finding> = parts
-        .iter()
-        .take(UNREAD_EACH)
-        .map(|part| {
+    let mut reasons: Vec<(&Unread, usize)> = Vec::new();
+    let mut places = std::collections::BTreeMap::new();
+    for part in parts {
+        let place = *places.entry(part.why.as_str()).or_insert_with(|| {
+            reasons.push((part, 0));
+            reasons.len() - 1
+        });
+        reasons[place].1 += 1;
+    }
+    let told = reasons.iter().take(UNREAD_EACH);
+    let mut said: Vec<Finding> = told
+        .map(|&(first, count)| {
+            let others = match count {
+                1 => String::new(),
+                _ => format!(" and {} more", count - 1),
+            };
             row(
                 Grade::Look,
                 at,
                 format!(
-                    "Not read: {}: {}.",
-                    part.element,
-                    part.why.trim_end_matches('.')
+                    "Not read as drawn: {}{others}: {}.",
+                    first.element,
+                    first.why.trim_end_matches('.')
                 ),
             )
         })
         .collect();
-    if parts.len() > UNREAD_EACH {
-        let more = parts.len() - UNREAD_EACH;
+    let more = reasons.iter().skip(UNREAD_EACH);
+    let more: usize = more.map(|(_, count)| count).sum();
+    if more > 0 {
         said.push(row(
             Grade::Look,
             at,

@@ -22,6 +22,9 @@ mod drawing;
 /// SVG files: exact lengths, what is left unread, what is refused.
 mod svg;
 
+/// Drawings of general programs: lengths, layers, what is not read, and the glass made of them.
+mod drawn;
+
 /// DXF drawings: lengths and places against another library, what is named as not read, refusals.
 mod dxf;
 
