@@ -121,6 +121,67 @@ fn every_letter_of_the_face_with_accents() {
     assert!((capitals - 65.475_990).abs() < 5e-7, "{capitals}");
 }
 
+/// Source: `tests/reference/letters/PROVENANCE.md`; svgpathtools on the SVG fonts themselves.
+const FONTS: &str = include_str!("../reference/letters/svgfont_caps.json");
+
+/// Height of H and length of each capital of one of those fonts, in its units.
+fn capitals(font: &str) -> (f64, Vec<(char, f64)>) {
+    let fonts: serde_json::Value = serde_json::from_str(FONTS).expect("the reference");
+    let font = &fonts["faces"][font];
+    let lengths = font["len_units"].as_object().expect("lengths");
+    assert_eq!(lengths.len(), 26, "the reference is whole");
+    let lengths = lengths.iter().map(|(letter, length)| {
+        let letter = letter.parse().expect("one letter");
+        (letter, length.as_f64().expect("a length"))
+    });
+    let height = font["H_extent"].as_f64().expect("a height");
+    (height, lengths.collect())
+}
+
+#[test]
+fn capitals_of_the_face_with_accents_are_those_of_its_font() {
+    let (height, lengths) = capitals("EMSReadability");
+    let face = face("accents").expect("the face is shipped");
+    let shaped = |letter: char| face.shape(&letter.to_string(), height);
+    assert!((shaped('H').bounds.height() - height).abs() < 1e-9);
+    // How far the font goes back over its own lines: what it draws less what shines.
+    let mut twice = std::collections::BTreeMap::new();
+    for row in csv::Reader::from_reader(ACCENTS.as_bytes()).records() {
+        let row = row.expect("a row of the table");
+        let figure = |at: usize| row[at].parse::<f64>().expect("a figure");
+        let code = u32::from_str_radix(&row[0], 16).expect("a code point");
+        twice.insert(code, figure(2) - figure(3));
+    }
+    let mut went_back = String::new();
+    for (letter, drawn) in lengths {
+        let back = twice[&u32::from(letter)];
+        if back > 0.0 {
+            went_back.push(letter);
+        }
+        let found = strokes_mm(&shaped(letter)) + back;
+        assert!(
+            (found - drawn).abs() < 1e-6,
+            "{letter}: {found}, the font draws {drawn}"
+        );
+    }
+    assert_eq!(went_back, "ABEFHRTY");
+}
+
+#[test]
+fn capitals_of_the_other_faces_are_near_their_rounded_copies() {
+    for (name, font) in [("sans", "HersheySans1"), ("script", "HersheyScript1")] {
+        let (height, lengths) = capitals(font);
+        let face = face(name).expect("the face is shipped");
+        for (letter, drawn) in lengths {
+            let found = strokes_mm(&face.shape(&letter.to_string(), height));
+            assert!(
+                (found / drawn - 1.0).abs() < 2e-3,
+                "{name} {letter}: {found}, the copy draws {drawn}"
+            );
+        }
+    }
+}
+
 #[test]
 fn what_a_shop_abroad_writes_is_there() {
     let shaped = |text: &str| face("accents").expect("shipped").shape(text, 100.0);

@@ -40,6 +40,9 @@ mod tube;
 /// Rows to pieces of glass, by hand from the shapes of the letters.
 mod takeoff;
 
+/// What holds of the glass of any artwork: turned, mirrored, reversed, reordered, scaled, summed.
+mod glass;
+
 /// Operating points against ngspice and exact solutions; volts to earth.
 mod circuit;
 
