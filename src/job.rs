@@ -3,17 +3,22 @@
 //! Lengths stay as typed, with their unit (`"450 mm"`, `"1' 6 1/2\""`); a bare number in a file is
 //! millimetres.
 
+mod shape;
+
 use std::sync::Arc;
 
 use serde::{Deserialize, Deserializer, Serialize, Serializer};
 
 use crate::book::Dampness;
 
+pub use shape::{Shape, ShapeRow};
+
 /// What the `tubewright` field of a job file says.
 pub const KIND: &str = "job";
 /// The newest version of the job file that this program knows. A job is written in the oldest version
 /// that can hold it, so that an older program still opens what it understands: 2 brought artwork and
-/// the layout of letters; 3 brought groups, choices of pieces and the sign's outline.
+/// the layout of letters; 3 brought shapes, groups, choices of pieces
+/// and the sign's outline.
 pub const VERSION: u32 = 3;
 /// The oldest version that is read.
 const OLDEST: u32 = 1;
@@ -94,6 +99,8 @@ pub enum Row {
     Strokes(StrokesRow),
     /// The lines of an artwork file.
     Artwork(ArtworkRow),
+    /// A plain shape.
+    Shape(ShapeRow),
 }
 
 /// An artwork file as it was opened. Copies share the text: a drawing may be large, and every step
@@ -383,6 +390,7 @@ impl Row {
         match self {
             Self::Text(row) => vec![&row.tube],
             Self::Strokes(row) => vec![&row.tube],
+            Self::Shape(row) => vec![&row.tube],
             Self::Artwork(row) => {
                 let named = row.lines.iter().map(|lines| lines.tube.as_str());
                 named.filter(|tube| !tube.is_empty()).collect()
@@ -396,6 +404,7 @@ impl Row {
             Self::Text(row) => &row.group,
             Self::Strokes(row) => &row.group,
             Self::Artwork(row) => &row.group,
+            Self::Shape(row) => &row.group,
         }
     }
 
@@ -405,6 +414,7 @@ impl Row {
             Self::Text(row) => &mut row.group,
             Self::Strokes(row) => &mut row.group,
             Self::Artwork(row) => &mut row.group,
+            Self::Shape(row) => &mut row.group,
         }
     }
 
@@ -414,6 +424,7 @@ impl Row {
             Self::Text(row) => &row.pieces,
             Self::Strokes(row) => &row.pieces,
             Self::Artwork(row) => &row.pieces,
+            Self::Shape(row) => &row.pieces,
         }
     }
 
@@ -423,6 +434,7 @@ impl Row {
             Self::Text(row) => &mut row.pieces,
             Self::Strokes(row) => &mut row.pieces,
             Self::Artwork(row) => &mut row.pieces,
+            Self::Shape(row) => &mut row.pieces,
         }
     }
 
@@ -432,6 +444,7 @@ impl Row {
             Self::Text(row) => row.count,
             Self::Strokes(row) => row.count,
             Self::Artwork(row) => row.count,
+            Self::Shape(row) => row.count,
         }
     }
 
@@ -441,6 +454,7 @@ impl Row {
             Self::Text(row) => &row.text,
             Self::Strokes(row) => &row.label,
             Self::Artwork(row) => &row.label,
+            Self::Shape(row) => &row.label,
         }
     }
 }
@@ -545,6 +559,7 @@ fn oldest(job: &Job) -> u32 {
             Row::Text(row) if row.is_plain() => OLDEST,
             Row::Strokes(_) => OLDEST,
             Row::Text(_) | Row::Artwork(_) => 2,
+            Row::Shape(_) => 3,
         }
     };
     let of_rows = job.rows.iter().map(of_row).max().unwrap_or(OLDEST);

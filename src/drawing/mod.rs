@@ -1,6 +1,7 @@
-//! Letter faces: characters as strokes, drawn to a letter height.
+//! Letter faces: characters as strokes, drawn to a letter height; plain shapes; artwork files.
 //!
-//! Strokes are kurbo paths in millimetres, x to the right, y downwards, the baseline at y = 0.
+//! Strokes are kurbo paths in millimetres, x to the right, y downwards, the baseline of letters at
+//! y = 0.
 
 mod artwork;
 pub mod dxf;
@@ -9,6 +10,7 @@ mod jhf;
 mod layout;
 pub mod outline;
 mod plain;
+pub mod shapes;
 pub mod svg;
 
 pub use artwork::{ArtGroup, ArtStroke, Artwork, Unread};

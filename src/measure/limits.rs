@@ -130,6 +130,69 @@ pub const ARC_RISE_MM: Limit = Limit {
     why: "with less the line is straight",
 };
 
+/// Every size of a shape but its corner radius and the radius of an arc; sentences name the size.
+pub const SHAPE_SIZE_MM: Limit = Limit {
+    name: "size",
+    least: 10.0,
+    most: 20_000.0,
+    unit: "mm",
+    why: "smaller cannot be bent in glass, larger is built from several shapes",
+};
+
+/// Length of the line of a shape.
+pub const SHAPE_LENGTH_MM: Limit = Limit {
+    name: "the glass of one shape",
+    least: 10.0,
+    most: 100_000.0,
+    unit: "mm",
+    why: "shorter cannot be bent, longer is built from several shapes",
+};
+
+/// How much of a circle an arc is.
+pub const ARC_SWEEP_DEGREES: Limit = Limit {
+    name: "arc sweep",
+    least: 1.0,
+    most: 359.0,
+    unit: "degrees",
+    why: "with less it is a straight line, all of it is a circle",
+};
+
+/// Points of a polyline.
+pub const POLYLINE_POINTS: Limit = Limit {
+    name: "points",
+    least: 2.0,
+    most: 200.0,
+    unit: "",
+    why: "a line goes from one to another; a drawing of more is artwork",
+};
+
+/// How far a point of a polyline is across and how far up; sentences name which.
+pub const POINT_MM: Limit = Limit {
+    name: "a point",
+    least: 0.0,
+    most: 20_000.0,
+    unit: "mm",
+    why: "from the lower left; larger is built from several shapes",
+};
+
+/// Sides of a polygon.
+pub const POLYGON_SIDES: Limit = Limit {
+    name: "sides",
+    least: 3.0,
+    most: 60.0,
+    unit: "",
+    why: "with fewer nothing is enclosed, with more it looks like a circle",
+};
+
+/// Points of a star.
+pub const STAR_POINTS: Limit = Limit {
+    name: "points of a star",
+    least: 3.0,
+    most: 60.0,
+    unit: "",
+    why: "with fewer it is no star, more cannot be told apart",
+};
+
 /// Rows in a job.
 pub const ROWS: Limit = Limit {
     name: "rows",

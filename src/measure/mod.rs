@@ -5,14 +5,18 @@
 //! become floating millimetres only when a figure is worked out from them.
 
 mod limits;
+mod point;
 mod quantity;
 mod read;
 mod show;
 
 pub use limits::{
-    ARC_RADIUS_MM, ARC_RISE_MM, COUNT, LETTER_HEIGHT_MM, LINE_GAP_PERCENT, Limit, PIECE_LENGTH_MM,
-    PIECES, ROTATION_DEGREES, ROWS, SPACING_PERCENT, TEXT_CHARACTERS, WIDTH_PERCENT,
+    ARC_RADIUS_MM, ARC_RISE_MM, ARC_SWEEP_DEGREES, COUNT, LETTER_HEIGHT_MM, LINE_GAP_PERCENT,
+    Limit, PIECE_LENGTH_MM, PIECES, POINT_MM, POLYGON_SIDES, POLYLINE_POINTS, ROTATION_DEGREES,
+    ROWS, SHAPE_LENGTH_MM, SHAPE_SIZE_MM, SPACING_PERCENT, STAR_POINTS, TEXT_CHARACTERS,
+    WIDTH_PERCENT,
 };
+pub use point::{point, points_with_units};
 pub use quantity::{Length, Milliamps, Volts};
 pub use read::{
     ExactLength, LengthUnit, ReadError, figure, length, money, quoted, repeated, with_units,

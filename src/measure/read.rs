@@ -79,7 +79,7 @@ pub struct ReadError {
 }
 
 impl ReadError {
-    fn new(text: &str, at: usize, expected: impl Into<String>) -> Self {
+    pub(super) fn new(text: &str, at: usize, expected: impl Into<String>) -> Self {
         Self {
             text: text.to_owned(),
             at,
@@ -88,7 +88,7 @@ impl ReadError {
         }
     }
 
-    fn hint(mut self, hint: impl Into<String>) -> Self {
+    pub(super) fn hint(mut self, hint: impl Into<String>) -> Self {
         self.hint = Some(hint.into());
         self
     }

@@ -182,6 +182,40 @@ pub(super) fn no_arc(at: usize, typed_mm: f64, why: NoArc, by: f64) -> Finding {
     row(Grade::Stop, at, says).with(typed_mm, limit, "mm")
 }
 
+/// Down to a thousandth of a millimetre, so that what the sentence asks for will do.
+fn no_more(value: f64) -> String {
+    figure((value * 1_000.0 + 1e-6).floor() / 1_000.0)
+}
+
+/// The radius of a rectangle's corners is more than half its shorter side.
+pub(super) fn corner(at: usize, mm: f64, most: f64) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        format!(
+            "Corner radius must be at most {} mm (half the shorter side; there the corners meet), but \
+             is {} mm.",
+            no_more(most),
+            figure(mm)
+        ),
+    )
+    .with(mm, most, "mm")
+}
+
+/// A size is not less than another; `why` says what that is.
+pub(super) fn not_less(at: usize, (field, mm): (&str, f64), than: f64, why: &str) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        format!(
+            "{field} must be less than {} mm ({why}), but is {} mm.",
+            no_more(than),
+            figure(mm)
+        ),
+    )
+    .with(mm, than, "mm")
+}
+
 /// Letters of a joined face that are set apart or turned do not meet as drawn.
 pub(super) fn joints(at: usize, face: &Face) -> Finding {
     row(

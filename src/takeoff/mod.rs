@@ -12,6 +12,7 @@ mod finding;
 mod letters;
 mod pieces;
 mod route;
+mod shape;
 
 use kurbo::{BezPath, Point, Rect};
 

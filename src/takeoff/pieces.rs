@@ -3,7 +3,7 @@
 use kurbo::{Affine, BezPath, ParamCurveArclen, Point, Rect};
 
 use super::route::Route;
-use super::{Piece, RowTakeoff, artwork, finding, letters};
+use super::{Piece, RowTakeoff, artwork, finding, letters, shape};
 use crate::book::Allowances;
 use crate::job::{Job, Row, StrokesRow};
 use crate::measure::{self, Length, LengthUnit};
@@ -64,6 +64,7 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
             Row::Text(row) => letters::row(at, row, &mut off.findings),
             Row::Strokes(row) => strokes(at, row, &mut off.findings),
             Row::Artwork(row) => artwork::row(at, row, &job.artwork, &mut off.findings),
+            Row::Shape(row) => shape::row(at, row, &mut off.findings),
         };
         let copies = count(at, row.count(), &mut off.findings);
         let wanted = made.pieces.len() * copies;

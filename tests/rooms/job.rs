@@ -131,7 +131,7 @@ fn job_files_that_cannot_be_read() {
     assert_snapshot!(error(r#"{"tubewright": "job", "version": 1, "name": "x", "price": 1}"#), @"This job file cannot be read: unknown field “price” (line 1, column 56).");
     assert_snapshot!(
         error(r#"{"tubewright": "job", "version": 1, "name": "x", "rows": [{"row": "circle"}]}"#),
-        @"This job file cannot be read: expected text or strokes or artwork, but found “circle” (line 1, column 74)."
+        @"This job file cannot be read: expected text or strokes or artwork or shape, but found “circle” (line 1, column 74)."
     );
     assert_snapshot!(
         error(r#"{"tubewright": "job", "version": 1, "name": "x", "rows": [{"row": "text", "text": "A"}]}"#),

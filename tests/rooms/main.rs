@@ -43,6 +43,9 @@ mod takeoff;
 /// What holds of the glass of any artwork: turned, mirrored, reversed, reordered, scaled, summed.
 mod glass;
 
+/// Plain shapes against closed forms; what of them is refused, in which words.
+mod shapes;
+
 /// Operating points against ngspice and exact solutions; volts to earth.
 mod circuit;
 

@@ -8,9 +8,11 @@ use tubewright::book::{
     Allowances, Book, Dampness, Gas, Loading, OutputEarthing, Rates, SupplyEntry, SupplyKind,
     TubeEntry, starter,
 };
-use tubewright::job::{Job, Row, Site, StrokesRow, TextRow, Wish};
+use tubewright::job::{Job, Row, ShapeRow, Site, StrokesRow, TextRow, Wish};
 use tubewright::rules::{Grade, Place};
 use tubewright::{Workup, workup};
+
+use super::shapes::any_shape;
 
 const NEON: &str = "12 mm neon";
 const MERCURY: &str = "15 mm argon-mercury";
@@ -226,6 +228,15 @@ fn row() -> impl Strategy<Value = Row> {
                 tube,
                 count,
                 ..StrokesRow::default()
+            })
+        }),
+        (awkward(), any_shape(), tube_name(), count()).prop_map(|(label, shape, tube, count)| {
+            Row::Shape(ShapeRow {
+                label,
+                shape,
+                tube,
+                count,
+                ..ShapeRow::default()
             })
         }),
     ]

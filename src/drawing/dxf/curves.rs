@@ -13,7 +13,7 @@ const LEAST_BULGE: f64 = 1e-7;
 pub(super) const DEGREE_MOST: usize = 15;
 
 /// Adds the arc `centre + u cos a + v sin a`, `a` from `from` over `sweep`, ending just at `end`.
-pub(super) fn arc(
+pub(in crate::drawing) fn arc(
     path: &mut BezPath,
     centre: Point,
     (u, v): (Vec2, Vec2),

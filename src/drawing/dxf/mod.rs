@@ -9,7 +9,7 @@
 //! into a page that has to stay small, for a format that is pairs of lines.
 
 mod colours;
-mod curves;
+pub(super) mod curves;
 mod document;
 mod elements;
 mod groups;

@@ -8,6 +8,7 @@ mod frame;
 mod glass;
 mod price;
 mod rows;
+mod shape_fields;
 mod shop_book;
 mod sign;
 

@@ -3,7 +3,7 @@
 use leptos::prelude::*;
 use tubewright::Job;
 use tubewright::drawing::faces;
-use tubewright::job::{ArtworkLines, ArtworkRow, Row, StrokesRow, TextRow};
+use tubewright::job::{ArtworkLines, ArtworkRow, Row, ShapeRow, StrokesRow, TextRow};
 use tubewright::measure::{
     LETTER_HEIGHT_MM, Length, LengthUnit, PIECE_LENGTH_MM, Units, glass, length, length_shown,
     quoted, with_units,
@@ -13,6 +13,7 @@ use tubewright::takeoff::artwork;
 
 use super::fields::{Choice, Field, always};
 use super::findings::{line, many};
+use super::shape_fields::{self, ShapeFields};
 use wasm_bindgen::JsCast;
 
 use crate::desk::{Desk, desk};
@@ -34,8 +35,9 @@ pub fn Rows() -> impl IntoView {
                 <p class="quiet">"Start with a word: what does the sign say?"</p>
             </Show>
             <div class="buttons">
-                <button class="act" on:click=move |_| add(desk, true)>"+ Word"</button>
-                <button class="act" on:click=move |_| add(desk, false)>"+ Strokes"</button>
+                <button class="act" on:click=move |_| add(desk, word(desk))>"+ Word"</button>
+                <button class="act" on:click=move |_| add(desk, strokes(desk))>"+ Strokes"</button>
+                <button class="act" on:click=move |_| add(desk, shape(desk))>"+ Shape"</button>
                 <label class="button act">
                     "+ Artwork file"
                     <input
@@ -50,37 +52,43 @@ pub fn Rows() -> impl IntoView {
     }
 }
 
-/// A new row takes height, face and tube of the last of its kind.
-fn add(desk: Desk, text: bool) {
-    let tube = usual_tube(desk);
+/// A row of letters takes height and face of the last one.
+fn word(desk: Desk) -> Row {
     let last = desk.job.with_untracked(|job| {
         job.rows.iter().rev().find_map(|row| match row {
             Row::Text(row) => Some(row.clone()),
-            Row::Strokes(_) | Row::Artwork(_) => None,
+            Row::Strokes(_) | Row::Artwork(_) | Row::Shape(_) => None,
         })
     });
     let inches = desk.units.get_untracked() == Units::FeetInches;
-    let row = if text {
-        Row::Text(TextRow {
-            text: String::new(),
-            height: last.as_ref().map_or_else(
-                || if inches { "8 in" } else { "200 mm" }.to_owned(),
-                |row| row.height.clone(),
-            ),
-            face: last.map_or_else(|| "sans".to_owned(), |row| row.face),
-            tube,
-            count: 1,
-            ..TextRow::default()
-        })
-    } else {
-        Row::Strokes(StrokesRow {
-            label: "Border".to_owned(),
-            strokes: String::new(),
-            tube,
-            count: 1,
-            ..StrokesRow::default()
-        })
-    };
+    Row::Text(TextRow {
+        height: last.as_ref().map_or_else(
+            || if inches { "8 in" } else { "200 mm" }.to_owned(),
+            |row| row.height.clone(),
+        ),
+        face: last.map_or_else(|| "sans".to_owned(), |row| row.face),
+        tube: usual_tube(desk),
+        ..TextRow::default()
+    })
+}
+
+fn strokes(desk: Desk) -> Row {
+    Row::Strokes(StrokesRow {
+        label: "Border".to_owned(),
+        tube: usual_tube(desk),
+        ..StrokesRow::default()
+    })
+}
+
+fn shape(desk: Desk) -> Row {
+    Row::Shape(ShapeRow {
+        shape: shape_fields::start("rectangle", desk.units.get_untracked()),
+        tube: usual_tube(desk),
+        ..ShapeRow::default()
+    })
+}
+
+fn add(desk: Desk, row: Row) {
     desk.settle();
     desk.edit_job("add", "Add a row", |job| job.rows.push(row));
     desk.settle();
@@ -119,7 +127,7 @@ fn part<T: Default>(job: &Job, at: usize, get: impl Fn(&Row) -> T) -> T {
     job.rows.get(at).map(get).unwrap_or_default()
 }
 
-fn edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut Row)) {
+pub(super) fn edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut Row)) {
     let says = format!("Row {}: {field}", at + 1);
     desk.edit_job(&format!("row {at} {field}"), &says, |job| {
         if let Some(row) = job.rows.get_mut(at) {
@@ -128,11 +136,22 @@ fn edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut Row)) {
     });
 }
 
+/// Reads a count; `now` is the one that stands where it cannot be read.
+pub(super) fn whole(typed: &str, now: i64) -> Result<i64, String> {
+    typed.trim().parse().map_err(|_| {
+        format!(
+            "Expected a whole number such as 2, but found {}; {now} still counts.",
+            quoted(typed)
+        )
+    })
+}
+
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 enum Kind {
     Text,
     Strokes,
     Artwork,
+    Shape,
 }
 
 #[component]
@@ -142,6 +161,7 @@ fn RowCard(at: usize) -> impl IntoView {
         desk.job.with(|job| match job.rows.get(at) {
             Some(Row::Text(_)) => Kind::Text,
             Some(Row::Artwork(_)) => Kind::Artwork,
+            Some(Row::Shape(_)) => Kind::Shape,
             _ => Kind::Strokes,
         })
     });
@@ -178,6 +198,7 @@ fn RowCard(at: usize) -> impl IntoView {
                     commit=move |name: String| edit(desk, at, "tube", |row| match row {
                         Row::Text(row) => row.tube = name,
                         Row::Strokes(row) => row.tube = name,
+                        Row::Shape(row) => row.tube = name,
                         Row::Artwork(_) => {}
                     })
                 />
@@ -192,17 +213,13 @@ fn RowCard(at: usize) -> impl IntoView {
                 number=true
                 value=read(|row| row.count().to_string())
                 commit=move |typed: String| {
-                    let count = typed.trim().parse::<i64>().map_err(|_| {
-                        format!(
-                            "Expected a whole number such as 2, but found {}; {} still counts.",
-                            quoted(&typed),
-                            desk.job.with_untracked(|job| part(job, at, Row::count))
-                        )
-                    })?;
+                    let now = desk.job.with_untracked(|job| part(job, at, Row::count));
+                    let count = whole(&typed, now)?;
                     edit(desk, at, "times", |row| match row {
                         Row::Text(row) => row.count = count,
                         Row::Strokes(row) => row.count = count,
                         Row::Artwork(row) => row.count = count,
+                        Row::Shape(row) => row.count = count,
                     });
                     Ok(())
                 }
@@ -232,7 +249,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 example="200 mm"
                 value=read(|row| match row {
                     Row::Text(row) => row.height.clone(),
-                    Row::Strokes(_) | Row::Artwork(_) => String::new(),
+                    Row::Strokes(_) | Row::Artwork(_) | Row::Shape(_) => String::new(),
                 })
                 commit=move |typed: String| {
                     let typed = with_units(typed.trim(), desk.bare());
@@ -245,7 +262,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 class="narrow"
                 value=read(|row| match row {
                     Row::Text(row) => row.face.clone(),
-                    Row::Strokes(_) | Row::Artwork(_) => String::new(),
+                    Row::Strokes(_) | Row::Artwork(_) | Row::Shape(_) => String::new(),
                 })
                 options=Signal::derive(|| {
                     faces().iter().map(|face| (face.name.to_owned(), face.name.to_owned())).collect()
@@ -280,7 +297,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 example="1200 mm; 2 x 300 mm + 95 mm"
                 value=read(|row| match row {
                     Row::Strokes(row) => row.strokes.clone(),
-                    Row::Text(_) | Row::Artwork(_) => String::new(),
+                    Row::Text(_) | Row::Artwork(_) | Row::Shape(_) => String::new(),
                 })
                 commit=move |typed: String| {
                     let typed = with_units(typed.trim(), desk.bare());
@@ -337,6 +354,7 @@ fn RowCard(at: usize) -> impl IntoView {
                     Kind::Text => view! { {text_fields()} {tube()} }.into_any(),
                     Kind::Strokes => view! { {stroke_fields()} {tube()} }.into_any(),
                     Kind::Artwork => view! { <ArtworkFields at=at/> }.into_any(),
+                    Kind::Shape => view! { <ShapeFields at=at/> {tube()} }.into_any(),
                 }}
                 {times()}
             </div>
