@@ -7,6 +7,8 @@ mod shape;
 
 use std::sync::Arc;
 
+use base64::Engine as _;
+use base64::engine::general_purpose::STANDARD;
 use serde::{Deserialize, Deserializer, Serialize, Serializer};
 
 use crate::book::Dampness;
@@ -17,8 +19,8 @@ pub use shape::{Shape, ShapeRow};
 pub const KIND: &str = "job";
 /// The newest version of the job file that this program knows. A job is written in the oldest version
 /// that can hold it, so that an older program still opens what it understands: 2 brought artwork and
-/// the layout of letters; 3 brought shapes, groups, choices of pieces
-/// and the sign's outline.
+/// the layout of letters; 3 brought shapes, groups, choices of pieces, the sign's outline, fonts and
+/// insets.
 pub const VERSION: u32 = 3;
 /// The oldest version that is read.
 const OLDEST: u32 = 1;
@@ -45,6 +47,9 @@ pub struct Job {
     /// The artwork files that rows take their lines from, each once.
     #[serde(default, skip_serializing_if = "Vec::is_empty")]
     pub artwork: Vec<ArtworkFile>,
+    /// The font files that rows take their letters from, each once.
+    #[serde(default, skip_serializing_if = "Vec::is_empty")]
+    pub fonts: Vec<FontFile>,
     /// Name of the rule set in the book that this job is held against.
     #[serde(default)]
     pub rules: String,
@@ -81,6 +86,7 @@ impl Default for Job {
             note: String::new(),
             rows: Vec::new(),
             artwork: Vec::new(),
+            fonts: Vec::new(),
             rules: String::new(),
             wish: Wish::default(),
             site: Site::default(),
@@ -101,11 +107,13 @@ pub enum Row {
     Artwork(ArtworkRow),
     /// A plain shape.
     Shape(ShapeRow),
+    /// Letters of a font file.
+    Outline(OutlineRow),
 }
 
 /// An artwork file as it was opened. Copies share the text: a drawing may be large, and every step
 /// that can be undone holds the job.
-#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[derive(Debug, Clone, Serialize, Deserialize)]
 #[serde(deny_unknown_fields)]
 pub struct ArtworkFile {
     /// Its name; a row names it so.
@@ -113,6 +121,49 @@ pub struct ArtworkFile {
     /// What is in it.
     #[serde(serialize_with = "write_text", deserialize_with = "read_text")]
     pub text: Arc<str>,
+}
+
+impl PartialEq for ArtworkFile {
+    fn eq(&self, other: &Self) -> bool {
+        self.name == other.name && same_text(&self.text, &other.text)
+    }
+}
+
+/// A font file as it was opened. Copies share the data, as those of an artwork file do.
+#[derive(Debug, Clone, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct FontFile {
+    /// Its name; a row names it so.
+    pub name: String,
+    /// The bytes of the file in base64.
+    #[serde(serialize_with = "write_text", deserialize_with = "read_text")]
+    pub data: Arc<str>,
+}
+
+impl FontFile {
+    /// The font file of these bytes.
+    pub fn new(name: &str, bytes: &[u8]) -> Self {
+        Self {
+            name: name.to_owned(),
+            data: STANDARD.encode(bytes).into(),
+        }
+    }
+
+    /// The bytes of the file; None where the data is damaged.
+    pub fn bytes(&self) -> Option<Vec<u8>> {
+        STANDARD.decode(self.data.as_bytes()).ok()
+    }
+}
+
+impl PartialEq for FontFile {
+    fn eq(&self, other: &Self) -> bool {
+        self.name == other.name && same_text(&self.data, &other.data)
+    }
+}
+
+/// Jobs are compared at every edit, and most of their files are the very same.
+fn same_text(one: &Arc<str>, other: &Arc<str>) -> bool {
+    Arc::ptr_eq(one, other) || one == other
 }
 
 fn write_text<S: Serializer>(text: &Arc<str>, to: S) -> Result<S::Ok, S::Error> {
@@ -163,7 +214,7 @@ impl Default for ArtworkRow {
 }
 
 /// The lines of one colour in one layer of an artwork.
-#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize)]
 #[serde(deny_unknown_fields)]
 pub struct ArtworkLines {
     /// Their colour, `#rrggbb`, where they have one.
@@ -174,6 +225,50 @@ pub struct ArtworkLines {
     pub layer: Option<String>,
     /// Tube type, by its name in the book; empty: these lines are not tube.
     pub tube: String,
+    /// How far inside the edges of filled areas the tube runs, as typed; empty: on the edge itself.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub inset: String,
+}
+
+/// Letters of a font file, the tube along their outlines.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+#[serde(deny_unknown_fields)]
+pub struct OutlineRow {
+    /// What it says; a line break begins another line.
+    pub text: String,
+    /// Height of a capital letter, as typed.
+    pub height: String,
+    /// The font file, by its name in the job.
+    pub font: String,
+    /// How far inside the outline the tube runs, as typed; empty: on the outline itself.
+    #[serde(default)]
+    pub inset: String,
+    /// Tube type, by its name in the book.
+    pub tube: String,
+    /// How many times this row is made.
+    #[serde(default = "one")]
+    pub count: i64,
+    /// Rows of one group light together; rows of another group are never on one circuit with them.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub group: String,
+    /// How its strokes become pieces of glass, where that is not as usual.
+    #[serde(default, skip_serializing_if = "Pieces::is_usual")]
+    pub pieces: Pieces,
+}
+
+impl Default for OutlineRow {
+    fn default() -> Self {
+        Self {
+            text: String::new(),
+            height: String::new(),
+            font: String::new(),
+            inset: String::new(),
+            tube: String::new(),
+            count: one(),
+            group: String::new(),
+            pieces: Pieces::default(),
+        }
+    }
 }
 
 /// A word, or lines of letters, in one face, height and tube.
@@ -391,6 +486,7 @@ impl Row {
             Self::Text(row) => vec![&row.tube],
             Self::Strokes(row) => vec![&row.tube],
             Self::Shape(row) => vec![&row.tube],
+            Self::Outline(row) => vec![&row.tube],
             Self::Artwork(row) => {
                 let named = row.lines.iter().map(|lines| lines.tube.as_str());
                 named.filter(|tube| !tube.is_empty()).collect()
@@ -405,6 +501,7 @@ impl Row {
             Self::Strokes(row) => &row.group,
             Self::Artwork(row) => &row.group,
             Self::Shape(row) => &row.group,
+            Self::Outline(row) => &row.group,
         }
     }
 
@@ -415,6 +512,7 @@ impl Row {
             Self::Strokes(row) => &mut row.group,
             Self::Artwork(row) => &mut row.group,
             Self::Shape(row) => &mut row.group,
+            Self::Outline(row) => &mut row.group,
         }
     }
 
@@ -425,6 +523,7 @@ impl Row {
             Self::Strokes(row) => &row.pieces,
             Self::Artwork(row) => &row.pieces,
             Self::Shape(row) => &row.pieces,
+            Self::Outline(row) => &row.pieces,
         }
     }
 
@@ -435,6 +534,7 @@ impl Row {
             Self::Strokes(row) => &mut row.pieces,
             Self::Artwork(row) => &mut row.pieces,
             Self::Shape(row) => &mut row.pieces,
+            Self::Outline(row) => &mut row.pieces,
         }
     }
 
@@ -445,6 +545,7 @@ impl Row {
             Self::Strokes(row) => row.count,
             Self::Artwork(row) => row.count,
             Self::Shape(row) => row.count,
+            Self::Outline(row) => row.count,
         }
     }
 
@@ -455,6 +556,7 @@ impl Row {
             Self::Strokes(row) => &row.label,
             Self::Artwork(row) => &row.label,
             Self::Shape(row) => &row.label,
+            Self::Outline(row) => &row.text,
         }
     }
 }
@@ -558,12 +660,14 @@ fn oldest(job: &Job) -> u32 {
         match row {
             Row::Text(row) if row.is_plain() => OLDEST,
             Row::Strokes(_) => OLDEST,
+            Row::Artwork(row) if row.lines.iter().any(|lines| !lines.inset.is_empty()) => 3,
             Row::Text(_) | Row::Artwork(_) => 2,
-            Row::Shape(_) => 3,
+            Row::Shape(_) | Row::Outline(_) => 3,
         }
     };
     let of_rows = job.rows.iter().map(of_row).max().unwrap_or(OLDEST);
     of_rows
         .max(if job.artwork.is_empty() { OLDEST } else { 2 })
+        .max(if job.fonts.is_empty() { OLDEST } else { 3 })
         .max(if job.outline.is_none() { OLDEST } else { 3 })
 }

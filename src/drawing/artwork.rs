@@ -23,14 +23,33 @@ pub struct ArtStroke {
     pub path: BezPath,
     /// Whether it ends where it begins. The path of a closed stroke ends with a closing element.
     pub closed: bool,
-    /// Drawn by its filling, not by a line: the stroke is the edge of an area.
-    pub filled: bool,
+    /// The area whose edge it is, where it is drawn by its filling and not by a line.
+    pub area: Option<Area>,
     /// Colour of the line, or of the filling, as `#rrggbb` in small letters.
     pub colour: Option<String>,
     /// Name of the layer as the file has it. Text from outside.
     pub layer: Option<String>,
     /// What it is and where, for sentences: `path at line 12`.
     pub element: String,
+}
+
+/// A filled area. Its edges are the strokes of the same number, which follow each other.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Area {
+    /// Which area of the file it is.
+    pub number: usize,
+    /// What of it is filled.
+    pub filling: Filling,
+}
+
+/// Which side of closed lines is inside.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub enum Filling {
+    /// Where lines go round more often one way than the other: a hole runs against what is around it.
+    #[default]
+    Winding,
+    /// Where an odd number of lines go round, whichever way: every other line is a hole.
+    EvenOdd,
 }
 
 /// Something of a file that was not read, or not as the file has it.
@@ -110,7 +129,7 @@ impl Artwork {
             let group = &mut groups[place];
             group.strokes += 1;
             group.closed += usize::from(stroke.closed);
-            group.filled += usize::from(stroke.filled);
+            group.filled += usize::from(stroke.area.is_some());
             group.length += stroke.length();
         }
         groups
@@ -154,7 +173,7 @@ mod tests {
         ArtStroke {
             path: BezPath::from_svg(d).expect("a path"),
             closed: d.ends_with('Z'),
-            filled: false,
+            area: None,
             colour: colour.map(str::to_owned),
             layer: layer.map(str::to_owned),
             element: "path".to_owned(),

@@ -13,6 +13,6 @@ mod plain;
 pub mod shapes;
 pub mod svg;
 
-pub use artwork::{ArtGroup, ArtStroke, Artwork, Unread};
+pub use artwork::{Area, ArtGroup, ArtStroke, Artwork, Filling, Unread};
 pub use face::{Face, Letter, Shaped, face, faces};
 pub use layout::{Align, Bend, BendBy, Layout, NoArc};

@@ -67,6 +67,15 @@ pub const COUNT: Limit = Limit {
     why: "a row is made at least once; more than 200 alike are given as rows",
 };
 
+/// How far inside an outline a tube lies.
+pub const INSET_MM: Limit = Limit {
+    name: "the inset",
+    least: 0.0,
+    most: 1_000.0,
+    unit: "mm",
+    why: "no letter that is made is so thick that more would leave anything of it",
+};
+
 /// Characters in one text row.
 pub const TEXT_CHARACTERS: Limit = Limit {
     name: "text",

@@ -12,9 +12,11 @@ use std::sync::Arc;
 use kurbo::{Affine, BezPath, Point, Rect, Shape};
 
 use super::finding;
+use super::outline;
 use super::pieces::{Drawn, Made};
 use super::route::{ends, route};
-use crate::drawing::{ArtGroup, Artwork, dxf, svg};
+use crate::drawing::outline::{Join, filled, inset};
+use crate::drawing::{ArtGroup, ArtStroke, Artwork, dxf, svg};
 use crate::job::{ArtworkFile, ArtworkRow};
 use crate::measure::{self, LengthUnit, Limit};
 use crate::rules::Finding;
@@ -83,7 +85,7 @@ pub(super) fn row(
     let art = match &*read {
         Ok(art) => art,
         Err(why) => {
-            findings.push(finding::bad_artwork(at, &file.name, why));
+            findings.push(finding::bad_file(at, &file.name, why));
             return Made::default();
         }
     };
@@ -105,10 +107,8 @@ pub(super) fn row(
         if lines.tube.is_empty() {
             continue;
         }
-        if group.filled > 0 {
-            findings.push(finding::filled(at, &group));
-        }
-        for strokes in runs(art, &group, mm_per_unit) {
+        let strokes = strokes(at, art, &group, (mm_per_unit, &lines.inset), findings);
+        for strokes in runs(strokes) {
             for stroke in &strokes {
                 let here = stroke.bounding_box();
                 bounds = Some(bounds.map_or(here, |all| all.union(here)));
@@ -172,13 +172,57 @@ fn size(at: usize, row: &ArtworkRow, art: &Artwork, findings: &mut Vec<Finding>)
     }
 }
 
-/// The lines of a group at their size, those that touch at their ends together.
-fn runs(art: &Artwork, group: &ArtGroup, mm_per_unit: f64) -> Vec<Vec<BezPath>> {
+/// The lines of a group at their size, the edges of filled areas inset by what is typed.
+fn strokes(
+    at: usize,
+    art: &Artwork,
+    group: &ArtGroup,
+    (mm_per_unit, typed): (f64, &str),
+    findings: &mut Vec<Finding>,
+) -> Vec<BezPath> {
     let place = Affine::scale(mm_per_unit);
-    let strokes: Vec<BezPath> = art
+    let distance_mm = outline::distance(at, typed, &finding::inset_of(group), findings);
+    if group.filled > 0 {
+        findings.push(finding::filled(at, group, distance_mm));
+    }
+    if distance_mm == 0.0 {
+        let strokes = art.of_group(group);
+        return strokes.map(|stroke| place * &stroke.path).collect();
+    }
+    let (edges, drawn): (Vec<&ArtStroke>, Vec<&ArtStroke>) = art
         .of_group(group)
-        .map(|stroke| place * &stroke.path)
+        .partition(|stroke| stroke.closed && stroke.area.is_some());
+    let open = drawn.iter().filter(|stroke| stroke.area.is_some()).count();
+    let drawn = drawn.into_iter();
+    let mut strokes: Vec<BezPath> = drawn.map(|stroke| place * &stroke.path).collect();
+    if edges.is_empty() {
+        findings.push(finding::no_inside(at, group));
+        return strokes;
+    }
+    if open > 0 {
+        findings.push(finding::open_edges(at, group, open));
+    }
+    // Each area by its own rule of what is a hole; areas that touch or cover each other are then one.
+    let of_areas = edges.chunk_by(|one, next| one.area == next.area);
+    let areas: Vec<BezPath> = of_areas
+        .flat_map(|area| {
+            let paths: Vec<BezPath> = area.iter().map(|stroke| place * &stroke.path).collect();
+            let filling = area[0].area.map(|area| area.filling);
+            filled(&paths, filling.unwrap_or_default())
+        })
         .collect();
+    let inset = inset(&areas, distance_mm, Join::Round);
+    if inset.paths.is_empty() {
+        findings.push(finding::no_area_left(at, group, distance_mm));
+    } else {
+        findings.extend(finding::areas_changed(at, group, distance_mm, &inset));
+    }
+    strokes.extend(inset.paths);
+    strokes
+}
+
+/// Lines that touch at their ends together.
+fn runs(strokes: Vec<BezPath>) -> Vec<Vec<BezPath>> {
     let mut run: Vec<usize> = (0..strokes.len()).collect();
     // Ends by the square they lie in; what is near lies in the same or a neighbouring one.
     let mut squares: HashMap<(i64, i64), Vec<(Point, usize)>> = HashMap::new();
@@ -264,6 +308,7 @@ mod tests {
             colour: Some(colour.to_owned()),
             layer: None,
             tube: tube.to_owned(),
+            ..ArtworkLines::default()
         }
     }
 

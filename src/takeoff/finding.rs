@@ -1,8 +1,11 @@
 //! The sentences of this room.
 
 use super::Piece;
+use crate::drawing::outline::Inset;
 use crate::drawing::{ArtGroup, Face, NoArc, Unread, faces};
-use crate::measure::{Length, Limit, ReadError, Units, length_exact, length_shown, quoted};
+use crate::measure::{
+    INSET_MM, Length, Limit, PIECE_LENGTH_MM, ReadError, Units, length_exact, length_shown, quoted,
+};
 use crate::rules::{Finding, Grade, Place, Source};
 
 fn row(grade: Grade, row: usize, says: String) -> Finding {
@@ -87,22 +90,10 @@ pub(super) fn no_face(at: usize, name: &str) -> Finding {
     )
 }
 
+/// How many characters of a kind are named one by one.
+const MOST_NAMED: usize = 5;
+
 pub(super) fn no_shape(at: usize, face: &Face, text: &str, missing: &[(usize, char)]) -> Finding {
-    const MOST_NAMED: usize = 5;
-    let mut named: Vec<String> = missing
-        .iter()
-        .take(MOST_NAMED)
-        .map(|&(place, character)| {
-            format!(
-                "{} ({})",
-                quoted(&character.to_string()),
-                place_in(text, place)
-            )
-        })
-        .collect();
-    if missing.len() > MOST_NAMED {
-        named.push(format!("{} more", missing.len() - MOST_NAMED));
-    }
     let wanted: String = missing.iter().map(|&(_, character)| character).collect();
     let instead = faces()
         .iter()
@@ -117,9 +108,28 @@ pub(super) fn no_shape(at: usize, face: &Face, text: &str, missing: &[(usize, ch
         format!(
             "The face {} has no shape for {}: glass and price are without it. {instead}",
             face.name,
-            named.join(", ")
+            placed_in(text, missing)
         ),
     )
+}
+
+/// Characters with their places in the text.
+fn placed_in(text: &str, missing: &[(usize, char)]) -> String {
+    let mut named: Vec<String> = missing
+        .iter()
+        .take(MOST_NAMED)
+        .map(|&(place, character)| {
+            format!(
+                "{} ({})",
+                quoted(&character.to_string()),
+                place_in(text, place)
+            )
+        })
+        .collect();
+    if missing.len() > MOST_NAMED {
+        named.push(format!("{} more", missing.len() - MOST_NAMED));
+    }
+    named.join(", ")
 }
 
 /// Where a character of a text stands, as a person counts: in its line where there are several.
@@ -346,7 +356,8 @@ pub(super) fn no_artwork(at: usize, file: &str) -> Finding {
     )
 }
 
-pub(super) fn bad_artwork(at: usize, file: &str, why: &str) -> Finding {
+/// A file of the job that cannot be read.
+pub(super) fn bad_file(at: usize, file: &str, why: &str) -> Finding {
     row(Grade::Stop, at, format!("{}: {why}", quoted(file)))
 }
 
@@ -430,6 +441,11 @@ fn lines_of(group: &ArtGroup) -> String {
     format!("{colour}{layer}")
 }
 
+/// What the inset of a group is called in sentences.
+pub(super) fn inset_of(group: &ArtGroup) -> String {
+    format!("Inset of {}", lines_of(group))
+}
+
 pub(super) fn undecided(at: usize, group: &ArtGroup, mm_per_unit: f64) -> Finding {
     row(
         Grade::Look,
@@ -442,14 +458,253 @@ pub(super) fn undecided(at: usize, group: &ArtGroup, mm_per_unit: f64) -> Findin
     )
 }
 
-pub(super) fn filled(at: usize, group: &ArtGroup) -> Finding {
+/// Lines of an artwork are edges of areas: on which side of them the tube runs is a choice.
+pub(super) fn filled(at: usize, group: &ArtGroup, distance_mm: f64) -> Finding {
+    let how = if distance_mm > 0.0 {
+        format!(
+            "the tube runs {} inside the edge. Leave the inset empty to run it on the edge itself",
+            exact(distance_mm)
+        )
+    } else {
+        "the tube follows the edge itself. Type an inset to run it that far inside".to_owned()
+    };
     row(
         Grade::Note,
         at,
         format!(
-            "{} of the lines of {} are edges of filled areas: the tube follows the edge itself.",
+            "{} of the lines of {} are edges of filled areas: {how}.",
             group.filled,
             lines_of(group)
+        ),
+    )
+}
+
+/// An inset is typed for lines that have no inside.
+pub(super) fn no_inside(at: usize, group: &ArtGroup) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "None of the lines of {} is the closed edge of a filled area: they stay where they are, \
+             without an inset.",
+            lines_of(group)
+        ),
+    )
+}
+
+/// Edges of areas that are not closed have no inside, and stay.
+pub(super) fn open_edges(at: usize, group: &ArtGroup, open: usize) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "{open} of the lines of {} {} the edge of a filled area and not closed: not inset, but \
+             left where drawn.",
+            lines_of(group),
+            if open == 1 { "is" } else { "are" },
+        ),
+    )
+}
+
+/// Of the filled areas of a group the inset leaves nothing.
+pub(super) fn no_area_left(at: usize, group: &ArtGroup, distance_mm: f64) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        format!(
+            "Inset by {}, nothing is left of the filled areas of {}: glass and price are without \
+             them. Type a smaller inset, or make it wider.",
+            exact(distance_mm),
+            lines_of(group)
+        ),
+    )
+}
+
+/// What an inset did to filled areas beyond moving their edges.
+pub(super) fn areas_changed(
+    at: usize,
+    group: &ArtGroup,
+    distance_mm: f64,
+    inset: &Inset,
+) -> Option<Finding> {
+    let mut what = Vec::new();
+    match inset.vanished {
+        0 => {}
+        1 => what.push("an edge vanishes".to_owned()),
+        many => what.push(format!("{many} edges vanish")),
+    }
+    if inset.split {
+        what.push("an area falls into more parts".to_owned());
+    }
+    match inset.opened {
+        0 => {}
+        1 => what.push("a hole runs into another or into the outside".to_owned()),
+        many => what.push(format!(
+            "{many} holes run into each other or into the outside"
+        )),
+    }
+    (!what.is_empty()).then(|| {
+        row(
+            Grade::Look,
+            at,
+            format!(
+                "Inset by {}, of the filled areas of {} {}. Look at the picture.",
+                exact(distance_mm),
+                lines_of(group),
+                what.join(", and ")
+            ),
+        )
+    })
+}
+
+/// An inset that cannot be read: the tube is on the outline.
+pub(super) fn unreadable_inset(at: usize, field: &str, error: &ReadError) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        format!("{field}: {error}: the tube follows the outline itself."),
+    )
+}
+
+/// An inset that is not taken: the tube is on the outline.
+pub(super) fn inset_outside(at: usize, field: &str, distance_mm: f64) -> Finding {
+    let mut finding = outside(at, Some(field), &INSET_MM, distance_mm);
+    let says = finding.says.trim_end_matches('.');
+    finding.says = format!("{says}: the tube follows the outline itself.");
+    finding
+}
+
+pub(super) fn no_font(at: usize, name: &str) -> Finding {
+    let says = if name.is_empty() {
+        "No font is chosen: choose one, or open a font file.".to_owned()
+    } else {
+        format!(
+            "The font file {} is not in this job: open it again.",
+            quoted(name)
+        )
+    };
+    row(Grade::Stop, at, says)
+}
+
+/// How a font is understood: its own sentence.
+pub(super) fn of_font(at: usize, grade: Grade, says: &str) -> Finding {
+    row(grade, at, says.to_owned())
+}
+
+pub(super) fn no_outline(at: usize, font: &str, text: &str, missing: &[(usize, char)]) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        format!(
+            "The font {} has no shape that can be used for {}: glass and price are without it. Use \
+             another font, or give it as strokes.",
+            quoted(font),
+            placed_in(text, missing)
+        ),
+    )
+}
+
+/// A distance as it was typed, not rounded to what is easily read.
+fn exact(mm: f64) -> String {
+    length_exact(Length::from_mm(mm), Units::Metric)
+}
+
+/// Letters by name, each once.
+fn named(letters: &[char]) -> String {
+    let mut each: Vec<char> = Vec::new();
+    for &letter in letters {
+        if !each.contains(&letter) {
+            each.push(letter);
+        }
+    }
+    let mut named: Vec<String> = each
+        .iter()
+        .take(MOST_NAMED)
+        .map(|letter| quoted(&letter.to_string()))
+        .collect();
+    if each.len() > MOST_NAMED {
+        named.push(format!("{} more", each.len() - MOST_NAMED));
+    }
+    named.join(", ")
+}
+
+/// Of these letters the inset leaves nothing.
+pub(super) fn nothing_left(at: usize, distance_mm: f64, letters: &[char]) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        format!(
+            "Inset by {}, nothing is left of {}: glass and price are without it. Type a smaller \
+             inset, or make the letters higher.",
+            exact(distance_mm),
+            named(letters)
+        ),
+    )
+}
+
+/// Of these letters a dot or another part is thinner than the inset.
+pub(super) fn part_vanished(at: usize, distance_mm: f64, letters: &[char]) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "Inset by {}, a part of {} vanishes: glass and price are without it.",
+            exact(distance_mm),
+            named(letters)
+        ),
+    )
+}
+
+/// These letters are thin somewhere, and the inset parts them there.
+pub(super) fn inset_splits(at: usize, distance_mm: f64, letters: &[char]) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "Inset by {}, thin places of {} are gone: each part that is left is a piece of glass of \
+             its own.",
+            exact(distance_mm),
+            named(letters)
+        ),
+    )
+}
+
+/// In these letters the tube no longer goes round a counter.
+pub(super) fn inset_opens(at: usize, distance_mm: f64, letters: &[char]) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "Inset by {}, the wall around a counter of {} is gone: the tube goes in and out there, \
+             not around the counter.",
+            exact(distance_mm),
+            named(letters)
+        ),
+    )
+}
+
+/// Outlines shorter than any glass that is bent.
+pub(super) fn tiny_outlines(at: usize, _distance_mm: f64, letters: &[char]) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "An outline of {} is shorter than {} mm all round: no glass is bent so small.",
+            named(letters),
+            PIECE_LENGTH_MM.least
+        ),
+    )
+}
+
+/// Outlines that cross each other were united.
+pub(super) fn united(at: usize, _distance_mm: f64, letters: &[char]) -> Finding {
+    row(
+        Grade::Note,
+        at,
+        format!(
+            "Outlines of {} cross each other in the font: the tube goes around what they cover \
+             together.",
+            named(letters)
         ),
     )
 }

@@ -14,41 +14,16 @@ use crate::rules::Finding;
 
 /// The letters of a row.
 pub(super) fn row(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made {
-    if row.text.trim().is_empty() {
-        findings.push(finding::no_text(at));
-        return Made::default();
-    }
-    let characters = row.text.chars().count();
-    #[allow(clippy::cast_precision_loss, reason = "a count of characters")]
-    if !measure::TEXT_CHARACTERS.holds(characters as f64) {
-        findings.push(finding::outside(
-            at,
-            None,
-            &measure::TEXT_CHARACTERS,
-            characters as f64,
-        ));
+    if !has_text(at, &row.text, findings) {
         return Made::default();
     }
     let Some(face) = face(&row.face) else {
         findings.push(finding::no_face(at, &row.face));
         return Made::default();
     };
-    let height_mm = match measure::length(&row.height, LengthUnit::Millimetres) {
-        Ok(height) => height.length().mm(),
-        Err(error) => {
-            findings.push(finding::unreadable(at, "Letter height", &error));
-            return Made::default();
-        }
-    };
-    if !measure::LETTER_HEIGHT_MM.holds(height_mm) {
-        findings.push(finding::outside(
-            at,
-            None,
-            &measure::LETTER_HEIGHT_MM,
-            height_mm,
-        ));
+    let Some(height_mm) = height(at, &row.height, findings) else {
         return Made::default();
-    }
+    };
     // Worked out in the units of the face, where points are the figures of its file, and scaled at the
     // end: twice the height is exactly twice the glass.
     let scale = height_mm / face.cap_units;
@@ -80,6 +55,39 @@ pub(super) fn row(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made
         })
         .collect();
     Made { pieces, bounds }
+}
+
+/// Whether a text is there and no longer than a row of letters may be.
+pub(super) fn has_text(at: usize, text: &str, findings: &mut Vec<Finding>) -> bool {
+    if text.trim().is_empty() {
+        findings.push(finding::no_text(at));
+        return false;
+    }
+    #[allow(clippy::cast_precision_loss, reason = "a count of characters")]
+    let characters = text.chars().count() as f64;
+    let limit = &measure::TEXT_CHARACTERS;
+    if !limit.holds(characters) {
+        findings.push(finding::outside(at, None, limit, characters));
+        return false;
+    }
+    true
+}
+
+/// The height of a capital in millimetres; None where it cannot be read or is not taken.
+pub(super) fn height(at: usize, typed: &str, findings: &mut Vec<Finding>) -> Option<f64> {
+    let height_mm = match measure::length(typed, LengthUnit::Millimetres) {
+        Ok(height) => height.length().mm(),
+        Err(error) => {
+            findings.push(finding::unreadable(at, "Letter height", &error));
+            return None;
+        }
+    };
+    let limit = &measure::LETTER_HEIGHT_MM;
+    if !limit.holds(height_mm) {
+        findings.push(finding::outside(at, None, limit, height_mm));
+        return None;
+    }
+    Some(height_mm)
 }
 
 /// What becomes one piece: its strokes as the pen writes its first letter, and where that stands.

@@ -10,6 +10,7 @@
 mod artwork;
 mod finding;
 mod letters;
+mod outline;
 mod pieces;
 mod route;
 mod shape;
@@ -19,6 +20,7 @@ use kurbo::{BezPath, Point, Rect};
 use crate::measure::Length;
 
 pub use artwork::artwork;
+pub use outline::font;
 pub use pieces::{Takeoff, takeoff};
 
 /// One continuous glass with a pair of electrodes.

@@ -3,7 +3,7 @@
 use kurbo::{Affine, BezPath, ParamCurveArclen, Point, Rect};
 
 use super::route::Route;
-use super::{Piece, RowTakeoff, artwork, finding, letters, shape};
+use super::{Piece, RowTakeoff, artwork, finding, letters, outline, shape};
 use crate::book::Allowances;
 use crate::job::{Job, Row, StrokesRow};
 use crate::measure::{self, Length, LengthUnit};
@@ -65,6 +65,7 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
             Row::Strokes(row) => strokes(at, row, &mut off.findings),
             Row::Artwork(row) => artwork::row(at, row, &job.artwork, &mut off.findings),
             Row::Shape(row) => shape::row(at, row, &mut off.findings),
+            Row::Outline(row) => outline::row(at, row, &job.fonts, &mut off.findings),
         };
         let copies = count(at, row.count(), &mut off.findings);
         let wanted = made.pieces.len() * copies;

@@ -35,7 +35,7 @@ impl Route {
     }
 }
 
-/// First and last point of a path.
+/// First and last point of a path; a closed one ends where it begins.
 pub(super) fn ends(path: &BezPath) -> [Point; 2] {
     let point = |element: &PathEl| element.end_point();
     let first = path
@@ -43,13 +43,11 @@ pub(super) fn ends(path: &BezPath) -> [Point; 2] {
         .first()
         .and_then(point)
         .unwrap_or(Point::ZERO);
-    let last = path
-        .elements()
-        .iter()
-        .rev()
-        .find_map(point)
-        .unwrap_or(first);
-    [first, last]
+    let last = match path.elements().last() {
+        Some(PathEl::ClosePath) => None,
+        last => last.and_then(point),
+    };
+    [first, last.unwrap_or(first)]
 }
 
 /// A stroke and the end it is entered by.
@@ -356,6 +354,18 @@ mod tests {
             [Point::new(0.0, 0.0), Point::new(5.0, 10.0)],
             "tip to tip"
         );
+    }
+
+    #[test]
+    fn a_closed_stroke_ends_where_it_begins() {
+        let mut square = line((0.0, 0.0), (10.0, 0.0));
+        square.line_to((10.0, 10.0));
+        square.line_to((0.0, 10.0));
+        square.close_path();
+        // From the square's corner to the line, not from its last one.
+        let found = route(&[square, line((-3.0, 0.0), (-20.0, 0.0))]);
+        assert_eq!(found.jumps, [(Point::ZERO, Point::new(-3.0, 0.0))]);
+        assert_eq!(found.ends, [Point::ZERO, Point::new(-20.0, 0.0)]);
     }
 
     #[test]

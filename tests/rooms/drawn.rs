@@ -242,6 +242,7 @@ fn taken(name: &str, width: &str) -> (Artwork, Takeoff) {
             colour: group.colour,
             layer: group.layer,
             tube: "t".to_owned(),
+            ..ArtworkLines::default()
         })
         .collect();
     let job = Job {

@@ -86,6 +86,7 @@ fn glass(strokes: &[Stroke], transform: &str, width: &str) -> (String, Takeoff) 
         colour: Some((*colour).to_owned()),
         layer: None,
         tube: (*tube).to_owned(),
+        ..ArtworkLines::default()
     });
     let row = ArtworkRow {
         label: "Ornament".to_owned(),

@@ -2,7 +2,10 @@
 
 use insta::assert_snapshot;
 use tubewright::book::Dampness;
-use tubewright::job::{self, Align, Curve, Job, Row, Site, StrokesRow, TextRow, Wish};
+use tubewright::job::{
+    self, Align, ArtworkLines, ArtworkRow, Curve, FontFile, Job, OutlineRow, Row, Site, StrokesRow,
+    TextRow, Wish,
+};
 
 fn error(text: &str) -> String {
     job::read(text).expect_err("no job")
@@ -111,6 +114,49 @@ fn a_layout_is_written_where_it_is_not_the_usual_one() {
 }
 
 #[test]
+fn fonts_and_insets_are_written_as_version_3() {
+    let bytes: Vec<u8> = (0..=255).cycle().take(1000).collect();
+    let mut with_font = job();
+    with_font.fonts.push(FontFile::new("a.ttf", &bytes));
+    with_font.rows.push(Row::Outline(OutlineRow {
+        text: "OPEN".to_owned(),
+        height: "200 mm".to_owned(),
+        font: "a.ttf".to_owned(),
+        inset: "6 mm".to_owned(),
+        tube: "12 mm neon".to_owned(),
+        ..OutlineRow::default()
+    }));
+    let text = job::write(&with_font);
+    assert!(text.contains("\"version\": 3,"), "{text}");
+    let back = job::read(&text).expect("a job");
+    assert_eq!(back, with_font);
+    assert_eq!(back.fonts[0].bytes(), Some(bytes), "byte by byte");
+    let bare = r#"{"row": "outline", "text": "A", "height": "100", "font": "a.ttf", "tube": "t"}"#;
+    let Ok(Row::Outline(row)) = serde_json::from_str(bare) else {
+        panic!("a row of outline letters");
+    };
+    assert_eq!((row.inset.as_str(), row.count), ("", 1));
+
+    let lines = |inset: &str| {
+        let lines = ArtworkLines {
+            tube: "t".to_owned(),
+            inset: inset.to_owned(),
+            ..ArtworkLines::default()
+        };
+        let row = ArtworkRow {
+            lines: vec![lines],
+            ..ArtworkRow::default()
+        };
+        job::write(&Job {
+            rows: vec![Row::Artwork(row)],
+            ..Job::default()
+        })
+    };
+    assert!(lines("").contains("\"version\": 2,") && !lines("").contains("inset"));
+    assert!(lines("5 mm").contains("\"version\": 3,"));
+}
+
+#[test]
 fn a_minus_turns_an_arc_over() {
     let parts = |typed: &str| Curve::Radius(typed.to_owned()).parts().1.to_owned();
     for typed in ["120 mm", " 120 mm ", "-120 mm", "\u{2212} 120 mm"] {
@@ -131,7 +177,7 @@ fn job_files_that_cannot_be_read() {
     assert_snapshot!(error(r#"{"tubewright": "job", "version": 1, "name": "x", "price": 1}"#), @"This job file cannot be read: unknown field “price” (line 1, column 56).");
     assert_snapshot!(
         error(r#"{"tubewright": "job", "version": 1, "name": "x", "rows": [{"row": "circle"}]}"#),
-        @"This job file cannot be read: expected text or strokes or artwork or shape, but found “circle” (line 1, column 74)."
+        @"This job file cannot be read: expected text or strokes or artwork or shape or outline, but found “circle” (line 1, column 74)."
     );
     assert_snapshot!(
         error(r#"{"tubewright": "job", "version": 1, "name": "x", "rows": [{"row": "text", "text": "A"}]}"#),

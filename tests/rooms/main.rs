@@ -31,6 +31,9 @@ mod dxf;
 /// Outlines of a font and their insets against independent tools and closed forms; damaged fonts.
 mod outline;
 
+/// Rows of letters from a font file, and insets of filled artwork, as glass.
+mod fonts;
+
 /// Nameplates: what is missing or contradicts itself, and the site.
 mod supply;
 

@@ -142,7 +142,10 @@ fn each_subpath_is_a_stroke_that_knows_whether_it_is_closed() {
     );
     assert_eq!(art.strokes[1].path.to_svg(), "M50,50 L60,50");
     let art = drawing("<svg>\n<path id='a' d='M0 0h9'/></svg>");
-    assert!(art.strokes[0].filled, "without a line it is an area");
+    assert!(
+        art.strokes[0].area.is_some(),
+        "without a line it is an area"
+    );
     assert_eq!(art.strokes[0].colour.as_deref(), Some("#000000"));
     assert_eq!(art.strokes[0].element, "path “a” at line 2");
     assert_eq!(art.bounds, Rect::new(0.0, 0.0, 9.0, 0.0));
@@ -408,7 +411,7 @@ fn colours_follow_the_cascade() {
             .collect();
         assert_eq!(colours, [Some(wanted)], "{inside}");
         assert_eq!(
-            art.strokes[0].filled,
+            art.strokes[0].area.is_some(),
             inside.contains("lime") && !inside.contains("stroke='red'/"),
             "{inside}"
         );

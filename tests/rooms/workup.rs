@@ -8,7 +8,7 @@ use tubewright::book::{
     Allowances, Book, Dampness, Gas, Loading, OutputEarthing, Rates, SupplyEntry, SupplyKind,
     TubeEntry, starter,
 };
-use tubewright::job::{Job, Row, ShapeRow, Site, StrokesRow, TextRow, Wish};
+use tubewright::job::{FontFile, Job, OutlineRow, Row, ShapeRow, Site, StrokesRow, TextRow, Wish};
 use tubewright::rules::{Grade, Place};
 use tubewright::{Workup, workup};
 
@@ -16,6 +16,9 @@ use super::shapes::any_shape;
 
 const NEON: &str = "12 mm neon";
 const MERCURY: &str = "15 mm argon-mercury";
+
+/// The font of `tests/reference/outlines`.
+const LETTERS: &[u8] = include_bytes!("../reference/outlines/letters.ttf");
 
 fn letters(text: &str, height: &str) -> Row {
     Row::Text(TextRow {
@@ -239,6 +242,18 @@ fn row() -> impl Strategy<Value = Row> {
                 ..ShapeRow::default()
             })
         }),
+        (awkward(), length(), length(), tube_name(), count()).prop_map(
+            |(text, height, inset, tube, count)| Row::Outline(OutlineRow {
+                // Mostly characters the font of the references has.
+                text: text.replace(['E', 'e'], "g").replace(['N', 'n'], "O"),
+                height,
+                font: "letters.ttf".to_owned(),
+                inset,
+                tube,
+                count,
+                ..OutlineRow::default()
+            })
+        ),
     ]
 }
 
@@ -434,6 +449,7 @@ fn any_job() -> impl Strategy<Value = Job> {
     )
         .prop_map(|(rows, rules, wish, (mains_volts, place, cold))| Job {
             rows,
+            fonts: vec![FontFile::new("letters.ttf", LETTERS)],
             rules,
             wish,
             site: Site {

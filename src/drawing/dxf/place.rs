@@ -223,7 +223,7 @@ impl Placer<'_> {
         self.strokes.push(ArtStroke {
             path,
             closed,
-            filled: false,
+            area: None,
             colour: Some(written(rgb)),
             layer: Some(layer.name.clone()),
             element: item.element.clone(),

@@ -19,6 +19,8 @@ use i_overlay::mesh::float::outline::offset::OutlineOffset;
 use i_overlay::mesh::float::style::{LineJoin, OutlineStyle};
 use kurbo::{BezPath, PathEl, Point};
 
+use crate::drawing::Filling;
+
 /// How far a chord may be from the curve it stands for, in millimetres, on drawings up to 10 m; on
 /// larger ones a millionth of their size. Lengths come out short by at most a third of this over the
 /// radius: 0.0001 of the length at a radius of 30 mm.
@@ -67,13 +69,7 @@ type Contour = Vec<[f64; 2]>;
 /// positive number counts as 0.
 pub fn inset(contours: &[BezPath], distance_mm: f64, join: Join) -> Inset {
     let distance_mm = if distance_mm > 0.0 { distance_mm } else { 0.0 };
-    let near = |path: &&BezPath| {
-        let reach = path.control_box().abs();
-        path.is_finite()
-            && reach.x0.abs().max(reach.x1.abs()) < FAR_MM
-            && reach.y0.abs().max(reach.y1.abs()) < FAR_MM
-    };
-    let used: Vec<&BezPath> = contours.iter().filter(near).collect();
+    let used: Vec<&BezPath> = contours.iter().filter(|path| near(path)).collect();
     let flat = flattened(&used);
     let shapes = flat.simplify_shape_as::<i64>(FillRule::NonZero);
     let found: usize = shapes.iter().map(Vec::len).sum();
@@ -129,6 +125,29 @@ pub fn inset(contours: &[BezPath], distance_mm: f64, join: Join) -> Inset {
             .extend(left.iter().flatten().map(|contour| path(contour)));
     }
     result
+}
+
+/// What closed paths fill, as chords that do not cross: a counter runs against the contour around
+/// it, so that [`inset`] takes it for one.
+///
+/// Of several areas each by its own filling, together they are one drawing.
+pub fn filled(contours: &[BezPath], filling: Filling) -> Vec<BezPath> {
+    let used: Vec<&BezPath> = contours.iter().filter(|path| near(path)).collect();
+    let rule = match filling {
+        Filling::Winding => FillRule::NonZero,
+        Filling::EvenOdd => FillRule::EvenOdd,
+    };
+    let shapes = flattened(&used).simplify_shape_as::<i64>(rule);
+    let contours = shapes.iter().flatten();
+    contours.map(|contour| path(contour)).collect()
+}
+
+/// Whether a path can be worked with.
+fn near(path: &BezPath) -> bool {
+    let reach = path.control_box().abs();
+    path.is_finite()
+        && reach.x0.abs().max(reach.x1.abs()) < FAR_MM
+        && reach.y0.abs().max(reach.y1.abs()) < FAR_MM
 }
 
 /// Chords of closed paths, each without its first point again at the end.

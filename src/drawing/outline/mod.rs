@@ -12,4 +12,4 @@ mod inset;
 mod kerning;
 
 pub use font::{CapHeight, Font, MOST_BYTES, OutlineLetter, OutlineText};
-pub use inset::{FLATNESS_MM, Inset, Join, inset};
+pub use inset::{FLATNESS_MM, Inset, Join, filled, inset};

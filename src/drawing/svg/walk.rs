@@ -4,7 +4,7 @@ use super::geometry::{Pen, Subpath};
 use super::style::{Sheet, Style, spend, without_comments};
 use super::units::{self, Along, Length, MM_PER_PX};
 use super::{DEEPEST, FARTHEST, MOST_SEGMENTS, path, scan, transform};
-use crate::drawing::{ArtStroke, Artwork, Unread};
+use crate::drawing::{Area, ArtStroke, Artwork, Filling, Unread};
 use crate::measure::quoted;
 use kurbo::{Affine, Point, Shape, Size, Vec2};
 use roxmltree::{Document, Node, NodeId};
@@ -48,6 +48,7 @@ struct Around {
     stroke: Ink,
     colour: Option<[u8; 3]>,
     clear_fill: bool,
+    filling: Filling,
     clear_stroke: bool,
     visible: bool,
     layer: Option<String>,
@@ -70,6 +71,8 @@ struct Walk<'a, 'i> {
     left: Cell<u64>,
     segments: usize,
     strokes: Vec<ArtStroke>,
+    /// Filled areas so far.
+    areas: usize,
     unread: Vec<Unread>,
     /// Not read and not named.
     more: usize,
@@ -123,6 +126,7 @@ pub(super) fn walk(document: &Document<'_>) -> Result<Artwork, Stop> {
         left: Cell::new(MOST_WORK),
         segments: 0,
         strokes: Vec::new(),
+        areas: 0,
         unread: Vec::new(),
         more: 0,
         using: Vec::new(),
@@ -189,6 +193,7 @@ impl<'a, 'i> Walk<'a, 'i> {
             stroke: Ink::None,
             colour: Some([0, 0, 0]),
             clear_fill: false,
+            filling: Filling::Winding,
             clear_stroke: false,
             visible: true,
             layer: None,
@@ -363,6 +368,11 @@ impl<'a, 'i> Walk<'a, 'i> {
             if style.get(property).is_some_and(|text| !inherited(text)) {
                 *clear = transparent(style, property);
             }
+        }
+        match style.get("fill-rule") {
+            Some("evenodd") => around.filling = Filling::EvenOdd,
+            Some("nonzero" | "initial") => around.filling = Filling::Winding,
+            _ => {}
         }
         match style.get("visibility") {
             Some("hidden" | "collapse") => around.visible = false,
@@ -679,6 +689,11 @@ impl<'a, 'i> Walk<'a, 'i> {
         if dots > 0 {
             self.leave(name.clone(), "it has a point that is no line");
         }
+        let area = (!line).then_some(Area {
+            number: self.areas,
+            filling: around.filling,
+        });
+        self.areas += usize::from(!line);
         for (mut path, closed) in subpaths {
             self.segments += path.elements().len() - 1 - usize::from(closed);
             if self.segments > MOST_SEGMENTS {
@@ -692,7 +707,7 @@ impl<'a, 'i> Walk<'a, 'i> {
             self.strokes.push(ArtStroke {
                 path,
                 closed,
-                filled: !line,
+                area,
                 colour: colour.clone(),
                 layer: around.layer.clone(),
                 element: name.clone(),

@@ -40,7 +40,7 @@ pub struct Document {
     writes: Vec<Write>,
     /// Documents that were kept and cannot be read, as they are: never written over.
     aside: Vec<Write>,
-    /// Names of the artwork files that are stored already.
+    /// Names of the records of files that are stored already.
     filed: HashSet<String>,
 }
 
@@ -80,9 +80,9 @@ impl Document {
         }
         document.writes.clone_from(&document.aside);
         // Files that neither the job nor a step holds any more are let go.
-        let held = document.files();
+        let held: HashSet<String> = document.jobs().flat_map(records::file_names).collect();
         for name in kept.keys().filter(|name| records::is_file(name)) {
-            if held.iter().any(|write| write.name == *name) {
+            if held.contains(name) {
                 document.filed.insert(name.clone());
             } else {
                 document.writes.push(Write {
@@ -213,7 +213,11 @@ impl Document {
 
     /// Everything there is to keep: for a store that has nothing yet.
     pub fn all_writes(&self) -> Vec<Write> {
-        let mut writes = self.files();
+        let mut filed = HashSet::new();
+        let mut writes = Vec::new();
+        for job in self.jobs() {
+            writes.extend(records::files(job, &mut filed));
+        }
         writes.extend([records::job(&self.job), records::book(&self.book)]);
         for (number, step) in (self.first..).zip(&self.steps) {
             writes.push(records::step(number, step));
@@ -222,16 +226,13 @@ impl Document {
         writes
     }
 
-    /// The artwork files of the job and of every step.
-    fn files(&self) -> Vec<Write> {
-        let mut files = records::files(&self.job);
-        for step in &self.steps {
-            if let Change::Job(both) = &step.change {
-                files.extend(records::files(&both.0));
-                files.extend(records::files(&both.1));
-            }
-        }
-        files
+    /// The job, and those of every step.
+    fn jobs(&self) -> impl Iterator<Item = &Job> {
+        let changes = self.steps.iter().filter_map(|step| match &step.change {
+            Change::Job(both) => Some([&both.0, &both.1]),
+            Change::Book(_) => None,
+        });
+        std::iter::once(&self.job).chain(changes.flatten())
     }
 
     /// The step an edit of this field goes on with.
@@ -263,11 +264,8 @@ impl Document {
     fn write_last(&mut self, job: bool) {
         if job {
             // First the text, then what points at it.
-            for file in records::files(&self.job) {
-                if self.filed.insert(file.name.clone()) {
-                    self.writes.push(file);
-                }
-            }
+            self.writes
+                .extend(records::files(&self.job, &mut self.filed));
         }
         if let Some(step) = self.steps.back() {
             let write = records::step(self.number(self.steps.len() - 1), step);
@@ -294,7 +292,7 @@ impl Document {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use tubewright::job::ArtworkFile;
+    use tubewright::job::{ArtworkFile, FontFile};
 
     fn named(document: &mut Document, name: &str) {
         document.edit_job("name", "Name", |job| name.clone_into(&mut job.name));
@@ -452,6 +450,37 @@ mod tests {
             "{:?}",
             bare.keys()
         );
+    }
+
+    #[test]
+    fn a_font_is_stored_and_held_once_however_many_steps_hold_it() {
+        let (mut kept, mut document) = (Kept::new(), fresh());
+        let bytes: Vec<u8> = (0..=255).cycle().take(30_000).collect();
+        document.edit_job("open", "Letters from a font file", |job| {
+            job.fonts.push(FontFile::new("a.ttf", &bytes));
+        });
+        document.settle();
+        for name in ["A", "B", "C"] {
+            named(&mut document, name);
+            document.settle();
+            stored(&mut kept, &mut document);
+        }
+        let stored_bytes: usize = kept.values().map(String::len).sum();
+        assert!(stored_bytes < 60_000, "stored {stored_bytes} bytes");
+        let (mut back, trouble) = Document::restore(&kept, Job::default(), Book::default());
+        assert_eq!(trouble, Vec::<String>::new(), "all of it can be read");
+        let first = back.job().fonts[0].clone();
+        assert_eq!(first.bytes(), Some(bytes), "byte by byte");
+        back.undo();
+        let earlier = &back.job().fonts[0];
+        assert!(
+            std::sync::Arc::ptr_eq(&earlier.data, &first.data),
+            "the steps share one text"
+        );
+        for _ in 0..3 {
+            back.undo();
+        }
+        assert_eq!(back.job().fonts.len(), 0, "before it was opened");
     }
 
     #[test]

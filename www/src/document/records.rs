@@ -1,11 +1,12 @@
 //! The document as named records: `job`, `book`, `state`, `step-<number>` for each step, and
-//! `file-<mark>` for each artwork file, so that a large drawing is stored once and not with every
-//! step that holds it.
+//! `file-<mark>` for each artwork and font file, so that a large one is stored once and not with
+//! every step that holds it.
 
-use std::collections::HashMap;
+use std::cell::RefCell;
+use std::collections::{HashMap, HashSet};
+use std::sync::Arc;
 
 use serde::{Deserialize, Serialize};
-use tubewright::job::ArtworkFile;
 use tubewright::{Book, Job, book, job};
 
 use super::history::{Change, Step};
@@ -49,52 +50,98 @@ pub(super) fn job(job: &Job) -> Write {
     write("job", job::write(&light(job)))
 }
 
-/// What stands in a record in place of an artwork's text: no drawing begins so.
+/// What stands in a record in place of a file's text: no drawing begins so, and no base64 does.
 const ELSEWHERE: &str = "in record ";
 const FILE: &str = "file-";
+/// Marks of texts remembered: the files of a large sign.
+const MARKS: usize = 16;
+
+thread_local! {
+    // A font may be some megabytes, and is marked several times at every keystroke.
+    static MARKED: RefCell<Vec<(Arc<str>, String)>> = const { RefCell::new(Vec::new()) };
+}
 
 /// Name of the record of a text: FNV-1a over it, and its length. Two texts of one name would have
 /// to be made on purpose, by the person whose device it is.
-fn file_name(text: &str) -> String {
-    let mark = text.bytes().fold(0xcbf2_9ce4_8422_2325_u64, |mark, byte| {
-        (mark ^ u64::from(byte)).wrapping_mul(0x0100_0000_01b3)
-    });
-    format!("{FILE}{mark:016x}-{}", text.len())
+fn file_name(text: &Arc<str>) -> String {
+    MARKED.with_borrow_mut(|known| {
+        if let Some((_, name)) = known.iter().find(|(known, _)| Arc::ptr_eq(known, text)) {
+            return name.clone();
+        }
+        let mark = text.bytes().fold(0xcbf2_9ce4_8422_2325_u64, |mark, byte| {
+            (mark ^ u64::from(byte)).wrapping_mul(0x0100_0000_01b3)
+        });
+        let name = format!("{FILE}{mark:016x}-{}", text.len());
+        known.insert(0, (text.clone(), name.clone()));
+        known.truncate(MARKS);
+        name
+    })
 }
 
-/// The records of a job's artwork files.
-pub(super) fn files(job: &Job) -> Vec<Write> {
-    let file = |file: &ArtworkFile| write(file_name(&file.text), file.text.to_string());
-    job.artwork.iter().map(file).collect()
+/// The texts of a job's files.
+fn texts(job: &Job) -> impl Iterator<Item = &Arc<str>> {
+    let artwork = job.artwork.iter().map(|file| &file.text);
+    artwork.chain(job.fonts.iter().map(|file| &file.data))
 }
 
-/// Whether a record is that of an artwork file.
+fn texts_mut(job: &mut Job) -> impl Iterator<Item = &mut Arc<str>> {
+    let artwork = job.artwork.iter_mut().map(|file| &mut file.text);
+    artwork.chain(job.fonts.iter_mut().map(|file| &mut file.data))
+}
+
+/// Names of the records of a job's files.
+pub(super) fn file_names(job: &Job) -> impl Iterator<Item = String> {
+    texts(job).map(file_name)
+}
+
+/// The records of a job's files that are not `filed` yet; they are then.
+pub(super) fn files(job: &Job, filed: &mut HashSet<String>) -> Vec<Write> {
+    texts(job)
+        .filter_map(|text| {
+            let name = file_name(text);
+            filed
+                .insert(name.clone())
+                .then(|| write(name, text.to_string()))
+        })
+        .collect()
+}
+
+/// Whether a record is that of a file.
 pub(super) fn is_file(name: &str) -> bool {
     name.starts_with(FILE)
 }
 
-/// The job with its artwork's texts elsewhere.
+/// The job with the texts of its files elsewhere.
 fn light(job: &Job) -> Job {
     let mut light = job.clone();
-    for file in &mut light.artwork {
-        file.text = format!("{ELSEWHERE}{}", file_name(&file.text)).into();
+    for text in texts_mut(&mut light) {
+        *text = format!("{ELSEWHERE}{}", file_name(text)).into();
     }
     light
 }
 
-/// The job with its artwork's texts again; a text that is lost stays the name of its record, which
-/// then is an artwork that cannot be read.
-fn whole(mut job: Job, kept: &Kept) -> Job {
-    for file in &mut job.artwork {
-        let text = file
-            .text
-            .strip_prefix(ELSEWHERE)
-            .and_then(|name| kept.get(name));
-        if let Some(text) = text {
-            file.text = text.as_str().into();
+/// Texts of files by the names of their records, each in memory once.
+#[derive(Default)]
+struct Shelf(HashMap<String, Arc<str>>);
+
+impl Shelf {
+    /// The job with the texts of its files again; a text that is lost stays the name of its record,
+    /// which then is a file that cannot be read.
+    fn whole(&mut self, mut job: Job, kept: &Kept) -> Job {
+        for text in texts_mut(&mut job) {
+            let Some(name) = text.strip_prefix(ELSEWHERE) else {
+                continue;
+            };
+            if let Some(known) = self.0.get(name) {
+                *text = known.clone();
+            } else if let Some(found) = kept.get(name) {
+                let found: Arc<str> = found.as_str().into();
+                self.0.insert(name.to_owned(), found.clone());
+                *text = found;
+            }
         }
+        job
     }
-    job
 }
 
 pub(super) fn book(book: &Book) -> Write {
@@ -153,6 +200,7 @@ pub(super) const ASIDE: [&str; 2] = ["unreadable-job", "unreadable-book"];
 /// Reads records back; a sentence for each that cannot be read.
 pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
     let (mut found, mut trouble) = (Found::default(), Vec::new());
+    let mut shelf = Shelf::default();
     if let Some(state) = kept
         .get("state")
         .and_then(|text| serde_json::from_str::<State>(text).ok())
@@ -163,7 +211,7 @@ pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
         for number in (state.first..).take(state.steps) {
             let Some(step) = kept
                 .get(&step_name(number))
-                .and_then(|text| read_step(text, kept))
+                .and_then(|text| read_step(text, kept, &mut shelf))
             else {
                 trouble.push(
                     "A part of the undo history could not be read and was let go.".to_owned(),
@@ -176,7 +224,7 @@ pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
         }
     }
     match kept.get("job").map(|text| job::read(text)) {
-        Some(Ok(job)) => found.job = Some(whole(job, kept)),
+        Some(Ok(job)) => found.job = Some(shelf.whole(job, kept)),
         Some(Err(why)) => {
             let done = found.done.min(found.steps.len());
             found.job = found.steps[..done]
@@ -218,12 +266,13 @@ pub(super) fn read(kept: &Kept) -> (Found, Vec<String>) {
     (found, trouble)
 }
 
-fn read_step(text: &str, kept: &Kept) -> Option<Step> {
+fn read_step(text: &str, kept: &Kept, shelf: &mut Shelf) -> Option<Step> {
     let record: StepRecord = serde_json::from_str(text).ok()?;
     let change = match (record.job, record.book) {
-        (Some((before, after)), None) => {
-            Change::Job(Box::new((whole(before, kept), whole(after, kept))))
-        }
+        (Some((before, after)), None) => Change::Job(Box::new((
+            shelf.whole(before, kept),
+            shelf.whole(after, kept),
+        ))),
         (None, Some(both)) => Change::Book(Box::new(both)),
         _ => return None,
     };

@@ -1,14 +1,15 @@
 //! Taking a file from the browser and putting what it holds on the desk.
 
 use leptos::prelude::*;
+use tubewright::Job;
 use tubewright::drawing::Artwork;
-use tubewright::job::{ArtworkFile, ArtworkLines, ArtworkRow, Row};
+use tubewright::job::{ArtworkFile, ArtworkLines, ArtworkRow, FontFile, OutlineRow, Row};
 use wasm_bindgen::JsCast;
 use wasm_bindgen_futures::JsFuture;
 
-use super::read::{Opened, merge, read};
+use super::read::{MOST_FILES, Opened, merge, read};
 use crate::desk::{Desk, Where};
-use crate::places::usual_tube;
+use crate::places::{enter_last_row, usual_height, usual_tube};
 
 /// The file of an input element was chosen.
 pub fn choose(desk: Desk, event: &web_sys::Event) {
@@ -87,6 +88,7 @@ pub fn put(desk: Desk, opened: Opened) {
             told(desk, "supplies", counted, trouble);
         }
         Opened::Artwork(file) => artwork(desk, file),
+        Opened::Font(file) => font(desk, file),
         Opened::Tubes(entries, trouble) => {
             let mut counted = (0, 0);
             desk.edit_book("open", "Take in tube types", |book| {
@@ -102,18 +104,14 @@ pub fn put(desk: Desk, opened: Opened) {
 /// Puts an artwork into the job, with a row of its own. Lines of one kind get the usual tube; where
 /// there are more kinds a person says what each is.
 fn artwork(desk: Desk, mut file: ArtworkFile) {
-    let taken = desk.job.with_untracked(|job| {
-        job.artwork
-            .iter()
-            .map(|file| file.name.clone())
-            .collect::<Vec<_>>()
-    });
-    let wanted = file.name.clone();
-    let mut number = 2;
-    while taken.contains(&file.name) {
-        file.name = format!("{number} {wanted}");
-        number += 1;
+    if !has_room(desk, &file.name, file.text.len()) {
+        return;
     }
+    let wanted = file.name.clone();
+    file.name = desk.job.with_untracked(|job| {
+        let taken = |name: &str| job.artwork.iter().any(|file| file.name == name);
+        free_name(&wanted, taken)
+    });
     let tube = usual_tube(desk);
     let groups = tubewright::takeoff::artwork(&file)
         .as_ref()
@@ -125,6 +123,7 @@ fn artwork(desk: Desk, mut file: ArtworkFile) {
             colour: only.colour.clone(),
             layer: only.layer.clone(),
             tube,
+            ..ArtworkLines::default()
         }],
         _ => Vec::new(),
     };
@@ -150,6 +149,78 @@ fn artwork(desk: Desk, mut file: ArtworkFile) {
     } else {
         format!("“{wanted}” is in the sign.")
     });
+}
+
+/// Puts a font into the job, with a row of letters in it. A font that is there already is not put
+/// in twice.
+fn font(desk: Desk, mut file: FontFile) {
+    let known = desk.job.with_untracked(|job| {
+        let same = job.fonts.iter().find(|known| known.data == file.data);
+        same.map(|known| known.name.clone())
+    });
+    let new = known.is_none();
+    if let Some(name) = known {
+        file.name = name;
+    } else if has_room(desk, &file.name, file.data.len()) {
+        file.name = desk.job.with_untracked(|job| {
+            let taken = |name: &str| job.fonts.iter().any(|file| file.name == name);
+            free_name(&file.name, taken)
+        });
+    } else {
+        return;
+    }
+    let row = Row::Outline(OutlineRow {
+        height: usual_height(desk),
+        font: file.name.clone(),
+        tube: usual_tube(desk),
+        ..OutlineRow::default()
+    });
+    let says = format!(
+        "The font “{}” is in this job: type what its letters say.",
+        file.name
+    );
+    desk.edit_job("open", "Letters from a font file", |job| {
+        if new {
+            job.fonts.push(file);
+        }
+        job.rows.push(row);
+    });
+    desk.place.set(Where::Sign);
+    enter_last_row(desk);
+    desk.tell(says);
+}
+
+/// Whether a job has room for a file; says so where not, because a job file that large could not be
+/// opened again.
+fn has_room(desk: Desk, name: &str, size: usize) -> bool {
+    let text = |job: &Job| {
+        let artwork = job.artwork.iter().map(|file| file.text.len());
+        let fonts = job.fonts.iter().map(|file| file.data.len());
+        artwork.chain(fonts).sum::<usize>()
+    };
+    let room = MOST_FILES.saturating_sub(desk.job.with_untracked(text));
+    if size > room {
+        desk.trouble(vec![format!(
+            "{} was not put into this job: its artwork and fonts may be {} MB together, there is room \
+             for {} MB, and this one takes {} MB. Remove a row that has a font or artwork of its own.",
+            tubewright::measure::quoted(name),
+            MOST_FILES / 1_000_000,
+            room / 1_000_000,
+            size.div_ceil(1_000_000),
+        )]);
+    }
+    size <= room
+}
+
+/// The name, with a number before it where it is taken.
+fn free_name(wanted: &str, taken: impl Fn(&str) -> bool) -> String {
+    let mut name = wanted.to_owned();
+    let mut number = 2;
+    while taken(&name) {
+        name = format!("{number} {wanted}");
+        number += 1;
+    }
+    name
 }
 
 fn told(desk: Desk, what: &str, (replaced, added): (usize, usize), mut trouble: Vec<String>) {

@@ -1,13 +1,18 @@
 //! What a file holds.
 
 use tubewright::book::{SupplyEntry, TubeEntry, read_supplies, read_tubes, text_of};
-use tubewright::drawing::{self, Artwork};
-use tubewright::job::ArtworkFile;
+use tubewright::drawing::{self, Artwork, outline};
+use tubewright::job::{ArtworkFile, FontFile};
 use tubewright::measure::quoted;
 use tubewright::{Book, Job, book, job};
 
 /// A file larger than this is none of ours; reading it would only stall the page.
 const MOST_BYTES: usize = 20_000_000;
+/// A job file may be larger: it has the job's artwork and fonts in it.
+const MOST_JOB_BYTES: usize = 100_000_000;
+/// Most text of artwork and fonts that a job takes in. Written to a file it becomes longer by the
+/// marks before quotes and line ends, which is less than as much again.
+pub(super) const MOST_FILES: usize = 45_000_000;
 
 /// What a file held. The sentences say what of it was left out.
 #[derive(Debug, Clone, PartialEq)]
@@ -22,6 +27,8 @@ pub enum Opened {
     Tubes(Vec<TubeEntry>, Vec<String>),
     /// Artwork, to be put into the open job.
     Artwork(ArtworkFile),
+    /// A font, likewise.
+    Font(FontFile),
 }
 
 /// Reads a file by what is in it; its name serves only the sentences.
@@ -30,9 +37,23 @@ pub enum Opened {
 /// A sentence that names the file, says what is wrong with it and what would be right.
 pub fn read(name: &str, bytes: &[u8]) -> Result<Opened, String> {
     let file = quoted(name);
-    if bytes.len() > MOST_BYTES {
+    if is_font(bytes) {
+        // It says itself how large a font may be.
+        let read = outline::Font::read(bytes);
+        return match read {
+            Ok(_) => Ok(Opened::Font(FontFile::new(name, bytes))),
+            Err(why) => Err(format!("{file} was not opened. {why}")),
+        };
+    }
+    let json = bytes.trim_ascii_start().starts_with(b"{");
+    if bytes.len() > if json { MOST_JOB_BYTES } else { MOST_BYTES } {
         return Err(format!(
-            "{file} was not opened: it is larger than any job or shop book (20 MB)."
+            "{file} was not opened: it is larger than any {}.",
+            if json {
+                "job or shop book (100 MB)"
+            } else {
+                "list or artwork (20 MB)"
+            }
         ));
     }
     let start = bytes
@@ -97,10 +118,17 @@ pub fn read(name: &str, bytes: &[u8]) -> Result<Opened, String> {
         Err(told(
             "It is neither a job or shop book of this program (JSON), nor a list of supplies or \
              tube types (CSV with column names such as name, no_load_volts or outer_mm in its \
-             first line), nor artwork (SVG or DXF)."
+             first line), nor artwork (SVG or DXF), nor a font (TTF or OTF)."
                 .to_owned(),
         ))
     }
+}
+
+/// Whether a file begins as a font does, or as one packed for web pages, which gets its sentence.
+fn is_font(bytes: &[u8]) -> bool {
+    [b"\0\x01\0\0", b"OTTO", b"true", b"ttcf", b"wOFF", b"wOF2"]
+        .iter()
+        .any(|mark| bytes.starts_with(*mark))
 }
 
 /// Artwork that was read well enough to be of use.
@@ -196,6 +224,19 @@ mod tests {
     }
 
     #[test]
+    fn a_font_is_known_by_what_is_in_it() {
+        let letters = include_bytes!("../../../tests/reference/outlines/letters.ttf");
+        let compact = include_bytes!("../../../tests/reference/outlines/compact.otf");
+        for bytes in [letters.as_slice(), compact.as_slice()] {
+            let Ok(Opened::Font(file)) = read("anything", bytes) else {
+                panic!("a font");
+            };
+            assert_eq!(file.name, "anything");
+            assert_eq!(file.bytes().as_deref(), Some(bytes), "whole");
+        }
+    }
+
+    #[test]
     fn what_cannot_be_read_gets_a_sentence() {
         assert!(why("x.json", b"").contains("empty"), "nothing in it");
         assert!(
@@ -226,6 +267,20 @@ mod tests {
         assert!(
             why("x", &vec![b'a'; MOST_BYTES + 1]).contains("20 MB"),
             "too large"
+        );
+        let mut large = b"OTTO".to_vec();
+        large.resize(outline::MOST_BYTES + 1, 0);
+        assert_eq!(
+            why("x.otf", &large),
+            "“x.otf” was not opened. The font file must be at most 20 MB, but has 21 MB."
+        );
+        assert!(
+            why("x.ttf", b"\0\x01\0\0").contains("not a font"),
+            "cut off"
+        );
+        assert!(
+            why("x.woff2", b"wOF2").contains("packed for web pages"),
+            "packed"
         );
     }
 

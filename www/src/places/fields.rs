@@ -105,6 +105,9 @@ pub(super) fn Choice(
     /// Takes a choice.
     #[prop(into)]
     commit: Callback<String>,
+    /// Where what can be chosen is kept.
+    #[prop(default = "the shop book")]
+    home: &'static str,
     /// A further class of the field.
     #[prop(optional, into)]
     class: String,
@@ -112,12 +115,12 @@ pub(super) fn Choice(
     let desk = desk();
     let listed = Memo::new(move |_| {
         let (mut list, now) = (options.get(), value.get());
-        // A name the book does not have stays as it is until another is chosen.
+        // A name that is not there stays as it is until another is chosen.
         if !list.iter().any(|(known, _)| *known == now) {
             let words = if now.is_empty() {
                 "choose…".to_owned()
             } else {
-                format!("{now} (not in the shop book)")
+                format!("{now} (not in {home})")
             };
             list.insert(0, (now, words));
         }

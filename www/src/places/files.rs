@@ -75,7 +75,7 @@ pub(super) fn FilesPanel(
                     <input
                         class="unseen"
                         type="file"
-                        accept=".json,.csv,.txt,.svg,.dxf,application/json,text/csv,image/svg+xml"
+                        accept=".json,.csv,.txt,.svg,.dxf,.ttf,.otf,.ttc,application/json,text/csv,image/svg+xml"
                         on:change=move |event| {
                             files::choose(desk, &event);
                             open.set(false);
@@ -92,7 +92,7 @@ pub(super) fn FilesPanel(
                 }>"New sign"</button>
             </div>
             <p class="quiet">
-                "A job or shop book (JSON), a list of supplies or tube types (CSV), or artwork (SVG, DXF). Or drop a file anywhere on the page."
+                "A job or shop book (JSON), a list of supplies or tube types (CSV), artwork (SVG, DXF), or a font (TTF, OTF). Or drop a file anywhere on the page."
             </p>
             <h3>"Save"</h3>
             <div class="buttons">

@@ -13,6 +13,7 @@ use tubewright::takeoff::artwork;
 
 use super::fields::{Choice, Field, always};
 use super::findings::{line, many};
+use super::outline_fields::{InsetField, OutlineFields};
 use super::shape_fields::{self, ShapeFields};
 use wasm_bindgen::JsCast;
 
@@ -47,6 +48,15 @@ pub fn Rows() -> impl IntoView {
                         on:change=move |event| files::choose(desk, &event)
                     />
                 </label>
+                <label class="button act">
+                    "+ Letters of a font file"
+                    <input
+                        class="unseen"
+                        type="file"
+                        accept=".ttf,.otf,.ttc,font/ttf,font/otf"
+                        on:change=move |event| files::choose(desk, &event)
+                    />
+                </label>
             </div>
         </section>
     }
@@ -57,15 +67,11 @@ fn word(desk: Desk) -> Row {
     let last = desk.job.with_untracked(|job| {
         job.rows.iter().rev().find_map(|row| match row {
             Row::Text(row) => Some(row.clone()),
-            Row::Strokes(_) | Row::Artwork(_) | Row::Shape(_) => None,
+            Row::Strokes(_) | Row::Artwork(_) | Row::Shape(_) | Row::Outline(_) => None,
         })
     });
-    let inches = desk.units.get_untracked() == Units::FeetInches;
     Row::Text(TextRow {
-        height: last.as_ref().map_or_else(
-            || if inches { "8 in" } else { "200 mm" }.to_owned(),
-            |row| row.height.clone(),
-        ),
+        height: usual_height(desk),
         face: last.map_or_else(|| "sans".to_owned(), |row| row.face),
         tube: usual_tube(desk),
         ..TextRow::default()
@@ -92,6 +98,11 @@ fn add(desk: Desk, row: Row) {
     desk.settle();
     desk.edit_job("add", "Add a row", |job| job.rows.push(row));
     desk.settle();
+    enter_last_row(desk);
+}
+
+/// Goes into the first field of the last row, once it is there.
+pub(crate) fn enter_last_row(desk: Desk) {
     let last = desk
         .job
         .with_untracked(|job| job.rows.len().saturating_sub(1));
@@ -104,6 +115,22 @@ fn add(desk: Desk, row: Row) {
             let _ = field.focus();
         }
     });
+}
+
+/// The letter height a new row begins with: that of the last letters.
+pub(crate) fn usual_height(desk: Desk) -> String {
+    let last = desk.job.with_untracked(|job| {
+        job.rows.iter().rev().find_map(|row| match row {
+            Row::Text(row) => Some(row.height.clone()),
+            Row::Outline(row) => Some(row.height.clone()),
+            Row::Strokes(_) | Row::Artwork(_) | Row::Shape(_) => None,
+        })
+    });
+    let usual = match desk.units.get_untracked() {
+        Units::FeetInches => "8 in",
+        Units::Metric => "200 mm",
+    };
+    last.unwrap_or_else(|| usual.to_owned())
 }
 
 /// The tube a new row begins with: that of the last row, else the first of the book.
@@ -127,6 +154,7 @@ fn part<T: Default>(job: &Job, at: usize, get: impl Fn(&Row) -> T) -> T {
     job.rows.get(at).map(get).unwrap_or_default()
 }
 
+/// Changes a row; `field` is what of it.
 pub(super) fn edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut Row)) {
     let says = format!("Row {}: {field}", at + 1);
     desk.edit_job(&format!("row {at} {field}"), &says, |job| {
@@ -152,6 +180,7 @@ enum Kind {
     Strokes,
     Artwork,
     Shape,
+    Outline,
 }
 
 #[component]
@@ -162,6 +191,7 @@ fn RowCard(at: usize) -> impl IntoView {
             Some(Row::Text(_)) => Kind::Text,
             Some(Row::Artwork(_)) => Kind::Artwork,
             Some(Row::Shape(_)) => Kind::Shape,
+            Some(Row::Outline(_)) => Kind::Outline,
             _ => Kind::Strokes,
         })
     });
@@ -199,6 +229,7 @@ fn RowCard(at: usize) -> impl IntoView {
                         Row::Text(row) => row.tube = name,
                         Row::Strokes(row) => row.tube = name,
                         Row::Shape(row) => row.tube = name,
+                        Row::Outline(row) => row.tube = name,
                         Row::Artwork(_) => {}
                     })
                 />
@@ -220,6 +251,7 @@ fn RowCard(at: usize) -> impl IntoView {
                         Row::Strokes(row) => row.count = count,
                         Row::Artwork(row) => row.count = count,
                         Row::Shape(row) => row.count = count,
+                        Row::Outline(row) => row.count = count,
                     });
                     Ok(())
                 }
@@ -249,7 +281,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 example="200 mm"
                 value=read(|row| match row {
                     Row::Text(row) => row.height.clone(),
-                    Row::Strokes(_) | Row::Artwork(_) | Row::Shape(_) => String::new(),
+                    _ => String::new(),
                 })
                 commit=move |typed: String| {
                     let typed = with_units(typed.trim(), desk.bare());
@@ -262,7 +294,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 class="narrow"
                 value=read(|row| match row {
                     Row::Text(row) => row.face.clone(),
-                    Row::Strokes(_) | Row::Artwork(_) | Row::Shape(_) => String::new(),
+                    _ => String::new(),
                 })
                 options=Signal::derive(|| {
                     faces().iter().map(|face| (face.name.to_owned(), face.name.to_owned())).collect()
@@ -297,7 +329,7 @@ fn RowCard(at: usize) -> impl IntoView {
                 example="1200 mm; 2 x 300 mm + 95 mm"
                 value=read(|row| match row {
                     Row::Strokes(row) => row.strokes.clone(),
-                    Row::Text(_) | Row::Artwork(_) | Row::Shape(_) => String::new(),
+                    _ => String::new(),
                 })
                 commit=move |typed: String| {
                     let typed = with_units(typed.trim(), desk.bare());
@@ -355,6 +387,7 @@ fn RowCard(at: usize) -> impl IntoView {
                     Kind::Strokes => view! { {stroke_fields()} {tube()} }.into_any(),
                     Kind::Artwork => view! { <ArtworkFields at=at/> }.into_any(),
                     Kind::Shape => view! { <ShapeFields at=at/> {tube()} }.into_any(),
+                    Kind::Outline => view! { <OutlineFields at=at/> {tube()} }.into_any(),
                 }}
                 {times()}
             </div>
@@ -453,13 +486,28 @@ fn ArtworkFields(at: usize) -> impl IntoView {
                     let (colour, layer) = (colour.clone(), layer.clone());
                     move |lines: &ArtworkLines| lines.colour == colour && lines.layer == layer
                 };
-                let value = {
+                let mine = {
                     let same = same.clone();
-                    Signal::derive(move || {
-                        let row = row.get()?;
-                        let lines = row.lines.iter().find(|lines| same(lines))?;
-                        Some(if lines.tube.is_empty() { NO_TUBE.to_owned() } else { lines.tube.clone() })
+                    Signal::derive(move || row.get()?.lines.into_iter().find(|lines| same(lines)))
+                };
+                let tube = Memo::new(move |_| match mine.get() {
+                    Some(lines) if lines.tube.is_empty() => NO_TUBE.to_owned(),
+                    Some(lines) => lines.tube,
+                    None => String::new(),
+                });
+                let inset = {
+                    let same = same.clone();
+                    Callback::new(move |typed: String| {
+                        change("inset", &|row| {
+                            if let Some(lines) = row.lines.iter_mut().find(|lines| same(lines)) {
+                                lines.inset.clone_from(&typed);
+                            }
+                        });
                     })
+                };
+                // Only what is tube and the edge of an area can run inside of it.
+                let can_inset = move || {
+                    group.filled > 0 && tube.with(|tube| !tube.is_empty() && tube != NO_TUBE)
                 };
                 let commit = move |name: String| {
                     let tube = if name == NO_TUBE { String::new() } else { name };
@@ -469,6 +517,7 @@ fn ArtworkFields(at: usize) -> impl IntoView {
                             colour: colour.clone(),
                             layer: layer.clone(),
                             tube: tube.clone(),
+                            ..ArtworkLines::default()
                         }),
                     });
                 };
@@ -489,10 +538,18 @@ fn ArtworkFields(at: usize) -> impl IntoView {
                         <span class="dot" style:background=group.colour.clone().unwrap_or_default()></span>
                         <Choice
                             label=called
-                            value=Signal::derive(move || value.get().unwrap_or_default())
+                            value=tube
                             options=options
                             commit=commit
                         />
+                        <Show when=can_inset>
+                            <InsetField
+                                value=Signal::derive(move || {
+                                    mine.get().map(|lines| lines.inset).unwrap_or_default()
+                                })
+                                commit=inset
+                            />
+                        </Show>
                         <span class="quiet">{count}{long}</span>
                     </li>
                 }
@@ -557,11 +614,15 @@ fn remove(desk: Desk, at: usize) {
     desk.edit_job("remove", &format!("Remove row {}", at + 1), |job| {
         if at < job.rows.len() {
             job.rows.remove(at);
-            // A file no row takes lines from any more is let go; undo brings it back.
+            // A file no row takes anything from any more is let go; undo brings it back.
             let rows = &job.rows;
             job.artwork.retain(|file| {
                 rows.iter()
                     .any(|row| matches!(row, Row::Artwork(row) if row.file == file.name))
+            });
+            job.fonts.retain(|file| {
+                rows.iter()
+                    .any(|row| matches!(row, Row::Outline(row) if row.font == file.name))
             });
         }
     });
