@@ -4,6 +4,7 @@
 use leptos::mount::mount_to;
 use leptos::prelude::*;
 use leptos::task::tick;
+use tubewright::job::{Row, Shape};
 use tubewright::measure::Units;
 use tubewright_www::desk::{Desk, Where};
 use tubewright_www::document::Write;
@@ -12,7 +13,7 @@ use tubewright_www::keep::{Keeper, Standing};
 use tubewright_www::places::{Circuits, FindingsList, Glass, Price, Rows, ShopBook, Sign};
 use wasm_bindgen::JsCast;
 use wasm_bindgen_test::{wasm_bindgen_test, wasm_bindgen_test_configure};
-use web_sys::{Element, Event, HtmlElement, HtmlInputElement};
+use web_sys::{Element, Event, HtmlElement, HtmlInputElement, HtmlSelectElement};
 
 wasm_bindgen_test_configure!(run_in_browser);
 
@@ -76,6 +77,11 @@ impl Mounted {
 
     /// The control under a caption, in the nth place it stands.
     fn field(&self, caption: &str, nth: usize) -> HtmlInputElement {
+        self.under(caption, nth, "input")
+    }
+
+    /// What stands under the nth such caption and is such a control.
+    fn under<T: JsCast>(&self, caption: &str, nth: usize, control: &str) -> T {
         self.all("label.field")
             .into_iter()
             .filter(|label| {
@@ -86,9 +92,31 @@ impl Mounted {
                     .is_some_and(|found| found.text_content().as_deref() == Some(caption))
             })
             .nth(nth)
-            .and_then(|label| label.query_selector("input").ok().flatten())
+            .and_then(|label| label.query_selector(control).ok().flatten())
             .unwrap_or_else(|| panic!("wanted: the field {caption}\n   got: {}", self.text()))
             .unchecked_into()
+    }
+
+    /// The choice under a caption, in the nth place it stands.
+    fn choice(&self, caption: &str, nth: usize) -> HtmlSelectElement {
+        self.under::<HtmlSelectElement>(caption, nth, "select")
+    }
+
+    async fn choose(&self, choice: &HtmlSelectElement, value: &str) {
+        choice.set_value(value);
+        let event = Event::new("change").expect("an event");
+        choice.dispatch_event(&event).expect("it is heard");
+        settled().await;
+    }
+
+    async fn click(&self, words: &str) {
+        let button = self
+            .all("button")
+            .into_iter()
+            .find(|button| button.text_content().as_deref() == Some(words))
+            .unwrap_or_else(|| panic!("wanted: the button {words}\n   got: {}", self.text()));
+        button.unchecked_into::<HtmlElement>().click();
+        settled().await;
     }
 
     async fn enter(&self, field: &HtmlInputElement, text: &str, event: &str) {
@@ -152,6 +180,96 @@ async fn a_count_that_is_none_stays_in_sight_with_a_sentence() {
         2,
         "the job has the new"
     );
+}
+
+#[wasm_bindgen_test]
+async fn a_shape_is_added_and_another_kind_keeps_its_name_tube_and_count() {
+    let rows = mount(|| view! { <Rows/> });
+    let shape = |rows: &Mounted| {
+        rows.desk.job.with_untracked(|job| match job.rows.last() {
+            Some(Row::Shape(row)) => row.clone(),
+            other => panic!("wanted: a shape\n   got: {other:?}"),
+        })
+    };
+    rows.click("+ Shape").await;
+    assert_eq!(rows.all(".row").len(), 3, "a card more");
+    assert_eq!(shape(&rows).shape.kind(), "rectangle");
+    let kind = rows.choice("Shape", 0);
+    assert_eq!(kind.value(), "rectangle");
+    rows.enter(&rows.field("Corner radius", 0), "50", "change")
+        .await;
+    let Shape::Rectangle { corner, .. } = shape(&rows).shape else {
+        panic!("still a rectangle");
+    };
+    assert_eq!(corner, "50 mm", "a bare size takes the unit of the page");
+    rows.enter(&rows.field("What it is", 0), "Border", "input")
+        .await;
+    rows.enter(&rows.field("Times", 2), "2", "change").await;
+    let tube = rows.choice("Tube", 2);
+    let other = demo::book().tubes[1].name.clone();
+    rows.choose(&tube, &other).await;
+
+    rows.choose(&kind, "star").await;
+    let row = shape(&rows);
+    assert_eq!(row.shape.kind(), "star");
+    assert_eq!(
+        (row.label.as_str(), row.tube, row.count),
+        ("Border", other, 2),
+        "what is not of the shape stays"
+    );
+    assert!(
+        !rows.text().contains("Corner radius"),
+        "no field of the other kind: {}",
+        rows.text()
+    );
+    let field = rows.field("Points", 0);
+    assert_eq!(field.value(), "5");
+    rows.enter(&field, "some", "change").await;
+    assert!(
+        rows.text().contains("found “some”; 5 still counts"),
+        "got: {}",
+        rows.text()
+    );
+    rows.enter(&field, "7", "change").await;
+    assert!(
+        matches!(shape(&rows).shape, Shape::Star { points: 7, .. }),
+        "{:?}",
+        shape(&rows)
+    );
+    // The inner diameter is 200 mm at first: a sentence of the core stands under the row.
+    rows.enter(&rows.field("Outer diameter", 0), "200 mm", "change")
+        .await;
+    assert!(
+        rows.text().contains("Inner diameter must be less than"),
+        "got: {}",
+        rows.text()
+    );
+
+    rows.choose(&kind, "polyline").await;
+    let points = "Points, each across, up from the lower left; part them by ;";
+    let field = rows.field(points, 0);
+    rows.enter(&field, "0, 0; 40, 30; 0, 0", "change").await;
+    assert_eq!(
+        field.value(),
+        "0 mm, 0 mm; 40 mm, 30 mm; 0 mm, 0 mm",
+        "units are written out"
+    );
+    rows.choose(&kind, "arc").await;
+    rows.enter(&rows.field("Sweep, degrees", 0), "90°", "change")
+        .await;
+    rows.enter(&rows.field("Turned, degrees", 0), "-45", "change")
+        .await;
+    let row = shape(&rows);
+    assert!(
+        matches!(row.shape, Shape::Arc { sweep_degrees, .. } if sweep_degrees == 90.0)
+            && row.rotation_degrees == -45.0,
+        "{row:?}"
+    );
+    rows.desk.undo();
+    rows.desk.undo();
+    rows.desk.undo();
+    settled().await;
+    assert_eq!(kind.value(), "polyline", "undo is shown in the choice");
 }
 
 #[wasm_bindgen_test]
