@@ -438,8 +438,11 @@ pub struct Pieces {
     /// Places on strokes where a piece ends and another begins.
     #[serde(skip_serializing_if = "Vec::is_empty")]
     pub cuts: Vec<Cut>,
-    /// Pieces by the names the takeoff gives them, in the order they are wired in; others keep
-    /// their place in reading order behind these.
+    /// Whether pieces longer than the shop bends stay in one.
+    #[serde(skip_serializing_if = "std::ops::Not::not")]
+    pub keep_long: bool,
+    /// Pieces by the names the takeoff gives them, in the order they are wired in. One that is not
+    /// named follows the one it follows in reading order.
     #[serde(skip_serializing_if = "Vec::is_empty")]
     pub order: Vec<String>,
 }

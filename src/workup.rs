@@ -13,7 +13,7 @@ use crate::plan::{self, Candidate, Task};
 use crate::quote::{self, GlassPart, Parts, Quote};
 use crate::rules::{EarthWord, Finding, Grade, Place, RuleSet, Source};
 use crate::supply::{self, Rating};
-use crate::takeoff::{Piece, Takeoff, takeoff};
+use crate::takeoff::{Piece, Takeoff, against_shop, takeoff};
 use crate::tube::TubeType;
 
 /// Everything worked out of a job and a book.
@@ -141,6 +141,7 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
 
     let off = takeoff(job, &book.allowances);
     findings.extend(off.findings.iter().cloned());
+    findings.extend(against_shop(&off, job, book));
 
     let tubes = tube_totals(job, book, &off.pieces, &mut findings);
     let (candidates, refused) = candidates(job, book, rules.as_ref(), &mut findings);
@@ -664,6 +665,11 @@ mod tests {
             strokes: "4 m".to_owned(),
             tube: "t".to_owned(),
             count: 3,
+            // However long: these are sentences about supplies.
+            pieces: crate::job::Pieces {
+                keep_long: true,
+                ..crate::job::Pieces::default()
+            },
             ..StrokesRow::default()
         });
         let job = Job {

@@ -258,6 +258,15 @@ pub struct Allowances {
     pub waste_percent: f64,
     /// Longest piece of glass, lit and hidden parts, that the shop bends in one.
     pub longest_piece_mm: f64,
+    /// Glass added to each painted-out jump between strokes, for stepping back behind the sign and
+    /// forward again.
+    #[serde(skip_serializing_if = "is_zero")]
+    pub crossover_mm: f64,
+}
+
+#[allow(clippy::trivially_copy_pass_by_ref, reason = "asked so by serde")]
+fn is_zero(value: &f64) -> bool {
+    *value == 0.0
 }
 
 impl Default for Allowances {
@@ -266,6 +275,7 @@ impl Default for Allowances {
             tail_mm: 150.0,
             waste_percent: 10.0,
             longest_piece_mm: 2_400.0,
+            crossover_mm: 0.0,
         }
     }
 }
@@ -285,9 +295,6 @@ pub struct Bending {
     pub least_spacing_diameters: Option<f64>,
     /// Least distance of electrodes of two pieces.
     pub least_electrode_spacing_mm: Option<f64>,
-    /// Glass added for each crossover between strokes, for stepping back behind the sign and forward
-    /// again.
-    pub crossover_mm: f64,
 }
 
 impl Bending {
@@ -303,7 +310,6 @@ impl Default for Bending {
             least_letter_diameters: Some(8.0),
             least_spacing_diameters: Some(2.0),
             least_electrode_spacing_mm: None,
-            crossover_mm: 0.0,
         }
     }
 }
@@ -361,7 +367,7 @@ pub fn read(text: &str) -> Result<Book, String> {
 
 /// The book as the text of a file, of the oldest version that can hold it.
 pub fn write(book: &Book) -> String {
-    let plain = book.bending == Bending::default();
+    let plain = book.bending.is_usual() && is_zero(&book.allowances.crossover_mm);
     let book = &Book {
         version: if plain { OLDEST } else { VERSION },
         ..book.clone()

@@ -441,6 +441,9 @@ mod tests {
             row: 0,
             copy: 0,
             label: String::new(),
+            name: String::new(),
+            whole: 0,
+            group: String::new(),
             tube: String::new(),
             lit: Length::from_mm(length_mm),
             hidden: Length::ZERO,
@@ -448,6 +451,7 @@ mod tests {
             strokes: Vec::new(),
             jumps: Vec::new(),
             electrodes: [Point::ZERO; 2],
+            bends: Vec::new(),
         }
     }
 

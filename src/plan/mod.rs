@@ -1,7 +1,7 @@
 //! The plan: pieces in reading order split into circuits, and a supply for each, with the reasons.
 //!
 //! Exact over all splits into neighbouring pieces (of at most 250 each, more than any supply can
-//! run). Order of what is avoided and sought: pieces left
+//! run) that light together: pieces of two groups are never on one circuit. Order of what is avoided and sought: pieces left
 //! without a supply; circuits that need a look; then the job's wish. Ties go to the better balance
 //! (each string near the middle of its window).
 
@@ -95,22 +95,45 @@ type Cost = [u64; 6];
 /// Finds the best plan.
 pub fn plan(task: &Task) -> Plan {
     let gates = Gates::new(task);
+    let mut found = Plan::default();
+    for run in groups(task) {
+        plan_run(task, &gates, run, &mut found);
+    }
+    found
+}
+
+/// Runs of neighbouring pieces that light together. No circuit reaches from one into the next, and
+/// costs are sums, so the best plans of the runs are the best plan.
+fn groups(task: &Task) -> Vec<Range<usize>> {
+    let mut runs: Vec<Range<usize>> = Vec::new();
+    for (at, (piece, _)) in task.pieces.iter().enumerate() {
+        match runs.last_mut() {
+            Some(run) if task.pieces[run.start].0.group == piece.group => run.end = at + 1,
+            _ => runs.push(at..at + 1),
+        }
+    }
+    runs
+}
+
+/// Adds the best plan of a run of pieces.
+fn plan_run(task: &Task, gates: &Gates, run: Range<usize>, found: &mut Plan) {
     let left_out: Cost = [1, 0, 0, 0, 0, 0];
+    let of_task = |part: Range<usize>| part.start + run.start..part.end + run.start;
     let Some(split) = best_split(
-        task.pieces.len(),
+        run.len(),
         task.candidates.len(),
         Some(left_out),
         |pieces, supply| {
             gates
-                .fit(task, pieces, supply)
+                .fit(task, of_task(pieces), supply)
                 .map(|fit| cost(task, supply, fit))
         },
     ) else {
-        return Plan::default();
+        return;
     };
-    let mut found = Plan::default();
     let mut stranded: Option<Range<usize>> = None;
     for (pieces, supply) in split.parts {
+        let pieces = of_task(pieces);
         let Some(candidate) = supply else {
             match &mut stranded {
                 Some(range) => range.end = pieces.end,
@@ -121,14 +144,11 @@ pub fn plan(task: &Task) -> Plan {
         found
             .left_over
             .extend(stranded.take().map(|pieces| why::left_over(task, pieces)));
-        found
-            .circuits
-            .push(circuit(task, &gates, pieces, candidate));
+        found.circuits.push(circuit(task, gates, pieces, candidate));
     }
     found
         .left_over
         .extend(stranded.map(|pieces| why::left_over(task, pieces)));
-    found
 }
 
 /// What a fitting string costs, by the wish.

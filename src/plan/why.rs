@@ -379,6 +379,11 @@ mod tests {
             strokes: lengths.to_owned(),
             tube: "t".to_owned(),
             count: 1,
+            // However long: these are sentences about supplies.
+            pieces: crate::job::Pieces {
+                keep_long: true,
+                ..crate::job::Pieces::default()
+            },
             ..StrokesRow::default()
         });
         let job = Job {

@@ -1,30 +1,24 @@
 //! A row of artwork: the lines of a file, at the wanted size, as pieces of glass.
 //!
-//! Lines of one tube that touch at their ends are one piece; each piece is run through like a
-//! letter. Lines that touch elsewhere than at an end, as the bar of a T does, stay pieces of their
-//! own.
+//! Lines of one tube of which an end lies on another are one piece; each piece is run through like a
+//! letter. Pieces are in reading order.
 
 use std::cell::RefCell;
-use std::collections::HashMap;
 use std::rc::Rc;
 use std::sync::Arc;
 
-use kurbo::{Affine, BezPath, Point, Rect, Shape};
+use kurbo::{Affine, BezPath, Rect, Shape};
 
+use super::assemble::{touching, way};
+use super::drawn::{Drawn, Made};
 use super::finding;
 use super::outline;
-use super::pieces::{Drawn, Made};
-use super::route::{ends, route};
 use crate::drawing::outline::{Join, filled, inset};
 use crate::drawing::{ArtGroup, ArtStroke, Artwork, dxf, svg};
 use crate::job::{ArtworkFile, ArtworkRow};
 use crate::measure::{self, LengthUnit, Limit};
 use crate::rules::Finding;
 
-/// Ends nearer than this are one place: less than glass can be bent to.
-const TOUCH_MM: f64 = 0.5;
-/// A piece of more lines than this is run through as drawn: no shorter way is looked for.
-const MOST_ROUTED: usize = 120;
 /// Files remembered once read.
 const REMEMBERED: usize = 6;
 
@@ -108,23 +102,29 @@ pub(super) fn row(
             continue;
         }
         let strokes = strokes(at, art, &group, (mm_per_unit, &lines.inset), findings);
-        for strokes in runs(strokes) {
-            for stroke in &strokes {
-                let here = stroke.bounding_box();
-                bounds = Some(bounds.map_or(here, |all| all.union(here)));
-            }
-            let way = if strokes.len() > MOST_ROUTED {
-                super::route::as_drawn(&strokes)
-            } else {
-                route(&strokes)
-            };
-            let label = match row.label.trim() {
-                "" => format!("line {}", made.pieces.len() + 1),
-                label => format!("{label} {}", made.pieces.len() + 1),
-            };
-            made.pieces
-                .push(Drawn::new(label, strokes, way).of(&lines.tube));
+        for (_, path) in &strokes {
+            let here = path.bounding_box();
+            bounds = Some(bounds.map_or(here, |all| all.union(here)));
         }
+        let paths: Vec<&BezPath> = strokes.iter().map(|(_, path)| path).collect();
+        let runs = touching(&paths);
+        let mut strokes: Vec<Option<(String, BezPath)>> = strokes.into_iter().map(Some).collect();
+        for run in runs {
+            let run: Vec<(String, BezPath)> = run
+                .into_iter()
+                .filter_map(|at| strokes[at].take())
+                .collect();
+            let paths: Vec<BezPath> = run.iter().map(|(_, path)| path.clone()).collect();
+            let drawn = Drawn::named(String::new(), run, &way(&paths));
+            made.pieces.push(drawn.of(&lines.tube));
+        }
+    }
+    in_reading_order(&mut made.pieces);
+    for (number, drawn) in made.pieces.iter_mut().enumerate() {
+        drawn.label = match row.label.trim() {
+            "" => format!("line {}", number + 1),
+            label => format!("{label} {}", number + 1),
+        };
     }
     made.bounds = bounds.unwrap_or(Rect::ZERO);
     made
@@ -172,29 +172,40 @@ fn size(at: usize, row: &ArtworkRow, art: &Artwork, findings: &mut Vec<Finding>)
     }
 }
 
-/// The lines of a group at their size, the edges of filled areas inset by what is typed.
+/// The lines of a group at their size, the edges of filled areas inset by what is typed. A line is
+/// called by its number in the file, a line of an inset by its own.
 fn strokes(
     at: usize,
     art: &Artwork,
     group: &ArtGroup,
     (mm_per_unit, typed): (f64, &str),
     findings: &mut Vec<Finding>,
-) -> Vec<BezPath> {
+) -> Vec<(String, BezPath)> {
     let place = Affine::scale(mm_per_unit);
+    let of_group = || {
+        let all = art.strokes.iter().enumerate();
+        all.filter(|(_, stroke)| stroke.colour == group.colour && stroke.layer == group.layer)
+    };
+    let at_size =
+        |(number, stroke): (usize, &ArtStroke)| ((number + 1).to_string(), place * &stroke.path);
     let distance_mm = outline::distance(at, typed, &finding::inset_of(group), findings);
     if group.filled > 0 {
         findings.push(finding::filled(at, group, distance_mm));
     }
     if distance_mm == 0.0 {
-        let strokes = art.of_group(group);
-        return strokes.map(|stroke| place * &stroke.path).collect();
+        return of_group().map(at_size).collect();
     }
-    let (edges, drawn): (Vec<&ArtStroke>, Vec<&ArtStroke>) = art
-        .of_group(group)
-        .partition(|stroke| stroke.closed && stroke.area.is_some());
-    let open = drawn.iter().filter(|stroke| stroke.area.is_some()).count();
-    let drawn = drawn.into_iter();
-    let mut strokes: Vec<BezPath> = drawn.map(|stroke| place * &stroke.path).collect();
+    let edge = |stroke: &ArtStroke| stroke.closed && stroke.area.is_some();
+    let edges: Vec<&ArtStroke> = of_group()
+        .map(|(_, stroke)| stroke)
+        .filter(|stroke| edge(stroke))
+        .collect();
+    let drawn: Vec<(usize, &ArtStroke)> = of_group().filter(|(_, stroke)| !edge(stroke)).collect();
+    let open = drawn
+        .iter()
+        .filter(|(_, stroke)| stroke.area.is_some())
+        .count();
+    let mut strokes: Vec<(String, BezPath)> = drawn.into_iter().map(at_size).collect();
     if edges.is_empty() {
         findings.push(finding::no_inside(at, group));
         return strokes;
@@ -217,60 +228,40 @@ fn strokes(
     } else {
         findings.extend(finding::areas_changed(at, group, distance_mm, &inset));
     }
-    strokes.extend(inset.paths);
+    let inset = inset.paths.into_iter().enumerate();
+    strokes.extend(inset.map(|(number, path)| (format!("inset {}", number + 1), path)));
     strokes
 }
 
-/// Lines that touch at their ends together.
-fn runs(strokes: Vec<BezPath>) -> Vec<Vec<BezPath>> {
-    let mut run: Vec<usize> = (0..strokes.len()).collect();
-    // Ends by the square they lie in; what is near lies in the same or a neighbouring one.
-    let mut squares: HashMap<(i64, i64), Vec<(Point, usize)>> = HashMap::new();
-    #[allow(
-        clippy::cast_possible_truncation,
-        reason = "a cast to i64 stops at its limits"
-    )]
-    let square = |point: Point| ((point.x / TOUCH_MM) as i64, (point.y / TOUCH_MM) as i64);
-    for (at, stroke) in strokes.iter().enumerate() {
-        for end in ends(stroke) {
-            let (x, y) = square(end);
-            for near_x in x.saturating_sub(1)..=x.saturating_add(1) {
-                for near_y in y.saturating_sub(1)..=y.saturating_add(1) {
-                    for &(other, of) in squares.get(&(near_x, near_y)).into_iter().flatten() {
-                        if other.distance(end) <= TOUCH_MM {
-                            join(&mut run, at, of);
-                        }
-                    }
-                }
-            }
-            squares.entry((x, y)).or_default().push((end, at));
+/// Lines of pieces beside each other, top to bottom, each from left to right. Pieces far higher than
+/// most, as borders are, come first.
+fn in_reading_order(pieces: &mut Vec<Drawn>) {
+    let mut boxed: Vec<(Rect, Drawn)> = std::mem::take(pieces)
+        .into_iter()
+        .map(|drawn| {
+            let boxes = drawn.run.iter().map(|strand| strand.path.bounding_box());
+            let all = boxes.reduce(|all, here| all.union(here));
+            (all.unwrap_or(Rect::ZERO), drawn)
+        })
+        .collect();
+    let mut heights: Vec<f64> = boxed.iter().map(|(here, _)| here.height()).collect();
+    heights.sort_by(f64::total_cmp);
+    let usual = heights.get(heights.len() / 2).copied().unwrap_or(0.0);
+    let (tall, mut rest): (Vec<_>, Vec<_>) = boxed
+        .drain(..)
+        .partition(|(here, _)| usual > 0.0 && here.height() > 3.0 * usual);
+    pieces.extend(tall.into_iter().map(|(_, drawn)| drawn));
+    rest.sort_by(|a, b| a.0.y0.total_cmp(&b.0.y0));
+    let mut rest = rest.into_iter().peekable();
+    while let Some(first) = rest.next() {
+        let below = first.0.y1;
+        let mut line = vec![first];
+        while let Some(next) = rest.next_if(|(here, _)| here.center().y <= below) {
+            line.push(next);
         }
+        line.sort_by(|a, b| a.0.x0.total_cmp(&b.0.x0));
+        pieces.extend(line.into_iter().map(|(_, drawn)| drawn));
     }
-    let mut runs: Vec<(usize, Vec<BezPath>)> = Vec::new();
-    let mut known: HashMap<usize, usize> = HashMap::new();
-    for (at, stroke) in strokes.into_iter().enumerate() {
-        let root = root(&mut run, at);
-        let slot = *known.entry(root).or_insert_with(|| {
-            runs.push((root, Vec::new()));
-            runs.len() - 1
-        });
-        runs[slot].1.push(stroke);
-    }
-    runs.into_iter().map(|(_, strokes)| strokes).collect()
-}
-
-fn root(run: &mut [usize], mut at: usize) -> usize {
-    while run[at] != at {
-        run[at] = run[run[at]];
-        at = run[at];
-    }
-    at
-}
-
-fn join(run: &mut [usize], a: usize, b: usize) {
-    let (a, b) = (root(run, a), root(run, b));
-    // The earlier line names the run, so that runs keep the order of the file.
-    run[a.max(b)] = a.min(b);
 }
 
 #[cfg(test)]
@@ -324,16 +315,17 @@ mod tests {
         let lit: Vec<f64> = made
             .pieces
             .iter()
-            .map(|piece| piece.lit_mm.round())
+            .map(|piece| piece.lit().round())
             .collect();
-        // Ten times the file: 40 + 30 joined at the corner, 40 alone, a circle of 10 round.
-        assert_eq!(lit, [700.0, 400.0, (200.0 * std::f64::consts::PI).round()]);
+        // Ten times the file, from left to right: 40 + 30 joined at the corner, a circle of 10 round,
+        // 40 alone.
+        assert_eq!(lit, [700.0, (200.0 * std::f64::consts::PI).round(), 400.0]);
         assert!(
-            (made.pieces[2].lit_mm - 200.0 * std::f64::consts::PI).abs() < 1e-6,
+            (made.pieces[1].lit() - 200.0 * std::f64::consts::PI).abs() < 1e-6,
             "exact"
         );
         assert_eq!(
-            made.pieces[2].tube.as_deref(),
+            made.pieces[1].tube.as_deref(),
             Some("10 mm blue"),
             "its own tube"
         );

@@ -1,6 +1,7 @@
 //! The sentences of this room.
 
 use super::Piece;
+use super::drawn::Drawn;
 use crate::drawing::outline::Inset;
 use crate::drawing::{ArtGroup, Face, NoArc, Unread, faces};
 use crate::measure::{
@@ -274,7 +275,7 @@ pub(super) fn too_long(
         Place::Piece(piece_at),
         format!(
             "The piece {}{made} is {column} of glass between its electrodes, longer than the shop \
-             bends in one ({}): give it as more pieces.",
+             bends in one ({}): kept in one as chosen.",
             quoted(label),
             shown(longest)
         ),
@@ -295,7 +296,7 @@ pub(super) fn many_too_long(
         Place::Row(at),
         format!(
             "{many} pieces of this row are longer than the shop bends in one ({}), the longest {} \
-             with {} of glass between its electrodes: give them as more pieces.",
+             with {} of glass between its electrodes: kept in one as chosen.",
             length_shown(longest, Units::Metric),
             quoted(label),
             length_shown(column, Units::Metric),
@@ -303,6 +304,227 @@ pub(super) fn many_too_long(
         Source::shop(),
     )
     .with(column.mm(), longest.mm(), "mm")
+}
+
+/// Pieces that were cut because they are too long: what each is called, the glass between its
+/// electrodes, and in how many it is made.
+pub(super) fn cut_up(at: usize, cut: &[(String, f64, usize)], longest_mm: f64) -> Option<Finding> {
+    // Of some as long the first is named.
+    let most = cut.iter().rev().max_by(|a, b| a.1.total_cmp(&b.1));
+    let (label, column_mm, parts) = most?;
+    let shown = |mm| length_shown(Length::from_mm(mm), Units::Metric);
+    // Finer where whole millimetres would show a piece as long as what it is longer than.
+    let column = if shown(*column_mm) == shown(longest_mm) {
+        length_exact(Length::from_mm(*column_mm), Units::Metric)
+    } else {
+        shown(*column_mm)
+    };
+    let most = shown(longest_mm);
+    let says = match cut.len() {
+        1 => format!(
+            "{} would be {column} of glass between its electrodes, longer than the shop bends in one \
+             ({most}): made in {parts}, cut where it shows least. Cut it elsewhere on the picture, or \
+             keep it in one.",
+            quoted(label)
+        ),
+        many => format!(
+            "{many} pieces of this row would be longer than the shop bends in one ({most}), the longest \
+             {} with {column} of glass between its electrodes: made in parts, that one in {parts}, cut \
+             where it shows least. Cut them elsewhere on the picture, or keep them in one.",
+            quoted(label)
+        ),
+    };
+    Some(
+        Finding::new(Grade::Note, Place::Row(at), says, Source::shop())
+            .with(*column_mm, longest_mm, "mm"),
+    )
+}
+
+/// Choices of pieces that name strokes the row does not have.
+pub(super) fn choices_lost(at: usize, many: usize) -> Finding {
+    let (choices, have) = if many == 1 {
+        ("One choice", "has")
+    } else {
+        ("Choices", "have")
+    };
+    let many = if many == 1 {
+        String::new()
+    } else {
+        format!(" ({many})")
+    };
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "{choices} of how strokes become pieces{many} {have} no effect: the strokes joined, parted \
+             or cut are not in this row any more, or not beside each other. Look at the pieces and \
+             choose again."
+        ),
+    )
+}
+
+/// Pieces of two tubes cannot be one.
+pub(super) fn not_joined(at: usize, one: &Drawn, other: &Drawn) -> Finding {
+    row(
+        Grade::Look,
+        at,
+        format!(
+            "{} and {} are of different tubes and stay two pieces.",
+            quoted(&one.label),
+            quoted(&other.label)
+        ),
+    )
+}
+
+/// A limit of so many diameters of a tube, in words; `own` where the shop set it.
+fn limit_of((factor, outer_mm): (f64, f64)) -> String {
+    format!(
+        "{} mm, {} diameters of {} mm tube",
+        figure(factor * outer_mm),
+        figure(factor),
+        figure(outer_mm)
+    )
+}
+
+/// Where a limit of bending comes from: set by the shop, or as the book begins with it.
+fn bending(own: bool) -> Source {
+    if own {
+        Source::shop()
+    } else {
+        Source::practice()
+    }
+}
+
+/// Bends that have no room for the shop's tightest radius.
+pub(super) fn tight(
+    piece: usize,
+    label: &str,
+    many: usize,
+    room_mm: f64,
+    limit: (f64, f64),
+    own: bool,
+) -> Finding {
+    let least = limit.0 * limit.1;
+    // Told from the limit it misses.
+    let room = format!("{:.1}", (room_mm * 10.0).floor() / 10.0);
+    let room = room.trim_end_matches(".0");
+    let says = if many == 1 {
+        format!(
+            "A bend of {} has room for a radius of {room} mm only; the shop's tightest is {}. Make it \
+             larger, in thinner tube, or of more pieces.",
+            quoted(label),
+            limit_of(limit)
+        )
+    } else {
+        format!(
+            "{many} pieces of this row have bends tighter than the shop's tightest ({}); the \
+             tightest, of {}, has room for a radius of {room} mm. Make them larger, in thinner tube, or \
+             of more pieces.",
+            limit_of(limit),
+            quoted(label)
+        )
+    };
+    Finding::new(Grade::Look, Place::Piece(piece), says, bending(own)).with(room_mm, least, "mm")
+}
+
+/// Letters too small for their tube.
+pub(super) fn small_letters(at: usize, height_mm: f64, limit: (f64, f64), own: bool) -> Finding {
+    let says = format!(
+        "Letters {} mm high are small for their tube: the shop's least is {}.",
+        figure(height_mm),
+        limit_of(limit)
+    );
+    let least = limit.0 * limit.1;
+    Finding::new(Grade::Look, Place::Row(at), says, bending(own)).with(height_mm, least, "mm")
+}
+
+/// Tubes nearer to each other than the shop sets them; `many` pairs, told of the nearest.
+pub(super) fn too_near(
+    piece: usize,
+    labels: [&str; 2],
+    many: usize,
+    distance_mm: f64,
+    (factor, least_mm): (f64, f64),
+    own: bool,
+) -> Finding {
+    let [one, other] = labels.map(quoted);
+    let come = if distance_mm < 0.05 {
+        "touch or cross".to_owned()
+    } else {
+        let distance = format!("{:.1}", (distance_mm * 10.0).floor() / 10.0);
+        let distance = distance.trim_end_matches(".0");
+        format!("come within {distance} mm of each other, centre to centre")
+    };
+    let more = match many {
+        1 => String::new(),
+        many => format!(", and {} more pairs come too near", many - 1),
+    };
+    let says = format!(
+        "{one} and {other} {come}{more}; the shop's least is {} mm, {} diameters.",
+        figure(least_mm),
+        figure(factor)
+    );
+    Finding::new(Grade::Look, Place::Piece(piece), says, bending(own)).with(
+        distance_mm,
+        least_mm,
+        "mm",
+    )
+}
+
+/// Electrodes nearer to each other than the shop sets them.
+pub(super) fn electrodes_near(
+    piece: usize,
+    labels: [&str; 2],
+    many: usize,
+    distance_mm: f64,
+    least_mm: f64,
+) -> Finding {
+    let [one, other] = labels.map(quoted);
+    let distance = format!("{:.1}", (distance_mm * 10.0).floor() / 10.0);
+    let more = match many {
+        1 => String::new(),
+        many => format!(", and {} more pairs are too near", many - 1),
+    };
+    let says = format!(
+        "Electrodes of {one} and {other} are {} mm apart{more}; the shop's least is {} mm.",
+        distance.trim_end_matches(".0"),
+        figure(least_mm)
+    );
+    Finding::new(Grade::Look, Place::Piece(piece), says, Source::shop()).with(
+        distance_mm,
+        least_mm,
+        "mm",
+    )
+}
+
+/// The sign is larger than what it has to stay inside.
+pub(super) fn beyond_outline(called: &str, is_mm: f64, most_mm: f64) -> Finding {
+    let shown = |mm: f64| length_shown(Length::from_mm(mm), Units::Metric);
+    let (is, most) = if shown(is_mm) == shown(most_mm) {
+        let exact = |mm: f64| length_exact(Length::from_mm(mm), Units::Metric);
+        (exact(is_mm), exact(most_mm))
+    } else {
+        (shown(is_mm), shown(most_mm))
+    };
+    Finding::new(
+        Grade::Look,
+        Place::Job,
+        format!(
+            "With its tubes, rows one under the other as drawn, the sign has a {called} of {is}: more \
+             than its outline has ({most})."
+        ),
+        Source::entry("the job's outline"),
+    )
+    .with(is_mm, most_mm, "mm")
+}
+
+pub(super) fn unreadable_outline(called: &str, error: &ReadError) -> Finding {
+    Finding::new(
+        Grade::Stop,
+        Place::Job,
+        format!("The outline's {called}: {error}."),
+        Source::entry("the job's outline"),
+    )
 }
 
 pub(super) fn crossovers() -> Finding {

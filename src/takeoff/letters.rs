@@ -4,8 +4,8 @@ use std::collections::HashMap;
 
 use kurbo::{Affine, BezPath};
 
+use super::drawn::{Drawn, Made};
 use super::finding;
-use super::pieces::{Drawn, Made};
 use super::route::{Route, route};
 use crate::drawing::{self, Bend, BendBy, Face, Layout, Letter, Shaped, face};
 use crate::job::{Align, Curve, TextRow};
@@ -51,7 +51,10 @@ pub(super) fn row(at: usize, row: &TextRow, findings: &mut Vec<Finding>) -> Made
             known
                 .entry(bit.label.clone())
                 .or_insert_with(|| way.clone());
-            Drawn::new(bit.label, bit.own, way).placed(bit.place, scale)
+            let strokes = bit.names.into_iter().zip(bit.own).collect();
+            Drawn::named(bit.label, strokes, &way)
+                .in_word(bit.word)
+                .placed(bit.place, scale)
         })
         .collect();
     Made { pieces, bounds }
@@ -95,27 +98,33 @@ struct Bit {
     label: String,
     word: usize,
     own: Vec<BezPath>,
+    /// The names of the strokes: number of the letter, the letter, number of its stroke.
+    names: Vec<String>,
     place: Affine,
 }
 
 fn bits(letters: Vec<Letter>, joined: bool) -> Vec<Bit> {
     let mut bits: Vec<Bit> = Vec::new();
-    for Letter {
-        character,
-        word,
-        own,
-        place,
-    } in letters
-    {
+    for (at, letter) in letters.into_iter().enumerate() {
+        let Letter {
+            character,
+            word,
+            own,
+            place,
+        } = letter;
+        let number = at + 1;
+        let names = (1..=own.len()).map(|stroke| format!("{number} {character} {stroke}"));
         match bits.last_mut() {
             Some(bit) if joined && bit.word == word => {
                 let from_first = bit.place.inverse() * place;
                 bit.label.push(character);
+                bit.names.extend(names);
                 bit.own.extend(own.iter().map(|stroke| from_first * stroke));
             }
             _ => bits.push(Bit {
                 label: character.to_string(),
                 word,
+                names: names.collect(),
                 own,
                 place,
             }),

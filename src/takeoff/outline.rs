@@ -10,9 +10,9 @@ use std::sync::Arc;
 
 use kurbo::{Affine, BezPath, Point, Rect, Shape};
 
+use super::drawn::{Drawn, Made};
 use super::finding;
 use super::letters;
-use super::pieces::{Drawn, Made};
 use super::route::{ends, route};
 use crate::drawing::outline::{CapHeight, Font, Inset, Join, inset};
 use crate::job::{FontFile, OutlineRow};
@@ -88,9 +88,11 @@ pub(super) fn row(
     let mut missing = Vec::new();
     let mut told = Told::default();
     let mut known: HashMap<char, (Point, Inset)> = HashMap::new();
-    let mut before = 0;
+    let (mut before, mut letter_number) = (0, 0);
     for (number, line) in row.text.split('\n').enumerate() {
         let shaped = font.shape(line, height_mm);
+        // Words are counted anew in each line; a line has no more of them than characters.
+        let first_word = before;
         missing.extend(shaped.missing.iter().map(|&(at, c)| (before + at, c)));
         before += line.chars().count() + 1;
         #[allow(clippy::cast_precision_loss, reason = "a count of lines")]
@@ -101,6 +103,7 @@ pub(super) fn row(
                 continue;
             };
             let [begin, _] = ends(first);
+            letter_number += 1;
             // The same letter is the same shape wherever it stands.
             let (origin, inset) = known.entry(letter.character).or_insert_with(|| {
                 let inset = inset(&letter.contours, distance_mm, Join::Round);
@@ -118,10 +121,11 @@ pub(super) fn row(
                 } else {
                     format!("{} {}", letter.character, number + 1)
                 };
-                let strokes = vec![path];
-                let way = route(&strokes);
-                let drawn = Drawn::new(label, strokes, way);
-                if drawn.lit_mm < measure::PIECE_LENGTH_MM.least {
+                let way = route(std::slice::from_ref(&path));
+                let name = format!("{letter_number} {} {}", letter.character, number + 1);
+                let drawn =
+                    Drawn::named(label, vec![(name, path)], &way).in_word(first_word + letter.word);
+                if drawn.lit() < measure::PIECE_LENGTH_MM.least {
                     told.tiny.push(letter.character);
                 }
                 made.pieces.push(drawn);

@@ -1,16 +1,16 @@
 //! Rows into placed pieces.
 
-use kurbo::{Affine, BezPath, ParamCurveArclen, Point, Rect};
+use kurbo::{Affine, BezPath, Point, Rect};
 
-use super::route::Route;
+use super::assemble::{Bent, assemble};
+use super::drawn::{Drawn, Made};
+use super::route::as_drawn;
 use super::{Piece, RowTakeoff, artwork, finding, letters, outline, shape};
 use crate::book::Allowances;
 use crate::job::{Job, Row, StrokesRow};
 use crate::measure::{self, Length, LengthUnit};
 use crate::rules::Finding;
 
-/// Accuracy of stroke lengths, in millimetres or letter units: far below what glass can be bent to.
-const ARC_LENGTH: f64 = 1e-9;
 /// Clear space between rows, as a share of the taller row's height.
 const ROW_GAP: f64 = 0.35;
 /// Distance between straight strokes drawn under each other, as a share of the longest.
@@ -44,7 +44,18 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
         )));
         0.0
     });
+    let crossover_mm = sane(allowances.crossover_mm, 0.0, 2_000.0).unwrap_or_else(|| {
+        off.findings.push(finding::allowance(format!(
+            "The glass added to a crossover must be 0 to 2000 mm, but is {}: counted as none.",
+            allowances.crossover_mm
+        )));
+        0.0
+    });
     let longest = sane(allowances.longest_piece_mm, 1.0, 100_000.0).map(Length::from_mm);
+    let bent = Bent {
+        longest_mm: longest.map(Length::mm),
+        crossover_mm,
+    };
     let mut sheet = Sheet {
         below: 0.0,
         last_height: 0.0,
@@ -67,6 +78,8 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
             Row::Shape(row) => shape::row(at, row, &mut off.findings),
             Row::Outline(row) => outline::row(at, row, &job.fonts, &mut off.findings),
         };
+        let choices = row.pieces();
+        made.pieces = assemble(at, made.pieces, choices, bent, &mut off.findings);
         let copies = count(at, row.count(), &mut off.findings);
         let wanted = made.pieces.len() * copies;
         if wanted > room {
@@ -82,8 +95,11 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
             }
             let place = sheet.place(made.bounds);
             for drawn in &made.pieces {
-                let piece = drawn.piece(at, (copy, copies), own, tail_mm, place);
-                off.pieces.push(piece);
+                let piece = drawn.piece(at, (copy, copies), own, (tail_mm, crossover_mm), place);
+                off.pieces.push(Piece {
+                    group: row.group().to_owned(),
+                    ..piece
+                });
             }
             let here = place.transform_rect_bbox(made.bounds);
             bounds = Some(bounds.map_or(here, |all| all.union(here)));
@@ -172,92 +188,6 @@ impl Sheet {
     }
 }
 
-/// A row's pieces before they are placed.
-#[derive(Default)]
-pub(super) struct Made {
-    pub(super) pieces: Vec<Drawn>,
-    pub(super) bounds: Rect,
-}
-
-#[derive(Clone)]
-pub(super) struct Drawn {
-    pub(super) label: String,
-    pub(super) lit_mm: f64,
-    /// Its tube, where the pieces of a row are not all of one.
-    pub(super) tube: Option<String>,
-    strokes: Vec<BezPath>,
-    route: Route,
-}
-
-impl Drawn {
-    pub(super) fn new(label: String, strokes: Vec<BezPath>, route: Route) -> Self {
-        let lit_mm = strokes
-            .iter()
-            .flat_map(BezPath::segments)
-            .map(|segment| segment.arclen(ARC_LENGTH))
-            .sum();
-        Self {
-            label,
-            lit_mm,
-            tube: None,
-            strokes,
-            route,
-        }
-    }
-
-    /// The same in a tube of its own.
-    pub(super) fn of(mut self, tube: &str) -> Self {
-        self.tube = Some(tube.to_owned());
-        self
-    }
-
-    /// The same drawing moved or turned, then so many times as large. What it measures is not worked
-    /// out again: it is so many times as much.
-    pub(super) fn placed(&self, place: Affine, by: f64) -> Self {
-        let to = Affine::scale(by) * place;
-        Self {
-            lit_mm: self.lit_mm * by,
-            strokes: self.strokes.iter().map(|stroke| to * stroke).collect(),
-            route: self.route.placed(to, self.route.jumped * by),
-            ..self.clone()
-        }
-    }
-
-    fn piece(
-        &self,
-        row: usize,
-        (copy, copies): (usize, usize),
-        tube: &str,
-        tail_mm: f64,
-        place: Affine,
-    ) -> Piece {
-        // Four like quarters of a border are to be told apart on the bench and in sentences.
-        let label = if copies > 1 {
-            format!("{} ({} of {copies})", self.label, copy + 1)
-        } else {
-            self.label.clone()
-        };
-        let jump = |&(from, to): &(Point, Point)| {
-            let mut path = BezPath::new();
-            path.move_to(place * from);
-            path.line_to(place * to);
-            path
-        };
-        Piece {
-            row,
-            copy,
-            label,
-            tube: self.tube.as_deref().unwrap_or(tube).to_owned(),
-            lit: Length::from_mm(self.lit_mm),
-            hidden: Length::from_mm(self.route.jumped),
-            tails: Length::from_mm(2.0 * tail_mm),
-            strokes: self.strokes.iter().map(|stroke| place * stroke).collect(),
-            jumps: self.route.jumps.iter().map(jump).collect(),
-            electrodes: self.route.ends.map(|end| place * end),
-        }
-    }
-}
-
 fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
     let mut lengths_mm = Vec::new();
     let mut product = None;
@@ -321,12 +251,8 @@ fn strokes(at: usize, row: &StrokesRow, findings: &mut Vec<Finding>) -> Made {
             } else {
                 format!("{called} {}", number + 1)
             };
-            let route = Route {
-                jumped: 0.0,
-                jumps: Vec::new(),
-                ends: [from, to],
-            };
-            Drawn::new(label, vec![stroke], route)
+            let way = as_drawn(std::slice::from_ref(&stroke));
+            Drawn::new(label, vec![stroke], &way)
         })
         .collect();
     Made {
@@ -387,7 +313,12 @@ mod tests {
         for text in ["Mending", "Moth", "the moon holds late hours"] {
             let per_mm = |height: u32| {
                 let job = texts(text, &format!("{height} mm"), "script", 1);
-                let off = takeoff(&job, &Allowances::default());
+                // In one however long: a piece that is cut has a jump less.
+                let allowances = Allowances {
+                    longest_piece_mm: 100_000.0,
+                    ..Allowances::default()
+                };
+                let off = takeoff(&job, &allowances);
                 assert!(!off.pieces.is_empty(), "{text} has pieces");
                 let column: Length = off.pieces.iter().map(Piece::column).sum();
                 column.mm() / f64::from(height)
@@ -439,27 +370,40 @@ mod tests {
             labels,
             [
                 "Border, quarter 1 (1 of 2)",
-                "Border, quarter 2 (1 of 2)",
+                "Border, quarter 2, part 1 (1 of 2)",
+                "Border, quarter 2, part 2 (1 of 2)",
                 "Border, quarter 1 (2 of 2)",
-                "Border, quarter 2 (2 of 2)",
+                "Border, quarter 2, part 1 (2 of 2)",
+                "Border, quarter 2, part 2 (2 of 2)",
                 "stroke 1",
                 "stroke 2",
                 "H",
                 "i",
             ]
         );
-        let long: Vec<&str> = off
-            .findings
-            .iter()
-            .filter(|finding| finding.place == Place::Piece(1))
-            .map(|finding| finding.says.as_str())
-            .collect();
+        let said = |off: &Takeoff| -> Vec<String> {
+            let long = off.findings.iter();
+            long.filter(|finding| finding.says.contains("longer than the shop bends"))
+                .map(|finding| finding.says.clone())
+                .collect()
+        };
         assert_eq!(
-            long,
+            said(&off),
+            [
+                "“Border, quarter 2” would be 3\u{202f}057 mm of glass between its electrodes, longer \
+                 than the shop bends in one (2\u{202f}700 mm): made in 2, cut where it shows least. Cut \
+                 it elsewhere on the picture, or keep it in one."
+            ]
+        );
+        let mut kept = job;
+        kept.rows[0].pieces_mut().keep_long = true;
+        let off = takeoff(&kept, &allowances);
+        assert_eq!(off.pieces[1].label, "Border, quarter 2 (1 of 2)");
+        assert_eq!(
+            said(&off),
             [
                 "The piece “Border, quarter 2”, made 2 times, is 3\u{202f}057 mm of glass between its \
-                 electrodes, longer than the shop bends in one (2\u{202f}700 mm): give it as more \
-                 pieces."
+                 electrodes, longer than the shop bends in one (2\u{202f}700 mm): kept in one as chosen."
             ]
         );
     }
@@ -479,27 +423,39 @@ mod tests {
         };
         let off = takeoff(&job, &Allowances::default());
         let says = &off.findings[1].says;
-        assert!(says.contains("is 2400.3 mm of glass"), "{says}");
+        assert!(says.contains("would be 2400.3 mm of glass"), "{says}");
     }
 
     #[test]
     fn a_row_of_large_letters_is_told_once_that_they_are_too_long() {
-        let off = takeoff(&texts("MINNOW", "3 m", "sans", 2), &Allowances::default());
-        let long: Vec<(&Place, &str)> = off
-            .findings
-            .iter()
-            .filter(|finding| finding.says.contains("longer than the shop bends"))
-            .map(|finding| (&finding.place, finding.says.as_str()))
-            .collect();
+        let long = |job: &Job| -> Vec<String> {
+            let off = takeoff(job, &Allowances::default());
+            let said = off.findings.iter();
+            said.filter(|finding| {
+                finding.says.contains("than the shop bends") && finding.place == Place::Row(0)
+            })
+            .map(|finding| finding.says.clone())
+            .collect()
+        };
+        let mut job = texts("MINNOW", "3 m", "sans", 2);
         // M: two stems of 3 m and two slants of √(8² + 21²) / 21 × 3 m, which touch.
         assert_eq!(
-            long,
-            [(
-                &Place::Row(0),
+            long(&job),
+            [
+                "6 pieces of this row would be longer than the shop bends in one (2\u{202f}400 mm), the \
+                 longest “M” with 12\u{202f}421 mm of glass between its electrodes: made in parts, that \
+                 one in 6, cut where it shows least. Cut them elsewhere on the picture, or keep them in \
+                 one."
+            ]
+        );
+        job.rows[0].pieces_mut().keep_long = true;
+        assert_eq!(
+            long(&job),
+            [
                 "6 pieces of this row are longer than the shop bends in one (2\u{202f}400 mm), the \
-                 longest “M” with 12\u{202f}421 mm of glass between its electrodes: give them as \
-                 more pieces."
-            )]
+                 longest “M” with 12\u{202f}421 mm of glass between its electrodes: kept in one as \
+                 chosen."
+            ]
         );
     }
 

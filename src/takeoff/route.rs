@@ -1,9 +1,11 @@
 //! Running through the strokes of a piece: their order and direction with the shortest jumps.
 
-use kurbo::{Affine, BezPath, PathEl, Point, Rect};
+use kurbo::{BezPath, PathEl, Point, Rect};
 
 /// Up to here every order is weighed; beyond, a good one is improved until nothing gains.
 const EXACT_STROKES: usize = 10;
+/// Of a piece of more strokes than this no shorter way is looked for.
+pub(super) const MOST_ROUTED: usize = 120;
 /// Ways that differ by less than this share of the strokes' spread are equally long. Far above float
 /// noise, far below what can be bent.
 const TIE: f64 = 1e-9;
@@ -16,23 +18,10 @@ const LIFTED: usize = 3;
 /// The way through some strokes.
 #[derive(Debug, Clone, PartialEq)]
 pub(super) struct Route {
-    /// Length of all jumps, in the unit of the strokes.
-    pub(super) jumped: f64,
-    /// The jumps that are longer than nothing.
-    pub(super) jumps: Vec<(Point, Point)>,
-    /// First and last point of the run.
-    pub(super) ends: [Point; 2],
-}
-
-impl Route {
-    /// The same way elsewhere, where its jumps are so long together.
-    pub(super) fn placed(&self, to: Affine, jumped: f64) -> Self {
-        Self {
-            jumped,
-            jumps: self.jumps.iter().map(|&(a, b)| (to * a, to * b)).collect(),
-            ends: self.ends.map(|end| to * end),
-        }
-    }
+    /// Strokes in order, each with the end it is entered by: 0 its drawn beginning, 1 its end.
+    pub(super) order: Vec<Step>,
+    /// Jumps up to here are none, in the unit of the strokes.
+    pub(super) tie: f64,
 }
 
 /// First and last point of a path; a closed one ends where it begins.
@@ -51,7 +40,7 @@ pub(super) fn ends(path: &BezPath) -> [Point; 2] {
 }
 
 /// A stroke and the end it is entered by.
-type Step = (usize, usize);
+pub(super) type Step = (usize, usize);
 
 /// The shortest way through all strokes, each once, in either direction.
 ///
@@ -74,36 +63,14 @@ pub(super) fn route(strokes: &[BezPath]) -> Route {
     } else {
         good(&ends, tie)
     };
-    along(&ends, &order, tie)
+    Route { order, tie }
 }
 
 /// The way through the strokes in the order and direction they are drawn in.
 pub(super) fn as_drawn(strokes: &[BezPath]) -> Route {
-    let ends: Vec<[Point; 2]> = strokes.iter().map(ends).collect();
-    let order: Vec<Step> = (0..ends.len()).map(|stroke| (stroke, 0)).collect();
-    along(&ends, &order, 0.0)
-}
-
-/// The way through the strokes in a given order.
-fn along(ends: &[[Point; 2]], order: &[Step], tie: f64) -> Route {
-    let mut jumps = Vec::new();
-    let mut jumped = 0.0;
-    for pair in order.windows(2) {
-        let (from, to) = (leaves(ends, pair[0]), enters(ends, pair[1]));
-        let length = from.distance(to);
-        if length > tie {
-            jumped += length;
-            jumps.push((from, to));
-        }
-    }
-    let start = order
-        .first()
-        .map_or(Point::ZERO, |&step| enters(ends, step));
-    let finish = order.last().map_or(Point::ZERO, |&step| leaves(ends, step));
     Route {
-        jumped,
-        jumps,
-        ends: [start, finish],
+        order: (0..strokes.len()).map(|stroke| (stroke, 0)).collect(),
+        tie: 0.0,
     }
 }
 
@@ -341,19 +308,20 @@ mod tests {
         path
     }
 
+    fn jumped(strokes: &[BezPath]) -> f64 {
+        let ends: Vec<[Point; 2]> = strokes.iter().map(ends).collect();
+        length(&ends, &route(strokes).order)
+    }
+
     #[test]
     fn strokes_that_touch_need_no_jump() {
         // An L drawn as two strokes away from the corner.
-        let found = route(&[
+        let strokes = [
             line((0.0, 0.0), (0.0, 10.0)),
             line((0.0, 10.0), (5.0, 10.0)),
-        ]);
-        assert_eq!(found.jumped, 0.0, "the strokes share the corner");
-        assert_eq!(
-            found.ends,
-            [Point::new(0.0, 0.0), Point::new(5.0, 10.0)],
-            "tip to tip"
-        );
+        ];
+        assert_eq!(jumped(&strokes), 0.0, "the strokes share the corner");
+        assert_eq!(route(&strokes).order, [(0, 0), (1, 0)], "tip to tip");
     }
 
     #[test]
@@ -363,9 +331,9 @@ mod tests {
         square.line_to((0.0, 10.0));
         square.close_path();
         // From the square's corner to the line, not from its last one.
-        let found = route(&[square, line((-3.0, 0.0), (-20.0, 0.0))]);
-        assert_eq!(found.jumps, [(Point::ZERO, Point::new(-3.0, 0.0))]);
-        assert_eq!(found.ends, [Point::ZERO, Point::new(-20.0, 0.0)]);
+        let strokes = [square, line((-3.0, 0.0), (-20.0, 0.0))];
+        assert_eq!(route(&strokes).order, [(0, 0), (1, 0)]);
+        assert_eq!(jumped(&strokes), 3.0);
     }
 
     #[test]
@@ -376,7 +344,7 @@ mod tests {
             line((10.0, 0.0), (10.0, 20.0)),
             line((0.0, 10.0), (10.0, 10.0)),
         ];
-        assert!((route(&h).jumped - 20.0).abs() < 1e-9, "{:?}", route(&h));
+        assert!((jumped(&h) - 20.0).abs() < 1e-9, "{:?}", route(&h));
     }
 
     #[test]
@@ -386,7 +354,7 @@ mod tests {
             .collect();
         // Up, over, down, over: 13 jumps of 10.
         assert!(
-            (route(&strokes).jumped - 130.0).abs() < 1e-9,
+            (jumped(&strokes) - 130.0).abs() < 1e-9,
             "{:?}",
             route(&strokes)
         );
@@ -443,13 +411,13 @@ mod tests {
     fn the_way_is_the_same_at_any_size() {
         for count in [4, 10, 40] {
             let small = strewn(count, 3);
-            let at_one = route(&small).jumped;
+            let at_one = jumped(&small);
             for by in [1e-6, 0.01, 7.3, 1e6] {
                 let large: Vec<BezPath> = small
                     .iter()
                     .map(|path| kurbo::Affine::scale(by) * path.clone())
                     .collect();
-                let here = route(&large).jumped;
+                let here = jumped(&large);
                 assert!(
                     (here / by - at_one).abs() < 1e-9 * at_one,
                     "{count} strokes, {by} times as large: {} for {at_one}",

@@ -2,8 +2,8 @@
 
 use kurbo::{Affine, BezPath, Point, Shape as _};
 
+use super::drawn::{Drawn, Made};
 use super::finding;
-use super::pieces::{Drawn, Made};
 use super::route::route;
 use crate::drawing::shapes::{self, Arrow};
 use crate::job::{Shape, ShapeRow};
@@ -37,9 +37,9 @@ pub(super) fn row(at: usize, row: &ShapeRow, findings: &mut Vec<Finding>) -> Mad
     };
     let bounds = strokes[0].bounding_box();
     let way = route(&strokes);
-    let drawn = Drawn::new(label.to_owned(), strokes, way);
+    let drawn = Drawn::new(label.to_owned(), strokes, &way);
     // Not -0 mm, which is the sum of nothing.
-    let long = drawn.lit_mm + 0.0;
+    let long = drawn.lit() + 0.0;
     if !measure::SHAPE_LENGTH_MM.holds(long) {
         let limit = &measure::SHAPE_LENGTH_MM;
         findings.push(finding::outside(at, None, limit, long));

@@ -119,7 +119,7 @@ fn lines_stand_under_each_other_by_their_middles() {
     let off = set("H\n\nHH", "100 mm", "");
     let bounds = |pieces: std::ops::Range<usize>| {
         let strokes = off.pieces[pieces].iter().flat_map(|piece| &piece.strokes);
-        let boxes = strokes.map(kurbo::Shape::bounding_box);
+        let boxes = strokes.map(|stroke| kurbo::Shape::bounding_box(&stroke.path));
         boxes.reduce(|all, one| all.union(one)).expect("strokes")
     };
     let (first, last) = (bounds(0..1), bounds(1..3));

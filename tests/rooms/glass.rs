@@ -225,7 +225,7 @@ proptest! {
         let mut glass_mm = 0.0;
         for piece in &off.pieces {
             prop_assert_eq!(piece.tails.mm(), tails);
-            let jumps = piece.jumps.iter().fold(0.0, |sum, jump| sum + kurbo::Shape::perimeter(jump, 1e-9));
+            let jumps = piece.jumps.iter().fold(0.0, |sum, jump| sum + kurbo::Shape::perimeter(&jump.path, 1e-9));
             prop_assert!(near(piece.hidden.mm(), jumps), "{} {jumps}", piece.hidden.mm());
             prop_assert!(near(piece.column().mm(), piece.lit.mm() + piece.hidden.mm()));
             prop_assert!(near(piece.glass().mm(), piece.column().mm() + tails));

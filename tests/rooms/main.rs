@@ -49,6 +49,9 @@ mod glass;
 /// Plain shapes against closed forms; what of them is refused, in which words.
 mod shapes;
 
+/// Pieces of glass as a person chooses them, and the shop's limits on them.
+mod pieces;
+
 /// Operating points against ngspice and exact solutions; volts to earth.
 mod circuit;
 

@@ -233,7 +233,12 @@ fn off(row: ShapeRow) -> Takeoff {
         rows: vec![Row::Shape(row)],
         ..Job::default()
     };
-    takeoff(&job, &Allowances::default())
+    // Nothing is too long here: a shape is one piece.
+    let allowances = Allowances {
+        longest_piece_mm: 100_000.0,
+        ..Allowances::default()
+    };
+    takeoff(&job, &allowances)
 }
 
 fn s(text: &str) -> String {

@@ -5,10 +5,12 @@ use proptest::prelude::*;
 use proptest::sample::select;
 use rust_decimal::Decimal;
 use tubewright::book::{
-    Allowances, Book, Dampness, Gas, Loading, OutputEarthing, Rates, SupplyEntry, SupplyKind,
-    TubeEntry, starter,
+    Allowances, Bending, Book, Dampness, Gas, Loading, OutputEarthing, Rates, SupplyEntry,
+    SupplyKind, TubeEntry, starter,
 };
-use tubewright::job::{FontFile, Job, OutlineRow, Row, ShapeRow, Site, StrokesRow, TextRow, Wish};
+use tubewright::job::{
+    FontFile, Job, OutlineRow, Pieces, Row, ShapeRow, Site, StrokesRow, TextRow, Wish,
+};
 use tubewright::rules::{Grade, Place};
 use tubewright::{Workup, workup};
 
@@ -31,12 +33,21 @@ fn letters(text: &str, height: &str) -> Row {
     })
 }
 
+/// In one however long: loads are given by one length here.
+fn kept() -> Pieces {
+    Pieces {
+        keep_long: true,
+        ..Pieces::default()
+    }
+}
+
 fn strokes(strokes: &str) -> Row {
     Row::Strokes(StrokesRow {
         label: "bar".to_owned(),
         strokes: strokes.to_owned(),
         tube: MERCURY.to_owned(),
         count: 1,
+        pieces: kept(),
         ..StrokesRow::default()
     })
 }
@@ -391,11 +402,25 @@ fn rates() -> impl Strategy<Value = Rates> {
 }
 
 fn any_book() -> impl Strategy<Value = Book> {
-    let allowances = (odd_figure(), odd_figure(), odd_figure()).prop_map(
-        |(tail_mm, waste_percent, longest_piece_mm)| Allowances {
+    let allowances = prop::array::uniform4(odd_figure()).prop_map(
+        |[tail_mm, waste_percent, longest_piece_mm, crossover_mm]| Allowances {
             tail_mm,
             waste_percent,
             longest_piece_mm,
+            crossover_mm,
+        },
+    );
+    let bending = prop::array::uniform4(prop::option::of(odd_figure())).prop_map(
+        |[
+            least_radius_diameters,
+            least_letter_diameters,
+            least_spacing_diameters,
+            least_electrode_spacing_mm,
+        ]| Bending {
+            least_radius_diameters,
+            least_letter_diameters,
+            least_spacing_diameters,
+            least_electrode_spacing_mm,
         },
     );
     let loading = prop::collection::vec(odd_figure(), 8).prop_map(|shares| Loading {
@@ -414,9 +439,11 @@ fn any_book() -> impl Strategy<Value = Book> {
         prop_oneof![Just(Rates::default()), rates()],
         prop_oneof![3 => Just(Allowances::default()), 1 => allowances],
         prop_oneof![3 => Just(Loading::default()), 1 => loading],
+        prop_oneof![3 => Just(Bending::default()), 1 => bending],
     )
-        .prop_map(|(supplies, odd, rates, allowances, loading)| {
+        .prop_map(|(supplies, odd, rates, allowances, loading, bending)| {
             let mut book = Book {
+                bending,
                 supplies,
                 rates,
                 allowances,
@@ -863,6 +890,7 @@ fn a_circuit_that_the_model_is_not_sure_of_is_looked_at() {
             strokes: length.to_owned(),
             tube: NEON.to_owned(),
             count: 1,
+            pieces: kept(),
             ..StrokesRow::default()
         });
         let work = workup(&job(vec![row]), &book);

@@ -64,7 +64,11 @@ pub(super) fn scene(workup: &Workup, focus: Option<usize>) -> Scene {
         let colour = tube.map_or(UNKNOWN, |tube| tube.colour.as_str());
         let width_mm = tube.map_or(UNKNOWN_MM, |tube| tube.outer.mm());
         let dim = dim(circuit_of[at]);
-        let path: String = piece.strokes.iter().map(drawn).collect();
+        let path: String = piece
+            .strokes
+            .iter()
+            .map(|stroke| drawn(&stroke.path))
+            .collect();
         match layers
             .iter_mut()
             .find(|l| l.dim == dim && l.colour == colour && l.width_mm == width_mm)
@@ -78,7 +82,7 @@ pub(super) fn scene(workup: &Workup, focus: Option<usize>) -> Scene {
             }),
         }
         alone.push(path);
-        hidden.extend(piece.jumps.iter().map(drawn));
+        hidden.extend(piece.jumps.iter().map(|jump| drawn(&jump.path)));
         for end in piece.electrodes {
             let _ = write!(electrodes, "M{:.1} {:.1}h0", end.x, end.y);
         }
@@ -99,7 +103,7 @@ pub(super) fn scene(workup: &Workup, focus: Option<usize>) -> Scene {
             let around = first
                 .strokes
                 .iter()
-                .map(Shape::bounding_box)
+                .map(|stroke| stroke.path.bounding_box())
                 .reduce(|all, here| all.union(here))
                 .unwrap_or_default();
             badges.push(Badge {
