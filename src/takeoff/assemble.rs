@@ -233,7 +233,12 @@ pub(super) fn touching(strokes: &[&BezPath]) -> Vec<Vec<usize>> {
         near.add(at, stroke);
     }
     for (at, stroke) in strokes.iter().enumerate() {
-        for end in ends(stroke) {
+        let [begin, end] = ends(stroke);
+        // Where a closed stroke happens to be begun is no end of it.
+        if begin.distance(end) <= TOUCH_MM {
+            continue;
+        }
+        for end in [begin, end] {
             for other in near.owners_at(end, TOUCH_MM) {
                 sets.join(at, other);
             }
