@@ -255,9 +255,9 @@ async fn a_shape_is_added_and_another_kind_keeps_its_name_tube_and_count() {
         "units are written out"
     );
     rows.choose(&kind, "arc").await;
-    rows.enter(&rows.field("Sweep, degrees", 0), "90°", "change")
+    rows.enter(&rows.field("Sweep, °", 0), "90°", "change")
         .await;
-    rows.enter(&rows.field("Turned, degrees", 0), "-45", "change")
+    rows.enter(&rows.field("Turned, °", 0), "-45", "change")
         .await;
     let row = shape(&rows);
     assert!(

@@ -134,81 +134,75 @@ pub(super) fn ShapeFields(at: usize) -> impl IntoView {
         };
         names.into_iter().enumerate().map(field).collect::<Vec<_>>()
     };
-    let own = move || {
-        match kind.get() {
-        "polyline" => view! {
-            <Field
-                label="Points, each across, up from the lower left; part them by ;"
-                class="wide"
-                live=move |typed: String| {
-                    typed.split(';').all(|part| point(part, LengthUnit::Millimetres).is_ok())
+    let count = |row: &ShapeRow| match row.shape {
+        Shape::Polygon { sides, .. } => sides,
+        Shape::Star { points, .. } => points,
+        _ => 0,
+    };
+    let counted = move || {
+        let label = match kind.get() {
+            "polygon" => "Sides",
+            "star" => "Points",
+            _ => return None,
+        };
+        let now = move || row.get().as_ref().map(count).unwrap_or_default();
+        let commit = move |typed: String| {
+            let count = whole(&typed, untrack(now))?;
+            change(label, &|row| match &mut row.shape {
+                Shape::Polygon { sides, .. } => *sides = count,
+                Shape::Star { points, .. } => *points = count,
+                _ => {}
+            });
+            Ok(())
+        };
+        let value = Signal::derive(move || now().to_string());
+        Some(view! { <Field label=label class="tiny" number=true value=value commit=commit/> })
+    };
+    let points = move || {
+        let value = read(|row| match &row.shape {
+            Shape::Polyline { points } => points.clone(),
+            _ => String::new(),
+        });
+        let commit = move |typed: String| {
+            let typed = points_with_units(typed.trim(), desk.bare());
+            change("points", &|row| {
+                if let Shape::Polyline { points } = &mut row.shape {
+                    points.clone_from(&typed);
                 }
-                value=read(|row| match &row.shape {
-                    Shape::Polyline { points } => points.clone(),
-                    _ => String::new(),
-                })
-                commit=move |typed: String| {
-                    let typed = points_with_units(typed.trim(), desk.bare());
-                    change("points", &|row| if let Shape::Polyline { points } = &mut row.shape {
-                        points.clone_from(&typed);
-                    });
-                    Ok(())
+            });
+            Ok(())
+        };
+        let live = |typed: String| {
+            let mut points = typed.split(';');
+            points.all(|text| point(text, LengthUnit::Millimetres).is_ok())
+        };
+        let label = "Points, each across, up from the lower left; part them by ;";
+        (kind.get() == "polyline").then(|| {
+            view! { <Field label=label class="wide" live=live value=value commit=commit/> }
+        })
+    };
+    let sweep = move || {
+        let value = read(|row| match row.shape {
+            Shape::Arc { sweep_degrees, .. } => sweep_degrees.to_string(),
+            _ => String::new(),
+        });
+        let commit = move |typed: String| {
+            let sweep = degrees(&typed)?;
+            change("sweep", &|row| {
+                if let Shape::Arc { sweep_degrees, .. } = &mut row.shape {
+                    *sweep_degrees = sweep;
                 }
-            />
-        }
-        .into_any(),
-        "polygon" | "star" => {
-            let count = |row: &ShapeRow| match row.shape {
-                Shape::Polygon { sides, .. } => sides,
-                Shape::Star { points, .. } => points,
-                _ => 0,
-            };
-            view! {
-                <Field
-                    label=if kind.get_untracked() == "star" { "Points" } else { "Sides" }
-                    class="tiny"
-                    number=true
-                    value=Signal::derive(move || row.get().as_ref().map(count).unwrap_or_default().to_string())
-                    commit=move |typed: String| {
-                        let now = row.get_untracked().as_ref().map(count).unwrap_or_default();
-                        let count = whole(&typed, now)?;
-                        change("count", &|row| match &mut row.shape {
-                            Shape::Polygon { sides, .. } => *sides = count,
-                            Shape::Star { points, .. } => *points = count,
-                            _ => {}
-                        });
-                        Ok(())
-                    }
-                />
-            }
-            .into_any()
-        }
-        "arc" => view! {
-            <Field
-                label="Sweep, degrees"
-                class="narrow"
-                number=true
-                value=read(|row| match row.shape {
-                    Shape::Arc { sweep_degrees, .. } => sweep_degrees.to_string(),
-                    _ => String::new(),
-                })
-                commit=move |typed: String| {
-                    let sweep = degrees(&typed)?;
-                    change("sweep", &|row| if let Shape::Arc { sweep_degrees, .. } = &mut row.shape {
-                        *sweep_degrees = sweep;
-                    });
-                    Ok(())
-                }
-            />
-        }
-        .into_any(),
-        _ => ().into_any(),
-    }
+            });
+            Ok(())
+        };
+        (kind.get() == "arc").then(|| {
+            view! { <Field label="Sweep, °" class="narrow" number=true value=value commit=commit/> }
+        })
     };
     view! {
         <Choice
             label="Shape"
-            class="narrow"
+            class="kind"
             value=Signal::derive(move || kind.get().to_owned())
             options=Signal::stored(
                 KINDS.map(|(kind, words)| (kind.to_owned(), words.to_owned())).to_vec()
@@ -224,21 +218,22 @@ pub(super) fn ShapeFields(at: usize) -> impl IntoView {
             label="What it is"
             class="narrow"
             live=always()
-            example="Border"
             value=read(|row| row.label.clone())
             commit=move |typed: String| {
                 change("label", &|row| row.label.clone_from(&typed));
                 Ok(())
             }
         />
+        {counted}
         {move || {
             // Another kind, other fields.
             kind.track();
             lengths()
         }}
-        {own}
+        {points}
+        {sweep}
         <Field
-            label="Turned, degrees"
+            label="Turned, °"
             class="narrow"
             value=read(|row| row.rotation_degrees.to_string())
             commit=move |typed: String| {
