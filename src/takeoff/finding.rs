@@ -471,6 +471,37 @@ pub(super) fn too_near(
     )
 }
 
+/// Glass whose own sides are nearer to each other than the shop sets tubes; `many` strokes, told of
+/// the nearest.
+pub(super) fn beside_itself(
+    piece: usize,
+    label: &str,
+    many: usize,
+    distance_mm: f64,
+    (factor, least_mm): (f64, f64),
+    own: bool,
+) -> Finding {
+    let distance = format!("{:.1}", (distance_mm * 10.0).floor() / 10.0);
+    let more = match many {
+        1 => String::new(),
+        2 => ", and 1 more stroke does".to_owned(),
+        many => format!(", and {} more strokes do", many - 1),
+    };
+    let says = format!(
+        "{} runs back {} mm beside itself, centre to centre{more}; the shop's least is {} mm, {} \
+         diameters.",
+        quoted(label),
+        distance.trim_end_matches(".0"),
+        figure(least_mm),
+        figure(factor)
+    );
+    Finding::new(Grade::Look, Place::Piece(piece), says, bending(own)).with(
+        distance_mm,
+        least_mm,
+        "mm",
+    )
+}
+
 /// Electrodes nearer to each other than the shop sets them.
 pub(super) fn electrodes_near(
     piece: usize,

@@ -1,12 +1,13 @@
 //! The takeoff held against what the shop bends: radii, letter heights, spacing, electrodes, and the
 //! sign's outer size. The limits are the shop's own settings ([`crate::book::Bending`]).
 
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, HashMap};
 
 use kurbo::{Point, Rect};
 
+use super::beside::Loop;
 use super::near::Near;
-use super::{Piece, Takeoff, finding};
+use super::{Piece, Stroke, Takeoff, finding};
 use crate::book::{Bending, Book};
 use crate::job::{Job, Row};
 use crate::measure::{self, LengthUnit};
@@ -34,10 +35,16 @@ pub fn against_shop(off: &Takeoff, job: &Job, book: &Book) -> Vec<Finding> {
             .filter(|(_, piece)| piece.copy == 0)
             .collect();
         bends(&pieces, limits, diameter, &mut findings);
-        if let Row::Text(row) = row {
-            letters(at, &row.height, diameter(&row.tube), limits, &mut findings);
+        let letters_of = match row {
+            Row::Text(row) => Some((&row.height, &row.tube)),
+            Row::Outline(row) => Some((&row.height, &row.tube)),
+            Row::Strokes(_) | Row::Artwork(_) | Row::Shape(_) => None,
+        };
+        if let Some((height, tube)) = letters_of {
+            letters(at, height, diameter(tube), limits, &mut findings);
         }
         spacing(&pieces, limits, diameter, &mut findings);
+        beside(&pieces, limits, diameter, &mut findings);
         electrodes(&pieces, limits, &mut findings);
     }
     outline(off, job, diameter, &mut findings);
@@ -148,6 +155,67 @@ fn spacing(
             tight.len(),
             distance,
             (factor, least(one, other)),
+            own,
+        ));
+    }
+}
+
+/// Closed strokes whose own sides come too near each other, also those cut into more pieces.
+fn beside(
+    pieces: &[(usize, &Piece)],
+    limits: &Bending,
+    diameter: impl Fn(&str) -> Option<f64>,
+    findings: &mut Vec<Finding>,
+) {
+    let Some(factor) = of_diameters(limits.least_spacing_diameters) else {
+        return;
+    };
+    let mut by_name: BTreeMap<&str, (usize, Vec<&Stroke>)> = BTreeMap::new();
+    for (number, (_, piece)) in pieces.iter().enumerate() {
+        for stroke in &piece.strokes {
+            let parts = by_name.entry(&stroke.name).or_insert((number, Vec::new()));
+            parts.1.push(stroke);
+        }
+    }
+    // The same letter is looked at once.
+    let mut known: HashMap<[i64; 4], Option<f64>> = HashMap::new();
+    let mut many = 0;
+    let mut nearest: Option<(f64, usize, f64)> = None;
+    for (number, parts) in by_name.into_values() {
+        let Some(outer) = diameter(&pieces[number].1.tube) else {
+            continue;
+        };
+        let parts = parts.iter().map(|stroke| (stroke.part, &stroke.path));
+        let Some(stroke) = Loop::of(parts) else {
+            continue;
+        };
+        let least = factor * outer;
+        let [long, wide, high] = stroke.shape();
+        #[allow(
+            clippy::cast_possible_truncation,
+            reason = "a cast stops at its limits"
+        )]
+        let shape = [long, wide, high, (least * 1e6) as i64];
+        let found = known.entry(shape);
+        let found = *found.or_insert_with(|| stroke.beside_itself(least));
+        if let Some(distance) = found.filter(|distance| *distance < least - SLACK_MM) {
+            many += 1;
+            let first = |&(known, of, _): &(f64, usize, f64)| (distance, number) < (known, of);
+            if nearest.as_ref().is_none_or(first) {
+                nearest = Some((distance, number, least));
+            }
+        }
+    }
+    if let Some((distance, number, least)) = nearest {
+        let (at, piece) = pieces[number];
+        let own = Bending::default().least_spacing_diameters != Some(factor);
+        let limit = (factor, least);
+        findings.push(finding::beside_itself(
+            at,
+            &piece.label,
+            many,
+            distance,
+            limit,
             own,
         ));
     }

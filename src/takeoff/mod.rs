@@ -9,6 +9,7 @@
 mod artwork;
 mod assemble;
 mod bends;
+mod beside;
 pub mod choose;
 mod drawn;
 mod finding;

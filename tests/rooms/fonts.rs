@@ -7,7 +7,7 @@ use tubewright::Job;
 use tubewright::book::Allowances;
 use tubewright::job::{ArtworkFile, ArtworkLines, ArtworkRow, FontFile, OutlineRow, Row};
 use tubewright::rules::Grade;
-use tubewright::takeoff::{Takeoff, takeoff};
+use tubewright::takeoff::{Takeoff, against_shop, takeoff};
 
 /// Source: `tests/reference/outlines/PROVENANCE.md`; fontTools, shapely.
 const GLYPHS: &str = include_str!("../reference/outlines/outline_dejavu.json");
@@ -155,6 +155,44 @@ fn what_an_inset_does_to_a_letter_is_told_by_letter() {
     Look: Inset by 82 mm, the wall around a counter of “8” is gone: the tube goes in and out there, not around the counter.
     ");
     assert_snapshot!(said(&set("é", "10 mm", "")), @"Look: An outline of “é” is shorter than 10 mm all round: no glass is bent so small.");
+}
+
+#[test]
+fn both_sides_of_a_stem_need_room_for_the_tube() {
+    let font = "letters.ttf";
+    let told = |text: &str, height: &str, inset: &str| {
+        let row = OutlineRow {
+            text: text.to_owned(),
+            height: height.to_owned(),
+            font: font.to_owned(),
+            inset: inset.to_owned(),
+            tube: "15 mm neon".to_owned(),
+            ..OutlineRow::default()
+        };
+        let job = Job {
+            rows: vec![Row::Outline(row)],
+            fonts: vec![FontFile::new(font, LETTERS)],
+            ..Job::default()
+        };
+        let book = tubewright::book::starter();
+        let off = takeoff(&job, &book.allowances);
+        let near = against_shop(&off, &job, &book);
+        let near = near.iter().map(|finding| finding.says.as_str());
+        let near: Vec<&str> = near
+            .filter(|says| says.contains("centre to centre"))
+            .collect();
+        near.join("\n")
+    };
+    // The stem of H is 202 of 1493 units wide (its outline, read with fontTools): 202 mm, and less
+    // 2 x 86 mm are 30 mm, twice the tube.
+    assert_eq!(told("HO", "1493 mm", ""), "");
+    assert_eq!(told("H", "1493 mm", "85.9 mm"), "");
+    assert_snapshot!(told("H", "1493 mm", "88 mm"), @"“H 1, part 1” runs back 26 mm beside itself, centre to centre, and 1 more stroke does; the shop's least is 30 mm, 2 diameters.");
+    // At 200 mm its bar, 170 units, is 22.8 mm wide; O comes as near to its counter.
+    assert_snapshot!(told("HO", "200 mm", ""), @r"
+    “O 1” and “O 2” come within 21.9 mm of each other, centre to centre; the shop's least is 30 mm, 2 diameters.
+    “H” runs back 22.7 mm beside itself, centre to centre; the shop's least is 30 mm, 2 diameters.
+    ");
 }
 
 #[test]
@@ -307,7 +345,7 @@ fn areas_that_cover_each_other_are_one() {
     let svg = r##"<svg xmlns="http://www.w3.org/2000/svg" width="180mm" height="100mm" viewBox="0 0 180 100">
         <path fill="#ff0000" d="M0 0 H100 V100 H0 Z"/>
         <path fill="#ff0000" d="M80 0 V100 H180 V0 Z"/></svg>"##;
-    are(&inset_art(svg, ""), &[400.0, 400.0]);
+    close(lit(&inset_art(svg, "")), 800.0, 1e-9, "on their edges");
     are(&inset_art(svg, "10 mm"), &[2.0 * (160.0 + 80.0)]);
 }
 

@@ -4,6 +4,7 @@ mod artwork;
 mod bad_files;
 mod care;
 mod demo;
+mod fonts;
 mod looks;
 mod offline;
 mod shop_book;
