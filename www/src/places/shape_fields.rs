@@ -13,14 +13,14 @@ use crate::desk::desk;
 /// The kinds, as files and as people call them.
 const KINDS: [(&str, &str); 9] = [
     ("line", "line"),
-    ("polyline", "lines from point to point"),
+    ("polyline", "bent line"),
     ("rectangle", "rectangle"),
     ("circle", "circle"),
     ("ellipse", "ellipse"),
     ("arc", "arc"),
-    ("polygon", "polygon of equal sides"),
+    ("polygon", "polygon"),
     ("star", "star"),
-    ("arrow", "arrow, outlined"),
+    ("arrow", "arrow"),
 ];
 
 /// The sizes a shape of a kind begins with; a rectangle for a kind that is not known.
