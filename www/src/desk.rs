@@ -126,6 +126,12 @@ pub struct Desk {
     pub place: RwSignal<Where>,
     /// The piece marked on the picture.
     pub piece: RwSignal<Option<usize>>,
+    /// The row marked on the picture.
+    pub row: RwSignal<Option<usize>>,
+    /// Whether pictures show the sign from the back, mirrored.
+    pub back: RwSignal<bool>,
+    /// Whether pictures show tubes as plain lines on light, and do not glow.
+    pub plain: RwSignal<bool>,
     /// The circuit opened on its place.
     pub circuit: RwSignal<usize>,
     /// The part of the shop book in sight.
@@ -163,6 +169,9 @@ impl Desk {
             units: RwSignal::new(Units::Metric),
             place: RwSignal::new(Where::Sign),
             piece: RwSignal::new(None),
+            row: RwSignal::new(None),
+            back: RwSignal::new(false),
+            plain: RwSignal::new(false),
             circuit: RwSignal::new(0),
             book_part: RwSignal::new(BookPart::Supplies),
             entry: RwSignal::new(None),

@@ -4,7 +4,7 @@
 use leptos::mount::mount_to;
 use leptos::prelude::*;
 use leptos::task::tick;
-use tubewright::job::{Row, Shape};
+use tubewright::job::{Align, Curve, Row, Shape};
 use tubewright::measure::Units;
 use tubewright_www::desk::{Desk, Where};
 use tubewright_www::document::Write;
@@ -13,7 +13,10 @@ use tubewright_www::keep::{Keeper, Standing};
 use tubewright_www::places::{Circuits, FindingsList, Glass, Price, Rows, ShopBook, Sign};
 use wasm_bindgen::JsCast;
 use wasm_bindgen_test::{wasm_bindgen_test, wasm_bindgen_test_configure};
-use web_sys::{Element, Event, HtmlElement, HtmlInputElement, HtmlSelectElement};
+use web_sys::{
+    Element, Event, EventInit, HtmlElement, HtmlInputElement, HtmlSelectElement, PointerEvent,
+    PointerEventInit,
+};
 
 wasm_bindgen_test_configure!(run_in_browser);
 
@@ -77,7 +80,7 @@ impl Mounted {
 
     /// The control under a caption, in the nth place it stands.
     fn field(&self, caption: &str, nth: usize) -> HtmlInputElement {
-        self.under(caption, nth, "input")
+        self.under(caption, nth, "input, textarea")
     }
 
     /// What stands under the nth such caption and is such a control.
@@ -110,10 +113,14 @@ impl Mounted {
     }
 
     async fn click(&self, words: &str) {
+        let named = |button: &Element| {
+            let label = button.get_attribute("aria-label");
+            label.or_else(|| button.text_content()).as_deref() == Some(words)
+        };
         let button = self
             .all("button")
             .into_iter()
-            .find(|button| button.text_content().as_deref() == Some(words))
+            .find(named)
             .unwrap_or_else(|| panic!("wanted: the button {words}\n   got: {}", self.text()));
         button.unchecked_into::<HtmlElement>().click();
         settled().await;
@@ -327,9 +334,7 @@ async fn a_piece_tapped_on_the_picture_is_marked_and_told() {
     let sign = mount(|| view! { <Sign/> });
     let pieces = sign.all(".picture-piece");
     assert_eq!(pieces.len(), 28, "every piece can be tapped");
-    let click = Event::new("click").expect("an event");
-    pieces[4].dispatch_event(&click).expect("it is heard");
-    settled().await;
+    tap(&pieces[4]).await;
     assert_eq!(
         sign.desk.piece.get_untracked(),
         Some(4),
@@ -340,6 +345,175 @@ async fn a_piece_tapped_on_the_picture_is_marked_and_told() {
         "got: {}",
         sign.text()
     );
+    let [row, marked] = &sign.all(".picture-marks path")[..] else {
+        panic!("marks for a row and for a piece");
+    };
+    assert_eq!(
+        marked.get_attribute("d"),
+        pieces[4].get_attribute("d"),
+        "its strokes are marked"
+    );
+    tap(&pieces[4]).await;
+    assert_eq!(sign.desk.piece.get_untracked(), None, "unmarked again");
+    assert_eq!(marked.get_attribute("d"), None, "nothing is marked");
+    assert_eq!(row.get_attribute("d"), None, "nor was a row");
+}
+
+/// A finger, or the mouse, at a place of the window.
+fn pointer(on: &Element, what: &str, (x, y): (i32, i32)) {
+    let init = PointerEventInit::new();
+    init.set_bubbles(true);
+    init.set_pointer_id(7);
+    init.set_client_x(x);
+    init.set_client_y(y);
+    let event = PointerEvent::new_with_event_init_dict(what, &init).expect("an event");
+    on.dispatch_event(&event).expect("it is heard");
+}
+
+/// A finger comes down and is lifted where it was, as the browser tells it.
+async fn tap(on: &Element) {
+    pointer(on, "pointerdown", (50, 50));
+    pointer(on, "pointerup", (50, 50));
+    click(on).await;
+}
+
+async fn click(on: &Element) {
+    let init = EventInit::new();
+    init.set_bubbles(true);
+    let click = Event::new_with_event_init_dict("click", &init).expect("an event");
+    on.dispatch_event(&click).expect("it is heard");
+    settled().await;
+}
+
+#[wasm_bindgen_test]
+async fn a_drag_moves_the_picture_draws_nothing_anew_and_is_no_tap() {
+    let sign = mount(|| view! { <Sign/> });
+    let picture = &sign.all(".picture-sign")[0];
+    let placed = || picture.get_attribute("style").unwrap_or_default();
+    let whole = placed();
+    sign.click("Larger").await;
+    let near = placed();
+    assert_ne!(near, whole, "larger");
+    let piece = &sign.all(".picture-piece")[4];
+    pointer(piece, "pointerdown", (50, 50));
+    pointer(piece, "pointermove", (54, 50));
+    settled().await;
+    assert_eq!(placed(), near, "a finger that trembles moves nothing");
+    pointer(piece, "pointermove", (20, 50));
+    settled().await;
+    assert_ne!(placed(), near, "it is dragged");
+    pointer(piece, "pointerup", (20, 50));
+    click(piece).await;
+    assert_eq!(sign.desk.piece.get_untracked(), None, "no tap");
+    assert!(
+        sign.all(".picture-piece")[4].is_same_node(Some(piece)),
+        "the same strokes as before"
+    );
+    tap(piece).await;
+    assert_eq!(sign.desk.piece.get_untracked(), Some(4), "the next is one");
+    sign.click("Whole sign").await;
+    assert_eq!(placed(), whole, "as it was");
+}
+
+#[wasm_bindgen_test]
+async fn a_row_is_marked_on_the_picture_and_unmarked() {
+    let sign = mount(|| view! { <Sign/> });
+    sign.click("Mark row 2 on the picture").await;
+    let strokes: String = sign.all(".picture-piece")[9..]
+        .iter()
+        .filter_map(|piece| piece.get_attribute("d"))
+        .collect();
+    let marked = || sign.all(".picture-marks path")[0].get_attribute("d");
+    assert_eq!(marked(), Some(strokes), "all of its pieces and no other");
+    assert_eq!(sign.desk.row.get_untracked(), Some(1));
+    sign.click("Mark row 2 on the picture").await;
+    assert_eq!(marked(), None, "unmarked");
+    sign.click("Mark row 1 on the picture").await;
+    sign.click("Remove row 1").await;
+    assert_eq!(
+        sign.desk.row.get_untracked(),
+        None,
+        "a row that is gone marks no other"
+    );
+}
+
+#[wasm_bindgen_test]
+async fn a_layout_is_typed_said_and_refused() {
+    let rows = mount(|| view! { <Rows/> });
+    let layout = |rows: &Mounted| {
+        rows.desk.job.with_untracked(|job| match &job.rows[0] {
+            Row::Text(row) => row.clone(),
+            other => panic!("wanted: a text row\n   got: {other:?}"),
+        })
+    };
+    let part: HtmlElement = rows.all(".layout")[0].clone().unchecked_into();
+    assert!(!part.has_attribute("open"), "closed while all is as usual");
+    let summary: HtmlElement = rows.all(".layout summary")[0].clone().unchecked_into();
+    summary.click();
+    // The browser opens it at once, and tells of it when it likes.
+    for _ in 0..200 {
+        if rows.all(".layout .field").is_empty() {
+            sleep(10).await;
+        }
+    }
+    let width = rows.field("Letter width, %", 0);
+    rows.enter(&width, "120", "change").await;
+    assert_eq!(layout(&rows).width_percent, 120.0);
+    let turned = rows.field("Turned, degrees", 0);
+    rows.enter(&turned, "askew", "change").await;
+    assert!(
+        rows.text().contains("found “askew”"),
+        "got: {}",
+        rows.text()
+    );
+    assert_eq!(layout(&rows).rotation_degrees, 0.0, "the job has the old");
+    rows.enter(&turned, "\u{2212}15°", "change").await;
+    assert_eq!(layout(&rows).rotation_degrees, -15.0);
+    rows.choose(&rows.choice("Arc", 0), "radius").await;
+    let radius = rows.field("Radius of the arc", 0);
+    assert_ne!(radius.value(), "", "a length to begin with");
+    rows.enter(&radius, "- 900", "change").await;
+    assert_eq!(
+        layout(&rows).arc,
+        Some(Curve::Radius("-900 mm".to_owned())),
+        "with its unit, and its minus"
+    );
+    let says = rows.all(".layout summary")[0].text_content();
+    assert_eq!(
+        says.as_deref(),
+        Some("Layoutwidth 120 %, on an arc that hangs, turned -15°")
+    );
+    let text = rows.field("What it says", 0);
+    rows.enter(&text, "TWO\nLINES", "input").await;
+    assert_eq!(rows.first_text(), "TWO\nLINES", "a field of several lines");
+    rows.choose(&rows.choice("Lines", 0), "left").await;
+    assert_eq!(layout(&rows).align, Align::Left);
+    rows.enter(&width, "", "change").await;
+    assert_eq!(
+        layout(&rows).width_percent,
+        100.0,
+        "left empty it is as usual"
+    );
+    assert_eq!(width.value(), "100", "and says so");
+    for _ in 0..7 {
+        rows.desk.undo();
+    }
+    settled().await;
+    assert_eq!(rows.first_text(), "QUILLMOOR", "each was a step");
+    assert_eq!(layout(&rows).arc, None);
+}
+
+/// Waits so many milliseconds.
+async fn sleep(milliseconds: u64) {
+    let (told, heard) = futures_channel::oneshot::channel();
+    set_timeout(
+        move || {
+            // Nobody waiting any more is no trouble.
+            let _ = told.send(());
+        },
+        core::time::Duration::from_millis(milliseconds),
+    );
+    heard.await.expect("time passes");
 }
 
 #[wasm_bindgen_test]

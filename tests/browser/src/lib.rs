@@ -139,6 +139,11 @@ impl Visit {
             .await
     }
 
+    /// Where a field of a row is typed into.
+    fn typed_in_row(row: usize, label: &str) -> String {
+        Self::in_row(row, label, "*[self::input or self::textarea]")
+    }
+
     fn in_row(row: usize, label: &str, control: &str) -> String {
         format!(
             "//li[@data-row='{}']//label[span[normalize-space()={}]]//{control}",
@@ -149,13 +154,13 @@ impl Visit {
 
     /// Types a text into a field of a row (counted from 1), in place of what was there.
     pub async fn type_in_row(&self, row: usize, label: &str, text: &str) -> WebDriverResult<()> {
-        let field = self.find(&Self::in_row(row, label, "input")).await?;
+        let field = self.find(&Self::typed_in_row(row, label)).await?;
         self.retype(&field, text).await
     }
 
     /// Types a text into a field of a row and stays in the field.
     pub async fn begin_in_row(&self, row: usize, label: &str, text: &str) -> WebDriverResult<()> {
-        let field = self.find(&Self::in_row(row, label, "input")).await?;
+        let field = self.find(&Self::typed_in_row(row, label)).await?;
         field.send_keys(Key::Control + "a").await?;
         field.send_keys(text).await
     }
@@ -176,7 +181,7 @@ impl Visit {
 
     /// What a field of a row holds.
     pub async fn in_field(&self, row: usize, label: &str) -> WebDriverResult<String> {
-        let field = self.find(&Self::in_row(row, label, "input")).await?;
+        let field = self.find(&Self::typed_in_row(row, label)).await?;
         Ok(field.prop("value").await?.unwrap_or_default())
     }
 

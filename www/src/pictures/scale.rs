@@ -4,7 +4,7 @@ use kurbo::Rect;
 use tubewright::measure::{Length, Units, length_shown};
 
 /// Room kept free around the sign, in pixels; below it stands the scale bar.
-const AROUND_PX: f64 = 22.0;
+pub(super) const AROUND_PX: f64 = 22.0;
 const BELOW_PX: f64 = 58.0;
 
 /// The picture's size and the part of the sign's plane it shows.

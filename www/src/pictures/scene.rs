@@ -1,6 +1,7 @@
 //! What the picture of the sign is made of: a few paths, whatever the number of letters.
 
 use core::fmt::Write;
+use core::ops::Range;
 
 use kurbo::{BezPath, PathEl, Point, Rect, Shape};
 use tubewright::Workup;
@@ -37,6 +38,24 @@ pub(super) struct Scene {
     pub(super) badges: Vec<Badge>,
     /// Each piece alone, to be tapped.
     pub(super) pieces: Vec<String>,
+    /// The pieces of each row.
+    pub(super) rows: Vec<Range<usize>>,
+}
+
+impl Scene {
+    /// The strokes of a row's pieces; nothing where there is no such row.
+    pub(super) fn row(&self, row: usize) -> String {
+        let pieces = self
+            .rows
+            .get(row)
+            .and_then(|row| self.pieces.get(row.clone()));
+        pieces.unwrap_or_default().concat()
+    }
+
+    /// The strokes of a piece; nothing where there is no such piece.
+    pub(super) fn piece(&self, piece: usize) -> &str {
+        self.pieces.get(piece).map_or("", String::as_str)
+    }
 }
 
 /// Colour of a tube the book does not have.
@@ -123,6 +142,12 @@ pub(super) fn scene(workup: &Workup, focus: Option<usize>) -> Scene {
         jumpers,
         badges,
         pieces: alone,
+        rows: workup
+            .takeoff
+            .rows
+            .iter()
+            .map(|row| row.pieces.clone())
+            .collect(),
     }
 }
 
@@ -170,6 +195,18 @@ mod tests {
                 job.name
             );
             assert_eq!(found.badges.len(), worked.circuits.len(), "{}", job.name);
+            let rows: String = (0..job.rows.len()).map(|row| found.row(row)).collect();
+            assert_eq!(
+                rows,
+                found.pieces.concat(),
+                "{}: the rows hold them too",
+                job.name
+            );
+            assert_eq!(
+                found.row(job.rows.len()) + found.piece(9_999),
+                "",
+                "no more"
+            );
         }
     }
 

@@ -1,16 +1,22 @@
-//! The sign as it will glow, to scale.
+//! The sign to scale: glowing or plain, from the front or the back, from as near as one likes.
 
+use kurbo::{Affine, Rect};
+use leptos::html::Div;
 use leptos::prelude::*;
 use tubewright::measure::Units;
 
+use super::eye::Room;
+use super::hands::{Hands, mark};
+use super::paint::{MARK_PX, Pen, TAP_PX, electrodes, number, tube};
 use super::scale::{bar, framed};
-use super::scene::{Badge, Layer, scene};
+use super::scene::{Scene, scene};
+use super::window::{width_of, window_height};
 use crate::desk::desk;
 
-/// The thinnest a tube is drawn, so that a large sign is still seen.
-const LEAST_PX: f64 = 2.4;
+/// The scale bar takes at most this share of the picture's width.
+const BAR: f64 = 0.3;
 
-/// The picture of the sign: tap a piece to mark it.
+/// The picture of the sign: drag and pinch it, tap a piece to mark it.
 #[component]
 pub fn SignPicture(
     /// Whether circuits are shown: jumpers and numbers.
@@ -22,134 +28,198 @@ pub fn SignPicture(
     /// Share of the window's height it may take.
     #[prop(default = 0.42)]
     most: f64,
+    /// Further buttons beside its own.
+    #[prop(optional)]
+    children: Option<Children>,
 ) -> impl IntoView {
     let desk = desk();
-    let window_px = window_size();
+    let (plain, back) = (desk.plain, desk.back);
+    let on = NodeRef::<Div>::new();
+    let (width_px, height_px) = (width_of(on), window_height());
     let arranged = Memo::new(move |_| desk.results.with(|results| scene(results, focus.get())));
-    let view = move || {
-        let (width_px, height_px) = window_px.get();
-        let frame = arranged
-            .with(|scene| framed(scene.bounds, room(width_px), (height_px * most).max(200.0)));
-        let px = frame.mm_per_px;
-        let view = frame.view;
-        let scene = arranged.get();
-        if scene.pieces.is_empty() {
-            return view! { <p class="picture-empty">"Nothing to draw yet: give a row a text and a letter height."</p> }
-                .into_any();
+    let bounds = Memo::new(move |_| arranged.with(|scene| scene.bounds));
+    let frame = Memo::new(move |_| {
+        let most_px = (height_px.get() * most).max(200.0);
+        framed(bounds.get(), width_px.get(), most_px)
+    });
+    let room = Memo::new(move |_| Room::of(&frame.get(), bounds.get()));
+    let hands = Hands::new(on, room);
+    let pen = Pen {
+        px: Memo::new(move |_| frame.get().mm_per_px / hands.rest.get()),
+        plain,
+    };
+    // From the back, what is at x is as far on the other side of the sign's middle.
+    let across = move |x: f64| {
+        if back.get() {
+            2.0 * bounds.get().center().x - x
+        } else {
+            x
         }
-        let box_of = format!("{} {} {} {}", view.x0, view.y0, view.width(), view.height());
-        let (long, caption) = bar(view.width() * 0.3, desk.units.get());
-        let bar_x = view.x0 + 22.0 * px;
-        let bar_y = view.y1 - 26.0 * px;
-        let bar_path = format!(
-            "M{0} {1}v{2}M{0} {3}h{4}M{5} {1}v{2}",
-            bar_x,
-            bar_y - 5.0 * px,
-            10.0 * px,
-            bar_y,
-            long.mm(),
-            bar_x + long.mm()
-        );
-        // Electrodes are drawn larger than they are, but never so large that letters drown in them.
-        let electrode = (1.2 * scene.layers.first().map_or(10.0, |layer| layer.width_mm))
-            .clamp(4.0 * px, 9.0 * px);
-        let says = says(
-            &scene.layers,
-            scene.pieces.len(),
-            desk.units.get(),
-            &caption,
-        );
+    };
+    let side = move || {
+        back.get().then(|| {
+            let twice = 2.0 * bounds.get().center().x;
+            format!("matrix(-1 0 0 1 {twice} 0)")
+        })
+    };
+    Effect::new(move |_| {
+        let Some(row) = desk.row.get() else { return };
+        let part = desk
+            .results
+            .with_untracked(|results| results.takeoff.rows.get(row).map(|row| row.bounds));
+        if let Some(part) = part {
+            let frame = frame.get_untracked();
+            let x = [part.x0, part.x1].map(|x| untrack(|| across(x)));
+            let part = Rect::new(x[0], part.y0, x[1], part.y1).abs();
+            let place = Affine::scale(1.0 / frame.mm_per_px)
+                * Affine::translate(-frame.view.origin().to_vec2());
+            hands.bring(place.transform_rect_bbox(part));
+        }
+    });
+    let empty = Memo::new(move |_| arranged.with(|scene| scene.pieces.is_empty()));
+    let drawn = move || {
+        let scene = arranged.get();
         let hits: Vec<_> = scene
             .pieces
             .iter()
             .enumerate()
             .map(|(at, path)| {
-                view! {
-                    <path
-                        class="picture-piece"
-                        class:marked=move || desk.piece.get() == Some(at)
-                        data-piece=at.to_string()
-                        d=path.clone()
-                        stroke-width=(26.0 * px).to_string()
-                        on:click=move |_| {
-                            desk.piece.update(|now| *now = if *now == Some(at) { None } else { Some(at) });
-                        }
-                    ></path>
-                }
+                view! { <path class="picture-piece" data-piece=at.to_string() d=path.clone()></path> }
             })
             .collect();
-        let tubes: Vec<_> = scene.layers.iter().map(|layer| tube(layer, px)).collect();
-        let badges = scene.badges.clone();
+        let tubes: Vec<_> = scene.layers.iter().map(|layer| tube(layer, pen)).collect();
+        let width_mm = scene.layers.first().map_or(10.0, |layer| layer.width_mm);
+        let Scene {
+            hidden,
+            jumpers,
+            electrodes: points,
+            badges,
+            ..
+        } = scene;
+        view! {
+            <g transform=side>
+                <g class="picture-marks" stroke-width=move || pen.px(MARK_PX)>
+                    <path d=move || desk.row.get().map(|row| arranged.with(|scene| scene.row(row)))></path>
+                    <path d=move || desk.piece.get().map(|at| arranged.with(|scene| scene.piece(at).to_owned()))></path>
+                </g>
+                {tubes}
+                <path class="picture-hidden" d=hidden
+                    stroke-width=move || pen.px(1.4) stroke-dasharray=move || pen.dashes(5.0, 4.0)></path>
+                <Show when=move || circuits.get()>
+                    <path class="picture-jumpers" d=jumpers.clone()
+                        stroke-width=move || pen.px(1.8) stroke-dasharray=move || pen.dashes(0.0, 5.0)></path>
+                </Show>
+                {electrodes(points, width_mm, pen)}
+                <g stroke-width=move || pen.px(TAP_PX)>{hits}</g>
+            </g>
+            {move || circuits.get().then(|| badges.iter().map(|badge| number(badge, across, pen)).collect::<Vec<_>>())}
+        }
+    };
+    let view_box = move || {
+        let view = frame.get().view;
+        format!("{} {} {} {}", view.x0, view.y0, view.width(), view.height())
+    };
+    let placed = move || {
+        let (corner, times) = hands.placed();
+        // In depth, so that the browser keeps the picture at hand and moves it without drawing it.
+        format!(
+            "translate3d({}px, {}px, 0) scale({times})",
+            corner.x, corner.y
+        )
+    };
+    let says =
+        move || arranged.with(|scene| says(scene, desk.units.get(), plain.get(), back.get()));
+    let picture = move || {
+        if empty.get() {
+            return view! { <p class="picture-empty">"Nothing to draw yet: give a row a text and a letter height."</p> }
+                .into_any();
+        }
         view! {
             <svg
                 class="picture-sign"
-                viewBox=box_of
+                class:sizing=move || hands.sizing.get()
+                viewBox=view_box
                 role="img"
                 aria-label=says
-                style:height=format!("{}px", frame.height_px)
+                style:height=move || format!("{}px", frame.get().height_px)
+                style:transform=placed
             >
-                {tubes}
-                <path class="picture-hidden" d=scene.hidden.clone() stroke-width=(1.4 * px).to_string()
-                    stroke-dasharray=format!("{} {}", 4.0 * px, 4.0 * px)></path>
-                <Show when=move || circuits.get()>
-                    <path class="picture-jumpers"
-                        d=move || arranged.with(|scene| scene.jumpers.clone())
-                        stroke-width=(1.4 * px).to_string()
-                        stroke-dasharray=format!("{} {}", 2.0 * px, 5.0 * px)></path>
-                </Show>
-                <path class="picture-electrode-ring" d=scene.electrodes.clone() stroke-width=electrode.to_string()></path>
-                <path class="picture-electrode" d=scene.electrodes.clone() stroke-width=(0.6 * electrode).to_string()></path>
-                {hits}
-                {move || circuits.get().then(|| badges.iter().map(|badge| number(badge, px)).collect::<Vec<_>>())}
-                <path class="picture-bar" d=bar_path stroke-width=(1.2 * px).to_string()></path>
-                <text
-                    class="picture-caption"
-                    x=(bar_x + long.mm() + 10.0 * px).to_string()
-                    y=(bar_y + 5.0 * px).to_string()
-                    font-size=(14.0 * px).to_string()
-                >
-                    {caption}
-                </text>
+                {drawn}
             </svg>
+            <ScaleBar
+                mm_per_px=Signal::derive(move || frame.get().mm_per_px / hands.seen.get().times())
+                most_px=Signal::derive(move || BAR * width_px.get())
+            />
+            <Show when=move || back.get()>
+                <p class="picture-says">"Back view: mirrored, as the bender works at it"</p>
+            </Show>
         }
         .into_any()
     };
-    view! { <div class="picture">{view}</div> }
-}
-
-fn tube(layer: &Layer, px: f64) -> impl IntoView + use<> {
-    let width = layer.width_mm.max(LEAST_PX * px);
-    // A small picture glows less, or neighbouring letters would drown each other.
-    let glow = (1.1 * layer.width_mm).clamp(2.0 * px, 14.0 * px);
-    let part = |class: &'static str, width: f64| {
-        view! { <path class=class d=layer.path.clone() stroke-width=width.to_string()></path> }
-    };
-    // Three strokes glow like a blur and cost a tablet far less.
     view! {
-        <g class="picture-tube" class:dim=layer.dim stroke=layer.colour.clone()>
-            {part("glow wide", width + glow)}
-            {part("glow", width + 0.4 * glow)}
-            {part("glass", width)}
-            {part("core", width * 0.34)}
-        </g>
+        <div class="picture" class:plain=move || plain.get()>
+            <div
+                node_ref=on
+                class="picture-view"
+                class:near=move || hands.seen.get().is_near()
+                class:dragging=move || hands.dragging.get()
+                tabindex="0"
+                role="group"
+                aria-label="Picture of the sign. Arrow keys move it, plus and minus change its size, 0 shows the whole."
+                on:pointerdown=move |event| hands.down(&event)
+                on:pointermove=move |event| hands.moved(&event)
+                on:pointerup=move |event| hands.lifted(&event)
+                on:pointercancel=move |event| hands.lifted(&event)
+                on:wheel=move |event| hands.turned(&event)
+                on:keydown=move |event| hands.key(&event)
+                on:click=move |event| if let Some(piece) = hands.tapped(&event) {
+                    mark(desk, piece);
+                }
+            >
+                {picture}
+            </div>
+            <div class="picture-tools" hidden=move || empty.get()>
+                <button aria-label="Smaller" disabled=move || !hands.seen.get().is_near()
+                    on:click=move |_| hands.further()>"−"</button>
+                <button aria-label="Larger" disabled=move || !hands.can_near()
+                    on:click=move |_| hands.nearer()>"+"</button>
+                <button aria-label="Whole sign" disabled=move || !hands.seen.get().is_near()
+                    on:click=move |_| hands.whole()>"Fit"</button>
+                <button
+                    aria-pressed=move || back.get().to_string()
+                    class:on=move || back.get()
+                    on:click=move |_| {
+                        hands.turn_over();
+                        back.update(|back| *back = !*back);
+                    }
+                >"Back view"</button>
+                <button
+                    aria-pressed=move || plain.get().to_string()
+                    class:on=move || plain.get()
+                    on:click=move |_| plain.update(|plain| *plain = !*plain)
+                >"Plain lines"</button>
+                {children.map(|children| children())}
+            </div>
+        </div>
     }
 }
 
-fn number(badge: &Badge, px: f64) -> impl IntoView + use<> {
-    let (x, y) = (badge.at.x - 4.0 * px, badge.at.y - 4.0 * px);
-    let (number, dim) = (badge.number, badge.dim);
+/// A bar of a round length of the sign, as long as that is on the screen.
+#[component]
+fn ScaleBar(mm_per_px: Signal<f64>, most_px: Signal<f64>) -> impl IntoView {
+    let desk = desk();
+    let found = Memo::new(move |_| bar(most_px.get() * mm_per_px.get(), desk.units.get()));
     view! {
-        <g class="picture-number" class:dim=dim>
-            <circle cx=x.to_string() cy=y.to_string() r=(11.0 * px).to_string()></circle>
-            <text x=x.to_string() y=(y + 4.6 * px).to_string() font-size=(13.0 * px).to_string()>
-                {number}
-            </text>
-        </g>
+        <div class="picture-scale" role="img" aria-label=move || format!("Scale bar of {}", found.get().1)>
+            <span class="picture-bar" style:width=move || format!("{}px", found.get().0.mm() / mm_per_px.get())></span>
+            <span class="picture-caption">{move || found.get().1}</span>
+        </div>
     }
 }
 
-fn says(layers: &[Layer], pieces: usize, units: Units, bar: &str) -> String {
-    let colours = layers
+fn says(scene: &Scene, units: Units, plain: bool, back: bool) -> String {
+    let colours = scene
+        .layers
         .iter()
         .map(|layer| &layer.colour)
         .collect::<std::collections::HashSet<_>>();
@@ -158,30 +228,10 @@ fn says(layers: &[Layer], pieces: usize, units: Units, bar: &str) -> String {
         Units::FeetInches => "feet and inches",
     };
     format!(
-        "The sign to scale: {pieces} pieces of glass in {} colours. Scale bar {bar}, {system}.",
+        "The sign to scale{}{}: {} pieces of glass in {} colours, {system}.",
+        if plain { ", in plain lines" } else { "" },
+        if back { ", seen from the back" } else { "" },
+        scene.pieces.len(),
         colours.len()
     )
-}
-
-/// Width of the picture in a window: the rail stands beside it where there is room, as in style.css.
-fn room(window_px: f64) -> f64 {
-    let rail = if window_px >= 1000.0 { 84.0 } else { 0.0 };
-    (window_px - rail - 28.0).clamp(200.0, 1600.0)
-}
-
-fn window_size() -> RwSignal<(f64, f64)> {
-    fn now() -> (f64, f64) {
-        let figure = |value: Result<wasm_bindgen::JsValue, wasm_bindgen::JsValue>, or: f64| {
-            value.ok().and_then(|value| value.as_f64()).unwrap_or(or)
-        };
-        let window = window();
-        (
-            figure(window.inner_width(), 820.0),
-            figure(window.inner_height(), 1180.0),
-        )
-    }
-    let size = RwSignal::new(now());
-    let handle = window_event_listener(leptos::ev::resize, move |_| size.set(now()));
-    on_cleanup(move || handle.remove());
-    size
 }

@@ -113,9 +113,7 @@ pub fn Circuits() -> impl IntoView {
             " This is a plan, not a permit: local code and a licensed electrician decide. Switch off, lock off and prove dead before touching leads or tubes. "
             {rules}
         </p>
-        <div class="picture-frame">
-            <SignPicture circuits=Signal::stored(true) focus=focus most=0.26/>
-        </div>
+        <SignPicture circuits=Signal::stored(true) focus=focus most=0.26/>
         <p class="quiet">
             {aim}
             " Worked with an ideal supply: no winding resistance, no stray capacitance of leads and tubes, no reignition peak. Measure the current before the sign goes up."

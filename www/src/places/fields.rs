@@ -33,6 +33,9 @@ pub(super) fn Field(
     /// A further class of the field.
     #[prop(optional, into)]
     class: String,
+    /// Whether it may hold several lines.
+    #[prop(optional)]
+    lines: bool,
 ) -> impl IntoView {
     let desk = desk();
     let wrong = RwSignal::new(None::<String>);
@@ -58,9 +61,31 @@ pub(super) fn Field(
         wrong.try_set(why);
         typed.try_set(left);
     };
-    view! {
-        <label class=format!("field {class}") class:bad=move || wrong.get().is_some()>
-            <span class="caption">{label}</span>
+    let so_far = move |text: String| {
+        typed.try_set(Some(text.clone()));
+        let worth = live.and_then(|live| live.try_run(text.clone()));
+        if worth == Some(true) && matches!(commit.try_run(text), Some(Ok(()))) {
+            wrong.try_set(None);
+        }
+    };
+    let invalid = move || wrong.get().is_some().to_string();
+    let control = if lines {
+        view! {
+            <textarea
+                autocomplete="off"
+                spellcheck="false"
+                placeholder=example
+                rows=move || shown().split('\n').count().to_string()
+                prop:value=shown
+                aria-invalid=invalid
+                on:input:target=move |event| so_far(event.target().value())
+                on:change:target=move |event| take(event.target().value())
+                on:blur=move |_| desk.settle()
+            ></textarea>
+        }
+        .into_any()
+    } else {
+        view! {
             <input
                 type="text"
                 inputmode=if number { "decimal" } else { "text" }
@@ -68,18 +93,18 @@ pub(super) fn Field(
                 spellcheck="false"
                 placeholder=example
                 prop:value=shown
-                aria-invalid=move || wrong.get().is_some().to_string()
-                on:input:target=move |event| {
-                    let text = event.target().value();
-                    typed.try_set(Some(text.clone()));
-                    let worth = live.and_then(|live| live.try_run(text.clone()));
-                    if worth == Some(true) && matches!(commit.try_run(text), Some(Ok(()))) {
-                        wrong.try_set(None);
-                    }
-                }
+                aria-invalid=invalid
+                on:input:target=move |event| so_far(event.target().value())
                 on:change:target=move |event| take(event.target().value())
                 on:blur=move |_| desk.settle()
             />
+        }
+        .into_any()
+    };
+    view! {
+        <label class=format!("field {class}") class:bad=move || wrong.get().is_some()>
+            <span class="caption">{label}</span>
+            {control}
             {move || wrong.get().map(|why| view! { <span class="wrong" role="alert">{why}</span> })}
         </label>
     }
@@ -221,6 +246,22 @@ pub(super) fn figure(text: &str, unit: &str) -> Result<f64, String> {
     }
 }
 
+/// Reads a figure that must be there, with a minus before it where it is below 0. Degrees are bare
+/// figures with or without their mark.
+pub(super) fn signed(text: &str, unit: &str) -> Result<f64, String> {
+    let typed = text.trim();
+    let (below, typed) = match typed.strip_prefix(['-', '\u{2212}']) {
+        Some(typed) => (true, typed),
+        None => (false, typed),
+    };
+    let figure = match unit {
+        "°" => figure(typed.trim_end_matches('°'), ""),
+        unit => figure(typed, unit),
+    }?;
+    // From zero, so that a minus before nothing is nothing.
+    Ok(if below { 0.0 - figure } else { figure })
+}
+
 /// Reads an amount of money, from 0 on.
 pub(super) fn money(text: &str) -> Result<rust_decimal::Decimal, String> {
     measure::money(text).map_err(|error| sentence(&error))
@@ -263,6 +304,16 @@ mod tests {
             figure("", "mm").is_err_and(|why| why.contains("empty")),
             "must be there"
         );
+        assert_eq!(signed("-7,5 %", "%"), Ok(-7.5), "a minus");
+        assert_eq!(signed("\u{2212} 15°", "°"), Ok(-15.0), "as set in print");
+        assert_eq!(signed("12", "%"), Ok(12.0), "none");
+        assert!(
+            signed("-0", "%").is_ok_and(f64::is_sign_positive),
+            "minus nothing is nothing"
+        );
+        for wrong in ["--5", "5-", "-", "five", "NaN", "3 mm"] {
+            assert!(signed(wrong, "%").is_err(), "{wrong} is no share");
+        }
         assert!(money("12.345.6").is_err(), "two points");
         assert_eq!(
             money("12,50").map(|m| m.to_string()),

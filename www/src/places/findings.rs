@@ -53,7 +53,7 @@ pub(super) fn go(desk: Desk, place: &Place) {
         Place::Piece(piece) => {
             desk.piece.set(Some(*piece));
             desk.place.set(Where::Sign);
-            ".picture-frame".to_owned()
+            ".picture".to_owned()
         }
         Place::Circuit(number) => {
             desk.circuit.set(*number);

@@ -100,7 +100,9 @@ fn keys(desk: Desk, files_open: RwSignal<bool>) {
         let in_field = event
             .target()
             .and_then(|to| to.dyn_into::<web_sys::Element>().ok())
-            .is_some_and(|element| matches!(element.tag_name().as_str(), "INPUT" | "SELECT"));
+            .is_some_and(|element| {
+                matches!(element.tag_name().as_str(), "INPUT" | "SELECT" | "TEXTAREA")
+            });
         let control = event.ctrl_key() || event.meta_key();
         match event.key().as_str() {
             "Escape" => {

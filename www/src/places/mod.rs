@@ -6,6 +6,7 @@ mod files;
 mod findings;
 mod frame;
 mod glass;
+mod layout;
 mod outline_fields;
 mod price;
 mod rows;

@@ -13,6 +13,7 @@ use tubewright::takeoff::artwork;
 
 use super::fields::{Choice, Field, always};
 use super::findings::{line, many};
+use super::layout::Layout;
 use super::outline_fields::{InsetField, OutlineFields};
 use super::shape_fields::{self, ShapeFields};
 use wasm_bindgen::JsCast;
@@ -107,7 +108,7 @@ pub(crate) fn enter_last_row(desk: Desk) {
         .job
         .with_untracked(|job| job.rows.len().saturating_sub(1));
     request_animation_frame(move || {
-        let field = document().query_selector(&format!("[data-row='{last}'] input"));
+        let field = document().query_selector(&format!("[data-row='{last}'] :is(input, textarea)"));
         if let Ok(Some(field)) = field
             && let Ok(field) = field.dyn_into::<web_sys::HtmlElement>()
         {
@@ -150,7 +151,7 @@ pub(crate) fn usual_tube(desk: Desk) -> String {
 }
 
 /// What a field of a row reads and writes.
-fn part<T: Default>(job: &Job, at: usize, get: impl Fn(&Row) -> T) -> T {
+pub(super) fn part<T: Default>(job: &Job, at: usize, get: impl Fn(&Row) -> T) -> T {
     job.rows.get(at).map(get).unwrap_or_default()
 }
 
@@ -263,6 +264,7 @@ fn RowCard(at: usize) -> impl IntoView {
             <Field
                 label="What it says"
                 class="wide"
+                lines=true
                 live=always()
                 example="OPEN"
                 value=read(|row| row.label().to_owned())
@@ -369,6 +371,7 @@ fn RowCard(at: usize) -> impl IntoView {
             })
         })
     };
+    let marked = Memo::new(move |_| desk.row.get() == Some(at));
     let said = move || {
         desk.results.with(|results| {
             results
@@ -380,7 +383,7 @@ fn RowCard(at: usize) -> impl IntoView {
         })
     };
     view! {
-        <li class="row" data-row=at.to_string()>
+        <li class="row" class:marked=move || marked.get() data-row=at.to_string()>
             <div class="row-fields">
                 {move || match kind.get() {
                     Kind::Text => view! { {text_fields()} {tube()} }.into_any(),
@@ -391,6 +394,9 @@ fn RowCard(at: usize) -> impl IntoView {
                 }}
                 {times()}
             </div>
+            <Show when=move || kind.get() == Kind::Text>
+                <Layout at=at/>
+            </Show>
             <div class="row-foot">
                 <span class="row-sums">{sums}<small>{size}</small></span>
                 <span class="row-tools">
@@ -404,6 +410,12 @@ fn RowCard(at: usize) -> impl IntoView {
                         disabled=move || desk.job.with(|job| at + 1 >= job.rows.len())
                         on:click=move |_| shift(desk, at, at + 1)
                     >"↓"</button>
+                    <button
+                        class:on=move || marked.get()
+                        aria-label=format!("Mark row {} on the picture", at + 1)
+                        aria-pressed=move || marked.get().to_string()
+                        on:click=move |_| mark(desk, at)
+                    >"Mark"</button>
                     <button on:click=move |_| copy(desk, at)>"Copy"</button>
                     <button
                         aria-label=format!("Remove row {}", at + 1)
@@ -587,6 +599,19 @@ fn ArtworkFields(at: usize) -> impl IntoView {
     }
 }
 
+/// Marks a row on the picture and brings the picture into sight, or unmarks it.
+fn mark(desk: Desk, at: usize) {
+    let marked = (desk.row.get_untracked() != Some(at)).then_some(at);
+    desk.row.set(marked);
+    let picture = document().query_selector(".picture").ok().flatten();
+    if let Some(picture) = picture.filter(|_| marked.is_some()) {
+        let top = picture.get_bounding_client_rect().top();
+        if top < 0.0 {
+            picture.scroll_into_view();
+        }
+    }
+}
+
 fn shift(desk: Desk, from: usize, to: usize) {
     desk.settle();
     desk.edit_job("move", &format!("Move row {}", from + 1), |job| {
@@ -595,6 +620,7 @@ fn shift(desk: Desk, from: usize, to: usize) {
         }
     });
     desk.turn();
+    desk.row.set(None);
     desk.settle();
 }
 
@@ -606,6 +632,7 @@ fn copy(desk: Desk, at: usize) {
         }
     });
     desk.turn();
+    desk.row.set(None);
     desk.settle();
 }
 
@@ -627,6 +654,7 @@ fn remove(desk: Desk, at: usize) {
         }
     });
     desk.turn();
+    desk.row.set(None);
     desk.piece.set(None);
     desk.settle();
 }

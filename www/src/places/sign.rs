@@ -19,18 +19,15 @@ pub fn Sign() -> impl IntoView {
     let circuits = RwSignal::new(false);
     view! {
         <div class="sign-place">
-            <div class="picture-frame">
-                <SignPicture circuits=circuits focus=Signal::stored(None)/>
-                <div class="picture-tools">
-                    <button
-                        aria-pressed=move || circuits.get().to_string()
-                        class:on=move || circuits.get()
-                        on:click=move |_| circuits.update(|on| *on = !*on)
-                    >
-                        "Circuits"
-                    </button>
-                </div>
-            </div>
+            <SignPicture circuits=circuits focus=Signal::stored(None)>
+                <button
+                    aria-pressed=move || circuits.get().to_string()
+                    class:on=move || circuits.get()
+                    on:click=move |_| circuits.update(|on| *on = !*on)
+                >
+                    "Circuits"
+                </button>
+            </SignPicture>
             <div class="sign-columns">
                 <Rows/>
                 <div class="sign-side">

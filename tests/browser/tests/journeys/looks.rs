@@ -7,7 +7,7 @@ use tubewright_browser_tests::{Size, visit};
 const LOOK_AROUND: &str = r#"
 const wrong = [];
 const named = (e) => (e.tagName + "." + e.getAttribute("class") + " " + (e.textContent || e.ariaLabel || "").trim().slice(0, 30));
-for (const e of document.querySelectorAll("button, select, a, summary, label.button, input:not(.unseen):not([type=checkbox])")) {
+for (const e of document.querySelectorAll("button, select, textarea, a, summary, label.button, input:not(.unseen):not([type=checkbox])")) {
   const r = e.getBoundingClientRect();
   if (r.width && (r.height < 43.5 || r.width < 43.5)) wrong.push("too small to press: " + named(e) + " " + r.width + "x" + r.height);
 }
@@ -58,6 +58,11 @@ fn every_place_in(size: Size, dark: bool) {
         for place in ["Glass", "Circuits", "Price", "Shop book", "Sign"] {
             page.go(place).await?;
             if place == "Sign" {
+                page.press("Layout").await?;
+                page.choose_in_row(1, "Arc", "by rise").await?;
+                page.type_in_row(1, "Turned, degrees", "askew").await?;
+                page.press("Plain lines").await?;
+                page.press("Back view").await?;
                 page.type_in_row(1, "Letter height", "12 parsecs").await?;
                 page.press("Files").await?;
                 page.see("Invented jobs to try").await?;
