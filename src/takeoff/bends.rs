@@ -27,6 +27,10 @@ const STEP_DEGREES: f64 = 5.0;
 const WHOLE_DEGREES: f64 = 120.0;
 const PART_DEGREES: f64 = 60.0;
 
+/// A corner of more than this cannot be bent in the plane of the sign: the glass is folded, and runs
+/// back behind itself. Our own choice, no source.
+const FOLD_DEGREES: f64 = 150.0;
+
 /// A bend of a piece.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Bend {
@@ -34,8 +38,11 @@ pub struct Bend {
     pub angle_degrees: f64,
     /// Radius as drawn, to the middle of the tube, over the whole bend; 0 for a sharp corner.
     pub radius_mm: f64,
-    /// The widest radius that fits there without running into the next bend or beyond the end.
+    /// The widest radius that fits there without running into the next bend or beyond the end. A
+    /// fold is left out of it: where there is nothing else, it is infinite.
     pub room_mm: f64,
+    /// How many corners of it turn so far back that the glass is folded behind itself.
+    pub folds: usize,
     /// Its middle, on the sign.
     pub at: Point,
 }
@@ -53,6 +60,10 @@ struct Turn {
 }
 
 impl Turn {
+    fn folds(&self) -> bool {
+        self.along[0] == self.along[1] && self.by.abs().to_degrees() > FOLD_DEGREES
+    }
+
     /// How far a straight may go on to the next turn of the same bend.
     fn reach(&self) -> f64 {
         let long = self.along[1] - self.along[0];
@@ -212,6 +223,7 @@ impl Chain {
             angle_degrees: angle.to_degrees(),
             radius_mm: (last.along[1] - first.along[0]) / angle,
             room_mm: self.room(group),
+            folds: turns.iter().filter(|turn| turn.folds()).count(),
             at: nearest.at[0].midpoint(nearest.at[1]),
         })
     }
@@ -229,7 +241,9 @@ impl Chain {
         for from in group.clone() {
             let to = (from + 1..=group.end).find(|&to| turned(from..to) >= PART_DEGREES);
             let Some(to) = to else { break };
-            room = room.min(self.fillet(&(from..to)));
+            if !self.turns[from..to].iter().any(Turn::folds) {
+                room = room.min(self.fillet(&(from..to)));
+            }
         }
         room
     }

@@ -427,6 +427,26 @@ pub(super) fn tight(
     Finding::new(Grade::Look, Place::Piece(piece), says, bending(own)).with(room_mm, least, "mm")
 }
 
+/// Strokes that turn back on themselves: `folds` places in `many` pieces of a row, told of the first.
+pub(super) fn folds(piece: usize, label: &str, many: usize, folds: usize) -> Finding {
+    let places = if folds == 1 { "place" } else { "places" };
+    let which = if many == 1 {
+        quoted(label)
+    } else {
+        format!("{many} pieces of this row, the first {},", quoted(label))
+    };
+    let turn = if many == 1 { "turns" } else { "turn" };
+    Finding::new(
+        Grade::Note,
+        Place::Piece(piece),
+        format!(
+            "{which} {turn} back sharply at {folds} {places}: too far to be bent in the plane of the \
+             sign, so the glass is folded there and runs back behind itself."
+        ),
+        Source::practice(),
+    )
+}
+
 /// Letters too small for their tube.
 pub(super) fn small_letters(at: usize, height_mm: f64, limit: (f64, f64), own: bool) -> Finding {
     let says = format!(

@@ -35,6 +35,7 @@ pub fn against_shop(off: &Takeoff, job: &Job, book: &Book) -> Vec<Finding> {
             .filter(|(_, piece)| piece.copy == 0)
             .collect();
         bends(&pieces, limits, diameter, &mut findings);
+        folds(&pieces, &mut findings);
         let letters_of = match row {
             Row::Text(row) => Some((&row.height, &row.tube)),
             Row::Outline(row) => Some((&row.height, &row.tube)),
@@ -86,6 +87,18 @@ fn bends(
         let label = label_of(pieces, at);
         let own = Bending::default().least_radius_diameters != Some(factor);
         findings.push(finding::tight(at, label, many, room, (factor, outer), own));
+    }
+}
+
+fn folds(pieces: &[(usize, &Piece)], findings: &mut Vec<Finding>) {
+    let folded = pieces.iter().filter_map(|&(at, piece)| {
+        let many = piece.bends.iter().map(|bend| bend.folds).sum::<usize>();
+        (many > 0).then_some((at, piece, many))
+    });
+    let folded: Vec<(usize, &Piece, usize)> = folded.collect();
+    if let Some(&(at, piece, _)) = folded.first() {
+        let many = folded.iter().map(|(.., many)| many).sum();
+        findings.push(finding::folds(at, &piece.label, folded.len(), many));
     }
 }
 

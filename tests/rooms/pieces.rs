@@ -548,6 +548,15 @@ fn bends_letters_and_spacing_are_held_against_the_shop() {
 }
 
 #[test]
+fn a_stroke_that_turns_back_on_itself_is_a_fold() {
+    // A needle 6 mm wide at its open end and 100 long: it turns by 176.6 degrees at its tip.
+    let needle = r#"<path d="M0 0L100 3L0 6"/>"#;
+    let job = art(needle, Pieces::default());
+    assert_eq!(off(&job).pieces[0].bends.len(), 1);
+    assert_snapshot!(against(&job, Bending::default()), @"Note at Piece(0): “Art 1” turns back sharply at 1 place: too far to be bent in the plane of the sign, so the glass is folded there and runs back behind itself. [common practice, no source]");
+}
+
+#[test]
 fn electrodes_and_crossing_tubes_are_held_against_the_shop() {
     // Ends 30 apart; two lines that cross.
     let drawing =

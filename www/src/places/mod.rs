@@ -8,6 +8,7 @@ mod frame;
 mod glass;
 mod layout;
 mod outline_fields;
+mod piece_fields;
 mod price;
 mod rows;
 mod shape_fields;

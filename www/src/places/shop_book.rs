@@ -3,7 +3,7 @@
 use leptos::prelude::*;
 use rust_decimal::Decimal;
 use tubewright::Book;
-use tubewright::book::{Gas, OutputEarthing, Rates, SupplyEntry, SupplyKind, TubeEntry};
+use tubewright::book::{Bending, Gas, OutputEarthing, Rates, SupplyEntry, SupplyKind, TubeEntry};
 use tubewright::rules::Finding;
 use tubewright::supply::Rating;
 use tubewright::tube::TubeType;
@@ -919,9 +919,56 @@ fn RatesForm() -> impl IntoView {
                         Ok(())
                     }
                 />
+                <Field
+                    label="Added to each crossover, mm"
+                    number=true
+                    value=Signal::derive(move || desk.book.with(|book| book.allowances.crossover_mm.to_string()))
+                    commit=move |text: String| {
+                        let figure = figure(&text, "mm")?;
+                        desk.edit_book("crossover", "Crossover", |book| book.allowances.crossover_mm = figure);
+                        Ok(())
+                    }
+                />
             </div>
-            <p class="quiet">"Tails, waste and minutes are common practice, no source: set your own."</p>
+            <p class="quiet">"Tails, waste, the longest piece and minutes are common practice, no source: set your own. What a crossover takes beyond the straight way, for stepping back and forward again, is not counted until it is given."</p>
+            <h2>"What the shop bends"</h2>
+            <div class="columns">
+                {bending(desk, "Tightest radius, tube diameters", |bending| &mut bending.least_radius_diameters)}
+                {bending(desk, "Least letter height, tube diameters", |bending| &mut bending.least_letter_diameters)}
+                {bending(desk, "Least spacing of tubes, tube diameters", |bending| &mut bending.least_spacing_diameters)}
+                {bending(desk, "Least distance of electrodes, mm", |bending| &mut bending.least_electrode_spacing_mm)}
+            </div>
+            <p class="quiet">"Radius and spacing are to the middle of the tube. Left empty, a limit is not checked. The radius of 1.5 and the letter height of 8 diameters are common practice, no source; the spacing of 2 diameters, one diameter clear, is how a trade column on pattern-making sets parallel tubes. For electrodes no figure with a source was found."</p>
         </section>
+    }
+}
+
+/// A limit of bending; empty: not checked.
+fn bending(
+    desk: Desk,
+    label: &'static str,
+    of: fn(&mut Bending) -> &mut Option<f64>,
+) -> impl IntoView {
+    let value = Signal::derive(move || {
+        let mut bending = desk.book.with(|book| book.bending.clone());
+        typed(*of(&mut bending))
+    });
+    view! {
+        <Field
+            label=label
+            number=true
+            example="not checked"
+            value=value
+            commit=move |text: String| {
+                let limit = if text.trim().is_empty() {
+                    None
+                } else {
+                    Some(figure(&text, "")?).filter(|limit| *limit > 0.0)
+                };
+                desk.edit_book(label, label, |book| *of(&mut book.bending) = limit);
+                Ok(())
+            }
+        />
     }
 }
 

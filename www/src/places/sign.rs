@@ -3,14 +3,14 @@
 use leptos::prelude::*;
 use tubewright::Job;
 use tubewright::book::Dampness;
-use tubewright::job::Wish;
-use tubewright::measure::{length_shown, milliamps_shown};
+use tubewright::job::{Outline, Wish};
+use tubewright::measure::{length_shown, milliamps_shown, with_units};
 use tubewright::rules::Place;
 
 use super::Rows;
 use super::fields::{Choice, Field, Figure, Tick, always, optional_figure, typed};
 use super::findings::line;
-use crate::desk::{Where, desk};
+use crate::desk::{Desk, Where, desk};
 use crate::pictures::SignPicture;
 
 /// The place.
@@ -167,6 +167,8 @@ fn JobPanel() -> impl IntoView {
                     job.site.place = damp(&word);
                 })
             />
+            {outline(desk, "The sign is at most this wide", |outline| &mut outline.width)}
+            {outline(desk, "The sign is at most this high", |outline| &mut outline.height)}
             <Tick
                 label="Outdoors below 0 °C at times"
                 value=Signal::derive(move || desk.job.with(|job| job.site.cold))
@@ -174,6 +176,30 @@ fn JobPanel() -> impl IntoView {
             />
             {said}
         </section>
+    }
+}
+
+/// A side of the sign's outer size; empty: not limited.
+fn outline(desk: Desk, label: &'static str, of: fn(&mut Outline) -> &mut String) -> impl IntoView {
+    let value = Signal::derive(move || {
+        let outline = desk.job.with(|job| job.outline.clone());
+        std::mem::take(of(&mut outline.unwrap_or_default()))
+    });
+    view! {
+        <Field
+            label=label
+            example="not limited"
+            value=value
+            commit=move |typed: String| {
+                let typed = with_units(typed.trim(), desk.bare());
+                desk.edit_job(label, label, |job| {
+                    let mut outline = job.outline.take().unwrap_or_default();
+                    *of(&mut outline) = typed;
+                    job.outline = Some(outline).filter(|outline| *outline != Outline::default());
+                });
+                Ok(())
+            }
+        />
     }
 }
 
