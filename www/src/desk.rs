@@ -82,6 +82,15 @@ pub enum BookPart {
     Rates,
 }
 
+/// What the next tap on a picture does to the piece that is marked.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Task {
+    /// Makes it one with the piece that is tapped.
+    Join,
+    /// Cuts it where it is tapped.
+    Cut,
+}
+
 /// Something to tell the person at the page, until they put it away.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Message {
@@ -126,6 +135,8 @@ pub struct Desk {
     pub place: RwSignal<Where>,
     /// The piece marked on the picture.
     pub piece: RwSignal<Option<usize>>,
+    /// What the next tap does to it.
+    pub task: RwSignal<Option<Task>>,
     /// The row marked on the picture.
     pub row: RwSignal<Option<usize>>,
     /// Whether pictures show the sign from the back, mirrored.
@@ -169,6 +180,7 @@ impl Desk {
             units: RwSignal::new(Units::Metric),
             place: RwSignal::new(Where::Sign),
             piece: RwSignal::new(None),
+            task: RwSignal::new(None),
             row: RwSignal::new(None),
             back: RwSignal::new(false),
             plain: RwSignal::new(false),

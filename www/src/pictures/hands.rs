@@ -13,7 +13,6 @@ use web_sys::{Element, KeyboardEvent, MouseEvent, PointerEvent, WheelEvent};
 
 use super::eye::{Eye, Room};
 use super::fingers::Fingers;
-use crate::desk::Desk;
 
 /// One press of a button or key.
 const STEP: f64 = 1.5;
@@ -166,15 +165,16 @@ impl Hands {
         });
     }
 
-    /// The piece that a click taps: none where it ends a drag or lies on no piece.
+    /// The number of what a click taps, `data-piece` or `data-part`: none where it ends a drag or lies
+    /// on nothing of the kind.
     ///
     /// This is the one place where a tap on the picture is told from everything else.
-    pub(super) fn tapped(&self, event: &MouseEvent) -> Option<usize> {
+    pub(super) fn tapped(&self, event: &MouseEvent, what: &str) -> Option<usize> {
         if self.fingers.with_value(Fingers::dragged) {
             return None;
         }
         let on = event.target()?.dyn_into::<Element>().ok()?;
-        on.get_attribute("data-piece")?.parse().ok()
+        on.get_attribute(what)?.parse().ok()
     }
 
     /// The wheel turns. On the whole sign it goes on scrolling the page where it asks for less.
@@ -254,7 +254,7 @@ impl Hands {
     }
 
     /// Where an event is, from the picture's left upper corner.
-    fn place(&self, event: &MouseEvent) -> Point {
+    pub(super) fn place(&self, event: &MouseEvent) -> Point {
         let corner = self.on.get_untracked().map_or(Vec2::ZERO, |element| {
             let around = element.get_bounding_client_rect();
             Vec2::new(around.left(), around.top())
@@ -270,15 +270,4 @@ impl Hands {
             )
         })
     }
-}
-
-/// Marks a piece of the sign, or unmarks it where it was marked.
-pub(super) fn mark(desk: Desk, piece: usize) {
-    desk.piece.update(|now| {
-        *now = if *now == Some(piece) {
-            None
-        } else {
-            Some(piece)
-        };
-    });
 }

@@ -9,7 +9,9 @@ mod paint;
 mod scale;
 mod scene;
 mod sign;
+mod tap;
 mod window;
 
 pub use loading::LoadingBar;
 pub use sign::SignPicture;
+pub use tap::part_marked;

@@ -1,15 +1,16 @@
 //! The sign to scale: glowing or plain, from the front or the back, from as near as one likes.
 
-use kurbo::{Affine, Rect};
+use kurbo::{Affine, Point, Rect};
 use leptos::html::Div;
 use leptos::prelude::*;
 use tubewright::measure::Units;
 
 use super::eye::Room;
-use super::hands::{Hands, mark};
+use super::hands::Hands;
 use super::paint::{MARK_PX, Pen, TAP_PX, electrodes, number, tube};
 use super::scale::{bar, framed};
 use super::scene::{Scene, scene};
+use super::tap::{PartMarks, part_marked, tap};
 use super::window::{width_of, window_height};
 use crate::desk::desk;
 
@@ -55,6 +56,14 @@ pub fn SignPicture(
         } else {
             x
         }
+    };
+    // Where on the sign a pixel of the picture lies.
+    let there = move |at: Point| {
+        let (corner, times) = hands.placed();
+        let frame = frame.get_untracked();
+        let from = (at - corner) / times * frame.mm_per_px;
+        let on = frame.view.origin() + from;
+        Point::new(across(on.x), on.y)
     };
     let side = move || {
         back.get().then(|| {
@@ -112,6 +121,7 @@ pub fn SignPicture(
                 {electrodes(points, width_mm, pen)}
                 <g stroke-width=move || pen.px(TAP_PX)>{hits}</g>
             </g>
+            <PartMarks across=Callback::new(across) pen=pen/>
             {move || circuits.get().then(|| badges.iter().map(|badge| number(badge, across, pen)).collect::<Vec<_>>())}
         }
     };
@@ -172,8 +182,12 @@ pub fn SignPicture(
                 on:pointercancel=move |event| hands.lifted(&event)
                 on:wheel=move |event| hands.turned(&event)
                 on:keydown=move |event| hands.key(&event)
-                on:click=move |event| if let Some(piece) = hands.tapped(&event) {
-                    mark(desk, piece);
+                on:click=move |event| {
+                    if let Some(after) = hands.tapped(&event, "data-part") {
+                        part_marked(desk, after);
+                    } else if let Some(piece) = hands.tapped(&event, "data-piece") {
+                        tap(desk, piece, there(hands.place(&event)));
+                    }
                 }
             >
                 {picture}

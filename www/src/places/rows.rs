@@ -15,6 +15,7 @@ use super::fields::{Choice, Field, always};
 use super::findings::{line, many};
 use super::layout::Layout;
 use super::outline_fields::{InsetField, OutlineFields};
+use super::piece_fields::PieceFields;
 use super::shape_fields::{self, ShapeFields};
 use wasm_bindgen::JsCast;
 
@@ -397,6 +398,7 @@ fn RowCard(at: usize) -> impl IntoView {
             <Show when=move || kind.get() == Kind::Text>
                 <Layout at=at/>
             </Show>
+            <PieceFields at=at/>
             <div class="row-foot">
                 <span class="row-sums">{sums}<small>{size}</small></span>
                 <span class="row-tools">

@@ -10,8 +10,8 @@ use tubewright::rules::Place;
 use super::Rows;
 use super::fields::{Choice, Field, Figure, Tick, always, optional_figure, typed};
 use super::findings::line;
-use crate::desk::{Desk, Where, desk};
-use crate::pictures::SignPicture;
+use crate::desk::{Desk, Task, Where, desk};
+use crate::pictures::{SignPicture, part_marked};
 
 /// The place.
 #[component]
@@ -72,18 +72,92 @@ fn Marked() -> impl IntoView {
             <section class="panel" aria-label="Marked piece">
                 <header class="panel-head">
                     <h2>{piece.label.clone()}<small>{format!(" piece {}, row {}", at + 1, piece.row + 1)}</small></h2>
-                    <button on:click=move |_| desk.piece.set(None)>"Close"</button>
+                    <button on:click=move |_| {
+                        desk.task.set(None);
+                        desk.piece.set(None);
+                    }>"Close"</button>
                 </header>
                 <div class="figures">
                     <Figure figure=length_shown(piece.lit, units) caption="lit glass"/>
                     <Figure figure=length_shown(piece.hidden, units) caption="painted out"/>
                     <Figure figure=length_shown(piece.tails, units) caption="tails"/>
                     <Figure figure=length_shown(piece.glass(), units) caption="glass to bend"/>
+                    <Figure figure=piece.bends.len().to_string() caption="bends"/>
                 </div>
+                <PieceTools at=at/>
                 <p>{piece.tube.clone()}</p>
                 <p>{on.unwrap_or_else(|| "on no circuit".to_owned())}" "{button}</p>
             </section>
         })
+    }
+}
+
+/// Up to so many crossovers get a button each; all have a mark on the picture.
+const MOST_PARTS: usize = 12;
+
+/// What can be done to the marked piece.
+#[component]
+fn PieceTools(at: usize) -> impl IntoView {
+    let desk = desk();
+    let task = move |task: Task, label: &'static str| {
+        let on = move || desk.task.get() == Some(task);
+        view! {
+            <button
+                aria-pressed=move || on().to_string()
+                class:on=on
+                on:click=move |_| desk.task.update(|now| {
+                    *now = if *now == Some(task) { None } else { Some(task) };
+                })
+            >{label}</button>
+        }
+    };
+    let parts = move || {
+        desk.results.with(|results| {
+            let piece = results.takeoff.pieces.get(at)?;
+            let parts: Vec<_> = piece
+                .jumps
+                .iter()
+                .take(MOST_PARTS)
+                .enumerate()
+                .map(|(number, jump)| {
+                    let after = jump.after;
+                    view! {
+                        <button on:click=move |_| part_marked(desk, after)>
+                            {format!("Part at {}", number + 1)}
+                        </button>
+                    }
+                })
+                .collect();
+            Some(parts)
+        })
+    };
+    let says = move || match desk.task.get() {
+        Some(Task::Join) => {
+            "Tap the piece to join it with: both become one, over a crossover that is painted out."
+        }
+        Some(Task::Cut) => {
+            "Tap the place on this piece to cut it: from there on it is a piece of its own."
+        }
+        None => {
+            "Numbers on the picture are its crossovers. Parted there, the painted-out glass is not made."
+        }
+    };
+    let any = move || {
+        desk.task.get().is_some()
+            || desk.results.with(|results| {
+                let piece = results.takeoff.pieces.get(at);
+                piece.is_some_and(|piece| !piece.jumps.is_empty())
+            })
+    };
+    view! {
+        <div class="piece-tools" role="group" aria-label="Change this piece">
+            {task(Task::Join, "Join with…")}
+            {task(Task::Cut, "Cut…")}
+            {parts}
+        </div>
+        <Show when=any>
+            <p class="quiet" aria-live="polite">{says}</p>
+        </Show>
     }
 }
 
