@@ -214,9 +214,9 @@ impl Chain {
         if angle.to_degrees() < LEAST_DEGREES {
             return None;
         }
-        let middle = (first.along[0] + last.along[1]) / 2.0;
+        let middle = f64::midpoint(first.along[0], last.along[1]);
         let nearest = turns.iter().min_by(|a, b| {
-            let off = |turn: &Turn| ((turn.along[0] + turn.along[1]) / 2.0 - middle).abs();
+            let off = |turn: &Turn| (f64::midpoint(turn.along[0], turn.along[1]) - middle).abs();
             off(a).total_cmp(&off(b))
         })?;
         Some(Bend {

@@ -150,14 +150,15 @@ fn apart(a: Line, b: Line) -> (f64, Point) {
 }
 
 fn crossing(a: Line, b: Line) -> Option<Point> {
-    let (u, v, w) = (a.p1 - a.p0, b.p1 - b.p0, b.p0 - a.p0);
-    let cross = u.cross(v);
+    let (along_a, along_b, between) = (a.p1 - a.p0, b.p1 - b.p0, b.p0 - a.p0);
+    let cross = along_a.cross(along_b);
     if cross == 0.0 {
         return None;
     }
-    let (t, s) = (w.cross(v) / cross, w.cross(u) / cross);
+    let on_a = between.cross(along_b) / cross;
+    let on_b = between.cross(along_a) / cross;
     let inside = 0.0..=1.0;
-    (inside.contains(&t) && inside.contains(&s)).then(|| a.eval(t))
+    (inside.contains(&on_a) && inside.contains(&on_b)).then(|| a.eval(on_a))
 }
 
 #[cfg(test)]

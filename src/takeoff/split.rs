@@ -257,7 +257,7 @@ mod tests {
     fn a_straight_piece_is_cut_evenly_into_as_few_as_can_be() {
         let bar = drawn(&[&[(0.0, 0.0), (5000.0, 0.0)]]);
         let parts = too_long(&bar, 2400.0, 0.0);
-        assert_eq!(columns(&parts), [1666.666667; 3]);
+        assert_eq!(columns(&parts), [1_666.666_667; 3]);
         // Exactly twice as long as can be bent: two.
         assert_eq!(columns(&too_long(&bar, 2500.0, 0.0)), [2500.0; 2]);
         assert_eq!(too_long(&bar, 5000.0, 0.0).len(), 1, "just short enough");
