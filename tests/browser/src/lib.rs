@@ -130,13 +130,18 @@ impl Visit {
         &self.driver
     }
 
+    /// Finds something and brings it into the middle of the window, out from under the header and the
+    /// strip, as a person would before pressing it.
     async fn find(&self, path: &str) -> WebDriverResult<WebElement> {
-        self.driver
+        let found = self
+            .driver
             .query(By::XPath(path))
             .wait(PATIENCE, Duration::from_millis(50))
             .and_displayed()
             .first()
-            .await
+            .await?;
+        found.scroll_into_view().await?;
+        Ok(found)
     }
 
     /// Where a field of a row is typed into.
