@@ -83,14 +83,13 @@ pub fn Glass() -> impl IntoView {
                             class:over=over
                         >
                             <td><Handle at=at label=piece.label.clone() dragged=dragged/></td>
-                            <td>{at + 1}</td>
                             <th scope="row">
                                 <button class="link" on:click=move |_| {
                                     desk.piece.set(Some(at));
                                     desk.place.set(Where::Sign);
                                 }>{piece.label.clone()}</button>
+                                <small>{format!("row {}", piece.row + 1)}</small>
                             </th>
-                            <td>{piece.row + 1}</td>
                             <td>{length_shown(piece.lit, units)}</td>
                             <td>{length_shown(piece.hidden, units)}</td>
                             <td>{length_shown(piece.tails, units)}</td>
@@ -137,10 +136,8 @@ pub fn Glass() -> impl IntoView {
                 <table>
                     <thead>
                         <tr>
-                            <th scope="col"><span class="unseen">"Move"</span></th>
                             <th scope="col">"No."</th>
                             <th scope="col">"Piece"</th>
-                            <th scope="col">"Row"</th>
                             <th scope="col">"Lit"</th>
                             <th scope="col">"Painted out"</th>
                             <th scope="col">"Tails"</th>
@@ -205,7 +202,7 @@ fn Handle(at: usize, label: String, dragged: RwSignal<Option<Drag>>) -> impl Int
                     follow(to);
                 }
             }
-        >"⠿"</button>
+        >{format!("⠿ {}", at + 1)}</button>
     }
 }
 

@@ -9,7 +9,7 @@ use tubewright::rules::Place;
 
 use super::Rows;
 use super::fields::{Choice, Field, Figure, Tick, always, optional_figure, typed};
-use super::findings::line;
+use super::findings::{line, many};
 use crate::desk::{Desk, Task, Where, desk};
 use crate::pictures::{SignPicture, part_marked};
 
@@ -82,7 +82,7 @@ fn Marked() -> impl IntoView {
                     <Figure figure=length_shown(piece.hidden, units) caption="painted out"/>
                     <Figure figure=length_shown(piece.tails, units) caption="tails"/>
                     <Figure figure=length_shown(piece.glass(), units) caption="glass to bend"/>
-                    <Figure figure=piece.bends.len().to_string() caption="bends"/>
+                    <Figure figure=piece.bends.len().to_string() caption=many(piece.bends.len(), "bend", "bends")/>
                 </div>
                 <PieceTools at=at/>
                 <p>{piece.tube.clone()}</p>

@@ -9,5 +9,6 @@ mod layout;
 mod looks;
 mod offline;
 mod picture;
+mod pieces;
 mod shop_book;
 mod sign;
