@@ -886,7 +886,11 @@ proptest! {
         let large = u8::from(by.abs() > std::f64::consts::PI);
         let d = format!("M{} A{a} {b} {tilt} {large} {} {}", on(from), u8::from(sweep), on(from + by));
         let found = lines(&format!("<path d='{d}'/>")).length();
-        prop_assert!((found / wanted - 1.0).abs() < 1e-9, "{d}: {found}, not {wanted}");
+        // A file gives an arc by its two ends. How far apart the ends of a short arc at the flat side of
+        // a thin ellipse lie hardly says where its centre is, so that the last digit they are written
+        // with moves its length: the size of the ellipse is the measure, not the arc's.
+        let off = (found - wanted).abs();
+        prop_assert!(off < 1e-9 * wanted.max(a), "{d}: {found}, not {wanted}");
     }
 
     #[test]

@@ -142,6 +142,12 @@ fn short(labels: &[String]) -> String {
     format!("{cut}…")
 }
 
+/// The group a circuit lights with, where its rows have one.
+fn group(results: &Results, circuit: &CircuitWork) -> Option<String> {
+    let first = results.takeoff.pieces.get(*circuit.pieces.first()?)?;
+    Some(first.group.clone()).filter(|group| !group.is_empty())
+}
+
 fn labels(results: &Results, circuit: &CircuitWork) -> Vec<String> {
     circuit
         .pieces
@@ -192,6 +198,7 @@ fn Card(number: usize, results: Results) -> impl IntoView {
                     {chip(circuit.grade())}
                 </header>
                 <p class="supply">{circuit.supply.name.clone()}</p>
+                {group(&results, circuit).map(|group| view! { <p class="quiet">"lights with “"{group}"”"</p> })}
                 <LoadingBar assessment=circuit.assessment.clone()/>
                 <div class="figures">
                     <Figure figure=current caption="current"/>

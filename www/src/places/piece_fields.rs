@@ -96,7 +96,7 @@ pub(super) fn PieceFields(
                     </Show>
                 </div>
                 <p class="quiet">
-                    "Tap a piece on the picture to join it with another, to part it at a crossover or to cut it. Rows of one name under “Lights with” share circuits with each other and with no other row, so that they can flash."
+                    "Tap a piece on the picture to join it with another, to part it at a crossover or to cut it. Rows of one name under “Lights with” share circuits with each other and with no other row, so that they can flash. A sign with two faces is its rows made twice, by their Times."
                 </p>
             </Show>
         </details>

@@ -160,7 +160,7 @@ fn pieces_are_dragged_into_another_order() {
         places[0] = serde_json::from_value(page.run(&look).await?).expect("a place");
         let [[to_x, to_y], [x, y]] = [places[0], places[1]];
         mouse(&page, "mousePressed", x, y).await?;
-        mouse(&page, "mouseMoved", x, (y + to_y) / 2.0).await?;
+        mouse(&page, "mouseMoved", x, f64::midpoint(y, to_y)).await?;
         mouse(&page, "mouseMoved", to_x, to_y).await?;
         mouse(&page, "mouseReleased", to_x, to_y).await?;
         page.see("Undo").await?;
