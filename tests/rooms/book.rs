@@ -627,3 +627,16 @@ fn deep_nesting_does_not_crash() {
         "{sentence}"
     );
 }
+
+#[test]
+fn limits_of_bending_are_kept_and_ask_for_the_version_that_knows_them() {
+    let plain = book::write(&starter());
+    assert!(plain.contains("\"version\": 1") && !plain.contains("bending"));
+    let mut changed = starter();
+    changed.bending.least_spacing_diameters = None;
+    changed.allowances.crossover_mm = 35.5;
+    let text = book::write(&changed);
+    assert!(text.contains("\"version\": 2"), "{text}");
+    assert_eq!(book::read(&text), Ok(changed));
+    assert_eq!(book::read(&plain), Ok(starter()), "an old book as before");
+}

@@ -3,8 +3,8 @@
 use insta::assert_snapshot;
 use tubewright::book::Dampness;
 use tubewright::job::{
-    self, Align, ArtworkLines, ArtworkRow, Curve, FontFile, Job, OutlineRow, Row, Site, StrokesRow,
-    TextRow, Wish,
+    self, Align, ArtworkLines, ArtworkRow, Curve, Cut, Each, FontFile, Job, Outline, OutlineRow,
+    Pieces, Row, Site, StrokesRow, TextRow, Wish,
 };
 
 fn error(text: &str) -> String {
@@ -201,5 +201,49 @@ fn deep_nesting_does_not_crash() {
         r#"{"tubewright":"job","version":1,"name":"x","rows":["#,
     ] {
         assert!(error(&open.repeat(200_000)).len() < 500);
+    }
+}
+
+#[test]
+fn choices_of_pieces_are_kept_and_ask_for_the_version_that_knows_them() {
+    let plain = Job {
+        rows: vec![Row::Text(TextRow {
+            text: "HI".to_owned(),
+            ..TextRow::default()
+        })],
+        ..Job::default()
+    };
+    assert!(job::write(&plain).contains("\"version\": 1"));
+    let with = |change: fn(&mut Job)| {
+        let mut job = plain.clone();
+        change(&mut job);
+        let text = job::write(&job);
+        assert_eq!(job::read(&text).as_ref(), Ok(&job), "{text}");
+        text
+    };
+    for text in [
+        with(|job| *job.rows[0].group_mut() = "door".to_owned()),
+        with(|job| job.rows[0].pieces_mut().keep_long = true),
+        with(|job| {
+            *job.rows[0].pieces_mut() = Pieces {
+                each: Each::Touching,
+                joined: vec![["1 H 1".to_owned(), "2 I 1".to_owned()]],
+                parted: vec![["1 H 1".to_owned(), "1 H 3".to_owned()]],
+                cuts: vec![Cut {
+                    stroke: "1 H 2".to_owned(),
+                    share: 1.0 / 3.0,
+                }],
+                keep_long: false,
+                order: vec!["2 I 1".to_owned(), "1 H 1".to_owned()],
+            };
+        }),
+        with(|job| {
+            job.outline = Some(Outline {
+                width: "2 m".to_owned(),
+                height: String::new(),
+            });
+        }),
+    ] {
+        assert!(text.contains("\"version\": 3"), "{text}");
     }
 }

@@ -88,7 +88,7 @@ pub fn Glass() -> impl IntoView {
                                     desk.piece.set(Some(at));
                                     desk.place.set(Where::Sign);
                                 }>{piece.label.clone()}</button>
-                                <small>{format!("row {}", piece.row + 1)}</small>
+                                <span class="quiet">{format!(" row {}", piece.row + 1)}</span>
                             </th>
                             <td>{length_shown(piece.lit, units)}</td>
                             <td>{length_shown(piece.hidden, units)}</td>

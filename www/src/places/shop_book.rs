@@ -932,7 +932,7 @@ fn RatesForm() -> impl IntoView {
             </div>
             <p class="quiet">"Tails, waste, the longest piece and minutes are common practice, no source: set your own. What a crossover takes beyond the straight way, for stepping back and forward again, is not counted until it is given."</p>
             <h2>"What the shop bends"</h2>
-            <div class="columns">
+            <div class="form-fields">
                 {bending(desk, "Tightest radius, tube diameters", |bending| &mut bending.least_radius_diameters)}
                 {bending(desk, "Least letter height, tube diameters", |bending| &mut bending.least_letter_diameters)}
                 {bending(desk, "Least spacing of tubes, tube diameters", |bending| &mut bending.least_spacing_diameters)}
