@@ -33,7 +33,8 @@ async fn mouse(page: &Visit, what: &str, x: f64, y: f64) -> WebDriverResult<()> 
 /// Taps a piece (counted from 1) at a share of its length on the picture.
 async fn tap(page: &Visit, piece: usize, share: f64) -> WebDriverResult<()> {
     let script = format!(
-        "const path = document.querySelector('.picture-piece[data-piece=\"{}\"]');
+        "document.querySelector('.picture').scrollIntoView({{ block: 'center' }});
+         const path = document.querySelector('.picture-piece[data-piece=\"{}\"]');
          const at = path.getPointAtLength({share} * path.getTotalLength());
          const there = at.matrixTransform(path.getScreenCTM());
          return [there.x, there.y];",
