@@ -2,6 +2,9 @@
 
 use kurbo::{Affine, BezPath, ParamCurve, ParamCurveArclen, PathSeg, Rect, Shape};
 
+/// What is smaller, in units of the file, has no length: the squares of its coordinates vanish.
+pub(super) const LEAST: f64 = 1e-100;
+
 /// Artwork read from a file, in the file's own units.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Artwork {
@@ -148,7 +151,7 @@ impl ArtStroke {
 /// Measured at size one, beginning at zero: only there is a tolerance neither coarse, as a fixed one
 /// is for a file in metres, nor below the noise of far coordinates, where the halving of curves goes
 /// on to its end.
-fn segment_length(segment: PathSeg) -> f64 {
+pub(super) fn segment_length(segment: PathSeg) -> f64 {
     let begin = segment.start().to_vec2();
     let segment = Affine::translate(-begin) * segment;
     let hull = match segment {

@@ -15,10 +15,13 @@ use super::finding;
 use super::outline;
 use crate::drawing::outline::{Join, filled, inset};
 use crate::drawing::{ArtGroup, ArtStroke, Artwork, dxf, svg};
-use crate::job::{ArtworkFile, ArtworkRow};
+use crate::job::{ArtworkFile, ArtworkLines, ArtworkRow};
 use crate::measure::{self, LengthUnit, Limit};
 use crate::rules::Finding;
 
+/// Most lines of a row that are tube. Each is held against those near it, and a drawing of more is
+/// no sign but a picture cut into bits.
+const MOST_LINES: usize = 20_000;
 /// Files remembered once read.
 const REMEMBERED: usize = 6;
 
@@ -29,6 +32,13 @@ const WIDTH_MM: Limit = Limit {
     most: 50_000.0,
     unit: "mm",
     why: "smaller cannot be bent in glass, larger is planned as several jobs",
+};
+
+/// How high an artwork may become at the wanted width.
+const HEIGHT_MM: Limit = Limit {
+    name: "the artwork's height at this width",
+    least: 0.0,
+    ..WIDTH_MM
 };
 
 type Read = Rc<Result<Artwork, String>>;
@@ -88,8 +98,20 @@ pub(super) fn row(
         return Made::default();
     };
     let mut made = Made::default();
+    let tube = |group: &ArtGroup| {
+        let mut chosen = row.lines.iter();
+        let of = |lines: &&ArtworkLines| lines.colour == group.colour && lines.layer == group.layer;
+        chosen.find(of).is_some_and(|lines| !lines.tube.is_empty())
+    };
+    let groups = art.groups();
+    let lines = groups.iter().filter(|group| tube(group));
+    let lines: usize = lines.map(|group| group.strokes).sum();
+    if lines > MOST_LINES {
+        findings.push(finding::too_many_lines(at, lines, MOST_LINES));
+        return made;
+    }
     let mut bounds: Option<Rect> = None;
-    for group in art.groups() {
+    for group in groups {
         let Some(lines) = row
             .lines
             .iter()
@@ -154,10 +176,16 @@ fn size(at: usize, row: &ArtworkRow, art: &Artwork, findings: &mut Vec<Finding>)
     }
     match measure::length(&row.width, LengthUnit::Millimetres) {
         Ok(wide) if WIDTH_MM.holds(wide.length().mm()) => {
-            if art.bounds.width() > 0.0 {
-                Some(wide.length().mm() / art.bounds.width())
-            } else {
+            // One so narrow that no figure says how it is to be scaled is as good as upright.
+            let scale = wide.length().mm() / art.bounds.width();
+            let high = scale * art.bounds.height();
+            if !high.is_finite() {
                 findings.push(finding::no_width(at));
+                None
+            } else if HEIGHT_MM.holds(high) {
+                Some(scale)
+            } else {
+                findings.push(finding::outside(at, None, &HEIGHT_MM, high));
                 None
             }
         }
@@ -181,7 +209,8 @@ fn strokes(
     (mm_per_unit, typed): (f64, &str),
     findings: &mut Vec<Finding>,
 ) -> Vec<(String, BezPath)> {
-    let place = Affine::scale(mm_per_unit);
+    // From where the drawing begins: far out, as maps are drawn, curves have too few digits.
+    let place = Affine::scale(mm_per_unit) * Affine::translate(-art.bounds.origin().to_vec2());
     let of_group = || {
         let all = art.strokes.iter().enumerate();
         all.filter(|(_, stroke)| stroke.colour == group.colour && stroke.layer == group.layer)
@@ -267,7 +296,6 @@ fn in_reading_order(pieces: &mut Vec<Drawn>) {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::job::ArtworkLines;
     use crate::rules::{Finding, Grade};
 
     const ART: &str = r##"<svg xmlns="http://www.w3.org/2000/svg" width="100mm" height="50mm" viewBox="0 0 100 50">

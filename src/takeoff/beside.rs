@@ -85,10 +85,10 @@ impl Loop {
                 done += 1.0;
             }
         }
-        let stretches = stretch_of(self.long) + 1;
+        let stretches = stretch_of(self.long).saturating_add(1);
         let pairs = near.pairs(least_mm, |one, other| {
             let apart = other - one;
-            apart.min(stretches - apart) > ALONG
+            apart.min(stretches.saturating_sub(apart)) > ALONG
         });
         let distances = pairs.into_values().map(|(distance, _)| distance);
         distances.reduce(f64::min)

@@ -51,6 +51,10 @@ pub(super) fn outside(at: usize, field: Option<&str>, limit: &Limit, value: f64)
 
 /// A typed figure, no longer than anyone types it: 1/3 in is 8.467 mm.
 fn figure(value: f64) -> String {
+    // Hundreds of digits say no more.
+    if value.abs() >= 1e12 {
+        return format!("{value:.0e}");
+    }
     let text = format!("{value:.3}");
     text.trim_end_matches('0').trim_end_matches('.').to_owned()
 }
@@ -657,6 +661,17 @@ pub(super) fn no_width(at: usize) -> Finding {
         "The artwork is one upright line and has no width to be scaled by: leave the width empty, or \
          give the line as strokes."
             .to_owned(),
+    )
+}
+
+pub(super) fn too_many_lines(at: usize, lines: usize, most: usize) -> Finding {
+    row(
+        Grade::Stop,
+        at,
+        format!(
+            "A row of artwork must have at most {most} lines that are tube, but this one has {lines}: \
+             leave only the lines of the tubes, or join in the drawing what was cut into bits."
+        ),
     )
 }
 

@@ -34,6 +34,9 @@ mod outline;
 /// Rows of letters from a font file, and insets of filled artwork, as glass.
 mod fonts;
 
+/// Thousands of damaged files and typed lengths: no panic, no hang, bounded output.
+mod damaged;
+
 /// Nameplates: what is missing or contradicts itself, and the site.
 mod supply;
 

@@ -761,8 +761,8 @@ fn bomb(innermost: &str, depth: usize) -> String {
 fn parts_that_use_each_other_without_end_are_refused() {
     let art = drawing(&bomb("<path stroke='red' d='M0 0h5'/>", 3));
     assert_eq!(art.length(), 5_000.0);
-    let over = "The drawing uses its own parts, or its style rules, over and over again, far \
-                beyond what a drawing needs; expand the parts and keep the lines only.";
+    let over = "The drawing has more elements, or uses its own parts or style rules more often, \
+                than any drawing needs; expand the parts and keep the lines only.";
     assert_eq!(refused(&bomb("", 20)), over, "even of nothing");
     assert!(
         refused(&bomb("<circle r='5'/>", 20)).starts_with("A drawing must have at most"),

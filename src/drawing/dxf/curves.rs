@@ -1,7 +1,8 @@
 //! Arcs, bulges and B-splines as Bézier paths whose lengths are right to 1e-9.
 
+use crate::drawing::artwork::segment_length;
 use kurbo::common::GAUSS_LEGENDRE_COEFFS_16;
-use kurbo::{BezPath, CubicBez, ParamCurve, ParamCurveArclen, Point, Vec2};
+use kurbo::{BezPath, CubicBez, ParamCurve, Point, Vec2};
 
 use super::{SEGMENTS_MOST, shown};
 
@@ -303,7 +304,7 @@ impl Fit<'_> {
             return None;
         }
         let least = 1e-11 * wanted + 1e-14 * self.size;
-        let missing = |cubic: CubicBez| cubic.arclen(least / 10.0) - wanted;
+        let missing = |cubic: CubicBez| segment_length(cubic.into()) - wanted;
         // Handles as long as the curve moves, then stretched until the length is right.
         let mut before = (1.0, missing(self.hermite(from, to, 1.0)));
         let mut now = before;

@@ -9,6 +9,7 @@ use super::document::{Document, Item, Layer};
 use super::elements::{Insert, Shape};
 use super::groups::LARGEST;
 use super::{SEGMENTS_MOST, shown, too_many_segments};
+use crate::drawing::artwork::LEAST;
 use crate::drawing::{ArtStroke, Artwork, Unread};
 use crate::measure::quoted;
 
@@ -216,7 +217,7 @@ impl Placer<'_> {
             self.tell_item(item, "its place or scale is too large".to_owned());
             return Ok(());
         }
-        if room.width().max(room.height()) == 0.0 {
+        if room.width().max(room.height()) < LEAST {
             self.tell_item(item, "it has no length".to_owned());
             return Ok(());
         }

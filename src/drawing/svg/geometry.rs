@@ -38,6 +38,11 @@ impl Pen {
         self.at
     }
 
+    /// Whether more was drawn than may be; what is drawn on is of no use.
+    pub(super) fn is_full(&self) -> bool {
+        self.too_many
+    }
+
     pub(super) fn move_to(&mut self, to: Point) {
         self.finish(false);
         self.start = to;

@@ -72,6 +72,9 @@ pub(super) fn path(data: &str) -> Result<Pen, String> {
             ),
             S::ClosePath { .. } => pen.close(),
         }
+        if pen.is_full() {
+            break;
+        }
     }
     Ok(pen)
 }
@@ -90,6 +93,9 @@ pub(super) fn points(list: &str, closed: bool) -> Result<Pen, String> {
             pen.move_to(to);
         } else {
             pen.line_to(to);
+        }
+        if pen.is_full() {
+            break;
         }
         first = false;
     }

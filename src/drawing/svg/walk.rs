@@ -4,6 +4,7 @@ use super::geometry::{Pen, Subpath};
 use super::style::{Sheet, Style, spend, without_comments};
 use super::units::{self, Along, Length, MM_PER_PX};
 use super::{DEEPEST, FARTHEST, MOST_SEGMENTS, path, scan, transform};
+use crate::drawing::artwork::LEAST;
 use crate::drawing::{Area, ArtStroke, Artwork, Filling, Unread};
 use crate::measure::quoted;
 use kurbo::{Affine, Point, Shape, Size, Vec2};
@@ -280,8 +281,8 @@ impl<'a, 'i> Walk<'a, 'i> {
         let style = Style::of(node, self.sheet, &self.left);
         if self.left.get() == 0 {
             return Err(
-                "The drawing uses its own parts, or its style rules, over and over again, far \
-                 beyond what a drawing needs; expand the parts and keep the lines only."
+                "The drawing has more elements, or uses its own parts or style rules more often, \
+                 than any drawing needs; expand the parts and keep the lines only."
                     .to_owned(),
             );
         }
@@ -737,7 +738,7 @@ fn measurable((path, _): &Subpath) -> Result<(), &'static str> {
         return Err("it reaches farther out than 1000000000 units");
     }
     let bounds = path.bounding_box();
-    if bounds.width() == 0.0 && bounds.height() == 0.0 {
+    if bounds.width().max(bounds.height()) < LEAST {
         return Err("it has no length");
     }
     Ok(())
