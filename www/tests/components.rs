@@ -377,11 +377,9 @@ async fn tap(on: &Element) {
     click(on).await;
 }
 
+/// A click as the browser tells of it: with the place of the finger.
 async fn click(on: &Element) {
-    let init = EventInit::new();
-    init.set_bubbles(true);
-    let click = Event::new_with_event_init_dict("click", &init).expect("an event");
-    on.dispatch_event(&click).expect("it is heard");
+    pointer(on, "click", (50, 50));
     settled().await;
 }
 
