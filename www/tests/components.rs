@@ -14,7 +14,7 @@ use tubewright_www::places::{Circuits, FindingsList, Glass, Price, Rows, ShopBoo
 use wasm_bindgen::JsCast;
 use wasm_bindgen_test::{wasm_bindgen_test, wasm_bindgen_test_configure};
 use web_sys::{
-    Element, Event, EventInit, HtmlElement, HtmlInputElement, HtmlSelectElement, PointerEvent,
+    Element, Event, HtmlElement, HtmlInputElement, HtmlSelectElement, PointerEvent,
     PointerEventInit,
 };
 

@@ -76,7 +76,7 @@ pub(super) fn PieceFields(
                         example="all the rest"
                         value=group
                         commit=move |typed: String| {
-                            edit(desk, at, "group", |row| *row.group_mut() = typed.trim().to_owned());
+                            edit(desk, at, "group", |row| typed.trim().clone_into(row.group_mut()));
                             Ok(())
                         }
                     />
