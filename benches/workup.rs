@@ -1,5 +1,6 @@
 //! How long the core takes where a person waits for it: after every key stroke.
 
+use std::fmt::Write;
 use std::hint::black_box;
 
 use criterion::{Criterion, criterion_group, criterion_main};
@@ -7,6 +8,7 @@ use rust_decimal::Decimal;
 use tubewright::book::{
     Allowances, Book, Loading, OutputEarthing, SupplyEntry, SupplyKind, starter,
 };
+use tubewright::drawing::svg;
 use tubewright::job::{Job, Row, StrokesRow, TextRow, Wish};
 use tubewright::measure::{LengthUnit, length};
 use tubewright::plan::{Candidate, Task, plan};
@@ -154,5 +156,33 @@ fn reading(c: &mut Criterion) {
     }
 }
 
-criterion_group!(benches, work_up, planning, reading);
+/// An SVG file of 10,000 curves, about 1 MB.
+fn drawing(c: &mut Criterion) {
+    let mut text = String::from(
+        r#"<svg xmlns="http://www.w3.org/2000/svg" width="2000mm" viewBox="0 0 2000 1000">"#,
+    );
+    for line in 0..100_u32 {
+        let y = 5.0 + 9.9 * f64::from(line);
+        let _ = write!(text, r##"<path stroke="#ff0000" fill="none" d="M0 {y:.7}"##);
+        for at in 0..100_u32 {
+            let x = 19.9 * f64::from(at);
+            let high = y + 4.0 * f64::from((line * 7 + at * 13) % 11) / 11.0;
+            let (near, far) = (x + 6.123_456_7, x + 13.765_432_1);
+            let low = 2.0 * y - high;
+            let end = x + 19.9;
+            let _ = write!(
+                text,
+                " C{near:.9} {high:.9} {far:.9} {low:.9} {end:.9} {y:.9}"
+            );
+        }
+        text.push_str("\"/>");
+    }
+    text.push_str("</svg>");
+    let name = format!("SVG file of 10000 curves, {} kB", text.len() / 1000);
+    c.bench_function(&name, |b| {
+        b.iter(|| svg::read(black_box(&text)).expect("a drawing").length());
+    });
+}
+
+criterion_group!(benches, work_up, planning, reading, drawing);
 criterion_main!(benches);

@@ -11,7 +11,7 @@ cargo xtask COMMAND
   serve [--port N]                    build, then serve the page on this machine
   test [--only STEP]                  check everything, or one step: format, lint, native, docs, build, page, browser
   report JOB [--book BOOK] [--json]   work a job file up, with the demonstration book or another
-  bench                               time the core, weigh the page
+  bench                               time the core and the page, weigh it
 ";
 
 fn main() -> ExitCode {

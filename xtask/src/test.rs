@@ -54,7 +54,7 @@ const STEPS: [Step; 7] = [
 ];
 
 /// Package of the journeys.
-const JOURNEYS: &str = "tubewright-browser-tests";
+pub(crate) const JOURNEYS: &str = "tubewright-browser-tests";
 
 /// The command.
 ///
@@ -190,6 +190,14 @@ fn locked_version(lock: &str) -> Result<String, String> {
 }
 
 fn browser() -> Outcome {
+    in_browser(&["test", "--package", JOURNEYS, "--", "--test-threads=1"])
+}
+
+/// Runs a cargo command of the journeys with the built page served and a driver of Chromium.
+///
+/// # Errors
+/// When there is no built page, no browser, or the command fails.
+pub(crate) fn in_browser(arguments: &[&str]) -> Outcome {
     let dist = paths::dist();
     if !dist.join("index.html").is_file() {
         return Err(format!(
@@ -209,7 +217,7 @@ fn browser() -> Outcome {
     );
     run::run(
         run::cargo()
-            .args(["test", "--package", JOURNEYS, "--", "--test-threads=1"])
+            .args(arguments)
             .env("TUBEWRIGHT_PAGE", server.address())
             .env("TUBEWRIGHT_DRIVER", driver.address())
             .env("TUBEWRIGHT_DIST", &dist)
