@@ -202,6 +202,42 @@ pub const STAR_POINTS: Limit = Limit {
     why: "with fewer it is no star, more cannot be told apart",
 };
 
+/// The shop's tightest radius.
+pub const RADIUS_DIAMETERS: Limit = Limit {
+    name: "the tightest radius",
+    least: 0.5,
+    most: 20.0,
+    unit: "diameters",
+    why: "tighter the glass would run into itself, wider hardly anything could be bent",
+};
+
+/// The shop's least letter height.
+pub const LETTER_DIAMETERS: Limit = Limit {
+    name: "the least letter height",
+    least: 1.0,
+    most: 200.0,
+    unit: "diameters",
+    why: "lower no letter is made, higher hardly any sign",
+};
+
+/// The shop's least spacing of tubes.
+pub const SPACING_DIAMETERS: Limit = Limit {
+    name: "the least spacing of tubes",
+    least: 1.0,
+    most: 10.0,
+    unit: "diameters",
+    why: "nearer the tubes touch, further apart they are no letters",
+};
+
+/// The shop's least distance of electrodes.
+pub const ELECTRODE_SPACING_MM: Limit = Limit {
+    name: "the least distance of electrodes",
+    least: 1.0,
+    most: 1_000.0,
+    unit: "mm",
+    why: "nearer they touch, further apart few signs have them",
+};
+
 /// Rows in a job.
 pub const ROWS: Limit = Limit {
     name: "rows",

@@ -390,6 +390,15 @@ fn limit_of((factor, outer_mm): (f64, f64)) -> String {
     )
 }
 
+/// A limit of bending that cannot be meant.
+pub(super) fn no_limit(limit: &Limit, value: f64) -> Finding {
+    let mut finding = outside(0, None, limit, value).at(Place::Job);
+    finding.grade = Grade::Look;
+    finding.source = Source::shop();
+    finding.says = format!("{}: not checked.", finding.says.trim_end_matches('.'));
+    finding
+}
+
 /// Where a limit of bending comes from: set by the shop, or as the book begins with it.
 fn bending(own: bool) -> Source {
     if own {

@@ -10,9 +10,11 @@ use super::near::Near;
 use super::{Piece, Stroke, Takeoff, finding};
 use crate::book::{Bending, Book};
 use crate::job::{Job, Row};
-use crate::measure::{self, LengthUnit};
+use crate::measure::{self, LengthUnit, Limit};
 use crate::rules::Finding;
 
+/// Diameters of tubes that are held against anything.
+const GLASS_MM: std::ops::RangeInclusive<f64> = 3.0..=50.0;
 /// Figures that miss a limit by less than this do not, in millimetres.
 const SLACK_MM: f64 = 0.05;
 /// Electrodes of two pieces nearer than this are where one stroke was cut.
@@ -21,12 +23,11 @@ const SAME_PLACE_MM: f64 = 0.6;
 /// What of a takeoff the shop would not bend, or not so.
 pub fn against_shop(off: &Takeoff, job: &Job, book: &Book) -> Vec<Finding> {
     let mut findings = Vec::new();
-    let limits = &book.bending;
+    let limits = &sensible(&book.bending, &mut findings);
     let diameter = |tube: &str| {
         let entry = book.tubes.iter().find(|entry| entry.name == tube)?;
-        entry
-            .outer_mm
-            .filter(|outer| outer.is_finite() && *outer > 0.0)
+        // What is no glass tube is told of by its entry.
+        entry.outer_mm.filter(|outer| GLASS_MM.contains(outer))
     };
     for (at, (row, taken)) in job.rows.iter().zip(&off.rows).enumerate() {
         // Copies are alike: one of them tells all.
@@ -52,9 +53,25 @@ pub fn against_shop(off: &Takeoff, job: &Job, book: &Book) -> Vec<Finding> {
     findings
 }
 
-/// A limit of so many diameters, if it makes sense.
-fn of_diameters(limit: Option<f64>) -> Option<f64> {
-    limit.filter(|factor| factor.is_finite() && *factor > 0.0)
+/// The limits that make sense; a finding for each that does not, which is not checked.
+fn sensible(set: &Bending, findings: &mut Vec<Finding>) -> Bending {
+    let mut limit = |value: Option<f64>, limit: &Limit| {
+        let value = value?;
+        if limit.holds(value) {
+            return Some(value);
+        }
+        findings.push(finding::no_limit(limit, value));
+        None
+    };
+    Bending {
+        least_radius_diameters: limit(set.least_radius_diameters, &measure::RADIUS_DIAMETERS),
+        least_letter_diameters: limit(set.least_letter_diameters, &measure::LETTER_DIAMETERS),
+        least_spacing_diameters: limit(set.least_spacing_diameters, &measure::SPACING_DIAMETERS),
+        least_electrode_spacing_mm: limit(
+            set.least_electrode_spacing_mm,
+            &measure::ELECTRODE_SPACING_MM,
+        ),
+    }
 }
 
 fn bends(
@@ -63,7 +80,7 @@ fn bends(
     diameter: impl Fn(&str) -> Option<f64>,
     findings: &mut Vec<Finding>,
 ) {
-    let Some(factor) = of_diameters(limits.least_radius_diameters) else {
+    let Some(factor) = limits.least_radius_diameters else {
         return;
     };
     // The tightest bend against its limit, by tube: pieces of a row may be of several.
@@ -114,7 +131,7 @@ fn letters(
     limits: &Bending,
     findings: &mut Vec<Finding>,
 ) {
-    let (Some(factor), Some(outer)) = (of_diameters(limits.least_letter_diameters), outer) else {
+    let (Some(factor), Some(outer)) = (limits.least_letter_diameters, outer) else {
         return;
     };
     // A height that cannot be read or is out of range is told of by the takeoff.
@@ -132,7 +149,7 @@ fn spacing(
     diameter: impl Fn(&str) -> Option<f64>,
     findings: &mut Vec<Finding>,
 ) {
-    let Some(factor) = of_diameters(limits.least_spacing_diameters) else {
+    let Some(factor) = limits.least_spacing_diameters else {
         return;
     };
     let outers: Vec<f64> = pieces
@@ -180,7 +197,7 @@ fn beside(
     diameter: impl Fn(&str) -> Option<f64>,
     findings: &mut Vec<Finding>,
 ) {
-    let Some(factor) = of_diameters(limits.least_spacing_diameters) else {
+    let Some(factor) = limits.least_spacing_diameters else {
         return;
     };
     let mut by_name: BTreeMap<&str, (usize, Vec<&Stroke>)> = BTreeMap::new();
@@ -244,7 +261,7 @@ fn meet(one: &Piece, other: &Piece) -> bool {
 }
 
 fn electrodes(pieces: &[(usize, &Piece)], limits: &Bending, findings: &mut Vec<Finding>) {
-    let Some(least) = of_diameters(limits.least_electrode_spacing_mm) else {
+    let Some(least) = limits.least_electrode_spacing_mm else {
         return;
     };
     let mut ends: Vec<(Point, usize)> = pieces

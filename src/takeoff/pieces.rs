@@ -51,7 +51,7 @@ pub fn takeoff(job: &Job, allowances: &Allowances) -> Takeoff {
         )));
         0.0
     });
-    let longest = sane(allowances.longest_piece_mm, 1.0, 100_000.0).map(Length::from_mm);
+    let longest = sane(allowances.longest_piece_mm, 100.0, 100_000.0).map(Length::from_mm);
     let bent = Bent {
         longest_mm: longest.map(Length::mm),
         crossover_mm,

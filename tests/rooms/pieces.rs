@@ -557,6 +557,24 @@ fn a_stroke_that_turns_back_on_itself_is_a_fold() {
 }
 
 #[test]
+fn a_limit_that_cannot_be_meant_is_told_of_and_not_checked() {
+    let drawing =
+        r#"<path d="M0 0H100V20H0"/><path d="M0 35H100"/><rect x="200" width="90" height="9"/>"#;
+    let odd = Bending {
+        least_radius_diameters: Some(-1.5),
+        least_letter_diameters: Some(f64::INFINITY),
+        least_spacing_diameters: Some(6e-208),
+        least_electrode_spacing_mm: Some(f64::NAN),
+    };
+    assert_snapshot!(against(&art(drawing, Pieces::default()), odd), @r"
+    Look at Job: The tightest radius must be 0.5 to 20 diameters (tighter the glass would run into itself, wider hardly anything could be bent), but is -1.5 diameters: not checked. [shop setting]
+    Look at Job: The least letter height must be 1 to 200 diameters (lower no letter is made, higher hardly any sign), but is inf diameters: not checked. [shop setting]
+    Look at Job: The least spacing of tubes must be 1 to 10 diameters (nearer the tubes touch, further apart they are no letters), but is 0 diameters: not checked. [shop setting]
+    Look at Job: The least distance of electrodes must be 1 to 1000 mm (nearer they touch, further apart few signs have them), but is NaN mm: not checked. [shop setting]
+    ");
+}
+
+#[test]
 fn electrodes_and_crossing_tubes_are_held_against_the_shop() {
     // Ends 30 apart; two lines that cross.
     let drawing =
