@@ -575,7 +575,7 @@ impl Lines {
 #[cfg(test)]
 mod tests {
     use tubewright::book::{OutputEarthing, SupplyEntry, SupplyKind};
-    use tubewright::job::{Row, StrokesRow};
+    use tubewright::job::{Pieces, Row, StrokesRow};
 
     use super::*;
     use crate::scratch::Scratch;
@@ -589,6 +589,11 @@ mod tests {
                 strokes: strokes.to_owned(),
                 tube: tube.clone(),
                 count: 1,
+                // The pole is for no supply: it stays in one.
+                pieces: Pieces {
+                    keep_long: true,
+                    ..Pieces::default()
+                },
                 ..StrokesRow::default()
             })
         };
