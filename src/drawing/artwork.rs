@@ -104,11 +104,13 @@ impl Artwork {
         lengths.fold(0.0, |sum, length| sum + length)
     }
 
-    /// The strokes of one group.
-    pub fn of_group<'a>(&'a self, group: &'a ArtGroup) -> impl Iterator<Item = &'a ArtStroke> {
-        self.strokes
-            .iter()
-            .filter(|stroke| stroke.colour == group.colour && stroke.layer == group.layer)
+    /// The strokes of one group, each with its place in the file, from 0.
+    pub fn of_group<'a>(
+        &'a self,
+        group: &'a ArtGroup,
+    ) -> impl Iterator<Item = (usize, &'a ArtStroke)> {
+        let all = self.strokes.iter().enumerate();
+        all.filter(|(_, stroke)| stroke.colour == group.colour && stroke.layer == group.layer)
     }
 
     /// The strokes sorted by colour and layer, in the order in which the groups begin in the file.

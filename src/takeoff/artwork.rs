@@ -211,10 +211,7 @@ fn strokes(
 ) -> Vec<(String, BezPath)> {
     // From where the drawing begins: far out, as maps are drawn, curves have too few digits.
     let place = Affine::scale(mm_per_unit) * Affine::translate(-art.bounds.origin().to_vec2());
-    let of_group = || {
-        let all = art.strokes.iter().enumerate();
-        all.filter(|(_, stroke)| stroke.colour == group.colour && stroke.layer == group.layer)
-    };
+    let of_group = || art.of_group(group);
     let at_size =
         |(number, stroke): (usize, &ArtStroke)| ((number + 1).to_string(), place * &stroke.path);
     let distance_mm = outline::distance(at, typed, &finding::inset_of(group), findings);
