@@ -51,7 +51,7 @@ fn long_sign() -> String {
     let rows: Vec<serde_json::Value> = (0..10)
         .map(|_| {
             serde_json::json!({
-                "row": "text", "text": "THE QUICK BROWN FOX JUMPS OVER THE LAZY DOG AND THEN SLEEPS",
+                "row": "text", "text": "THE QUICK BROWN FOX JUMPS OVER THE LAZY DOG AND THEN SLUMBERS",
                 "height": "200 mm", "face": "sans", "tube": "12 mm neon clear red", "count": 1,
             })
         })
