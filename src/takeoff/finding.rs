@@ -279,7 +279,7 @@ pub(super) fn too_long(
         Place::Piece(piece_at),
         format!(
             "The piece {}{made} is {column} of glass between its electrodes, longer than the shop \
-             bends in one ({}): kept in one as chosen.",
+             bends in one ({}): it stays in one piece.",
             quoted(label),
             shown(longest)
         ),
@@ -300,7 +300,7 @@ pub(super) fn many_too_long(
         Place::Row(at),
         format!(
             "{many} pieces of this row are longer than the shop bends in one ({}), the longest {} \
-             with {} of glass between its electrodes: kept in one as chosen.",
+             with {} of glass between its electrodes: it stays in one piece.",
             length_shown(longest, Units::Metric),
             quoted(label),
             length_shown(column, Units::Metric),

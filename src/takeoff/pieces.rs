@@ -5,6 +5,7 @@ use kurbo::{Affine, BezPath, Point, Rect};
 use super::assemble::{Bent, assemble};
 use super::drawn::{Drawn, Made};
 use super::route::as_drawn;
+use super::split::SAME_MM;
 use super::{Piece, RowTakeoff, artwork, finding, letters, outline, shape};
 use crate::book::Allowances;
 use crate::job::{Job, Row, StrokesRow};
@@ -141,7 +142,7 @@ impl Takeoff {
             .zip(drawn)
             .filter(|&(at, _)| {
                 let piece = self.pieces.get(at);
-                piece.is_some_and(|piece| piece.column() > longest)
+                piece.is_some_and(|piece| piece.column().mm() > longest.mm() + SAME_MM)
             })
             .collect();
         if long.len() <= TOO_LONG_EACH {
@@ -403,7 +404,7 @@ mod tests {
             said(&off),
             [
                 "The piece “Border, quarter 2”, made 2 times, is 3\u{202f}057 mm of glass between its \
-                 electrodes, longer than the shop bends in one (2\u{202f}700 mm): kept in one as chosen."
+                 electrodes, longer than the shop bends in one (2\u{202f}700 mm): it stays in one piece."
             ]
         );
     }
@@ -453,10 +454,36 @@ mod tests {
             long(&job),
             [
                 "6 pieces of this row are longer than the shop bends in one (2\u{202f}400 mm), the \
-                 longest “M” with 12\u{202f}421 mm of glass between its electrodes: kept in one as \
-                 chosen."
+                 longest “M” with 12\u{202f}421 mm of glass between its electrodes: it stays in \
+                 one piece."
             ]
         );
+    }
+
+    #[test]
+    fn parts_just_as_long_as_the_shop_bends_are_not_too_long() {
+        for parts in [2, 3, 7] {
+            let row = Row::Strokes(StrokesRow {
+                label: "Bar".to_owned(),
+                strokes: format!("{parts} x 700.1 mm"),
+                ..StrokesRow::default()
+            });
+            let job = Job {
+                rows: vec![row],
+                ..Job::default()
+            };
+            let allowances = Allowances {
+                longest_piece_mm: 700.1,
+                ..Allowances::default()
+            };
+            let off = takeoff(&job, &allowances);
+            assert_eq!(off.pieces.len(), parts);
+            let said = off
+                .findings
+                .iter()
+                .filter(|f| f.says.contains("stays in one"));
+            assert_eq!(said.count(), 0, "{:?}", off.findings);
+        }
     }
 
     #[test]

@@ -12,7 +12,7 @@ const MOST_PLACES: usize = 1_200;
 /// Good places from which the farthest reach is tried.
 const MOST_REACHED: usize = 60;
 /// Lengths that differ by less are one, in millimetres.
-const SAME_MM: f64 = 1e-6;
+pub(super) const SAME_MM: f64 = 1e-6;
 
 /// A place to cut a run at: after a strand, or on it so far along as the glass runs.
 #[derive(Debug, Clone, Copy, PartialEq)]
