@@ -4,6 +4,7 @@
 //! millimetres.
 
 mod shape;
+mod wiring;
 
 use std::sync::Arc;
 
@@ -14,14 +15,15 @@ use serde::{Deserialize, Deserializer, Serialize, Serializer};
 use crate::book::Dampness;
 
 pub use shape::{Shape, ShapeRow};
+pub use wiring::{CircuitLeads, Feed, LeadRun, Wiring};
 
 /// What the `tubewright` field of a job file says.
 pub const KIND: &str = "job";
 /// The newest version of the job file that this program knows. A job is written in the oldest version
 /// that can hold it, so that an older program still opens what it understands: 2 brought artwork and
 /// the layout of letters; 3 brought shapes, groups, choices of pieces, the sign's outline, fonts and
-/// insets.
-pub const VERSION: u32 = 3;
+/// insets; 4 brought leads and the feed.
+pub const VERSION: u32 = 4;
 /// The oldest version that is read.
 const OLDEST: u32 = 1;
 
@@ -62,6 +64,12 @@ pub struct Job {
     /// The size the whole sign has to stay inside, where one is given.
     #[serde(default, skip_serializing_if = "Option::is_none")]
     pub outline: Option<Outline>,
+    /// How the leads of its circuits are run.
+    #[serde(default, skip_serializing_if = "Wiring::is_usual")]
+    pub wiring: Wiring,
+    /// What feeds its supplies.
+    #[serde(default, skip_serializing_if = "Feed::is_usual")]
+    pub feed: Feed,
 }
 
 /// The outer size of a sign: of its board, box or the space on the wall. As typed.
@@ -91,6 +99,8 @@ impl Default for Job {
             wish: Wish::default(),
             site: Site::default(),
             outline: None,
+            wiring: Wiring::default(),
+            feed: Feed::default(),
         }
     }
 }
@@ -673,4 +683,9 @@ fn oldest(job: &Job) -> u32 {
         .max(if job.artwork.is_empty() { OLDEST } else { 2 })
         .max(if job.fonts.is_empty() { OLDEST } else { 3 })
         .max(if job.outline.is_none() { OLDEST } else { 3 })
+        .max(if job.wiring.is_usual() && job.feed.is_usual() {
+            OLDEST
+        } else {
+            4
+        })
 }

@@ -3,6 +3,7 @@
 //! Entries are as typed, possibly incomplete or contradictory; the rooms [`crate::supply`] and
 //! [`crate::tube`] check them. A figure that is not known is absent, never zero.
 
+mod parts;
 mod sheet;
 mod starter;
 mod text;
@@ -14,6 +15,7 @@ use serde::{Deserialize, Serialize};
 
 use crate::rules::RuleSet;
 
+pub use parts::{CableEntry, ChartLength, ElectrodeEntry, Reading};
 pub use sheet::{Sheet, read_supplies, read_tubes, write_supplies, write_tubes};
 pub use starter::starter;
 pub use text::text_of;
@@ -22,8 +24,9 @@ pub(crate) use text::{json_trouble, without_mark};
 /// What the `tubewright` field of a book file says.
 pub const KIND: &str = "book";
 /// The newest version of the book file that this program knows. A book is written in the oldest
-/// version that can hold it: 2 brought the limits of bending.
-pub const VERSION: u32 = 2;
+/// version that can hold it: 2 brought the limits of bending; 3 brought electrodes, cables, bench
+/// readings, length charts and the rules of leads and feeds.
+pub const VERSION: u32 = 3;
 /// The oldest version that is read.
 const OLDEST: u32 = 1;
 
@@ -46,6 +49,12 @@ pub struct Book {
     /// Tube types the shop bends.
     #[serde(default)]
     pub tubes: Vec<TubeEntry>,
+    /// Electrodes the shop uses.
+    #[serde(default, skip_serializing_if = "Vec::is_empty")]
+    pub electrodes: Vec<ElectrodeEntry>,
+    /// High-voltage cables the shop uses.
+    #[serde(default, skip_serializing_if = "Vec::is_empty")]
+    pub cables: Vec<CableEntry>,
     /// Rule sets a job can be held against.
     #[serde(default)]
     pub rule_sets: Vec<RuleSet>,
@@ -72,6 +81,8 @@ impl Default for Book {
             note: String::new(),
             supplies: Vec::new(),
             tubes: Vec::new(),
+            electrodes: Vec::new(),
+            cables: Vec::new(),
             rule_sets: Vec::new(),
             rates: Rates::default(),
             allowances: Allowances::default(),
@@ -164,6 +175,12 @@ pub struct SupplyEntry {
     pub stock: Option<u32>,
     /// Anything else.
     pub note: String,
+    /// Longest lead, supply to first electrode, that the plate allows.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub longest_lead_mm: Option<f64>,
+    /// Longest lengths of tube types that the plate or its leaflet allows.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub chart: Vec<ChartLength>,
 }
 
 /// The gas, as far as its electrical behaviour goes.
@@ -209,6 +226,16 @@ pub struct TubeEntry {
     pub price_per_m: Option<Decimal>,
     /// Where the figures came from, in the shop's words.
     pub source: String,
+    /// Its electrodes, by their name in the book; empty: not given.
+    #[serde(skip_serializing_if = "String::is_empty")]
+    pub electrode: String,
+    /// Readings of such tubes at the shop's own bench; with enough of them, the volts are fitted to
+    /// them.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub readings: Vec<Reading>,
+    /// When they were taken, as typed.
+    #[serde(skip_serializing_if = "String::is_empty")]
+    pub measured_on: String,
 }
 
 /// Prices and minutes for the first sum.
@@ -367,13 +394,33 @@ pub fn read(text: &str) -> Result<Book, String> {
 
 /// The book as the text of a file, of the oldest version that can hold it.
 pub fn write(book: &Book) -> String {
-    let plain = book.bending.is_usual() && is_zero(&book.allowances.crossover_mm);
     let book = &Book {
-        version: if plain { OLDEST } else { VERSION },
+        version: oldest(book),
         ..book.clone()
     };
     // Floats that are not finite cannot be typed or read in; JSON would write them as null.
     serde_json::to_string_pretty(book).unwrap_or_default()
+}
+
+/// The oldest version that can hold a book.
+fn oldest(book: &Book) -> u32 {
+    let wired = |supply: &SupplyEntry| supply.longest_lead_mm.is_some() || !supply.chart.is_empty();
+    let measured = |tube: &TubeEntry| {
+        !tube.electrode.is_empty() || !tube.readings.is_empty() || !tube.measured_on.is_empty()
+    };
+    let mut rules = book.rule_sets.iter().flat_map(|set| &set.rules);
+    if !book.electrodes.is_empty()
+        || !book.cables.is_empty()
+        || book.supplies.iter().any(wired)
+        || book.tubes.iter().any(measured)
+        || rules.any(|rule| rule.limits.of_wiring())
+    {
+        3
+    } else if !book.bending.is_usual() || !is_zero(&book.allowances.crossover_mm) {
+        2
+    } else {
+        OLDEST
+    }
 }
 
 /// Whether a text is JSON at all, of the wanted kind and of a version this program knows.

@@ -99,6 +99,30 @@ pub enum Limits {
     TripCurrent,
     /// Outputs are not joined in series or in parallel (no value).
     OutputsApart,
+    /// A high-voltage lead from supply to first electrode, however it is run, in millimetres, at most.
+    Lead,
+    /// The same in metal conduit.
+    LeadInMetal,
+    /// The same in conduit that is not metal.
+    LeadInPlastic,
+    /// Distance of conduit that is not metal from earthed parts, in millimetres, at least, up to an
+    /// output frequency of 100 Hz.
+    PlasticFromEarthed,
+    /// The same above 100 Hz.
+    PlasticFromEarthedAbove100Hz,
+    /// Distance of conductors from each other and from all but their insulators and tubes, outside
+    /// metal conduit, in millimetres, at least.
+    ConductorsApart,
+    /// Rated current of a branch circuit that feeds luminous tubes only, in amperes, at most.
+    TubeCircuit,
+    /// Rated current of any other branch circuit of signs, in amperes, at most.
+    OtherCircuit,
+    /// Rated current of the branch circuit of an outlet the code asks for, in amperes, at least.
+    OutletCircuit,
+    /// Load that such an outlet is counted with, in volt-amperes, at least.
+    OutletLoad,
+    /// What a continuous load is counted as, in percent of itself, at least.
+    ContinuousLoad,
 }
 
 impl Limits {
@@ -110,7 +134,15 @@ impl Limits {
             | Self::VoltsToEarth
             | Self::EarthFaultProtection => "V",
             Self::RatedCurrent | Self::TripCurrent => "mA",
-            Self::RatedVoltAmperes => "VA",
+            Self::RatedVoltAmperes | Self::OutletLoad => "VA",
+            Self::Lead
+            | Self::LeadInMetal
+            | Self::LeadInPlastic
+            | Self::PlasticFromEarthed
+            | Self::PlasticFromEarthedAbove100Hz
+            | Self::ConductorsApart => "mm",
+            Self::TubeCircuit | Self::OtherCircuit | Self::OutletCircuit => "A",
+            Self::ContinuousLoad => "%",
             Self::OpenCircuitProtection | Self::OutputsApart => "",
         }
     }
@@ -140,7 +172,54 @@ impl Limits {
                 EarthWord::Ground => "trip current of the ground-fault protection, at most",
             },
             Self::OutputsApart => "outputs not in series, not in parallel",
+            Self::Lead => "each high-voltage lead, supply to first electrode, at most",
+            Self::LeadInMetal => {
+                "each high-voltage lead in metal conduit, supply to first electrode, at most"
+            }
+            Self::LeadInPlastic => {
+                "each high-voltage lead in non-metallic conduit, supply to first electrode, at most"
+            }
+            Self::PlasticFromEarthed => match word {
+                EarthWord::Earth => {
+                    "non-metallic conduit from earthed parts, output up to 100 Hz, at least"
+                }
+                EarthWord::Ground => {
+                    "non-metallic conduit from grounded parts, output up to 100 Hz, at least"
+                }
+            },
+            Self::PlasticFromEarthedAbove100Hz => match word {
+                EarthWord::Earth => {
+                    "non-metallic conduit from earthed parts, output above 100 Hz, at least"
+                }
+                EarthWord::Ground => {
+                    "non-metallic conduit from grounded parts, output above 100 Hz, at least"
+                }
+            },
+            Self::ConductorsApart => {
+                "high-voltage conductors outside metal conduit from all but their supports, at least"
+            }
+            Self::TubeCircuit => "branch circuit of luminous tubes only, at most",
+            Self::OtherCircuit => "branch circuit of any other sign loads, at most",
+            Self::OutletCircuit => "branch circuit of a required sign outlet, at least",
+            Self::OutletLoad => "a required sign outlet is counted with, at least",
+            Self::ContinuousLoad => "sign loads, as continuous loads, are counted with, at least",
         }
+    }
+
+    /// Whether it came with the rules of leads and feeds (book version 3).
+    pub(crate) const fn of_wiring(self) -> bool {
+        !matches!(
+            self,
+            Self::NoLoadVolts
+                | Self::NoLoadVoltsAbove
+                | Self::VoltsToEarth
+                | Self::RatedCurrent
+                | Self::RatedVoltAmperes
+                | Self::EarthFaultProtection
+                | Self::OpenCircuitProtection
+                | Self::TripCurrent
+                | Self::OutputsApart
+        )
     }
 
     /// Whether the rule needs a figure to be checked.

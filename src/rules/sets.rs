@@ -47,6 +47,58 @@ pub fn nec() -> RuleSet {
                 ReadInText,
             ),
             rule(Limits::OutputsApart, None, "600.23(E)", ReadInText),
+            // Either unit complies (90.9(D)), so of each pair the laxer figure is the limit: 20 ft
+            // and not 6 m, 50 ft and not 15 m, 1-3/4 in and not 45 mm, but 38 mm and not 1-1/2 in.
+            rule(
+                Limits::LeadInMetal,
+                Some(6_096.0),
+                "600.32(J)(1), 20 ft or 6 m",
+                ReadInText,
+            ),
+            rule(
+                Limits::LeadInPlastic,
+                Some(15_240.0),
+                "600.32(J)(1), 50 ft or 15 m",
+                ReadInText,
+            ),
+            rule(
+                Limits::PlasticFromEarthed,
+                Some(38.0),
+                "600.32(A)(4), 1-1/2 in or 38 mm",
+                ReadInText,
+            ),
+            rule(
+                Limits::PlasticFromEarthedAbove100Hz,
+                Some(44.45),
+                "600.32(A)(4), 1-3/4 in or 45 mm",
+                ReadInText,
+            ),
+            rule(
+                Limits::ConductorsApart,
+                Some(38.0),
+                "600.32(E), 1-1/2 in or 38 mm",
+                ReadInText,
+            ),
+            rule(
+                Limits::TubeCircuit,
+                Some(30.0),
+                "600.5(B)(1) of 2017, 600.5(C)(1) of 2020",
+                ReadInText,
+            ),
+            rule(
+                Limits::OtherCircuit,
+                Some(20.0),
+                "600.5(B)(2) of 2017, 600.5(C)(2) of 2020",
+                ReadInText,
+            ),
+            rule(Limits::OutletCircuit, Some(20.0), "600.5(A)", ReadInText),
+            rule(Limits::OutletLoad, Some(1_200.0), "220.14(F)", ReadInText),
+            rule(
+                Limits::ContinuousLoad,
+                Some(125.0),
+                "600.5(B) of 2017, 600.5(C) of 2020, 210.20(A)",
+                ReadInText,
+            ),
         ],
     }
 }
@@ -85,6 +137,7 @@ pub fn iec_en() -> RuleSet {
             ),
             rule(Limits::VoltsToEarth, None, "EN 50107-1", ToBeFilledIn),
             rule(Limits::TripCurrent, None, "EN 50107-2", ToBeFilledIn),
+            rule(Limits::Lead, None, "EN 50107-1", ToBeFilledIn),
         ],
     }
 }

@@ -3,7 +3,7 @@
 use super::{Rating, earthing_words};
 use crate::book::{Dampness, SupplyEntry, SupplyKind};
 use crate::job::Site;
-use crate::measure::{grouped, volts_shown};
+use crate::measure::{grouped, quoted, volts_shown};
 use crate::rules::{Finding, Grade, Limits, Place, RuleSet, Source, Standing};
 
 /// Mains volts may lie this far from the plate's, either way (common supply tolerance, shop's to
@@ -43,6 +43,7 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
         ("Output frequency", entry.output_hertz, 1_000_000.0, "Hz"),
         ("Least load", entry.least_load_percent, 100.0, "%"),
         ("Greatest load", entry.most_load_percent, 100.0, "%"),
+        ("Longest lead", entry.longest_lead_mm, 100_000.0, "mm"),
     ] {
         if let Some(value) = value
             && !(value > 0.0 && value <= most)
@@ -50,6 +51,22 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
             stop(format!(
                 "{name} must be above 0 and at most {most} {unit}, but is {value}."
             ));
+        }
+    }
+    for length in &entry.chart {
+        for (name, value) in [
+            ("longest length", Some(length.longest_mm)),
+            ("length of a pair of electrodes", length.pair_mm),
+        ] {
+            if let Some(value) = value
+                && !(value > 0.0 && value <= 1_000_000.0)
+            {
+                stop(format!(
+                    "The {name} of {} in its length chart must be above 0 and at most 1000000 mm, but \
+                     is {value}.",
+                    quoted(&length.tube)
+                ));
+            }
         }
     }
     if entry.no_load_volts.is_none() {
@@ -224,8 +241,20 @@ pub(super) fn rules(rating: &Rating, set: &RuleSet) -> Vec<Finding> {
                 )),
                 _ => None,
             },
-            // Held by the plan: no circuit ever has more than one supply. Nothing of one rating.
-            Limits::OutputsApart => None,
+            // Outputs apart is held by the plan: no circuit ever has more than one supply. The rest is of
+            // leads and feeds, not of a rating.
+            Limits::OutputsApart
+            | Limits::Lead
+            | Limits::LeadInMetal
+            | Limits::LeadInPlastic
+            | Limits::PlasticFromEarthed
+            | Limits::PlasticFromEarthedAbove100Hz
+            | Limits::ConductorsApart
+            | Limits::TubeCircuit
+            | Limits::OtherCircuit
+            | Limits::OutletCircuit
+            | Limits::OutletLoad
+            | Limits::ContinuousLoad => None,
         });
     }
     if !rating.earth_fault_protection && set.rule(Limits::EarthFaultProtection).is_none() {

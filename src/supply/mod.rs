@@ -6,9 +6,9 @@ mod finding;
 
 use rust_decimal::Decimal;
 
-use crate::book::{Dampness, OutputEarthing, SupplyEntry, SupplyKind};
+use crate::book::{ChartLength, Dampness, OutputEarthing, SupplyEntry, SupplyKind};
 use crate::job::Site;
-use crate::measure::{Milliamps, Volts};
+use crate::measure::{Length, Milliamps, Volts};
 use crate::rules::{EarthWord, Finding, RuleSet};
 
 pub(crate) use finding::{blanks, one_mains};
@@ -44,6 +44,16 @@ pub struct Rating {
     pub plate_window: Option<(f64, f64)>,
     /// Mains volts it is made for.
     pub input_volts: Option<f64>,
+    /// Mains frequency it is made for.
+    pub input_hertz: Option<f64>,
+    /// Output frequency: for iron that of the mains it is made for, where no other is given.
+    pub output_hertz: Option<f64>,
+    /// Trip time of its earth-fault protection, seconds.
+    pub trip_seconds: Option<f64>,
+    /// Longest lead, supply to first electrode, that the plate allows.
+    pub longest_lead: Option<Length>,
+    /// Longest lengths of tube types that the plate allows.
+    pub chart: Vec<ChartLength>,
     /// The wettest place it is made for.
     pub place: Dampness,
     /// Price of one.
@@ -89,6 +99,14 @@ impl Rating {
                 .map(share)
                 .zip(entry.most_load_percent.map(share)),
             input_volts: entry.input_volts,
+            input_hertz: entry.input_hertz,
+            output_hertz: entry.output_hertz.or(match kind {
+                SupplyKind::Iron => entry.input_hertz,
+                SupplyKind::Electronic => None,
+            }),
+            trip_seconds: entry.trip_seconds,
+            longest_lead: entry.longest_lead_mm.map(Length::from_mm),
+            chart: entry.chart.clone(),
             place: entry.place,
             price: entry.price,
         })

@@ -171,8 +171,8 @@ fn job_files_that_cannot_be_read() {
     assert_snapshot!(error("OPEN"), @"This is not a job file: expected JSON written by this program, but no value stands there (line 1, column 1).");
     assert_snapshot!(error(r#"{"tubewright": "book", "version": 1, "name": "x"}"#), @"Expected a job file, but this is a “book” file.");
     assert_snapshot!(error(r#"{"tubewright": "<b>", "version": 1, "name": "x"}"#), @"Expected a job file, but this is a “<b>” file.");
-    assert_snapshot!(error(r#"{"tubewright": "job", "version": 99, "name": "x"}"#), @"This job file has version 99; this program knows versions up to 3. Open it with a newer program.");
-    assert_snapshot!(error(r#"{"tubewright": "job", "version": "1", "name": "x"}"#), @"This job file names no version that exists; this program knows versions up to 3.");
+    assert_snapshot!(error(r#"{"tubewright": "job", "version": 99, "name": "x"}"#), @"This job file has version 99; this program knows versions up to 4. Open it with a newer program.");
+    assert_snapshot!(error(r#"{"tubewright": "job", "version": "1", "name": "x"}"#), @"This job file names no version that exists; this program knows versions up to 4.");
     assert_snapshot!(error(r#"{"tubewright": "job", "version": 1}"#), @"This job file cannot be read: “name” is missing (line 1, column 35).");
     assert_snapshot!(error(r#"{"tubewright": "job", "version": 1, "name": "x", "price": 1}"#), @"This job file cannot be read: unknown field “price” (line 1, column 56).");
     assert_snapshot!(
@@ -245,5 +245,18 @@ fn choices_of_pieces_are_kept_and_ask_for_the_version_that_knows_them() {
         }),
     ] {
         assert!(text.contains("\"version\": 3"), "{text}");
+    }
+}
+
+#[test]
+fn leads_and_the_feed_are_kept_and_ask_for_the_version_that_knows_them() {
+    let mut wired = Job::default();
+    wired.wiring.cable = "GTO".to_owned();
+    let mut fed = Job::default();
+    fed.feed.circuit_amps = Some(20.0);
+    for job in [wired, fed] {
+        let text = job::write(&job);
+        assert!(text.contains("\"version\": 4"), "{text}");
+        assert_eq!(job::read(&text), Ok(job));
     }
 }

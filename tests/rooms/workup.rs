@@ -774,6 +774,7 @@ fn a_rule_without_a_figure_is_never_taken_as_met() {
     assert_snapshot!(unchecked(&job, &book()), @r#"
     look Rules("IEC/EN 1 to 10 kV"): Not checked: volts to earth at any terminal. No confirmed figure is known here: take it from the official text and fill it in, in the shop book.
     look Rules("IEC/EN 1 to 10 kV"): Not checked: trip current of the earth-fault protection. No confirmed figure is known here: take it from the official text and fill it in, in the shop book.
+    look Rules("IEC/EN 1 to 10 kV"): Not checked: each high-voltage lead, supply to first electrode. No confirmed figure is known here: take it from the official text and fill it in, in the shop book.
     "#);
 }
 
