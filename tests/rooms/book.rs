@@ -664,7 +664,7 @@ fn what_wires_and_measures_is_kept_and_asks_for_the_version_that_knows_it() {
     };
     with(|book| {
         book.electrodes
-            .push(tubewright::book::ElectrodeEntry::default())
+            .push(tubewright::book::ElectrodeEntry::default());
     });
     with(|book| book.cables.push(tubewright::book::CableEntry::default()));
     with(|book| book.tubes[0].electrode = "shell".to_owned());
