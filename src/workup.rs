@@ -6,9 +6,9 @@
 use std::collections::HashSet;
 
 use crate::book::Book;
-use crate::circuit::Assessment;
+use crate::circuit::{Assessment, Profile, Protection, profile, protect};
 use crate::job::Job;
-use crate::measure::{Length, quoted, small_first};
+use crate::measure::{Length, Milliamps, quoted, small_first};
 use crate::plan::{self, Candidate, Task};
 use crate::quote::{self, GlassPart, Parts, Quote};
 use crate::rules::{EarthWord, Finding, Grade, Place, RuleSet, Source};
@@ -65,6 +65,10 @@ pub struct CircuitWork {
     pub supply: Rating,
     /// Worked up.
     pub assessment: Assessment,
+    /// Volts to earth along it.
+    pub profile: Profile,
+    /// What its supply's protection sees of it, and what it cannot.
+    pub protection: Protection,
     /// Glass column of all its pieces.
     pub column: Length,
     /// The next smaller supply of the book by name, and what it fails by.
@@ -179,7 +183,28 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         .enumerate()
         .map(|(number, circuit)| {
             let rating = candidates[circuit.candidate].rating.clone();
+            let first_string =
+                circuit.second_from.unwrap_or(circuit.pieces.end) - circuit.pieces.start;
+            let string = &pieces[circuit.pieces.clone()];
+            let profile = profile(
+                string,
+                first_string,
+                &circuit.assessment,
+                &rating,
+                job.site.cold,
+            );
+            let protection = protect(
+                string,
+                &circuit.assessment,
+                &profile,
+                &rating,
+                Milliamps::ZERO,
+                rules
+                    .as_ref()
+                    .map_or_else(EarthWord::default, |rules| rules.earth_word),
+            );
             let mut found = circuit.assessment.findings.clone();
+            found.extend(protection.findings.iter().cloned());
             found.extend(rules.iter().flat_map(|rules| rating.against_rules(rules)));
             found.extend(rating.against_site(&job.site));
             found.extend(over_plate(&rating, circuit.assessment.input_va));
@@ -189,12 +214,10 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
             gravest_first(&mut found);
             findings.extend(found.iter().cloned());
             CircuitWork {
-                first_string: circuit.second_from.unwrap_or(circuit.pieces.end)
-                    - circuit.pieces.start,
-                column: pieces[circuit.pieces.clone()]
-                    .iter()
-                    .map(|(p, _)| p.column())
-                    .sum(),
+                first_string,
+                column: string.iter().map(|(p, _)| p.column()).sum(),
+                profile,
+                protection,
                 pieces: place(circuit.pieces),
                 supply: rating,
                 smaller: circuit

@@ -31,6 +31,9 @@ pub struct Half {
     pub at_low_mains: Operating,
     /// At 110 % of the input volts.
     pub at_high_mains: Operating,
+    /// Where it runs if its tubes take less, and if they take more, by as much as their volts may be
+    /// off; None where they were entered without saying how well they are known.
+    pub band: Option<(Operating, Operating)>,
 }
 
 /// A circuit worked up.
@@ -120,6 +123,7 @@ pub fn assess(loads: &[&Load], rating: &Rating, loading: &Loading) -> Assessment
                 strike_from: nominal.no_load() * std::f64::consts::SQRT_2,
                 at_low_mains: operate(load, &curve(1.0 - MAINS_SPREAD)),
                 at_high_mains: operate(load, &curve(1.0 + MAINS_SPREAD)),
+                band: None,
             };
             let low = curve(1.0 - MAINS_SPREAD);
             half_findings(&half, load, &window, &low, loading, rating, &mut findings);

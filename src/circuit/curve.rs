@@ -4,7 +4,7 @@
 //! The square-wave model of a leakage transformer with an arc load, derived from `X di/dθ = V_m sin θ
 //! − U` with half-wave symmetry, and checked against ngspice 39 (`tests/reference/operating_point`).
 
-use std::f64::consts::{PI, SQRT_2};
+use std::f64::consts::{FRAC_PI_2, PI, SQRT_2};
 
 use crate::book::SupplyKind;
 use crate::measure::{Milliamps, Volts};
@@ -49,17 +49,15 @@ pub fn iron(r: f64) -> Waveform {
     with_gaps(r / SQRT_2)
 }
 
-/// The waveform with gaps; `u` = running volts over no-load peak.
-///
-/// Conduction starts at θ₀, `sin θ₀ = u`, and with φ = θ − θ₀ the current is
-/// `i = (V_m / X) (cos θ₀ − cos θ − u φ)` until it comes back to zero before θ₀ + π.
-fn with_gaps(u: f64) -> Waveform {
+/// Where conduction starts after the no-load volts pass zero, 0 to π/2, and for how long it goes on, at
+/// most π, in radians, at `r` as in [`iron`].
+pub(super) fn conduction(r: f64) -> (f64, f64) {
+    let u = r / SQRT_2;
+    if r <= CONTINUOUS_TO {
+        return ((FRAC_PI_2 * u).acos(), PI);
+    }
     if u >= 1.0 {
-        return Waveform {
-            rms: 0.0,
-            mean: 0.0,
-            gaps: true,
-        };
+        return (FRAC_PI_2, 0.0);
     }
     let start = u.asin();
     let cos_start = start.cos();
@@ -76,6 +74,23 @@ fn with_gaps(u: f64) -> Waveform {
         }
         end -= step;
     }
+    (start, end)
+}
+
+/// The waveform with gaps; `u` = running volts over no-load peak.
+///
+/// Conduction starts at θ₀, `sin θ₀ = u`, and with φ = θ − θ₀ the current is
+/// `i = (V_m / X) (cos θ₀ − cos θ − u φ)` until it comes back to zero before θ₀ + π.
+fn with_gaps(u: f64) -> Waveform {
+    if u >= 1.0 {
+        return Waveform {
+            rms: 0.0,
+            mean: 0.0,
+            gaps: true,
+        };
+    }
+    let (start, end) = conduction(u * SQRT_2);
+    let cos_start = start.cos();
     // Integrals of i and i² over 0..end, i = a − cos θ − u φ with a = cos θ₀, written out.
     let theta = start + end;
     let (sin_s, cos_s, sin_e, cos_e) = (start.sin(), cos_start, theta.sin(), theta.cos());
@@ -203,8 +218,6 @@ impl Curve {
 
 #[cfg(test)]
 mod tests {
-    use std::f64::consts::FRAC_PI_2;
-
     use super::*;
 
     #[test]

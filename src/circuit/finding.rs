@@ -2,11 +2,17 @@
 
 use super::assess::{Assessment, Half, STRIKE_LOOK};
 use super::load::Operating;
+use super::profile::Spot;
+use super::protection::{FaultMap, Unseen};
 use super::window::{Window, Zone};
-use crate::book::OutputEarthing;
-use crate::measure::{Milliamps, Volts, small_first, told_from, volts_shown};
-use crate::rules::{Finding, Grade, Place, Source};
+use crate::book::{OutputEarthing, SupplyKind};
+use crate::measure::{
+    Milliamps, Volts, milliamps_shown, quoted, small_first, told_from, volts_shown,
+};
+use crate::rules::{EarthWord, Finding, Grade, Place, Source};
 use crate::supply::Rating;
+use crate::takeoff::Piece;
+use crate::tube::TubeType;
 
 fn found(grade: Grade, says: String, source: Source) -> Finding {
     Finding::new(grade, Place::Job, says, source)
@@ -248,11 +254,263 @@ pub(crate) fn model_off(worked: &Assessment, off: &str) -> Option<Finding> {
 
 const OVERLOADED: &str = "Overloaded: ";
 
+/// A place on a string in words: `a third into “P” (piece 2)` has its share as a figure.
+fn spot_words(spot: Spot, pieces: &[(&Piece, &TubeType)]) -> String {
+    let label = pieces
+        .get(spot.piece)
+        .map_or_else(String::new, |(piece, _)| quoted(&piece.label));
+    let number = spot.piece + 1;
+    match spot.along {
+        along if along < 0.005 => format!("the near end of {label} (piece {number})"),
+        along if along > 0.995 => format!("the far end of {label} (piece {number})"),
+        along => format!("{:.0} % into {label} (piece {number})", along * 100.0),
+    }
+}
+
+/// A stretch of a string in words, from lead A.
+fn stretch_words(unseen: &Unseen, pieces: &[(&Piece, &TubeType)]) -> String {
+    format!(
+        "from {} to {}, counted from lead A",
+        spot_words(unseen.from_spot, pieces),
+        spot_words(unseen.to_spot, pieces)
+    )
+}
+
+/// From this share of the string on, what is unseen needs a person's decision. Our own choice, no
+/// source.
+const UNSEEN_LOOK: f64 = 0.5;
+
+pub(super) fn unseen(unseen: &Unseen, pieces: &[(&Piece, &TubeType)], word: EarthWord) -> Finding {
+    let percent = unseen.share() * 100.0;
+    let grade = if unseen.share() >= UNSEEN_LOOK {
+        Grade::Look
+    } else {
+        Grade::Note
+    };
+    found(
+        grade,
+        format!(
+            "Sensing cannot see a fault to {} {} ({percent:.0} % of the string): insulate and \
+             inspect there.",
+            word.word(),
+            stretch_words(unseen, pieces)
+        ),
+        Source::model(),
+    )
+    .with(percent, UNSEEN_LOOK * 100.0, "%")
+}
+
+/// Two unequal strings: what the mid-point carries with no fault, against the trip current.
+pub(super) fn standing(map: &FaultMap, word: EarthWord) -> Option<Finding> {
+    let trip = map.trip?;
+    let standing = map.standing + map.taken_off;
+    (map.standing.ma() > 0.0 && standing >= trip * 0.5).then(|| {
+        found(
+            Grade::Look,
+            format!(
+                "The two strings are unequal: with no fault the mid-point of the winding carries {} \
+                 mA, its leads' leakage counted in, of the {} mA at which {}-fault sensing trips. \
+                 It may switch off a sound sign; balance the strings.",
+                told_from(standing.ma(), trip.ma(), 1),
+                trip.ma(),
+                word.word()
+            ),
+            Source::model(),
+        )
+        .with(standing.ma(), trip.ma(), "mA")
+    })
+}
+
+pub(super) fn no_trip(word: EarthWord) -> Finding {
+    found(
+        Grade::Note,
+        format!(
+            "The trip current of the {}-fault protection is not in the shop book: where it cannot see \
+             a fault is not worked out.",
+            word.word()
+        ),
+        Source::entry("the supply's entry"),
+    )
+}
+
+/// What a fault to earth does on this output, with its caption.
+pub(super) fn earth_fault_says(
+    rating: &Rating,
+    map: Option<&FaultMap>,
+    pieces: &[(&Piece, &TubeType)],
+    word: EarthWord,
+) -> (String, String) {
+    let earth = word.word();
+    let caption = match word {
+        EarthWord::Earth => "Earth fault",
+        EarthWord::Ground => "Ground fault",
+    };
+    let short = milliamps_shown(rating.short_circuit);
+    let trips = match (rating.earth_fault_protection, rating.trip) {
+        (true, Some(trip)) => {
+            let time = rating
+                .trip_seconds
+                .map_or_else(String::new, |seconds| format!(" within {seconds} s"));
+            format!(
+                "Switches off on a fault to {earth} from {} mA{time}.",
+                trip.ma()
+            )
+        }
+        (true, None) => {
+            format!("Switches off on a fault to {earth}; its trip current is not in the shop book.")
+        }
+        (false, _) => format!("No {earth}-fault protection: nothing switches off."),
+    };
+    let what = match rating.earthing {
+        OutputEarthing::MidPoint | OutputEarthing::MidPointReturn => match map {
+            Some(map) => mid_point_says(rating, map, pieces, word),
+            None => format!(
+                "A fault to {earth} at a lead drives up to the short-circuit current, {short}, \
+                 through it; one in the middle of the string next to nothing."
+            ),
+        },
+        OutputEarthing::OneEnd => format!(
+            "A fault to {earth} shorts the tubes between it and the {} end; those between the live \
+             lead and the fault go on burning with up to {short}. Near the {} end it carries hardly \
+             more than the tubes did, and there are hardly any volts for it: whether the protection \
+             tells it from the running current is for its plate to say.",
+            word.joined(),
+            word.joined(),
+        ),
+        OutputEarthing::Isolated => format!(
+            "A first fault to {earth} drives only the leakage of leads and winding: the sign burns on, \
+             nothing in a mid-point can see it, and the far lead then stands at up to {} to {earth}. \
+             A second one shorts the tubes between the two.",
+            volts_shown(rating.no_load)
+        ),
+    };
+    (caption.to_owned(), format!("{trips} {what}"))
+}
+
+fn mid_point_says(
+    rating: &Rating,
+    map: &FaultMap,
+    pieces: &[(&Piece, &TubeType)],
+    word: EarthWord,
+) -> String {
+    let earth = word.word();
+    let mut says = Vec::new();
+    match (&map.unseen, map.trip) {
+        (Some(unseen), _) => {
+            says.push(format!(
+                "A fault {} gives the mid-point too little: {:.0} % of the string is unseen.",
+                stretch_words(unseen, pieces),
+                unseen.share() * 100.0
+            ));
+            if let Some(widest) = &map.widest {
+                says.push(format!(
+                    "With mains 10 % low or high, or tubes at the ends of what is known of their \
+                     volts, it is up to {:.0} %.",
+                    widest.share() * 100.0
+                ));
+            }
+            says.push(format!(
+                "A lighter string widens it ({:.0} % at four fifths of these volts), a lower trip \
+                 current narrows it ({:.0} % at half).",
+                map.share_if_lighter * 100.0,
+                map.share_if_half_trip * 100.0
+            ));
+            if map.taken_off.ma() > 0.0 {
+                says.push(format!(
+                    "The leads leak {} unlike each other, which may work against the fault's \
+                     current and is taken off it; with equal leads it is {:.0} %.",
+                    milliamps_shown(map.taken_off),
+                    map.share_if_even_leads * 100.0
+                ));
+            }
+        }
+        (None, Some(_)) => says.push(format!(
+            "A fault to {earth} anywhere on the string gives the mid-point more than that, as far as \
+             the model goes."
+        )),
+        (None, None) => says.push(
+            "One near the middle of the string gives the mid-point next to nothing: no trip current \
+             sees it there."
+                .to_owned(),
+        ),
+    }
+    if rating.earthing == OutputEarthing::MidPointReturn {
+        says.push(
+            "Taken as sensed in the mid-point of the winding. A supply that senses what flows to its \
+             case apart from the return sees more; its plate must say so."
+                .to_owned(),
+        );
+    }
+    if map.estimate {
+        says.push(
+            "An estimate: the halves of an electronic supply are taken to follow its droop line, in \
+             phase."
+                .to_owned(),
+        );
+    }
+    says.join(" ")
+}
+
+/// What an open tube does, with its caption.
+pub(super) fn open_tube_says(rating: &Rating, word: EarthWord) -> (String, String) {
+    let (between, to_earth) = (
+        volts_shown(rating.no_load),
+        volts_shown(rating.no_load_to_earth()),
+    );
+    let earth = word.word();
+    let volts =
+        format!("{between} between the leads and {to_earth} to {earth} on either side of it");
+    let says = match (rating.open_circuit_protection, rating.kind) {
+        (true, _) => format!(
+            "Switches off when a tube is open or broken. Until it does, and where it fails, up to \
+             {volts}."
+        ),
+        (false, SupplyKind::Iron) => format!(
+            "No open-circuit protection: an open or broken tube leaves a dark sign with up to {volts}. \
+             The input falls to the transformer's own losses, so no fuse tells."
+        ),
+        (false, SupplyKind::Electronic) => format!(
+            "No open-circuit protection: with an open or broken tube the output may rise above its \
+             plate volts; count on at least {volts} of a dark sign."
+        ),
+    };
+    ("Open tube".to_owned(), says)
+}
+
+/// What the test of the supply alone shows, with its caption. None where it has no protection to test.
+pub(super) fn bench_test_says(rating: &Rating, word: EarthWord) -> Option<(String, String)> {
+    let earth = word.word();
+    let tested = match (
+        rating.earth_fault_protection,
+        rating.open_circuit_protection,
+    ) {
+        (true, true) => {
+            format!("a fault to {earth} and an open string, each on lead A and on lead B,")
+        }
+        (true, false) => format!("a fault to {earth} on lead A and on lead B"),
+        (false, true) => "an open string on lead A and on lead B".to_owned(),
+        (false, false) => return None,
+    };
+    let cannot = if rating.earth_fault_protection {
+        " It cannot show that a fault on the string is seen: at the leads it is at its largest, in the \
+         unseen stretch it stays unseen on a sound supply."
+    } else {
+        ""
+    };
+    Some((
+        "Bench test".to_owned(),
+        format!(
+            "The test of the supply alone ({tested}) shows that its sensing and its switching-off work \
+             on both sides (common practice, no source).{cannot}"
+        ),
+    ))
+}
+
 #[cfg(test)]
 mod tests {
     use super::super::{Load, assess};
     use super::*;
-    use crate::book::{Loading, SupplyEntry, SupplyKind};
+    use crate::book::{Loading, SupplyEntry};
 
     fn rating(earthing: OutputEarthing) -> Rating {
         Rating::read(&SupplyEntry {

@@ -9,13 +9,19 @@
 
 mod assess;
 mod curve;
+mod fault;
 mod finding;
 mod load;
+mod profile;
+mod protection;
 mod window;
 
 pub use assess::{Assessment, Half, assess};
 pub(crate) use assess::{MAINS_SPREAD, STRIKE_LOOK};
 pub use curve::{CONTINUOUS_TO, Curve, Waveform, iron};
+pub use fault::{MidPoint, Strings, difference};
 pub(crate) use finding::model_off;
 pub use load::{Load, Operating, operate};
+pub use profile::{Joint, Profile, Span, Spot, profile};
+pub use protection::{FaultMap, Protection, Unseen, protect};
 pub use window::{Basis, Window, Zone};

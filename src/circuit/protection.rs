@@ -1,0 +1,195 @@
+//! What the protection of a supply sees of a string, and what it cannot.
+
+use super::assess::{Assessment, MAINS_SPREAD};
+use super::fault::{MidPoint, Strings};
+use super::finding;
+use super::profile::{Profile, Spot};
+use crate::book::OutputEarthing;
+use crate::measure::{Milliamps, Volts};
+use crate::rules::{EarthWord, Finding};
+use crate::supply::Rating;
+use crate::takeoff::Piece;
+use crate::tube::TubeType;
+
+/// Places along the string at which the mid-point's current is worked out for the plot.
+const POINTS: u32 = 120;
+/// The lighter load that is worked out beside, as a share of the running volts.
+const LIGHTER: f64 = 0.8;
+
+/// What protection sees of a circuit.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Protection {
+    /// The mid-point's current against the place of a fault; None where no mid-point is sensed.
+    pub map: Option<FaultMap>,
+    /// Sentences, each with a caption.
+    pub says: Vec<(String, String)>,
+    /// What was found, without a place yet.
+    pub findings: Vec<Finding>,
+}
+
+/// The current in the earthed mid-point for a fault to earth at each place of the string.
+#[derive(Debug, Clone, PartialEq)]
+pub struct FaultMap {
+    /// Share of all running volts from lead A, and the current there.
+    pub points: Vec<(f64, Milliamps)>,
+    /// Trip current of the plate.
+    pub trip: Option<Milliamps>,
+    /// Leakage of the leads that may work against the fault's current, and is taken off it.
+    pub taken_off: Milliamps,
+    /// The mid-point's current with no fault, of two unequal strings.
+    pub standing: Milliamps,
+    /// The stretch in which a fault gives less than the trip current; None where there is none, or
+    /// the trip current is not known.
+    pub unseen: Option<Unseen>,
+    /// The widest it gets at 90 and 110 % of the input volts and at either end of what the volts of
+    /// the tubes are known to; None where that is no wider.
+    pub widest: Option<Unseen>,
+    /// The share unseen if the string took 80 % of the volts.
+    pub share_if_lighter: f64,
+    /// The share unseen with half the trip current.
+    pub share_if_half_trip: f64,
+    /// The share unseen with leads that leak alike.
+    pub share_if_even_leads: f64,
+    /// Whether the figures are an estimate only.
+    pub estimate: bool,
+}
+
+/// A stretch of the string.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Unseen {
+    /// Where it begins, as a share of all running volts from lead A.
+    pub from: f64,
+    /// Where it ends.
+    pub to: f64,
+    /// The same as places on pieces.
+    pub from_spot: Spot,
+    /// The same as places on pieces.
+    pub to_spot: Spot,
+}
+
+impl Unseen {
+    /// How much of the string it is, as a share of its volts.
+    pub fn share(&self) -> f64 {
+        self.to - self.from
+    }
+}
+
+/// Works out what protection sees. `uneven` is the difference of what the leads of the two sides leak.
+pub fn protect(
+    pieces: &[(&Piece, &TubeType)],
+    assessment: &Assessment,
+    profile: &Profile,
+    rating: &Rating,
+    uneven: Milliamps,
+    word: EarthWord,
+) -> Protection {
+    let map = rating
+        .earth_fault_protection
+        .then(|| fault_map(assessment, profile, rating, uneven))
+        .flatten();
+    let mut findings = Vec::new();
+    if let Some(map) = &map {
+        if let Some(unseen) = &map.unseen {
+            findings.push(finding::unseen(unseen, pieces, word));
+        }
+        findings.extend(finding::standing(map, word));
+        if map.trip.is_none() {
+            findings.push(finding::no_trip(word));
+        }
+    }
+    let mut says = vec![
+        finding::earth_fault_says(rating, map.as_ref(), pieces, word),
+        finding::open_tube_says(rating, word),
+    ];
+    says.extend(finding::bench_test_says(rating, word));
+    Protection {
+        map,
+        says,
+        findings,
+    }
+}
+
+fn fault_map(
+    assessment: &Assessment,
+    profile: &Profile,
+    rating: &Rating,
+    uneven: Milliamps,
+) -> Option<FaultMap> {
+    let mid_point = MidPoint::of(rating, 1.0)?;
+    let returned = rating.earthing == OutputEarthing::MidPointReturn;
+    let strings = |first: Volts, second: Option<Volts>| Strings {
+        first,
+        second: second.filter(|_| returned),
+    };
+    let each =
+        |of: &dyn Fn(usize) -> Volts| strings(of(0), (assessment.halves.len() > 1).then(|| of(1)));
+    let now = each(&|half| assessment.halves[half].operating.volts());
+    let threshold = |trip: Milliamps| trip + Milliamps::from_ma(uneven.ma().abs());
+    let unseen = |strings: Strings, mid_point: &MidPoint, trip: Milliamps| {
+        let (from, to) = strings.unseen(mid_point, trip)?;
+        Some(Unseen {
+            from,
+            to,
+            from_spot: profile.spot(from)?,
+            to_spot: profile.spot(to)?,
+        })
+    };
+    let share = |strings: Strings, trip: Milliamps| {
+        unseen(strings, &mid_point, trip).map_or(0.0, |unseen| unseen.share())
+    };
+    let trip = rating.trip;
+    let here = trip.and_then(|trip| unseen(now, &mid_point, threshold(trip)));
+    let widest = trip.and_then(|trip| {
+        let low = MidPoint::of(rating, 1.0 - MAINS_SPREAD)?;
+        let high = MidPoint::of(rating, 1.0 + MAINS_SPREAD)?;
+        let mut others = vec![
+            (
+                each(&|half| assessment.halves[half].at_low_mains.volts()),
+                low,
+            ),
+            (
+                each(&|half| assessment.halves[half].at_high_mains.volts()),
+                high,
+            ),
+        ];
+        if assessment.halves.iter().all(|half| half.band.is_some()) {
+            let end = |less: bool| {
+                each(&|half| {
+                    let half = &assessment.halves[half];
+                    half.band
+                        .map_or(half.operating, |(low, high)| if less { low } else { high })
+                        .volts()
+                })
+            };
+            others.extend([(end(true), mid_point), (end(false), mid_point)]);
+        }
+        others
+            .into_iter()
+            .filter_map(|(strings, mid_point)| unseen(strings, &mid_point, threshold(trip)))
+            .max_by(|a, b| a.share().total_cmp(&b.share()))
+            .filter(|other| other.share() > here.map_or(0.0, |here| here.share()) + 0.005)
+    });
+    let lighter = strings(
+        now.first * LIGHTER,
+        now.second.map(|second| second * LIGHTER),
+    );
+    Some(FaultMap {
+        points: (0..=POINTS)
+            .map(|at| {
+                let share = f64::from(at) / f64::from(POINTS);
+                (share, now.at(&mid_point, share))
+            })
+            .collect(),
+        trip,
+        taken_off: Milliamps::from_ma(uneven.ma().abs()),
+        standing: now.second.map_or(Milliamps::ZERO, |second| {
+            mid_point.current(now.first, second)
+        }),
+        unseen: here,
+        widest,
+        share_if_lighter: trip.map_or(0.0, |trip| share(lighter, threshold(trip))),
+        share_if_half_trip: trip.map_or(0.0, |trip| share(now, threshold(trip * 0.5))),
+        share_if_even_leads: trip.map_or(0.0, |trip| share(now, trip)),
+        estimate: mid_point.estimate(),
+    })
+}
