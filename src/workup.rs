@@ -14,7 +14,7 @@ use crate::quote::{self, GlassPart, Parts, Quote};
 use crate::rules::{EarthWord, Finding, Grade, Place, RuleSet, Source};
 use crate::supply::{self, Rating};
 use crate::takeoff::{Piece, Takeoff, against_shop, takeoff};
-use crate::tube::TubeType;
+use crate::tube::{Known, TubeType};
 
 /// Everything worked out of a job and a book.
 #[derive(Debug, Clone)]
@@ -541,7 +541,9 @@ fn model_notes(tubes: &[TubeTotal]) -> Vec<Finding> {
         .iter()
         .filter_map(|total| {
             let tube = total.tube.as_ref()?;
-            let percent = tube.model_uncertainty_percent?;
+            let Known::Model { percent } = tube.known else {
+                return None;
+            };
             Some(Finding::new(
                 Grade::Note,
                 Place::Tube(tube.name.clone()),

@@ -228,9 +228,9 @@ pub(super) fn mixed() -> Finding {
     )
 }
 
-/// What stops a circuit whose tubes take so much `off` (as in "15 % more") of what the default model
-/// says, as a look at the circuit that is fine without it.
-pub(crate) fn model_off(worked: &Assessment, off: &str) -> Option<Finding> {
+/// What stops a circuit whose tubes take so much `off` (as in "15 % more than the default model
+/// says"), as a look at the circuit that is fine without it; `settled` by what.
+pub(crate) fn volts_off(worked: &Assessment, off: &str, settled: &str) -> Option<Finding> {
     let stop = worked
         .findings
         .iter()
@@ -243,10 +243,7 @@ pub(crate) fn model_off(worked: &Assessment, off: &str) -> Option<Finding> {
     };
     Some(Finding {
         grade: Grade::Look,
-        says: format!(
-            "If its tubes take {off} than the default model says, {what}; bench readings of your own \
-             glass settle it."
-        ),
+        says: format!("If its tubes take {off}, {what}; {settled} settle it."),
         source: Source::model(),
         ..stop.clone()
     })

@@ -20,7 +20,7 @@ pub use assess::{Assessment, Half, assess};
 pub(crate) use assess::{MAINS_SPREAD, STRIKE_LOOK};
 pub use curve::{CONTINUOUS_TO, Curve, Waveform, iron};
 pub use fault::{MidPoint, Strings, difference};
-pub(crate) use finding::model_off;
+pub(crate) use finding::volts_off;
 pub use load::{Load, Operating, operate};
 pub use profile::{Joint, Profile, Span, Spot, profile};
 pub use protection::{FaultMap, Protection, Unseen, protect};

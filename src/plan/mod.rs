@@ -12,12 +12,12 @@ mod why;
 use std::ops::Range;
 
 use crate::book::{Loading, OutputEarthing};
-use crate::circuit::{Assessment, Load, assess, model_off};
+use crate::circuit::{Assessment, Load, assess, volts_off};
 use crate::job::Wish;
 use crate::rules::{Finding, Grade, RuleSet};
 use crate::supply::Rating;
 use crate::takeoff::Piece;
-use crate::tube::TubeType;
+use crate::tube::{Known, TubeType};
 
 pub use gates::Gates;
 pub use split::{Fit, Split, Summed, best_split};
@@ -196,8 +196,8 @@ fn circuit(task: &Task, gates: &Gates, pieces: Range<usize>, candidate: usize) -
     }
 }
 
-/// What would stop a circuit that is fine as worked out, were its tubes at either end of what the
-/// default model may be off by. It speaks of the circuit chosen; the choice is made without it.
+/// What would stop a circuit that is fine as worked out, were its tubes at either end of what their
+/// volts may be off by. It speaks of the circuit chosen; the choice is made without it.
 fn unsure(
     task: &Task,
     pieces: &Range<usize>,
@@ -207,7 +207,7 @@ fn unsure(
 ) -> Vec<Finding> {
     let percents = || {
         let tubes = task.pieces[pieces.clone()].iter();
-        tubes.filter_map(|(_, tube)| tube.model_uncertainty_percent)
+        tubes.filter_map(|(_, tube)| tube.uncertainty_percent())
     };
     let least = percents().fold(f64::INFINITY, f64::min);
     let most = percents().fold(0.0, f64::max);
@@ -216,14 +216,7 @@ fn unsure(
     }
     let at = |sign: f64| {
         let here = &task.pieces[pieces.clone()];
-        let moved = |(_, tube): &(&Piece, &TubeType)| {
-            let percent = tube.model_uncertainty_percent.unwrap_or(0.0);
-            TubeType {
-                volts_per_m: tube.volts_per_m * (1.0 + sign * percent / 100.0),
-                ..(*tube).clone()
-            }
-        };
-        let tubes: Vec<TubeType> = here.iter().map(moved).collect();
+        let tubes: Vec<TubeType> = here.iter().map(|(_, tube)| tube.off_by(sign)).collect();
         let alone: Vec<(&Piece, &TubeType)> = here.iter().map(|here| here.0).zip(&tubes).collect();
         let alone = Task {
             pieces: &alone,
@@ -237,9 +230,24 @@ fn unsure(
     } else {
         format!("{least} to {most} %")
     };
+    let mut known = task.pieces[pieces.clone()].iter().map(|(_, tube)| tube);
+    let modelled = known
+        .clone()
+        .any(|tube| matches!(tube.known, Known::Model { .. }));
+    let measured = known.any(|tube| matches!(tube.known, Known::Measured { .. }));
+    let (say, settled) = match (modelled, measured) {
+        (true, true) => (
+            "the default model and the fit to your bench readings say",
+            "bench readings of your own glass",
+        ),
+        (false, _) => ("the fit to your bench readings says", "more readings"),
+        (true, false) => ("the default model says", "bench readings of your own glass"),
+    };
     [(1.0, "more"), (-1.0, "less")]
         .into_iter()
-        .filter_map(|(sign, way)| model_off(&at(sign), &format!("{percent} {way}")))
+        .filter_map(|(sign, way)| {
+            volts_off(&at(sign), &format!("{percent} {way} than {say}"), settled)
+        })
         .collect()
 }
 

@@ -9,9 +9,13 @@
 //! ±15 % for glass of 12 to 15 mm and ±25 % outside. It is not a transcription of a handbook.
 //! Bench readings of the shop's own tubes are better; so is any figure typed into the book.
 
+mod known;
+
 use crate::book::{Gas, TubeEntry};
 use crate::measure::{Length, Milliamps, Volts};
 use crate::rules::{Finding, Grade, Place, Source};
+
+pub use known::Known;
 
 /// Current the default model's figures are given at.
 const MODEL_MA: f64 = 25.0;
@@ -78,8 +82,8 @@ pub struct TubeType {
     pub least: Option<Milliamps>,
     /// Greatest current of glass and electrodes.
     pub most: Option<Milliamps>,
-    /// How far off the volts may be, percent either way, where the default model gave them.
-    pub model_uncertainty_percent: Option<f64>,
+    /// How the volts are known.
+    pub known: Known,
 }
 
 impl TubeType {
@@ -156,7 +160,6 @@ impl TubeType {
             .at_ma
             .filter(|_| entry.volts_per_m.is_some())
             .unwrap_or(MODEL_MA);
-        let modelled = entry.volts_per_m.is_none();
         Ok(Self {
             name: entry.name.clone(),
             gas: entry.gas,
@@ -172,8 +175,42 @@ impl TubeType {
             }),
             least: entry.least_ma.map(Milliamps::from_ma),
             most: entry.most_ma.map(Milliamps::from_ma),
-            model_uncertainty_percent: modelled.then_some(figures.uncertainty_percent),
+            known: match entry.volts_per_m {
+                Some(_) => Known::Entered,
+                None => Known::Model {
+                    percent: figures.uncertainty_percent,
+                },
+            },
         })
+    }
+
+    /// How far off the volts may be, percent either way. None: they were typed in, and nobody said.
+    pub const fn uncertainty_percent(&self) -> Option<f64> {
+        match self.known {
+            Known::Model { percent } | Known::Measured { percent, .. } => Some(percent),
+            Known::Entered => None,
+        }
+    }
+
+    /// How the volts are known, in a few words.
+    pub fn known_words(&self) -> String {
+        self.known.words()
+    }
+
+    /// The same tube were its volts off by all they may be: more with 1, less with -1. What the model
+    /// may be off by is the column's; what a bench may be off by is the whole piece's.
+    #[must_use]
+    pub fn off_by(&self, sign: f64) -> Self {
+        let factor = 1.0 + sign * self.uncertainty_percent().unwrap_or(0.0) / 100.0;
+        let pair_factor = match self.known {
+            Known::Measured { .. } => factor,
+            Known::Model { .. } | Known::Entered => 1.0,
+        };
+        Self {
+            volts_per_m: self.volts_per_m * factor,
+            pair_volts: self.pair_volts * pair_factor,
+            ..self.clone()
+        }
     }
 
     /// The column constant of a length: volts of the column are `column(length) * I^-n`, I in mA.

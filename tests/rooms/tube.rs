@@ -4,7 +4,7 @@ use insta::assert_snapshot;
 use tubewright::book::{Gas, TubeEntry};
 use tubewright::measure::{Length, Milliamps};
 use tubewright::rules::{Grade, Place};
-use tubewright::tube::{TubeType, model};
+use tubewright::tube::{Known, TubeType, model};
 
 fn entry() -> TubeEntry {
     TubeEntry {
@@ -81,16 +81,16 @@ fn figures_of_the_shop_replace_the_model() {
         (found - 980.0).abs() < 1e-9,
         "180 V and 800 V/m at 30 mA: {found}"
     );
-    assert_eq!(own.model_uncertainty_percent, None);
+    assert_eq!(
+        (&own.known, own.uncertainty_percent()),
+        (&Known::Entered, None)
+    );
     // A reference current alone says nothing: the model's figures stay at their own.
     let odd = read(&TubeEntry {
         at_ma: Some(30.0),
         ..entry()
     });
-    assert_eq!(
-        (odd.at_ma, odd.model_uncertainty_percent),
-        (25.0, Some(15.0))
-    );
+    assert_eq!((odd.at_ma, odd.uncertainty_percent()), (25.0, Some(15.0)));
 }
 
 #[test]

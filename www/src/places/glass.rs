@@ -28,14 +28,11 @@ pub fn Glass() -> impl IntoView {
                         .unwrap_or_default();
                     let volts = total.tube.as_ref().map(|tube| {
                         format!(
-                            "{:.0} V/m at {} mA and {:.0} V for each electrode pair{}",
+                            "{:.0} V/m at {} mA and {:.0} V for each electrode pair; {}",
                             tube.volts_per_m,
                             tube.at_ma,
                             tube.pair_volts,
-                            tube.model_uncertainty_percent
-                                .map_or_else(String::new, |percent| format!(
-                                    ", ±{percent} % (model)"
-                                ))
+                            tube.known_words()
                         )
                     });
                     view! {

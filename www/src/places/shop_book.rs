@@ -504,13 +504,10 @@ fn Tubes() -> impl IntoView {
                     Ok(tube) => EntryLine {
                         name: tube.name.clone(),
                         beside: format!(
-                            "{:.0} V/m at {} mA{}",
+                            "{:.0} V/m at {} mA, {}",
                             tube.volts_per_m,
                             tube.at_ma,
-                            tube.model_uncertainty_percent
-                                .map_or_else(String::new, |percent| format!(
-                                    ", model, ±{percent} %"
-                                ))
+                            tube.known_words()
                         ),
                         colour: Some(tube.colour),
                         wrong: false,
