@@ -351,8 +351,14 @@ fn tube_totals(
             continue;
         }
         let mut entries = book.tubes.iter().filter(|entry| entry.name == name);
-        let tube = match entries.next().map(TubeType::read) {
-            Some(Ok(tube)) => Some(tube),
+        let tube = match entries
+            .next()
+            .map(|entry| TubeType::of_book(entry, &book.electrodes))
+        {
+            Some(Ok(tube)) => {
+                findings.extend(tube.findings.iter().cloned());
+                Some(tube)
+            }
             Some(Err(wrong)) => {
                 findings.extend(wrong);
                 None

@@ -37,6 +37,8 @@ pub enum Place {
     Supply(String),
     /// A tube type of the book, by name.
     Tube(String),
+    /// An electrode of the book, by name.
+    Electrode(String),
     /// A rule set of the book, by name.
     Rules(String),
     /// The price.

@@ -9,13 +9,18 @@
 //! ±15 % for glass of 12 to 15 mm and ±25 % outside. It is not a transcription of a handbook.
 //! Bench readings of the shop's own tubes are better; so is any figure typed into the book.
 
+mod electrode;
+mod finding;
 mod known;
 
-use crate::book::{Gas, TubeEntry};
+use crate::book::{ElectrodeEntry, Gas, TubeEntry};
 use crate::measure::{Length, Milliamps, Volts};
 use crate::rules::{Finding, Grade, Place, Source};
 
+pub use electrode::Electrode;
 pub use known::Known;
+
+use finding::{MOST_MA, MOST_OUTER_MM};
 
 /// Current the default model's figures are given at.
 const MODEL_MA: f64 = 25.0;
@@ -84,10 +89,27 @@ pub struct TubeType {
     pub most: Option<Milliamps>,
     /// How the volts are known.
     pub known: Known,
+    /// Its electrodes, where the entry names some of the book.
+    pub electrode: Option<Electrode>,
+    /// What is to be said of it though its volts can be worked out.
+    pub findings: Vec<Finding>,
 }
 
 impl TubeType {
-    /// Checks an entry; figures left out come from the default model.
+    /// Checks an entry of a book with these electrodes; figures left out come from the default model.
+    ///
+    /// # Errors
+    /// Every contradiction, as findings at the tube.
+    pub fn of_book(entry: &TubeEntry, electrodes: &[ElectrodeEntry]) -> Result<Self, Vec<Finding>> {
+        let mut tube = Self::read(entry)?;
+        let (electrode, findings) =
+            Electrode::of(&tube.name, tube.outer, &entry.electrode, electrodes);
+        tube.electrode = electrode;
+        tube.findings.extend(findings);
+        Ok(tube)
+    }
+
+    /// Checks an entry without its electrode; figures left out come from the default model.
     ///
     /// # Errors
     /// Every contradiction, as findings at the tube.
@@ -110,10 +132,10 @@ impl TubeType {
                 ));
             }
         };
-        above_zero("Outer diameter", entry.outer_mm, 60.0, " mm");
+        above_zero("Outer diameter", entry.outer_mm, MOST_OUTER_MM, " mm");
         above_zero("Wall", entry.wall_mm, 10.0, " mm");
         above_zero("Volts per metre", entry.volts_per_m, 10_000.0, " V/m");
-        above_zero("Reference current", entry.at_ma, 1_000.0, " mA");
+        above_zero("Reference current", entry.at_ma, MOST_MA, " mA");
         above_zero(
             "Volts of an electrode pair",
             entry.pair_volts,
@@ -121,8 +143,8 @@ impl TubeType {
             " V",
         );
         above_zero("Cold factor", entry.cold_factor, 3.0, "");
-        above_zero("Least current", entry.least_ma, 1_000.0, " mA");
-        above_zero("Greatest current", entry.most_ma, 1_000.0, " mA");
+        above_zero("Least current", entry.least_ma, MOST_MA, " mA");
+        above_zero("Greatest current", entry.most_ma, MOST_MA, " mA");
         // Up to here every crossing with a supply's steady branch is stable, so there is only one;
         // published exponents of cold-cathode columns are 0.2 to 0.36.
         if let Some(n) = entry.exponent
@@ -181,6 +203,8 @@ impl TubeType {
                     percent: figures.uncertainty_percent,
                 },
             },
+            electrode: None,
+            findings: Vec::new(),
         })
     }
 

@@ -1,10 +1,10 @@
 //! Tube types: the default model, entries that are not whole, and volts of a piece.
 
 use insta::assert_snapshot;
-use tubewright::book::{Gas, TubeEntry};
+use tubewright::book::{ElectrodeEntry, Gas, TubeEntry};
 use tubewright::measure::{Length, Milliamps};
-use tubewright::rules::{Grade, Place};
-use tubewright::tube::{Known, TubeType, model};
+use tubewright::rules::{Finding, Grade, Place};
+use tubewright::tube::{Electrode, Known, TubeType, model};
 
 fn entry() -> TubeEntry {
     TubeEntry {
@@ -137,4 +137,77 @@ fn entries_that_are_not_whole_or_contradict_themselves() {
     Greatest current must be above 0 and at most 1000 mA, but is inf.
     "
     );
+}
+
+fn electrode(least: Option<f64>, most: Option<f64>) -> ElectrodeEntry {
+    ElectrodeEntry {
+        name: "Shell 12".to_owned(),
+        rated_ma: Some(40.0),
+        least_outer_mm: least,
+        most_outer_mm: most,
+        ..ElectrodeEntry::default()
+    }
+}
+
+fn told(findings: &[Finding]) -> String {
+    let told = |finding: &Finding| {
+        format!(
+            "{} {:?}: {}",
+            finding.grade.word(),
+            finding.place,
+            finding.says
+        )
+    };
+    findings.iter().map(told).collect::<Vec<_>>().join("\n")
+}
+
+#[test]
+fn an_electrode_is_found_by_name_and_must_fit_the_glass() {
+    let named = TubeEntry {
+        electrode: "Shell 12".to_owned(),
+        ..entry()
+    };
+    let with = |list: &[ElectrodeEntry]| {
+        let tube = TubeType::of_book(&named, list).expect("volts can be worked out all the same");
+        (tube.electrode, told(&tube.findings))
+    };
+    for (least, most) in [
+        (Some(12.0), Some(12.0)),
+        (Some(10.0), None),
+        (None, Some(15.0)),
+        (None, None),
+    ] {
+        let (found, says) = with(&[electrode(least, most)]);
+        let found = found.expect("it is in the book");
+        assert_eq!((found.name.as_str(), says.as_str()), ("Shell 12", ""));
+        assert_eq!(found.rated, Some(Milliamps::from_ma(40.0)));
+    }
+    let says = |list: &[ElectrodeEntry]| with(list).1;
+    assert_snapshot!(says(&[electrode(Some(13.0), Some(15.0))]), @r#"stop Tube("12 mm neon"): The electrode “Shell 12” does not fit: it is for glass of 13 to 15 mm outer diameter, but the tube has 12 mm."#);
+    assert_snapshot!(says(&[electrode(Some(12.5), None)]), @r#"stop Tube("12 mm neon"): The electrode “Shell 12” does not fit: it is for glass of 12.5 mm and more outer diameter, but the tube has 12 mm."#);
+    assert_snapshot!(says(&[electrode(None, Some(11.0))]), @r#"stop Tube("12 mm neon"): The electrode “Shell 12” does not fit: it is for glass of up to 11 mm outer diameter, but the tube has 12 mm."#);
+    assert_snapshot!(says(&[]), @r#"look Tube("12 mm neon"): The electrode “Shell 12” is not in the shop book: whether it fits the glass and stands the current is not checked. Choose one of the book, or add it."#);
+    assert_snapshot!(says(&[electrode(None, None), electrode(None, Some(8.0))]), @r#"look Electrode("Shell 12"): Two electrodes are called “Shell 12”: the first is used."#);
+    // What contradicts itself is not compared with anything.
+    let (found, says) = with(&[electrode(Some(15.0), Some(12.0))]);
+    assert_eq!(found, None);
+    assert_snapshot!(says, @r#"stop Electrode("Shell 12"): The least glass it fits, 15 mm, is above the greatest, 12 mm."#);
+    // A tube that names none has none to be compared, and an entry alone knows of no book.
+    let tube = TubeType::of_book(&entry(), &[electrode(None, None)]).expect("whole");
+    assert_eq!((tube.electrode, tube.findings), (None, vec![]));
+    assert_eq!(read(&named).electrode, None);
+}
+
+#[test]
+fn electrodes_that_contradict_themselves() {
+    let refused =
+        |entry: ElectrodeEntry| told(&Electrode::read(&entry).expect_err("it cannot be so"));
+    assert_snapshot!(refused(ElectrodeEntry { rated_ma: Some(0.0), ..electrode(Some(f64::NAN), Some(61.0)) }), @r#"
+    stop Electrode("Shell 12"): Rated current must be above 0 and at most 1000 mA, but is 0.
+    stop Electrode("Shell 12"): Least glass must be above 0 and at most 60 mm, but is NaN.
+    stop Electrode("Shell 12"): Greatest glass must be above 0 and at most 60 mm, but is 61.
+    "#);
+    assert_snapshot!(refused(electrode(Some(15.0), Some(12.0))), @r#"stop Electrode("Shell 12"): The least glass it fits, 15 mm, is above the greatest, 12 mm."#);
+    let unknown = Electrode::read(&ElectrodeEntry::default()).expect("everything may be unknown");
+    assert!(unknown.rated.is_none() && unknown.fits(Length::from_mm(1.0)));
 }

@@ -280,6 +280,7 @@ fn finding(finding: &Finding) -> Value {
         Place::Circuit(at) => ("circuit", json!(at + 1)),
         Place::Supply(name) => ("supply", json!(name)),
         Place::Tube(name) => ("tube", json!(name)),
+        Place::Electrode(name) => ("electrode", json!(name)),
         Place::Rules(name) => ("rules", json!(name)),
         Place::Price => ("price", Value::Null),
     };
@@ -541,6 +542,7 @@ fn place(place: &Place, job: &Job, work: &Workup) -> String {
         Place::Circuit(at) => format!("circuit {}", at + 1),
         Place::Supply(name) => format!("supply {name}"),
         Place::Tube(name) => format!("tube {name}"),
+        Place::Electrode(name) => format!("electrode {name}"),
         Place::Rules(name) => format!("rule set {name}"),
         Place::Price => "price".to_owned(),
     }

@@ -72,6 +72,11 @@ pub(super) fn go(desk: Desk, place: &Place) {
             desk.place.set(Where::ShopBook);
             ".entries .open".to_owned()
         }
+        Place::Electrode(name) => {
+            desk.entry.set(Some(name.clone()));
+            desk.place.set(Where::ShopBook);
+            ".entries .open".to_owned()
+        }
         Place::Rules(_) => {
             desk.book_part.set(BookPart::Rules);
             desk.place.set(Where::ShopBook);
@@ -105,7 +110,9 @@ fn belongs(desk: Desk, place: &Place) -> String {
             )
         }),
         Place::Circuit(number) => format!("circuit {}", number + 1),
-        Place::Supply(name) | Place::Tube(name) | Place::Rules(name) => name.clone(),
+        Place::Supply(name) | Place::Tube(name) | Place::Electrode(name) | Place::Rules(name) => {
+            name.clone()
+        }
         Place::Price => "the price".to_owned(),
     }
 }
