@@ -17,6 +17,8 @@
 //! | [`takeoff`] | rows to strokes to pieces of glass | knows of volts |
 //! | [`circuit`] | a string of pieces on a supply: operating point, window, volts to earth | chooses a supply |
 //! | [`plan`] | splits the pieces into circuits and chooses supplies, with the reasons | measures glass |
+//! | [`feed`] | what supplies draw from the mains, branch circuits, volt drop, a year's energy | counts watts as volt-amperes |
+//! | [`wiring`] | leads and jumpers: lengths, what they leak, the limits on them | guesses a length or a cable |
 //! | [`quote`] | a first sum of glass, electrodes, supplies and labour | touches a figure of the others |
 //! | [`workup()`] | the one function, a table of contents of the above | reads a clock, a file or a browser |
 //!
@@ -39,6 +41,9 @@ pub mod takeoff;
 
 pub mod plan;
 pub mod quote;
+
+pub mod feed;
+pub mod wiring;
 
 pub mod workup;
 

@@ -7,6 +7,7 @@ use std::collections::HashSet;
 
 use crate::book::Book;
 use crate::circuit::{Assessment, Profile, Protection, profile, protect};
+use crate::feed::{self, FeedWork};
 use crate::job::Job;
 use crate::measure::{Length, Milliamps, quoted, small_first};
 use crate::plan::{self, Candidate, Task};
@@ -15,6 +16,7 @@ use crate::rules::{EarthWord, Finding, Grade, Place, RuleSet, Source};
 use crate::supply::{self, Rating};
 use crate::takeoff::{Piece, Takeoff, against_shop, takeoff};
 use crate::tube::{Known, TubeType};
+use crate::wiring::{self, Leads};
 
 /// Everything worked out of a job and a book.
 #[derive(Debug, Clone)]
@@ -29,6 +31,8 @@ pub struct Workup {
     pub left_over: Vec<LeftOverWork>,
     /// Supplies of the book that this job cannot use, with the reasons.
     pub refused: Vec<Refused>,
+    /// What feeds the supplies.
+    pub feed: FeedWork,
     /// The first sum.
     pub quote: Quote,
     /// The rule set the job is held against.
@@ -69,6 +73,8 @@ pub struct CircuitWork {
     pub profile: Profile,
     /// What its supply's protection sees of it, and what it cannot.
     pub protection: Protection,
+    /// Its leads and jumpers.
+    pub leads: Leads,
     /// Glass column of all its pieces.
     pub column: Length,
     /// The next smaller supply of the book by name, and what it fails by.
@@ -177,34 +183,51 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         placed[range].iter().map(|&(at, ..)| at).collect()
     };
     let named = |candidate: usize| candidates[candidate].rating.name.clone();
+    let profiles: Vec<Profile> = planned
+        .circuits
+        .iter()
+        .map(|circuit| {
+            profile(
+                &pieces[circuit.pieces.clone()],
+                first_string(circuit),
+                &circuit.assessment,
+                &candidates[circuit.candidate].rating,
+                job.site.cold,
+            )
+        })
+        .collect();
+    let wired = wire(
+        job,
+        book,
+        rules.as_ref(),
+        &off,
+        (&task, &planned, &profiles),
+    );
+    findings.extend(wired.findings);
     let circuits: Vec<CircuitWork> = planned
         .circuits
         .into_iter()
+        .zip(profiles)
+        .zip(wired.circuits)
         .enumerate()
-        .map(|(number, circuit)| {
+        .map(|(number, ((circuit, profile), leads))| {
             let rating = candidates[circuit.candidate].rating.clone();
-            let first_string =
-                circuit.second_from.unwrap_or(circuit.pieces.end) - circuit.pieces.start;
             let string = &pieces[circuit.pieces.clone()];
-            let profile = profile(
-                string,
-                first_string,
-                &circuit.assessment,
-                &rating,
-                job.site.cold,
-            );
             let protection = protect(
                 string,
                 &circuit.assessment,
                 &profile,
                 &rating,
-                Milliamps::ZERO,
+                leads
+                    .difference_ma
+                    .map_or(Milliamps::ZERO, Milliamps::from_ma),
                 rules
                     .as_ref()
                     .map_or_else(EarthWord::default, |rules| rules.earth_word),
             );
             let mut found = circuit.assessment.findings.clone();
             found.extend(protection.findings.iter().cloned());
+            found.extend(leads.findings.iter().cloned());
             found.extend(rules.iter().flat_map(|rules| rating.against_rules(rules)));
             found.extend(rating.against_site(&job.site));
             found.extend(over_plate(&rating, circuit.assessment.input_va));
@@ -214,7 +237,7 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
             gravest_first(&mut found);
             findings.extend(found.iter().cloned());
             CircuitWork {
-                first_string,
+                first_string: first_string(&circuit),
                 column: string.iter().map(|(p, _)| p.column()).sum(),
                 profile,
                 protection,
@@ -227,6 +250,7 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
                     .larger
                     .map(|other| (named(other.candidate), other.says)),
                 assessment: circuit.assessment,
+                leads,
                 findings: found,
             }
         })
@@ -249,6 +273,8 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         .collect();
 
     findings.extend(unknown_mains(job, &circuits));
+    let feed = feed(job, rules.as_ref(), &circuits);
+    findings.extend(feed.findings.iter().cloned());
     let parts = parts(book, &tubes, &circuits, off.pieces.len());
     let mut quote = quote::quote(&parts, &book.rates);
     let left_out = not_in_sum(job, &off, &circuits, &findings);
@@ -263,10 +289,52 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         circuits,
         left_over,
         refused,
+        feed,
         quote,
         rules,
         findings,
     }
+}
+
+/// How many of a circuit's pieces are in its first string.
+fn first_string(circuit: &plan::Circuit) -> usize {
+    circuit.second_from.unwrap_or(circuit.pieces.end) - circuit.pieces.start
+}
+
+/// The leads of the circuits of a plan.
+fn wire(
+    job: &Job,
+    book: &Book,
+    rules: Option<&RuleSet>,
+    off: &Takeoff,
+    (task, planned, profiles): (&Task, &plan::Plan, &[Profile]),
+) -> wiring::Wired {
+    let strung: Vec<wiring::Strung> = planned
+        .circuits
+        .iter()
+        .zip(profiles)
+        .map(|(circuit, profile)| wiring::Strung {
+            pieces: &task.pieces[circuit.pieces.clone()],
+            first_string: first_string(circuit),
+            rating: &task.candidates[circuit.candidate].rating,
+            assessment: &circuit.assessment,
+            profile,
+        })
+        .collect();
+    wiring::wire(job, book, rules, off.bounds, &strung)
+}
+
+/// The feed of the supplies of a plan.
+fn feed(job: &Job, rules: Option<&RuleSet>, circuits: &[CircuitWork]) -> FeedWork {
+    let drawing: Vec<feed::Drawing> = circuits
+        .iter()
+        .map(|circuit| feed::Drawing {
+            rating: &circuit.supply,
+            worked_va: circuit.assessment.input_va,
+            watts: circuit.assessment.watts(),
+        })
+        .collect();
+    feed::feed(&job.feed, &job.site, rules, &drawing)
 }
 
 fn gravest_first(findings: &mut [Finding]) {

@@ -238,6 +238,88 @@ pub const ELECTRODE_SPACING_MM: Limit = Limit {
     why: "nearer they touch, further apart few signs have them",
 };
 
+/// Length of a high-voltage lead or jumper; sentences name which.
+pub const LEAD_MM: Limit = Limit {
+    name: "a lead",
+    least: 0.0,
+    most: 100_000.0,
+    unit: "mm",
+    why: "a supply further from its tubes than this stands in another building",
+};
+
+/// Bore of the conduit of a lead.
+pub const CONDUIT_BORE_MM: Limit = Limit {
+    name: "the bore of the conduit",
+    least: 3.0,
+    most: 300.0,
+    unit: "mm",
+    why: "no cable goes through less, and more is a room and no conduit",
+};
+
+/// Distance of a cable from earthed parts.
+pub const FROM_EARTHED_MM: Limit = Limit {
+    name: "the distance from earthed parts",
+    least: 1.0,
+    most: 10_000.0,
+    unit: "mm",
+    why: "nearer the cable touches, and some earthed part is nearer than further",
+};
+
+/// How far right of the sign's left edge or above its bottom edge the supplies stand; sentences name
+/// which.
+pub const SUPPLY_PLACE_MM: Limit = Limit {
+    name: "the place of the supplies",
+    least: -100_000.0,
+    most: 100_000.0,
+    unit: "mm",
+    why: "further away they stand in another building",
+};
+
+/// What is added to a length taken from the drawing, as a share of it.
+pub const SLACK_PERCENT: Limit = Limit {
+    name: "slack",
+    least: 0.0,
+    most: 300.0,
+    unit: "%",
+    why: "with more the drawing says nothing of the length: type it",
+};
+
+/// What is added to a length taken from the drawing for its two ends.
+pub const LEAD_ENDS_MM: Limit = Limit {
+    name: "what the ends take",
+    least: 0.0,
+    most: 5_000.0,
+    unit: "mm",
+    why: "with more the drawing says nothing of the length: type it",
+};
+
+/// Rated current of a branch circuit.
+pub const CIRCUIT_AMPS: Limit = Limit {
+    name: "the branch circuit",
+    least: 1.0,
+    most: 200.0,
+    unit: "A",
+    why: "signs hang on circuits of ordinary size",
+};
+
+/// Length of the feed one way.
+pub const FEED_MM: Limit = Limit {
+    name: "the feed",
+    least: 0.0,
+    most: 2_000_000.0,
+    unit: "mm",
+    why: "a longer one is not fed at mains volts",
+};
+
+/// Hours a sign is lit in a year.
+pub const HOURS_PER_YEAR: Limit = Limit {
+    name: "hours lit in a year",
+    least: 0.0,
+    most: 8_784.0,
+    unit: "h",
+    why: "a leap year has no more",
+};
+
 /// Rows in a job.
 pub const ROWS: Limit = Limit {
     name: "rows",

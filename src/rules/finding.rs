@@ -84,6 +84,15 @@ impl Source {
         }
     }
 
+    /// A threshold this program draws itself, where no code and no custom is known.
+    pub fn own_choice() -> Self {
+        Self {
+            clause: String::new(),
+            from: "this program's choice".to_owned(),
+            standing: "this program's choice, no source",
+        }
+    }
+
     /// What was entered itself, in a word for which entry it is: "as typed in the row", "the supply's
     /// entry".
     pub fn entry(which: &'static str) -> Self {
