@@ -12,18 +12,42 @@ fn typed() -> Source {
     Source::entry("as typed for the feed")
 }
 
-pub(super) fn load_unknown(supply: &SupplyLoad) -> Finding {
-    let what = if supply.va.is_none() {
-        "The volt-amperes that it draws are not in the shop book"
-    } else {
-        "Neither its input volts nor the mains volts are known"
+/// Supplies whose amperes are not known, and why.
+pub(super) fn loads_unknown(supplies: &[SupplyLoad]) -> Option<Finding> {
+    let names = |wanted: fn(&&SupplyLoad) -> bool| -> Option<String> {
+        const MOST_NAMED: usize = 3;
+        let found: Vec<&SupplyLoad> = supplies.iter().filter(wanted).collect();
+        let mut named: Vec<String> = found
+            .iter()
+            .take(MOST_NAMED)
+            .map(|supply| quoted(&supply.name))
+            .collect();
+        if found.len() > MOST_NAMED {
+            named.push(format!("{} more", found.len() - MOST_NAMED));
+        }
+        (!named.is_empty()).then(|| named.join(", "))
     };
-    found(
-        Grade::Note,
-        format!("{what}: the amperes of the feed were not worked out."),
-        Source::entry("the supply's entry"),
-    )
-    .at(Place::Supply(supply.name.clone()))
+    let mut why = Vec::new();
+    if let Some(names) = names(|supply| supply.va.is_none()) {
+        why.push(format!(
+            "the volt-amperes of {names} are not in the shop book"
+        ));
+    }
+    if let Some(names) = names(|supply| supply.va.is_some() && supply.amps.is_none()) {
+        why.push(format!(
+            "neither the input volts of {names} nor the mains volts are given"
+        ));
+    }
+    (!why.is_empty()).then(|| {
+        found(
+            Grade::Note,
+            format!(
+                "The amperes of the feed were not worked out: {}.",
+                why.join("; ")
+            ),
+            Source::entry("the supply's entry"),
+        )
+    })
 }
 
 pub(super) fn counted_as_it_is() -> Finding {

@@ -126,11 +126,7 @@ pub fn feed(feed: &Feed, site: &Site, rules: Option<&RuleSet>, drawing: &[Drawin
         .map(|drawing| Load::of(drawing, work.mains_volts))
         .collect();
     work.supplies = by_type(drawing, &loads);
-    for supply in &work.supplies {
-        if supply.amps.is_none() {
-            work.findings.push(finding::load_unknown(supply));
-        }
-    }
+    work.findings.extend(finding::loads_unknown(&work.supplies));
     work.total_va = loads.iter().map(|load| load.va).sum();
     work.total_amps = loads.iter().map(|load| load.amps).sum();
     count(&mut work, feed, rules);
