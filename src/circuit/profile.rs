@@ -113,7 +113,7 @@ pub fn profile(
             mid_point: returned && at == first_string,
         });
         if let Some(span) = spans.get(at) {
-            from_a = from_a + span.volts;
+            from_a += span.volts;
         }
     }
     Profile {

@@ -4,7 +4,7 @@ use super::setup::Setup;
 use super::{LEAK_LOOK, LEAK_STOP, Leads, LengthFrom, Strung, TRIP_LOOK, What, finding};
 use crate::book::SupplyKind;
 use crate::job::LeadRun;
-use crate::measure::{Length, told_from};
+use crate::measure::{Length, Milliamps, told_from};
 use crate::rules::{EarthWord, Finding, Grade, Limits, Rule, RuleSet};
 use crate::supply::Rating;
 
@@ -32,7 +32,7 @@ pub(super) fn leakage(leads: &mut Leads, rating: &Rating, word: EarthWord) {
     if rating.earth_fault_protection
         && let Some(difference) = leads.difference_ma
     {
-        match rating.trip.map(|trip| trip.ma()) {
+        match rating.trip.map(Milliamps::ma) {
             Some(trip) if difference >= trip => {
                 unequal = true;
                 leads
@@ -46,11 +46,10 @@ pub(super) fn leakage(leads: &mut Leads, rating: &Rating, word: EarthWord) {
                     .findings
                     .push(finding::trips(Grade::Look, difference, trip, limit, word));
             }
-            Some(_) => {}
             None if difference > 0.0 => {
                 leads.findings.push(finding::trip_unknown(difference, word));
             }
-            None => {}
+            Some(_) | None => {}
         }
     }
     leads.advice = advice(leads, rating, much, unequal);
@@ -227,7 +226,7 @@ pub(super) fn all(
     if jumper_unknown {
         findings.push(finding::jumpers_not_given());
     }
-    if run == LeadRun::FreeAir && rules.is_some_and(|set| only_in_conduit(set)) {
+    if run == LeadRun::FreeAir && rules.is_some_and(only_in_conduit) {
         findings.push(finding::free_air_not_limited());
     }
     if run != LeadRun::MetalConduit {

@@ -87,22 +87,17 @@ impl<'a> Setup<'a> {
         };
         // Only what the run asks for is read: a bore typed before another run was chosen is no matter.
         let conduit = wiring.run == LeadRun::MetalConduit;
-        let bore = match conduit {
-            true => read(
-                &wiring.conduit_bore,
-                &measure::CONDUIT_BORE_MM,
-                "The bore of the conduit",
-            ),
-            false => Typed::Nothing,
-        };
-        let from_earthed = match conduit {
-            true => Typed::Nothing,
-            false => read(
-                &wiring.from_earthed,
-                &measure::FROM_EARTHED_MM,
-                "The distance from earthed parts",
-            ),
-        };
+        let only = |wanted: bool, text: &'a str| if wanted { text } else { "" };
+        let bore = read(
+            only(conduit, &wiring.conduit_bore),
+            &measure::CONDUIT_BORE_MM,
+            "The bore of the conduit",
+        );
+        let from_earthed = read(
+            only(!conduit, &wiring.from_earthed),
+            &measure::FROM_EARTHED_MM,
+            "The distance from earthed parts",
+        );
         let at = &measure::SUPPLY_PLACE_MM;
         let right = read(
             &wiring.supply_right,
