@@ -1,5 +1,6 @@
 //! A string on a rating, worked up: everything a circuit card shows.
 
+use super::chart::{CHART_FULL, ChartUse, chart_use};
 use super::curve::Curve;
 use super::finding;
 use super::load::{Load, Operating, operate};
@@ -34,6 +35,8 @@ pub struct Half {
     /// Where it runs if its tubes take less, and if they take more, by as much as their volts may be
     /// off; None where they were entered without saying how well they are known.
     pub band: Option<(Operating, Operating)>,
+    /// What it uses up of the supply by the plate's length chart, where there is one.
+    pub chart: Option<ChartUse>,
 }
 
 /// A circuit worked up.
@@ -124,6 +127,7 @@ pub fn assess(loads: &[&Load], rating: &Rating, loading: &Loading) -> Assessment
                 at_low_mains: operate(load, &curve(1.0 - MAINS_SPREAD)),
                 at_high_mains: operate(load, &curve(1.0 + MAINS_SPREAD)),
                 band: None,
+                chart: chart_use(load, rating),
             };
             let low = curve(1.0 - MAINS_SPREAD);
             half_findings(&half, load, &window, &low, loading, rating, &mut findings);
@@ -195,21 +199,39 @@ fn half_findings(
     findings: &mut Vec<Finding>,
 ) {
     findings.extend(finding::zone(half, window, rating));
+    if let Some(used) = &half.chart {
+        if used.share > CHART_FULL {
+            findings.push(finding::chart_full(used));
+        }
+        findings.extend(finding::not_in_chart(used));
+    }
     let current = match half.operating {
         Operating::Runs { current, .. } => Some(current),
         Operating::Overloaded { .. } => None,
     };
     if let Some(current) = current {
-        if let Some((most, tube)) = &load.most {
-            if current > *most {
-                findings.push(finding::overdriven(current, *most, tube));
+        let stands = load
+            .most
+            .iter()
+            .map(|(most, tube)| (*most, tube, "the tube's entry"));
+        let rated = load.electrode.iter();
+        let rated = rated.map(|(rated, name)| (*rated, name, "the electrode's entry"));
+        for (most, name, entry) in stands.chain(rated) {
+            if current > most {
+                findings.push(finding::overdriven(current, most, name, entry));
             } else if let Operating::Runs {
                 current: at_high, ..
             } = half.at_high_mains
-                && at_high > *most
+                && at_high > most
             {
-                findings.push(finding::overdriven_at_high_mains(at_high, *most, tube));
+                findings.push(finding::overdriven_at_high_mains(at_high, most, name));
             }
+        }
+        if let Some((rated, name)) = &load.electrode
+            && current <= *rated
+            && rating.short_circuit > *rated
+        {
+            findings.push(finding::short_circuit_over_electrode(rating, *rated, name));
         }
         if let Some((least, tube)) = &load.least
             && current < *least

@@ -79,7 +79,9 @@ pub fn difference(r_a: f64, r_b: f64) -> f64 {
     let mut edges = [0.0, PI, PI, PI, PI, PI];
     for (at, wave) in [a, b].into_iter().enumerate() {
         edges[1 + 2 * at] = wave.start;
-        edges[2 + 2 * at] = (wave.start + wave.long - PI).max(0.0);
+        let end = wave.start + wave.long;
+        // A half wave that goes on beyond π is the end of the one before, seen from 0.
+        edges[2 + 2 * at] = if end >= PI { end - PI } else { end };
     }
     edges.sort_by(f64::total_cmp);
     let mut square = 0.0;

@@ -1,6 +1,7 @@
 //! The sentences of this room. The place is set by whoever works the circuit up.
 
 use super::assess::{Assessment, Half, STRIKE_LOOK};
+use super::chart::ChartUse;
 use super::load::Operating;
 use super::profile::Spot;
 use super::protection::{FaultMap, Unseen};
@@ -97,7 +98,12 @@ pub(super) fn zone(half: &Half, window: &Window, rating: &Rating) -> Option<Find
     }
 }
 
-pub(super) fn overdriven(current: Milliamps, most: Milliamps, tube: &str) -> Finding {
+pub(super) fn overdriven(
+    current: Milliamps,
+    most: Milliamps,
+    tube: &str,
+    entry: &'static str,
+) -> Finding {
     found(
         Grade::Stop,
         format!(
@@ -105,7 +111,7 @@ pub(super) fn overdriven(current: Milliamps, most: Milliamps, tube: &str) -> Fin
             told_from(current.ma(), most.ma(), 1),
             most.ma()
         ),
-        Source::entry("the tube's entry"),
+        Source::entry(entry),
     )
     .with(current.ma(), most.ma(), "mA")
 }
@@ -121,6 +127,55 @@ pub(super) fn overdriven_at_high_mains(current: Milliamps, most: Milliamps, tube
         Source::model(),
     )
     .with(current.ma(), most.ma(), "mA")
+}
+
+/// What the electrodes carry where a fault shorts the rest of the string.
+pub(super) fn short_circuit_over_electrode(
+    rating: &Rating,
+    rated: Milliamps,
+    electrode: &str,
+) -> Finding {
+    found(
+        Grade::Note,
+        format!(
+            "A fault that shorts most of the string drives up to {} mA through the rest, above the {} \
+             mA that {electrode} is rated for.",
+            rating.short_circuit.ma(),
+            rated.ma()
+        ),
+        Source::entry("the electrode's entry"),
+    )
+    .with(rating.short_circuit.ma(), rated.ma(), "mA")
+}
+
+/// More glass than the plate's length chart carries.
+pub(super) fn chart_full(used: &ChartUse) -> Finding {
+    found(
+        Grade::Stop,
+        format!(
+            "{OVERLOADED}by the length chart of its plate the string uses up {} % of the supply, \
+             electrodes counted in.",
+            told_from(used.share * 100.0, 100.0, 0)
+        ),
+        Source::entry("the supply's entry"),
+    )
+    .with(used.share * 100.0, 100.0, "%")
+}
+
+/// Tube types the plate's length chart says nothing of.
+pub(super) fn not_in_chart(used: &ChartUse) -> Option<Finding> {
+    let names: Vec<String> = used.not_in_chart.iter().map(|name| quoted(name)).collect();
+    (!names.is_empty()).then(|| {
+        found(
+            Grade::Note,
+            format!(
+                "The length chart of the plate has no length for {}: of that only the volts are \
+                 checked.",
+                names.join(", ")
+            ),
+            Source::entry("the supply's entry"),
+        )
+    })
 }
 
 pub(super) fn too_little_current(current: Milliamps, least: Milliamps, tube: &str) -> Finding {
@@ -251,15 +306,15 @@ pub(crate) fn volts_off(worked: &Assessment, off: &str, settled: &str) -> Option
 
 const OVERLOADED: &str = "Overloaded: ";
 
-/// A place on a string in words: `a third into “P” (piece 2)` has its share as a figure.
+/// A place on a string in words, as seen from lead A: `30 % into “P” (piece 2)`.
 fn spot_words(spot: Spot, pieces: &[(&Piece, &TubeType)]) -> String {
     let label = pieces
         .get(spot.piece)
         .map_or_else(String::new, |(piece, _)| quoted(&piece.label));
     let number = spot.piece + 1;
     match spot.along {
-        along if along < 0.005 => format!("the near end of {label} (piece {number})"),
-        along if along > 0.995 => format!("the far end of {label} (piece {number})"),
+        along if along < 0.005 => format!("the start of {label} (piece {number})"),
+        along if along > 0.995 => format!("the end of {label} (piece {number})"),
         along => format!("{:.0} % into {label} (piece {number})", along * 100.0),
     }
 }
@@ -306,9 +361,14 @@ pub(super) fn standing(map: &FaultMap, word: EarthWord) -> Option<Finding> {
             Grade::Look,
             format!(
                 "The two strings are unequal: with no fault the mid-point of the winding carries {} \
-                 mA, its leads' leakage counted in, of the {} mA at which {}-fault sensing trips. \
-                 It may switch off a sound sign; balance the strings.",
+                 mA{} of the {} mA at which {}-fault sensing trips. It may switch off a sound sign; \
+                 balance the strings.",
                 told_from(standing.ma(), trip.ma(), 1),
+                if map.taken_off.ma() > 0.0 {
+                    ", the leads' leakage counted in,"
+                } else {
+                    ""
+                },
                 trip.ma(),
                 word.word()
             ),
@@ -450,13 +510,15 @@ fn mid_point_says(
 
 /// What an open tube does, with its caption.
 pub(super) fn open_tube_says(rating: &Rating, word: EarthWord) -> (String, String) {
-    let (between, to_earth) = (
-        volts_shown(rating.no_load),
-        volts_shown(rating.no_load_to_earth()),
-    );
+    let between = volts_shown(rating.no_load);
+    let to_earth = volts_shown(rating.no_load_to_earth());
     let earth = word.word();
-    let volts =
-        format!("{between} between the leads and {to_earth} to {earth} on either side of it");
+    let where_from = match rating.earthing {
+        OutputEarthing::MidPoint | OutputEarthing::MidPointReturn => "on either side of it",
+        OutputEarthing::OneEnd => "on the side of the live lead",
+        OutputEarthing::Isolated => "from either side",
+    };
+    let volts = format!("{between} between the leads and {to_earth} to {earth} {where_from}");
     let says = match (rating.open_circuit_protection, rating.kind) {
         (true, _) => format!(
             "Switches off when a tube is open or broken. Until it does, and where it fails, up to \
@@ -477,28 +539,33 @@ pub(super) fn open_tube_says(rating: &Rating, word: EarthWord) -> (String, Strin
 /// What the test of the supply alone shows, with its caption. None where it has no protection to test.
 pub(super) fn bench_test_says(rating: &Rating, word: EarthWord) -> Option<(String, String)> {
     let earth = word.word();
+    let (leads, sides) = match rating.earthing {
+        OutputEarthing::OneEnd => ("on the live lead", "there"),
+        _ => ("on lead A and on lead B", "on both sides"),
+    };
     let tested = match (
         rating.earth_fault_protection,
         rating.open_circuit_protection,
     ) {
-        (true, true) => {
-            format!("a fault to {earth} and an open string, each on lead A and on lead B,")
-        }
-        (true, false) => format!("a fault to {earth} on lead A and on lead B"),
-        (false, true) => "an open string on lead A and on lead B".to_owned(),
+        (true, true) => format!("a fault to {earth} and an open string, each {leads}"),
+        (true, false) => format!("a fault to {earth} {leads}"),
+        (false, true) => format!("an open string {leads}"),
         (false, false) => return None,
     };
-    let cannot = if rating.earth_fault_protection {
-        " It cannot show that a fault on the string is seen: at the leads it is at its largest, in the \
-         unseen stretch it stays unseen on a sound supply."
-    } else {
-        ""
+    let cannot = match rating.earthing {
+        OutputEarthing::MidPoint | OutputEarthing::MidPointReturn
+            if rating.earth_fault_protection =>
+        {
+            " It cannot show that a fault on the string is seen: at the leads it is at its largest, in \
+             the unseen stretch it stays unseen on a sound supply."
+        }
+        _ => " It cannot show what a fault on the string itself would do.",
     };
     Some((
         "Bench test".to_owned(),
         format!(
             "The test of the supply alone ({tested}) shows that its sensing and its switching-off work \
-             on both sides (common practice, no source).{cannot}"
+             {sides} (common practice, no source).{cannot}"
         ),
     ))
 }

@@ -1,8 +1,9 @@
 //! The string as a load, and where it meets the supply's curve.
 
+use super::chart::pair_as_length;
 use super::curve::{Curve, iron};
 use crate::book::Gas;
-use crate::measure::{Milliamps, Volts};
+use crate::measure::{Length, Milliamps, Volts};
 use crate::takeoff::Piece;
 use crate::tube::TubeType;
 
@@ -21,6 +22,23 @@ pub struct Load {
     pub most: Option<(Milliamps, String)>,
     /// The greatest of its tubes' least currents, with the tube's name.
     pub least: Option<(Milliamps, String)>,
+    /// The least of its electrodes' rated currents, with the electrode's name.
+    pub electrode: Option<(Milliamps, String)>,
+    /// Its glass by tube type.
+    pub glass: Vec<Glass>,
+}
+
+/// Glass of one tube type in a string.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Glass {
+    /// Tube type, by its name in the book.
+    pub tube: String,
+    /// Gas column of all its pieces.
+    pub column: Length,
+    /// Pieces of it, and so pairs of electrodes.
+    pub pairs: usize,
+    /// The length of tube that takes as many volts as a pair.
+    pub pair: Length,
 }
 
 impl Load {
@@ -41,10 +59,31 @@ impl Load {
             Gas::Neon => self.neon = true,
             Gas::ArgonMercury => self.mercury = true,
         }
+        match self.glass.iter_mut().find(|glass| glass.tube == tube.name) {
+            Some(glass) => {
+                glass.column += piece.column();
+                glass.pairs += 1;
+            }
+            None => self.glass.push(Glass {
+                tube: tube.name.clone(),
+                column: piece.column(),
+                pairs: 1,
+                pair: pair_as_length(tube),
+            }),
+        }
         if let Some(most) = tube.most
             && self.most.as_ref().is_none_or(|(known, _)| most < *known)
         {
             self.most = Some((most, tube.name.clone()));
+        }
+        if let Some(electrode) = &tube.electrode
+            && let Some(rated) = electrode.rated
+            && self
+                .electrode
+                .as_ref()
+                .is_none_or(|(known, _)| rated < *known)
+        {
+            self.electrode = Some((rated, electrode.name.clone()));
         }
         if let Some(least) = tube.least
             && self.least.as_ref().is_none_or(|(known, _)| least > *known)

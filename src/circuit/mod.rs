@@ -8,6 +8,7 @@
 //! DEVELOPERS.md, "Why not").
 
 mod assess;
+mod chart;
 mod curve;
 mod fault;
 mod finding;
@@ -18,10 +19,12 @@ mod window;
 
 pub use assess::{Assessment, Half, assess};
 pub(crate) use assess::{MAINS_SPREAD, STRIKE_LOOK};
+pub use chart::ChartUse;
+pub(crate) use chart::{CHART_FULL, chart_share, pair_as_length};
 pub use curve::{CONTINUOUS_TO, Curve, Waveform, iron};
 pub use fault::{MidPoint, Strings, difference};
 pub(crate) use finding::volts_off;
-pub use load::{Load, Operating, operate};
+pub use load::{Glass, Load, Operating, operate};
 pub use profile::{Joint, Profile, Span, Spot, profile};
 pub use protection::{FaultMap, Protection, Unseen, protect};
 pub use window::{Basis, Window, Zone};

@@ -12,7 +12,9 @@ use std::ops::Range;
 use super::split::Fit;
 use super::{Task, two_strings};
 use crate::book::{Gas, SupplyKind};
-use crate::circuit::{Basis, CONTINUOUS_TO, Curve, Window};
+use crate::circuit::{
+    Basis, CHART_FULL, CONTINUOUS_TO, Curve, Window, chart_share, pair_as_length,
+};
 use crate::rules::Grade;
 
 /// More pieces than a circuit ever has: on the largest supply that can be entered, 30 kV, so many
@@ -63,6 +65,8 @@ struct SupplyGates {
     /// By tube type of the task: upper bound at nominal and high mains, lower bound at nominal.
     most: Vec<[CurrentGate; 2]>,
     least: Vec<CurrentGate>,
+    /// Share of the plate's length chart that the first i pieces use up; none: it has no chart.
+    chart: Option<Vec<f64>>,
 }
 
 /// All gates of a task.
@@ -191,7 +195,9 @@ impl Gates {
                     most: distinct
                         .iter()
                         .map(|kind| {
-                            let most = kind.most.map(crate::measure::Milliamps::ma);
+                            let rated = kind.electrode.as_ref().and_then(|kind| kind.rated);
+                            let bounds = [kind.most, rated].into_iter().flatten();
+                            let most = bounds.map(crate::measure::Milliamps::ma).reduce(f64::min);
                             [bound(nominal, most, true), bound(high, most, true)]
                         })
                         .collect(),
@@ -205,6 +211,15 @@ impl Gates {
                             )
                         })
                         .collect(),
+                    chart: (!rating.chart.is_empty()).then(|| {
+                        let used = task.pieces.iter().scan(0.0, |used, (piece, kind)| {
+                            let pair = pair_as_length(kind);
+                            *used += chart_share(rating, &kind.name, piece.column(), 1, pair)
+                                .unwrap_or(0.0);
+                            Some(*used)
+                        });
+                        std::iter::once(0.0).chain(used).collect()
+                    }),
                 }
             })
             .collect();
@@ -363,7 +378,10 @@ impl Gates {
     fn string(&self, pieces: &Range<usize>, supply: usize, neon: usize) -> Fit<Fitting> {
         let gates = &self.supplies[supply];
         let loads = &gates.loads[neon];
-        if self.volts(pieces, &loads.over) >= loads.over.volts {
+        let full = |chart: &Vec<f64>| chart[pieces.end] - chart[pieces.start] > CHART_FULL;
+        if self.volts(pieces, &loads.over) >= loads.over.volts
+            || gates.chart.as_ref().is_some_and(full)
+        {
             return Fit::TooMuch;
         }
         let mut look = loads
@@ -427,14 +445,14 @@ mod tests {
 
     use super::super::{Candidate, on};
     use super::*;
-    use crate::book::{Loading, OutputEarthing, SupplyEntry, TubeEntry};
+    use crate::book::{ChartLength, Loading, OutputEarthing, SupplyEntry, TubeEntry};
     use crate::circuit::Load;
     use crate::job::Wish;
-    use crate::measure::Length;
+    use crate::measure::{Length, Milliamps};
     use crate::rules::Finding;
     use crate::supply::Rating;
     use crate::takeoff::Piece;
-    use crate::tube::TubeType;
+    use crate::tube::{Electrode, TubeType};
 
     fn piece(length_mm: f64) -> Piece {
         Piece {
@@ -462,12 +480,16 @@ mod tests {
             8.0..20.0_f64,
             prop::option::of(0.0..0.45_f64),
             prop::option::of(5.0..30.0_f64),
-            prop::option::of(20.0..60.0_f64),
+            (
+                prop::option::of(20.0..60.0_f64),
+                prop::option::weighted(0.3, 15.0..60.0_f64),
+            ),
         );
         prop::collection::vec(tube, 1..4).prop_map(|tubes| {
-            let tube = |(at, (gas, outer_mm, exponent, least_ma, most_ma))| {
+            let tube = |(at, (gas, outer_mm, exponent, least_ma, (most_ma, rated_ma)))| {
                 let (least_ma, most_ma): (Option<f64>, Option<f64>) = (least_ma, most_ma);
-                TubeType::read(&TubeEntry {
+                let rated_ma: Option<f64> = rated_ma;
+                let mut tube = TubeType::read(&TubeEntry {
                     name: format!("{at}"),
                     gas,
                     outer_mm: Some(outer_mm),
@@ -476,7 +498,14 @@ mod tests {
                     most_ma,
                     ..TubeEntry::default()
                 })
-                .expect("a whole tube")
+                .expect("a whole tube");
+                tube.electrode = rated_ma.map(|rated_ma| Electrode {
+                    name: format!("electrode of {at}"),
+                    rated: Some(Milliamps::from_ma(rated_ma)),
+                    least_outer: None,
+                    most_outer: None,
+                });
+                tube
             };
             tubes.into_iter().enumerate().map(tube).collect()
         })
@@ -492,6 +521,8 @@ mod tests {
         rated_share: f64,
         load_share: f64,
         window: Option<(f64, f64)>,
+        /// Longest length of the first tube type, and of its pairs.
+        chart: Option<(f64, Option<f64>)>,
     }
 
     impl Plate {
@@ -507,6 +538,15 @@ mod tests {
                 rated_load_volts: electronic.then_some(self.load_share * no_load),
                 least_load_percent: self.window.map(|(least, _)| least),
                 most_load_percent: self.window.map(|(least, more)| least + more),
+                chart: self
+                    .chart
+                    .map(|(longest_mm, pair_mm)| ChartLength {
+                        tube: "0".to_owned(),
+                        longest_mm,
+                        pair_mm,
+                    })
+                    .into_iter()
+                    .collect(),
                 ..SupplyEntry::default()
             };
             let rating = Rating::read(&entry).expect("a whole nameplate");
@@ -537,16 +577,23 @@ mod tests {
             18.0..60.0_f64,
             (0.4..1.0_f64, 0.4..1.0_f64),
             prop::option::weighted(0.3, (10.0..60.0_f64, 1.0..40.0_f64)),
+            prop::option::weighted(
+                0.3,
+                (500.0..12_000.0_f64, prop::option::of(100.0..600.0_f64)),
+            ),
         )
             .prop_map(
-                |(kind, earthing, times, short_ma, (rated_share, load_share), window)| Plate {
-                    kind,
-                    earthing,
-                    times,
-                    short_ma,
-                    rated_share,
-                    load_share,
-                    window,
+                |(kind, earthing, times, short_ma, (rated_share, load_share), window, chart)| {
+                    Plate {
+                        kind,
+                        earthing,
+                        times,
+                        short_ma,
+                        rated_share,
+                        load_share,
+                        window,
+                        chart,
+                    }
                 },
             )
     }

@@ -184,8 +184,7 @@ fn circuit(task: &Task, gates: &Gates, pieces: Range<usize>, candidate: usize) -
     let second_from = gates.second_from(task, &pieces, candidate);
     let rating = &task.candidates[candidate].rating;
     let mut assessment = on(task, &pieces, second_from, rating);
-    let unsure = unsure(task, &pieces, second_from, rating, &assessment);
-    assessment.findings.extend(unsure);
+    unsure(task, &pieces, second_from, rating, &mut assessment);
     Circuit {
         assessment,
         smaller: why::smaller(task, gates, &pieces, candidate),
@@ -196,23 +195,24 @@ fn circuit(task: &Task, gates: &Gates, pieces: Range<usize>, candidate: usize) -
     }
 }
 
-/// What would stop a circuit that is fine as worked out, were its tubes at either end of what their
-/// volts may be off by. It speaks of the circuit chosen; the choice is made without it.
+/// Where a circuit runs at either end of what the volts of its tubes may be off by, and what would stop
+/// it there that does not as worked out. It speaks of the circuit chosen; the choice is made without
+/// it.
 fn unsure(
     task: &Task,
     pieces: &Range<usize>,
     second_from: Option<usize>,
     rating: &Rating,
-    nominal: &Assessment,
-) -> Vec<Finding> {
+    nominal: &mut Assessment,
+) {
     let percents = || {
         let tubes = task.pieces[pieces.clone()].iter();
         tubes.filter_map(|(_, tube)| tube.uncertainty_percent())
     };
     let least = percents().fold(f64::INFINITY, f64::min);
     let most = percents().fold(0.0, f64::max);
-    if most == 0.0 || nominal.grade() == Some(Grade::Stop) {
-        return Vec::new();
+    if most == 0.0 {
+        return;
     }
     let at = |sign: f64| {
         let here = &task.pieces[pieces.clone()];
@@ -225,6 +225,14 @@ fn unsure(
         let second_from = second_from.map(|from| from - pieces.start);
         on(&alone, &(0..pieces.len()), second_from, rating)
     };
+    let (more, less) = (at(1.0), at(-1.0));
+    let ends = less.halves.iter().zip(&more.halves);
+    for (half, (less, more)) in nominal.halves.iter_mut().zip(ends) {
+        half.band = Some((less.operating, more.operating));
+    }
+    if nominal.grade() == Some(Grade::Stop) {
+        return;
+    }
     let percent = if least == most {
         format!("{most} %")
     } else {
@@ -243,12 +251,13 @@ fn unsure(
         (false, _) => ("the fit to your bench readings says", "more readings"),
         (true, false) => ("the default model says", "bench readings of your own glass"),
     };
-    [(1.0, "more"), (-1.0, "less")]
+    let found: Vec<Finding> = [(&more, "more"), (&less, "less")]
         .into_iter()
-        .filter_map(|(sign, way)| {
-            volts_off(&at(sign), &format!("{percent} {way} than {say}"), settled)
+        .filter_map(|(worked, way)| {
+            volts_off(worked, &format!("{percent} {way} than {say}"), settled)
         })
-        .collect()
+        .collect();
+    nominal.findings.extend(found);
 }
 
 /// Some pieces on a rating, worked up in full.

@@ -58,6 +58,9 @@ mod pieces;
 /// Operating points against ngspice and exact solutions; volts to earth.
 mod circuit;
 
+/// Faults to earth: what the mid-point carries, what goes unseen, what is said of each output.
+mod protection;
+
 /// The splitter against known optima, brute force and random splits.
 mod plan;
 

@@ -7,7 +7,8 @@ use std::path::{Path, PathBuf};
 use std::process::{Child, Command, Stdio};
 use std::time::{Duration, Instant};
 
-use crate::{Outcome, run};
+use crate::Outcome;
+use crate::programs::{self, Sought};
 
 /// How Chromium is started for tests: unseen, in what a small machine or a container gives it, and
 /// asking nothing of the network.
@@ -33,16 +34,6 @@ pub struct Browser {
     pub chromium: PathBuf,
     /// The driver's program.
     pub chromedriver: PathBuf,
-}
-
-/// Where a program may be.
-struct Sought {
-    /// The variable by which a person says where it is.
-    variable: &'static str,
-    /// Its names on the path.
-    names: &'static [&'static str],
-    /// Places outside the path that some systems put it in.
-    places: &'static [&'static str],
 }
 
 const CHROMIUM: Sought = Sought {
@@ -72,16 +63,12 @@ const CHROMEDRIVER: Sought = Sought {
 /// # Errors
 /// A sentence saying what to install.
 pub fn ensure() -> Result<Browser, String> {
-    if let Some(browser) = find()? {
-        return Ok(browser);
-    }
-    if !(is_root() && run::output(Command::new("apt-get").arg("--version")).is_ok()) {
-        return Err(missing());
-    }
-    println!("Installing Chromium and its driver.");
-    run::run(Command::new("apt-get").arg("update"))?;
-    run::run(Command::new("apt-get").args(["install", "-y", "chromium", "chromium-driver"]))?;
-    find()?.ok_or_else(missing)
+    programs::ensure(
+        "Chromium and its driver",
+        &["chromium", "chromium-driver"],
+        find,
+        missing,
+    )
 }
 
 fn missing() -> String {
@@ -93,44 +80,13 @@ fn missing() -> String {
 }
 
 fn find() -> Result<Option<Browser>, String> {
-    let path = std::env::var_os("PATH").unwrap_or_default();
-    let path: Vec<PathBuf> = std::env::split_paths(&path).collect();
-    let named = |sought: &Sought| std::env::var_os(sought.variable).map(PathBuf::from);
-    let chromium = CHROMIUM.find(named(&CHROMIUM), &path)?;
-    let chromedriver = CHROMEDRIVER.find(named(&CHROMEDRIVER), &path)?;
+    let (chromium, chromedriver) = (CHROMIUM.find_here()?, CHROMEDRIVER.find_here()?);
     Ok(chromium
         .zip(chromedriver)
         .map(|(chromium, chromedriver)| Browser {
             chromium,
             chromedriver,
         }))
-}
-
-impl Sought {
-    fn find(&self, named: Option<PathBuf>, path: &[PathBuf]) -> Result<Option<PathBuf>, String> {
-        if let Some(named) = named {
-            if named.is_file() {
-                return Ok(Some(named));
-            }
-            return Err(format!(
-                "{} says {}, but there is no such program; correct it or take it away.",
-                self.variable,
-                named.display()
-            ));
-        }
-        let on_path = self.names.iter().flat_map(|name| {
-            path.iter().map(move |dir| {
-                dir.join(name)
-                    .with_extension(std::env::consts::EXE_EXTENSION)
-            })
-        });
-        let elsewhere = self.places.iter().map(PathBuf::from);
-        Ok(on_path.chain(elsewhere).find(|program| program.is_file()))
-    }
-}
-
-fn is_root() -> bool {
-    run::output(Command::new("id").arg("-u")).is_ok_and(|id| id.trim() == "0")
 }
 
 /// A running driver, stopped when dropped.

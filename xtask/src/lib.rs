@@ -8,6 +8,7 @@ pub mod build;
 pub mod chromium;
 pub mod files;
 pub mod paths;
+mod programs;
 pub mod report;
 pub mod run;
 pub mod serve;

@@ -6,7 +6,7 @@ use std::time::Instant;
 
 use crate::chromium::{self, Driver};
 use crate::serve::Server;
-use crate::{Outcome, build, files, paths, run};
+use crate::{Outcome, build, files, paths, programs, run};
 
 /// A step: its name, what it does in a few words, and how.
 struct Step {
@@ -28,7 +28,7 @@ const STEPS: [Step; 7] = [
     },
     Step {
         name: "native",
-        does: "do the tests of the core and of the commands hold",
+        does: "do the tests of the core and of the commands hold, and does a circuit simulator agree",
         run: native,
     },
     Step {
@@ -122,7 +122,12 @@ fn lint() -> Outcome {
 }
 
 fn native() -> Outcome {
-    run::run(run::cargo().args(["test", "--workspace", "--exclude", JOURNEYS]))
+    run::run(run::cargo().args(["test", "--workspace", "--exclude", JOURNEYS]))?;
+    run::run(
+        run::cargo()
+            .args(["test", "--package", "tubewright", "--test", "spice"])
+            .env("NGSPICE", programs::ngspice()?),
+    )
 }
 
 fn docs() -> Outcome {
