@@ -11,7 +11,10 @@
 
 mod electrode;
 mod finding;
+mod fit;
 mod known;
+mod line;
+mod measured;
 
 use crate::book::{ElectrodeEntry, Gas, TubeEntry};
 use crate::measure::{Length, Milliamps, Volts};
@@ -19,6 +22,8 @@ use crate::rules::{Finding, Grade, Place, Source};
 
 pub use electrode::Electrode;
 pub use known::Known;
+pub use line::{Interval, Line, student_t};
+pub use measured::{AtCurrent, LEAST_PERCENT, Measured, Placed, measured};
 
 use finding::{MOST_MA, MOST_OUTER_MM};
 
@@ -28,6 +33,10 @@ const MODEL_MA: f64 = 25.0;
 const MODEL_COLD_FACTOR: f64 = 1.15;
 /// Greatest exponent of the fall of volts with current.
 const MOST_EXPONENT: f64 = 0.45;
+/// Greatest volts per metre at the reference current.
+const MOST_VOLTS_PER_M: f64 = 10_000.0;
+/// Greatest volts of one electrode pair.
+const MOST_PAIR_VOLTS: f64 = 2_000.0;
 
 /// Default figures for a gas and a bore.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -134,12 +143,17 @@ impl TubeType {
         };
         above_zero("Outer diameter", entry.outer_mm, MOST_OUTER_MM, " mm");
         above_zero("Wall", entry.wall_mm, 10.0, " mm");
-        above_zero("Volts per metre", entry.volts_per_m, 10_000.0, " V/m");
+        above_zero(
+            "Volts per metre",
+            entry.volts_per_m,
+            MOST_VOLTS_PER_M,
+            " V/m",
+        );
         above_zero("Reference current", entry.at_ma, MOST_MA, " mA");
         above_zero(
             "Volts of an electrode pair",
             entry.pair_volts,
-            2_000.0,
+            MOST_PAIR_VOLTS,
             " V",
         );
         above_zero("Cold factor", entry.cold_factor, 3.0, "");
@@ -182,7 +196,7 @@ impl TubeType {
             .at_ma
             .filter(|_| entry.volts_per_m.is_some())
             .unwrap_or(MODEL_MA);
-        Ok(Self {
+        let mut tube = Self {
             name: entry.name.clone(),
             gas: entry.gas,
             outer: Length::from_mm(outer_mm),
@@ -205,7 +219,27 @@ impl TubeType {
             },
             electrode: None,
             findings: Vec::new(),
-        })
+        };
+        match measured(entry) {
+            None => {}
+            Some(Err(why)) => tube.findings = why,
+            Some(Ok(measured)) => tube.take(entry, measured),
+        }
+        Ok(tube)
+    }
+
+    /// Bench readings rule over figures typed in or modelled.
+    fn take(&mut self, entry: &TubeEntry, measured: Measured) {
+        self.volts_per_m = measured.volts_per_m.value;
+        self.at_ma = measured.at_ma;
+        self.exponent = measured.exponent;
+        self.pair_volts = measured.pair_volts.value;
+        self.known = Known::Measured {
+            on: entry.measured_on.clone(),
+            readings: entry.readings.len(),
+            percent: measured.percent,
+        };
+        self.findings = measured.findings;
     }
 
     /// How far off the volts may be, percent either way. None: they were typed in, and nobody said.

@@ -43,6 +43,9 @@ mod supply;
 /// The default model by hand; entries that are not whole.
 mod tube;
 
+/// Bench readings: fits against certified and independent figures; every refusal.
+mod measured;
+
 /// Rows to pieces of glass, by hand from the shapes of the letters.
 mod takeoff;
 
