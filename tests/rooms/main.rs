@@ -64,6 +64,15 @@ mod circuit;
 /// Faults to earth: what the mid-point carries, what goes unseen, what is said of each output.
 mod protection;
 
+/// Leads and jumpers against outside figures, and by hand.
+mod wiring;
+
+/// What feeds the supplies, by hand.
+mod feed;
+
+/// What is easily got wrong in the codes, clause by clause.
+mod traps;
+
 /// The splitter against known optima, brute force and random splits.
 mod plan;
 

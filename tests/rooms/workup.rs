@@ -5,11 +5,12 @@ use proptest::prelude::*;
 use proptest::sample::select;
 use rust_decimal::Decimal;
 use tubewright::book::{
-    Allowances, Bending, Book, Dampness, Gas, Loading, OutputEarthing, Rates, SupplyEntry,
-    SupplyKind, TubeEntry, starter,
+    Allowances, Bending, Book, CableEntry, Dampness, Gas, Loading, OutputEarthing, Rates,
+    SupplyEntry, SupplyKind, TubeEntry, starter,
 };
 use tubewright::job::{
-    FontFile, Job, OutlineRow, Pieces, Row, ShapeRow, Site, StrokesRow, TextRow, Wish,
+    CircuitLeads, Feed, FontFile, Job, LeadRun, OutlineRow, Pieces, Row, ShapeRow, Site,
+    StrokesRow, TextRow, Wiring, Wish,
 };
 use tubewright::rules::{Grade, Place};
 use tubewright::{Workup, workup};
@@ -163,6 +164,19 @@ fn assert_sound(job: &Job, work: &Workup) {
         assert!(0 < circuit.first_string && circuit.first_string <= circuit.pieces.len());
         assert!(circuit.column.mm() > 0.0);
     }
+    // Every section of every circuit, and no figure that is none.
+    for circuit in &work.circuits {
+        let leads = &circuit.leads;
+        assert!(leads.sections.len() > circuit.pieces.len());
+        let figures = [leads.sum_ma, leads.difference_ma, leads.share];
+        assert!(figures.into_iter().flatten().all(|figure| figure >= 0.0));
+    }
+    let feed = &work.feed;
+    let amps = [feed.total_amps, feed.counted_amps, feed.kwh_per_year];
+    assert!(
+        amps.into_iter().flatten().all(|amps| amps >= 0.0),
+        "{feed:?}"
+    );
     // A piece left over is said.
     assert!(work.left_over.is_empty() || work.grade() == Some(Grade::Stop));
     // The sum adds up.
@@ -352,6 +366,8 @@ fn supply() -> impl Strategy<Value = SupplyEntry> {
                 trip_ma: trip_ma.filter(|_| earth_fault_protection),
                 input_volts: input_volts.filter(|_| open_circuit_protection),
                 input_va,
+                // As good as any other figure.
+                output_hertz: input_va,
                 earth_fault_protection,
                 open_circuit_protection,
                 price,
@@ -440,19 +456,116 @@ fn any_book() -> impl Strategy<Value = Book> {
         prop_oneof![3 => Just(Allowances::default()), 1 => allowances],
         prop_oneof![3 => Just(Loading::default()), 1 => loading],
         prop_oneof![3 => Just(Bending::default()), 1 => bending],
+        prop::collection::vec(any_cable(), 0..3),
     )
-        .prop_map(|(supplies, odd, rates, allowances, loading, bending)| {
-            let mut book = Book {
-                bending,
-                supplies,
-                rates,
-                allowances,
-                loading,
-                ..starter()
-            };
-            book.tubes.extend(odd);
-            book
+        .prop_map(
+            |(supplies, odd, rates, allowances, loading, bending, cables)| {
+                let mut book = Book {
+                    cables,
+                    bending,
+                    supplies,
+                    rates,
+                    allowances,
+                    loading,
+                    ..starter()
+                };
+                book.tubes.extend(odd);
+                book
+            },
+        )
+}
+
+fn any_cable() -> impl Strategy<Value = CableEntry> {
+    (
+        (
+            figure(1_000.0..15_000.0),
+            figure(20.0..200.0),
+            any::<bool>(),
+        ),
+        (figure(0.5..3.0), figure(3.0..12.0), figure(1.0..5.0)),
+    )
+        .prop_map(
+            |((rated_volts, pf_per_m, screened), (conductor_mm, insulation_mm, permittivity))| {
+                CableEntry {
+                    name: "cable".to_owned(),
+                    rated_volts,
+                    pf_per_m,
+                    conductor_mm,
+                    insulation_mm,
+                    permittivity,
+                    screened,
+                    ..CableEntry::default()
+                }
+            },
+        )
+}
+
+fn any_wiring() -> impl Strategy<Value = Wiring> {
+    (
+        select(vec!["cable", "cable", "", "no such"]).prop_map(str::to_owned),
+        select(vec![
+            LeadRun::MetalConduit,
+            LeadRun::PlasticConduit,
+            LeadRun::FreeAir,
+        ]),
+        prop::array::uniform8(length()),
+        prop_oneof![3 => 0.0..50.0_f64, 1 => odd_figure()],
+        prop::collection::vec((awkward(), length(), length()), 0..3),
+    )
+        .prop_map(|(cable, run, lengths, slack_percent, circuits)| {
+            let [
+                conduit_bore,
+                from_earthed,
+                supply_right,
+                supply_up,
+                ends,
+                lead_a,
+                lead_b,
+                jumper,
+            ] = lengths;
+            Wiring {
+                cable,
+                run,
+                conduit_bore,
+                from_earthed,
+                supply_right,
+                supply_up,
+                slack_percent,
+                ends,
+                lead_a,
+                lead_b,
+                jumper,
+                circuits: circuits
+                    .into_iter()
+                    .map(|(first, a, b)| CircuitLeads { first, a, b })
+                    .collect(),
+            }
         })
+}
+
+fn any_feed() -> impl Strategy<Value = Feed> {
+    (
+        (figure(6.0..40.0), any::<bool>(), any::<bool>()),
+        select(vec!["2.5 mm²", "12 AWG solid", "", "none"]).prop_map(str::to_owned),
+        length(),
+        (figure(0.0..8_784.0), prop::option::of(money())),
+    )
+        .prop_map(
+            |(
+                (circuit_amps, other_loads, required_outlet),
+                conductor,
+                length,
+                (hours_per_year, price_per_kwh),
+            )| Feed {
+                circuit_amps,
+                other_loads,
+                required_outlet,
+                conductor,
+                length,
+                hours_per_year,
+                price_per_kwh,
+            },
+        )
 }
 
 fn any_job() -> impl Strategy<Value = Job> {
@@ -473,19 +586,27 @@ fn any_job() -> impl Strategy<Value = Job> {
             select(vec![Dampness::Dry, Dampness::Damp, Dampness::Wet]),
             any::<bool>(),
         ),
+        (
+            prop_oneof![Just(Wiring::default()), any_wiring()],
+            prop_oneof![Just(Feed::default()), any_feed()],
+        ),
     )
-        .prop_map(|(rows, rules, wish, (mains_volts, place, cold))| Job {
-            rows,
-            fonts: vec![FontFile::new("letters.ttf", LETTERS)],
-            rules,
-            wish,
-            site: Site {
-                mains_volts,
-                place,
-                cold,
+        .prop_map(
+            |(rows, rules, wish, (mains_volts, place, cold), (wiring, feed))| Job {
+                wiring,
+                feed,
+                rows,
+                fonts: vec![FontFile::new("letters.ttf", LETTERS)],
+                rules,
+                wish,
+                site: Site {
+                    mains_volts,
+                    place,
+                    cold,
+                },
+                ..Job::default()
             },
-            ..Job::default()
-        })
+        )
 }
 
 proptest! {
