@@ -8,10 +8,12 @@ use rust_decimal::Decimal;
 use tubewright::book::{
     Allowances, Book, Loading, OutputEarthing, SupplyEntry, SupplyKind, starter,
 };
+use tubewright::circuit::{Curve, Load, Operating, assess, operate, profile, protect};
 use tubewright::drawing::svg;
 use tubewright::job::{Job, Row, StrokesRow, TextRow, Wish};
-use tubewright::measure::{LengthUnit, length};
+use tubewright::measure::{LengthUnit, Milliamps, length};
 use tubewright::plan::{Candidate, Task, plan};
+use tubewright::rules::EarthWord;
 use tubewright::supply::Rating;
 use tubewright::takeoff::{Piece, takeoff};
 use tubewright::tube::TubeType;
@@ -184,5 +186,72 @@ fn drawing(c: &mut Criterion) {
     });
 }
 
-criterion_group!(benches, work_up, planning, reading, drawing);
+/// One operating point, and all that is drawn of a circuit of 60 pieces.
+fn circuit(c: &mut Criterion) {
+    let kinds = starter().tubes;
+    let tubes: Vec<TubeType> = ["12 mm neon", "15 mm argon-mercury"]
+        .iter()
+        .map(|name| {
+            let entry = kinds.iter().find(|tube| tube.name == *name);
+            TubeType::read(entry.expect("a tube of the starter book")).expect("a whole tube")
+        })
+        .collect();
+    let glass: Vec<Piece> = pieces().into_iter().take(60).collect();
+    let rating = Rating::read(&SupplyEntry {
+        name: "of the bench".to_owned(),
+        kind: Some(SupplyKind::Iron),
+        no_load_volts: Some(30_000.0),
+        short_circuit_ma: Some(60.0),
+        earthing: Some(OutputEarthing::MidPoint),
+        earth_fault_protection: true,
+        trip_ma: Some(15.0),
+        ..SupplyEntry::default()
+    })
+    .expect("a whole nameplate");
+    let curve = Curve::of(&rating, 1.0, 1.0);
+    for (name, kinds) in [("one gas", 1), ("mixed", 2)] {
+        let string: Vec<(&Piece, &TubeType)> = glass
+            .iter()
+            .take(16)
+            .enumerate()
+            .map(|(at, piece)| (piece, &tubes[at % kinds]))
+            .collect();
+        let load = Load::of(string, false);
+        assert!(
+            matches!(operate(&load, &curve), Operating::Runs { gaps: false, .. }),
+            "it runs steadily"
+        );
+        c.bench_function(&format!("operating point, {name}"), |b| {
+            b.iter(|| operate(black_box(&load), black_box(&curve)));
+        });
+    }
+    // Short pairs, so that 60 of them run on one supply.
+    let short = TubeType {
+        pair_volts: 60.0,
+        volts_per_m: 200.0,
+        ..tubes[0].clone()
+    };
+    let string: Vec<(&Piece, &TubeType)> = glass.iter().map(|piece| (piece, &short)).collect();
+    let load = Load::of(string.iter().copied(), false);
+    let worked = assess(&[&load], &rating, &Loading::default());
+    assert!(
+        matches!(
+            worked.halves[0].operating,
+            Operating::Runs { gaps: false, .. }
+        ),
+        "it runs steadily"
+    );
+    c.bench_function("profile and fault map, 60 pieces", |b| {
+        b.iter(|| {
+            let (string, worked) = (black_box(&string), black_box(&worked));
+            let profile = profile(string, string.len(), worked, &rating, false);
+            let none = Milliamps::ZERO;
+            let seen = protect(string, worked, &profile, &rating, none, EarthWord::Earth);
+            assert!(seen.map.is_some());
+            (profile, seen)
+        });
+    });
+}
+
+criterion_group!(benches, work_up, planning, circuit, reading, drawing);
 criterion_main!(benches);

@@ -4,13 +4,15 @@
 use insta::assert_snapshot;
 use proptest::prelude::*;
 use tubewright::book::{
-    Allowances, Gas, Loading, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry,
+    Allowances, ChartLength, Gas, Loading, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry,
 };
-use tubewright::circuit::{Assessment, Curve, Load, Operating, assess, iron, operate};
+use tubewright::circuit::{Assessment, Curve, Load, Operating, assess, iron, operate, profile};
 use tubewright::job::{Job, Row, StrokesRow};
+use tubewright::measure::Milliamps;
+use tubewright::rules::Grade;
 use tubewright::supply::Rating;
 use tubewright::takeoff::{Piece, takeoff};
-use tubewright::tube::TubeType;
+use tubewright::tube::{Electrode, TubeType};
 
 /// Source: `tests/reference/operating_point/PROVENANCE.md`.
 const OPERATING_POINTS: &str = include_str!("../reference/operating_point/operating_point.csv");
@@ -348,4 +350,183 @@ proptest! {
             prop_assert!(excess(ma) < 1e-6 * short_ma, "a larger current runs too: {ma} after {from}");
         }
     }
+}
+
+// --- What holds of any string -----------------------------------------------------------------------
+
+/// Bars as pieces of glass.
+fn bars(lengths_mm: &[f64]) -> Vec<Piece> {
+    let typed: Vec<String> = lengths_mm.iter().map(|mm| format!("{mm:.3} mm")).collect();
+    pieces(&typed.join("; "))
+}
+
+proptest! {
+    #![proptest_config(ProptestConfig::with_cases(150))]
+
+    #[test]
+    fn current_falls_as_length_grows(
+        lengths in prop::collection::vec(100.0..1_500.0_f64, 1..6),
+        more in 20.0..700.0_f64,
+        neon in any::<bool>(),
+        outer_mm in 8.0..20.0_f64,
+        light in 1.5..4.0_f64,
+    ) {
+        let tube = tube(if neon { Gas::Neon } else { Gas::ArgonMercury }, outer_mm);
+        let string = |lengths: &[f64]| {
+            let pieces = bars(lengths);
+            Load::of(pieces.iter().map(|piece| (piece, &tube)), false)
+        };
+        let short = string(&lengths);
+        let mut longer = lengths;
+        longer[0] += more;
+        let long = string(&longer);
+        let curve = Curve::Iron { no_load: light * short.volts(20.0), short_ma: 30.0 };
+        if let (Operating::Runs { current: a, .. }, Operating::Runs { current: b, .. }) =
+            (operate(&short, &curve), operate(&long, &curve))
+        {
+            prop_assert!(b < a, "{b:?} of the longer string, {a:?} of the shorter");
+        }
+        // One that does not run is not mended by more of it.
+        if matches!(operate(&short, &curve), Operating::Overloaded { .. }) {
+            let over = matches!(operate(&long, &curve), Operating::Overloaded { .. });
+            prop_assert!(over, "the longer string runs where the shorter does not");
+        }
+    }
+
+    #[test]
+    fn a_piece_bent_as_two_takes_one_pair_more(
+        lengths in prop::collection::vec(200.0..2_000.0_f64, 1..6),
+        share in 0.1..0.9_f64,
+        outer_mm in 8.0..20.0_f64,
+        ma in 10.0..60.0_f64,
+    ) {
+        let tube = tube(Gas::ArgonMercury, outer_mm);
+        let volts = |lengths: &[f64]| {
+            let pieces = bars(lengths);
+            Load::of(pieces.iter().map(|piece| (piece, &tube)), false).volts(ma)
+        };
+        let whole = volts(&lengths);
+        let mut split = lengths.clone();
+        split[0] = lengths[0] * share;
+        split.insert(1, lengths[0] * (1.0 - share));
+        // Lengths are typed to a thousandth of a millimetre.
+        prop_assert!((volts(&split) - whole - tube.pair_volts).abs() < 0.01);
+    }
+
+    #[test]
+    fn a_mid_point_profile_ends_at_half_the_volts_either_way(
+        lengths in prop::collection::vec(100.0..2_000.0_f64, 1..6),
+        light in 1.5..3.0_f64,
+    ) {
+        let tube = tube(Gas::Neon, 12.0);
+        let pieces = bars(&lengths);
+        let string: Vec<(&Piece, &TubeType)> = pieces.iter().map(|piece| (piece, &tube)).collect();
+        let load = Load::of(string.iter().copied(), false);
+        let rating = rating(&iron_rating(light * load.volts(25.0), 30.0));
+        let worked = assess(&[&load], &rating, &Loading::default());
+        let profile = profile(&string, string.len(), &worked, &rating, false);
+        let half = worked.halves[0].operating.volts().volts() / 2.0;
+        let ends = [profile.joints[0], profile.joints[profile.joints.len() - 1]];
+        prop_assert!((ends[0].running.volts() - half).abs() < 1e-6 * half);
+        prop_assert!((ends[1].running.volts() + half).abs() < 1e-6 * half);
+        prop_assert!(profile.joints.is_sorted_by(|a, b| a.running > b.running && a.share < b.share));
+    }
+}
+
+// --- Charts and electrodes ----------------------------------------------------------------------------
+
+/// What a plate's chart says of bars of "15 mm neon" and one of another type.
+fn by_chart(lengths_mm: &[f64], other: bool, pair_mm: Option<f64>) -> Assessment {
+    let mut neon = tube(Gas::Neon, 15.0);
+    "15 mm neon".clone_into(&mut neon.name);
+    let mut blue = tube(Gas::ArgonMercury, 15.0);
+    "15 mm blue".clone_into(&mut blue.name);
+    let pieces = bars(lengths_mm);
+    let mut load = Load::of(pieces.iter().map(|piece| (piece, &neon)), false);
+    if other {
+        load.add(&bars(&[500.0])[0], &blue, false);
+    }
+    worked(
+        &load,
+        &SupplyEntry {
+            chart: vec![ChartLength {
+                tube: "15 mm neon".to_owned(),
+                longest_mm: 6_000.0,
+                pair_mm,
+            }],
+            ..iron_rating(9_000.0, 30.0)
+        },
+    )
+}
+
+fn said(found: &Assessment, grade: Grade) -> Vec<&str> {
+    let of_grade = found
+        .findings
+        .iter()
+        .filter(|finding| finding.grade == grade);
+    of_grade.map(|finding| finding.says.as_str()).collect()
+}
+
+#[test]
+fn a_string_uses_up_what_the_chart_of_the_plate_allows() {
+    // By hand: 3 x (1.7 m + 0.3 m) is all of 6 m; a tenth of a millimetre more is too much.
+    let full = by_chart(&[1_700.0; 3], false, Some(300.0));
+    let share = full.halves[0].chart.as_ref().expect("a chart").share;
+    assert!((share - 1.0).abs() < 1e-12, "{share}");
+    assert_eq!(said(&full, Grade::Stop), [""; 0], "by volts it has room");
+    let over = by_chart(&[1_700.0, 1_700.0, 1_700.1], false, Some(300.0));
+    assert_snapshot!(said(&over, Grade::Stop).join("\n"), @"Overloaded: by the length chart of its plate the string uses up 100.002 % of the supply, electrodes counted in.");
+    // A pair that the chart is silent on is as long as the tube that takes its volts: 180 V at
+    // 591 V/m (the model's 720 x (10 / 13)^0.75 V/m).
+    let silent = by_chart(&[1_700.0; 3], false, None);
+    let pair_mm = 1000.0 * 180.0 / (720.0 * (10.0_f64 / 13.0).powf(0.75));
+    let share = silent.halves[0].chart.as_ref().expect("a chart").share;
+    assert!(
+        (share - 3.0 * (1_700.0 + pair_mm) / 6_000.0).abs() < 1e-9,
+        "{share}"
+    );
+}
+
+#[test]
+fn a_tube_that_the_chart_does_not_name_is_told_of() {
+    let mixed = by_chart(&[1_700.0, 1_700.0], true, Some(300.0));
+    assert_eq!(
+        mixed.halves[0]
+            .chart
+            .as_ref()
+            .expect("a chart")
+            .not_in_chart,
+        ["15 mm blue"]
+    );
+    assert_snapshot!(
+        said(&mixed, Grade::Note).into_iter().find(|says| says.contains("chart")).expect("a note"),
+        @"The length chart of the plate has no length for “15 mm blue”: of that only the volts are checked."
+    );
+}
+
+#[test]
+fn electrodes_are_held_to_their_rated_current() {
+    let with = |rated_ma: f64, metres: usize| {
+        let mut tube = tube(Gas::Neon, 15.0);
+        tube.electrode = Some(Electrode {
+            name: "small shell".to_owned(),
+            rated: Some(Milliamps::from_ma(rated_ma)),
+            least_outer: None,
+            most_outer: None,
+        });
+        let pieces = bars(&vec![1_000.0; metres]);
+        worked(
+            &Load::of(pieces.iter().map(|piece| (piece, &tube)), false),
+            &iron_rating(6_000.0, 30.0),
+        )
+    };
+    // A short tube runs near the short-circuit current.
+    assert_snapshot!(said(&with(25.0, 2), Grade::Stop).join("\n"), @"28.9 mA is above the 25 mA that small shell stands: more glass on it, or a supply of less current.");
+    assert_snapshot!(said(&with(30.0, 2), Grade::Look).join("\n"), @r"
+    Underloaded: running volts are 25 % of no-load volts, under 35 %; the tubes and electrodes carry nearly the short-circuit current.
+    At 110 % of the input volts the current is 32.0 mA, above the 30 mA that small shell stands.
+    ");
+    let full = with(27.0, 4);
+    assert_eq!(said(&full, Grade::Stop), [""; 0]);
+    assert_snapshot!(said(&full, Grade::Note).join("\n"), @"A fault that shorts most of the string drives up to 30 mA through the rest, above the 27 mA that small shell is rated for.");
 }
