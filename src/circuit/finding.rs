@@ -320,7 +320,7 @@ fn spot_words(spot: Spot, pieces: &[(&Piece, &TubeType)]) -> String {
 }
 
 /// A stretch of a string in words, from lead A.
-fn stretch_words(unseen: &Unseen, pieces: &[(&Piece, &TubeType)]) -> String {
+pub(super) fn stretch_words(unseen: &Unseen, pieces: &[(&Piece, &TubeType)]) -> String {
     format!(
         "from {} to {}, counted from lead A",
         spot_words(unseen.from_spot, pieces),

@@ -57,6 +57,21 @@ pub struct Spot {
     pub along: f64,
 }
 
+/// Ratings of high-voltage cable that NEC 600.32(B) names, in kilovolts.
+const CLASSES_KV: [u32; 3] = [5, 10, 15];
+
+/// The least class of insulation for leads, joints and sleeves, in kilovolts, by the no-load volts to
+/// earth; None above the highest class.
+///
+/// NEC 600.32(B) names cable of 5, 10 and 15 kV and does not say which goes with which supply. The
+/// choice, the smallest class that is not below the no-load volts to earth, is derived here, not the
+/// code's: a broken tube lets any joint rise to these volts.
+pub fn insulation_class(no_load_to_earth: Volts) -> Option<u32> {
+    CLASSES_KV
+        .into_iter()
+        .find(|&kv| f64::from(kv) * 1_000.0 >= no_load_to_earth.volts())
+}
+
 /// The profile of a circuit: `pieces` in order from lead A, `first_string` of them before the mid-point
 /// return where there is one.
 pub fn profile(

@@ -3,6 +3,7 @@
 use super::assess::{Assessment, MAINS_SPREAD};
 use super::fault::{MidPoint, Strings};
 use super::finding;
+use super::joint::insulation_says;
 use super::profile::{Profile, Spot};
 use crate::book::OutputEarthing;
 use crate::measure::{Milliamps, Volts};
@@ -41,6 +42,8 @@ pub struct FaultMap {
     /// The stretch in which a fault gives less than the trip current; None where there is none, or
     /// the trip current is not known.
     pub unseen: Option<Unseen>,
+    /// That stretch in words: from where to where.
+    pub unseen_says: Option<String>,
     /// The widest it gets at 90 and 110 % of the input volts and at either end of what the volts of
     /// the tubes are known to; None where that is no wider.
     pub widest: Option<Unseen>,
@@ -72,6 +75,11 @@ impl Unseen {
     pub fn share(&self) -> f64 {
         self.to - self.from
     }
+
+    /// Whether a place, as a share of all running volts from lead A, lies in it.
+    pub fn holds(&self, share: f64) -> bool {
+        (self.from..=self.to).contains(&share)
+    }
 }
 
 /// Works out what protection sees. `uneven` is the difference of what the leads of the two sides leak.
@@ -85,7 +93,7 @@ pub fn protect(
 ) -> Protection {
     let map = rating
         .earth_fault_protection
-        .then(|| fault_map(assessment, profile, rating, uneven))
+        .then(|| fault_map(pieces, assessment, profile, rating, uneven))
         .flatten();
     let mut findings = Vec::new();
     if let Some(map) = &map {
@@ -102,6 +110,7 @@ pub fn protect(
         finding::open_tube_says(rating, word),
     ];
     says.extend(finding::bench_test_says(rating, word));
+    says.push(insulation_says(profile.no_load, word));
     Protection {
         map,
         says,
@@ -110,6 +119,7 @@ pub fn protect(
 }
 
 fn fault_map(
+    pieces: &[(&Piece, &TubeType)],
     assessment: &Assessment,
     profile: &Profile,
     rating: &Rating,
@@ -186,6 +196,7 @@ fn fault_map(
             mid_point.current(now.first, second)
         }),
         unseen: here,
+        unseen_says: here.map(|here| finding::stretch_words(&here, pieces)),
         widest,
         share_if_lighter: trip.map_or(0.0, |trip| share(lighter, threshold(trip))),
         share_if_half_trip: trip.map_or(0.0, |trip| share(now, threshold(trip * 0.5))),

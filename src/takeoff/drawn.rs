@@ -74,7 +74,7 @@ impl Strand {
 }
 
 /// A path up to and from a place along it.
-fn cut(path: &BezPath, along: f64) -> [BezPath; 2] {
+pub(super) fn cut(path: &BezPath, along: f64) -> [BezPath; 2] {
     let (mut first, mut second) = (BezPath::new(), BezPath::new());
     let mut left = along;
     let mut through = false;
@@ -259,6 +259,7 @@ impl Drawn {
             name: strand.name.clone(),
             path: place * &strand.path,
             part: strand.part,
+            turned: strand.turned,
         });
         let bends = bends(self).into_iter().map(|bend| Bend {
             at: place * bend.at,

@@ -11,6 +11,7 @@ mod assemble;
 mod bends;
 mod beside;
 pub mod choose;
+mod column;
 mod drawn;
 mod finding;
 mod letters;
@@ -41,6 +42,8 @@ pub struct Stroke {
     pub path: BezPath,
     /// From where to where on the drawn stroke, as shares of its length; 0 to 1 for all of it.
     pub part: [f64; 2],
+    /// Whether the glass runs through it against the way it is drawn.
+    pub turned: bool,
 }
 
 /// Painted-out glass from one stroke of a piece to the next.
