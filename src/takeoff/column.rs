@@ -14,7 +14,7 @@ impl Piece {
         let mut found = BezPath::new();
         let column = self.column().mm();
         let (from, to) = (from.clamp(0.0, 1.0) * column, to.clamp(0.0, 1.0) * column);
-        if !(from < to) {
+        if from >= to || from.is_nan() || to.is_nan() {
             return found;
         }
         // A jump is longer than it is drawn: a crossover takes glass of its own.

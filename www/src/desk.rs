@@ -145,6 +145,8 @@ pub struct Desk {
     pub plain: RwSignal<bool>,
     /// The circuit opened on its place.
     pub circuit: RwSignal<usize>,
+    /// The joint marked, with the circuit it is on.
+    pub joint: RwSignal<Option<(usize, usize)>>,
     /// The part of the shop book in sight.
     pub book_part: RwSignal<BookPart>,
     /// The supply or tube type opened there, by name.
@@ -185,6 +187,7 @@ impl Desk {
             back: RwSignal::new(false),
             plain: RwSignal::new(false),
             circuit: RwSignal::new(0),
+            joint: RwSignal::new(None),
             book_part: RwSignal::new(BookPart::Supplies),
             entry: RwSignal::new(None),
             findings_open: RwSignal::new(false),
@@ -201,6 +204,21 @@ impl Desk {
             Units::Metric => LengthUnit::Millimetres,
             Units::FeetInches => LengthUnit::Inches,
         }
+    }
+
+    /// The circuit in sight on its place, as long as there is any.
+    pub fn open_circuit(&self) -> Option<usize> {
+        let last = self
+            .results
+            .with(|results| results.circuits.len())
+            .checked_sub(1)?;
+        Some(self.circuit.get().min(last))
+    }
+
+    /// The joint marked on a circuit.
+    pub fn joint_on(&self, circuit: usize) -> Option<usize> {
+        let (on, joint) = self.joint.get()?;
+        (on == circuit).then_some(joint)
     }
 
     /// Shows lengths in other units, and keeps the choice.

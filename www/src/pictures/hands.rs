@@ -165,12 +165,17 @@ impl Hands {
         });
     }
 
+    /// Whether a click is a tap and does not end a drag.
+    pub(super) fn is_tap(&self) -> bool {
+        !self.fingers.with_value(Fingers::dragged)
+    }
+
     /// The number of what a click taps, `data-piece` or `data-part`: none where it ends a drag or lies
     /// on nothing of the kind.
     ///
     /// This is the one place where a tap on the picture is told from everything else.
     pub(super) fn tapped(&self, event: &MouseEvent, what: &str) -> Option<usize> {
-        if self.fingers.with_value(Fingers::dragged) {
+        if !self.is_tap() {
             return None;
         }
         let on = event.target()?.dyn_into::<Element>().ok()?;

@@ -1,11 +1,14 @@
-//! Pictures: the sign to scale, and the loading bar. Where things lie is plain arithmetic, tested
-//! natively; the components only draw it.
+//! Pictures: the sign to scale, the loading bar, and the plot of a circuit along its string. Where
+//! things lie is plain arithmetic, tested natively; the components only draw it.
 
 mod eye;
 mod fingers;
 mod hands;
+mod joint;
 mod loading;
 mod paint;
+mod plot;
+mod profile;
 mod scale;
 mod scene;
 mod sign;
@@ -13,5 +16,7 @@ mod tap;
 mod window;
 
 pub use loading::LoadingBar;
+pub use plot::beside;
+pub use profile::ProfilePlot;
 pub use sign::SignPicture;
 pub use tap::part_marked;

@@ -59,7 +59,7 @@ impl Scene {
 }
 
 /// Colour of a tube the book does not have.
-const UNKNOWN: &str = "#c9c6bd";
+pub(super) const UNKNOWN: &str = "#c9c6bd";
 const UNKNOWN_MM: f64 = 12.0;
 
 /// Arranges a work-up; with a circuit in focus the others are set back.
@@ -152,7 +152,7 @@ pub(super) fn scene(workup: &Workup, focus: Option<usize>) -> Scene {
 }
 
 /// SVG path data to a tenth of a millimetre, finer than any screen shows.
-fn drawn(path: &BezPath) -> String {
+pub(super) fn drawn(path: &BezPath) -> String {
     let mut out = String::new();
     for element in path.elements() {
         let _ = match element {

@@ -7,6 +7,7 @@ use tubewright::measure::Units;
 
 use super::eye::Room;
 use super::hands::Hands;
+use super::joint::{JointMark, StretchMark, TOUCH_PX, joint_at};
 use super::paint::{MARK_PX, Pen, TAP_PX, electrodes, number, tube};
 use super::scale::{bar, framed};
 use super::scene::{Scene, scene};
@@ -111,6 +112,9 @@ pub fn SignPicture(
                     <path d=move || desk.row.get().map(|row| arranged.with(|scene| scene.row(row)))></path>
                     <path d=move || desk.piece.get().map(|at| arranged.with(|scene| scene.piece(at).to_owned()))></path>
                 </g>
+                <Show when=move || circuits.get()>
+                    <StretchMark width_mm=width_mm pen=pen/>
+                </Show>
                 {tubes}
                 <path class="picture-hidden" d=hidden
                     stroke-width=move || pen.px(1.4) stroke-dasharray=move || pen.dashes(5.0, 4.0)></path>
@@ -119,6 +123,9 @@ pub fn SignPicture(
                         stroke-width=move || pen.px(1.8) stroke-dasharray=move || pen.dashes(0.0, 5.0)></path>
                 </Show>
                 {electrodes(points, width_mm, pen)}
+                <Show when=move || circuits.get()>
+                    <JointMark pen=pen/>
+                </Show>
                 <g stroke-width=move || pen.px(TAP_PX)>{hits}</g>
             </g>
             <PartMarks across=Callback::new(across) pen=pen/>
@@ -183,7 +190,15 @@ pub fn SignPicture(
                 on:wheel=move |event| hands.turned(&event)
                 on:keydown=move |event| hands.key(&event)
                 on:click=move |event| {
-                    if let Some(after) = hands.tapped(&event, "data-part") {
+                    let joint = if circuits.get_untracked() && hands.is_tap() {
+                        let within = TOUCH_PX * pen.px.get_untracked();
+                        joint_at(desk, there(hands.place(&event)), within)
+                    } else {
+                        None
+                    };
+                    if joint.is_some() {
+                        desk.joint.set(joint);
+                    } else if let Some(after) = hands.tapped(&event, "data-part") {
                         part_marked(desk, after);
                     } else if let Some(piece) = hands.tapped(&event, "data-piece") {
                         tap(desk, piece, there(hands.place(&event)));

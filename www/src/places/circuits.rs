@@ -1,7 +1,6 @@
 //! Circuits: each string with its supply, and why.
 
 use leptos::prelude::*;
-use tubewright::book::SupplyKind;
 use tubewright::circuit::{Half, Operating};
 use tubewright::job::Wish;
 use tubewright::measure::{glass, milliamps_shown, volts_shown};
@@ -10,6 +9,7 @@ use tubewright::workup::CircuitWork;
 
 use super::fields::Figure;
 use super::findings::{chip, line, many};
+use super::profile::{AlongString, UnseenKey, bands, shares_of};
 use crate::desk::{Results, desk};
 use crate::pictures::{LoadingBar, SignPicture};
 
@@ -114,6 +114,7 @@ pub fn Circuits() -> impl IntoView {
             {rules}
         </p>
         <SignPicture circuits=Signal::stored(true) focus=focus most=0.26/>
+        <UnseenKey/>
         <p class="quiet">
             {aim}
             " Worked with an ideal supply: no winding resistance, no stray capacitance of leads and tubes, no reignition peak. Measure the current before the sign goes up."
@@ -227,12 +228,6 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
             .enumerate()
             .map(|(string, half)| {
                 let (current, volts) = current_and_volts(&half.operating);
-                let of_short = match half.operating {
-                    Operating::Runs { current, .. } => {
-                        format!("{:.0} % of short circuit", current / rating.short_circuit * 100.0)
-                    }
-                    Operating::Overloaded { .. } => "it does not run".to_owned(),
-                };
                 let share = format!("{:.0} %, {}", half.share * 100.0, half.zone.words());
                 let name = (worked.halves.len() > 1).then(|| {
                     let lead = if string == 0 { "Lead A to mid-point" } else { "Mid-point to lead B" };
@@ -241,7 +236,7 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                 view! {
                     {name}
                     <div class="figures">
-                        <Figure figure=current caption=of_short/>
+                        <Figure figure=current caption=shares_of(&half.operating, circuit)/>
                         <Figure figure=volts caption=share/>
                         <Figure
                             figure=volts_shown(half.strike)
@@ -269,7 +264,13 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
             },
             None => "None in the rules in use, so not checked.".to_owned(),
         };
-        let protection = protection(circuit);
+        let protection: Vec<_> = circuit
+            .protection
+            .says
+            .iter()
+            .map(|(caption, says)| view! { <dt>{caption.clone()}</dt><dd>{says.clone()}</dd> })
+            .collect();
+        let band = bands(&worked.halves, None).map(|says| view! { <dt>"Current"</dt><dd>{says}</dd> });
         let said: Vec<_> = circuit.findings.iter().map(line).collect();
         let other = |caption: &'static str, other: &Option<(String, String)>| {
             other.clone().map(|(name, says)| {
@@ -296,6 +297,7 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                     {va.map(|va| view! { <Figure figure=va caption=format!("drawn, of {:.0} VA rated", rating.rated_va)/> })}
                     {factor.map(|factor| view! { <Figure figure=factor caption="power factor, without correction"/> })}
                 </div>
+                <AlongString number=number results=results.clone()/>
                 <dl class="why">
                     <dt>"Pieces"</dt>
                     <dd>{in_order}</dd>
@@ -303,12 +305,10 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                     {other("Next larger", &circuit.larger)}
                     <dt>{format!("Limit to {word}")}</dt>
                     <dd>{limit_says}</dd>
+                    {band}
                     <dt>"Mains ±10 %"</dt>
                     <dd>{mains(&circuit.assessment.halves)}</dd>
-                    <dt>"Protection"</dt>
-                    <dd>{protection}</dd>
-                    <dt>"Insulation"</dt>
-                    <dd>{format!("Leads, sleeves and housings must stand the no-load volts, {} to {word}, since a broken tube lets the voltage rise to it.", volts_shown(worked.to_earth_no_load))}</dd>
+                    {protection}
                 </dl>
                 {said}
             </section>
@@ -337,38 +337,4 @@ fn mains(halves: &[Half]) -> String {
         })
         .collect();
     strings.join(". Second string ") + "."
-}
-
-/// What the supply's protection sees and does not.
-fn protection(circuit: &CircuitWork) -> String {
-    let rating = &circuit.supply;
-    let fault = match (rating.earth_fault_protection, rating.trip) {
-        (true, Some(trip)) => format!("Switches off on an earth fault from {} mA.", trip.ma()),
-        (true, None) => {
-            "Switches off on an earth fault; its trip current is not in the shop book.".to_owned()
-        }
-        (false, _) => "No earth-fault protection.".to_owned(),
-    };
-    let middle = if rating.earth_fault_protection
-        && matches!(
-            rating.earthing,
-            tubewright::book::OutputEarthing::MidPoint
-                | tubewright::book::OutputEarthing::MidPointReturn
-        ) {
-        " Sensing at the mid-point cannot see a fault near the middle of the string: insulate and \
-         inspect there."
-    } else {
-        ""
-    };
-    let open = match (rating.open_circuit_protection, rating.kind) {
-        (true, _) => "Switches off when the string is open.",
-        (false, SupplyKind::Iron) => {
-            "No open-circuit protection: a broken tube leaves up to the full no-load volts on a \
-             dark sign."
-        }
-        (false, SupplyKind::Electronic) => {
-            "No open-circuit protection: a broken tube may leave high voltage on a dark sign."
-        }
-    };
-    format!("{fault}{middle} {open}")
 }

@@ -10,6 +10,7 @@ mod layout;
 mod outline_fields;
 mod piece_fields;
 mod price;
+mod profile;
 mod rows;
 mod shape_fields;
 mod shop_book;
