@@ -6,7 +6,7 @@
 use std::collections::HashSet;
 
 use crate::book::Book;
-use crate::circuit::{Assessment, Profile, Protection, profile, protect};
+use crate::circuit::{Assessment, Profile, Protection, assumed, profile, protect};
 use crate::feed::{self, FeedWork};
 use crate::job::Job;
 use crate::measure::{Length, Milliamps, quoted, small_first};
@@ -73,6 +73,8 @@ pub struct CircuitWork {
     pub profile: Profile,
     /// What its supply's protection sees of it, and what it cannot.
     pub protection: Protection,
+    /// What its figures lean on that nobody gave, a sentence each.
+    pub assumed: Vec<String>,
     /// Its leads and jumpers.
     pub leads: Leads,
     /// Glass column of all its pieces.
@@ -241,6 +243,13 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
                 column: string.iter().map(|(p, _)| p.column()).sum(),
                 profile,
                 protection,
+                assumed: assumed(
+                    &string.iter().map(|&(_, tube)| tube).collect::<Vec<_>>(),
+                    &circuit.assessment,
+                    &rating,
+                    &loading,
+                    job.site.cold,
+                ),
                 pieces: place(circuit.pieces),
                 supply: rating,
                 smaller: circuit

@@ -8,6 +8,7 @@
 //! DEVELOPERS.md, "Why not").
 
 mod assess;
+mod assumed;
 mod chart;
 mod curve;
 mod fault;
@@ -20,6 +21,7 @@ mod window;
 
 pub use assess::{Assessment, Half, assess};
 pub(crate) use assess::{MAINS_SPREAD, STRIKE_LOOK};
+pub use assumed::assumed;
 pub use chart::ChartUse;
 pub(crate) use chart::{CHART_FULL, chart_share, pair_as_length};
 pub use curve::{CONTINUOUS_TO, Curve, Waveform, iron};

@@ -92,6 +92,8 @@ pub struct TubeType {
     pub pair_volts: f64,
     /// Factor on volts per metre below 0 °C.
     pub cold_factor: f64,
+    /// Whether that factor is the default.
+    pub cold_by_default: bool,
     /// Least steady current.
     pub least: Option<Milliamps>,
     /// Greatest current of glass and electrodes.
@@ -205,6 +207,7 @@ impl TubeType {
             at_ma,
             exponent: entry.exponent.unwrap_or(figures.exponent),
             pair_volts: entry.pair_volts.unwrap_or(figures.pair_volts),
+            cold_by_default: entry.cold_factor.is_none(),
             cold_factor: entry.cold_factor.unwrap_or(match entry.gas {
                 Gas::Neon => 1.0,
                 Gas::ArgonMercury => MODEL_COLD_FACTOR,

@@ -324,12 +324,13 @@ fn circuit(strokes: &str, supply: SupplyEntry) -> CircuitWork {
     work.circuits.remove(0)
 }
 
-/// The words of a circuit's protection, and what was found of it.
+/// The words of a circuit's protection but for those on insulation, and what was found of it.
 fn words(circuit: &CircuitWork) -> String {
     let mut lines: Vec<String> = circuit
         .protection
         .says
         .iter()
+        .filter(|(caption, _)| caption != "Insulation")
         .map(|(caption, says)| format!("{caption}: {says}"))
         .collect();
     for finding in &circuit.protection.findings {
@@ -532,5 +533,79 @@ fn what_is_said_where_the_trip_current_is_not_known() {
     Open tube: No open-circuit protection: an open or broken tube leaves a dark sign with up to 6 000 V between the leads and 3 000 V to earth on either side of it. The input falls to the transformer's own losses, so no fuse tells.
     Bench test: The test of the supply alone (a fault to earth on lead A and on lead B) shows that its sensing and its switching-off work on both sides (common practice, no source). It cannot show that a fault on the string is seen: at the leads it is at its largest, in the unseen stretch it stays unseen on a sound supply.
     note: The trip current of the earth-fault protection is not in the shop book: where it cannot see a fault is not worked out.
+    ");
+}
+
+#[test]
+fn what_nobody_gave_is_said_to_be_taken_by_default() {
+    let iron = circuit(
+        "1.5 m; 1.5 m; 1.5 m; 1.5 m",
+        iron_entry(8_000.0, OutputEarthing::MidPoint, Some(15.0)),
+    );
+    assert_snapshot!(iron.assumed.join("\n"), @r"
+    Loading window, target 50 to 65 % of the no-load volts: the default, from the model of the supply and how the gases strike again each half cycle; the plate gives none.
+    Striking: 1.5 times the running volts, the default, from a weak source.
+    Mains: 10 % low and high, a common tolerance; the output is taken to follow them.
+    ");
+    let plate = circuit(
+        "1.5 m; 1.5 m; 1.5 m; 1.5 m",
+        SupplyEntry {
+            least_load_percent: Some(40.0),
+            most_load_percent: Some(70.0),
+            ..iron_entry(8_000.0, OutputEarthing::MidPoint, Some(15.0))
+        },
+    );
+    assert!(
+        !plate.assumed.iter().any(|says| says.contains("window")),
+        "the plate gave it"
+    );
+    let electronic = circuit(
+        "1.5 m; 1.5 m; 1.5 m; 1.5 m",
+        SupplyEntry {
+            kind: Some(SupplyKind::Electronic),
+            rated_ma: Some(25.0),
+            short_circuit_ma: None,
+            rated_load_volts: Some(5_000.0),
+            ..iron_entry(8_000.0, OutputEarthing::MidPoint, Some(15.0))
+        },
+    );
+    assert_snapshot!(electronic.assumed.join("\n"), @r"
+    Loading window, 60 to 95 % of the rated load volts: our own choice, no source; the plate gives none.
+    Striking: 1.5 times the running volts, the default, from a weak source.
+    Mains: the output is taken not to follow them; the plate knows better.
+    Short-circuit current: none above the rated one is known, so the supply is taken to hold it.
+    ");
+    // Mercury in frost, volts from the model.
+    let mut job = Job {
+        rows: vec![Row::Strokes(StrokesRow {
+            strokes: "2 m; 2 m; 2 m".to_owned(),
+            tube: "blue".to_owned(),
+            ..StrokesRow::default()
+        })],
+        ..Job::default()
+    };
+    let book = Book {
+        supplies: vec![iron_entry(6_000.0, OutputEarthing::MidPoint, None)],
+        tubes: vec![TubeEntry {
+            name: "blue".to_owned(),
+            gas: tubewright::book::Gas::ArgonMercury,
+            outer_mm: Some(15.0),
+            ..TubeEntry::default()
+        }],
+        ..Book::default()
+    };
+    let last = |job: &Job| {
+        let mut work = workup(job, &book);
+        let said = work.circuits.remove(0).assumed;
+        said[said.len() - 2..].join("\n")
+    };
+    assert_snapshot!(last(&job), @r"
+    Warm: mercury tubes are worked out at room temperature. Outdoors in frost they need more: say so at the site.
+    Volts of blue: model, ±15 %.
+    ");
+    job.site.cold = true;
+    assert_snapshot!(last(&job), @r"
+    Cold: below 0 °C mercury tubes are taken to need 15 % more for each metre, the default, with little confidence (from memory).
+    Volts of blue: model, ±15 %.
     ");
 }

@@ -242,6 +242,12 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                             figure=volts_shown(half.strike)
                             caption=format!("to strike, of {} peak", volts_shown(half.strike_from))
                         />
+                        {half.chart.as_ref().map(|used| view! {
+                            <Figure
+                                figure=format!("{:.0} %", used.share * 100.0)
+                                caption="used up by the plate's length chart"
+                            />
+                        })}
                     </div>
                 }
             })
@@ -310,6 +316,10 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                     <dd>{mains(&circuit.assessment.halves)}</dd>
                     {protection}
                 </dl>
+                <details class="assumed">
+                    <summary>"What is taken by default"</summary>
+                    <ul>{circuit.assumed.iter().map(|says| view! { <li>{says.clone()}</li> }).collect::<Vec<_>>()}</ul>
+                </details>
                 {said}
             </section>
         }

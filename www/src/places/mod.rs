@@ -1,5 +1,6 @@
 //! The places of the page, one file each, and the frame around them.
 
+mod chart_fields;
 mod circuits;
 mod fields;
 mod files;

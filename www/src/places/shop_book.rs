@@ -8,6 +8,7 @@ use tubewright::rules::Finding;
 use tubewright::supply::Rating;
 use tubewright::tube::TubeType;
 
+use super::chart_fields::ChartFields;
 use super::fields::{Choice, Field, Tick, always, figure, money, optional_figure, typed};
 use super::findings::line;
 use super::sign::{damp, damp_options, damp_word};
@@ -232,7 +233,7 @@ type Figure<T> = (
     fn(&mut T, Option<f64>),
 );
 
-const SUPPLY_FIGURES: [Figure<SupplyEntry>; 13] = [
+const SUPPLY_FIGURES: [Figure<SupplyEntry>; 14] = [
     (
         "No-load volts, V",
         "V",
@@ -294,6 +295,12 @@ const SUPPLY_FIGURES: [Figure<SupplyEntry>; 13] = [
         "%",
         |s| s.most_load_percent,
         |s, v| s.most_load_percent = v,
+    ),
+    (
+        "Plate's longest lead, mm",
+        "mm",
+        |s| s.longest_lead_mm,
+        |s, v| s.longest_lead_mm = v,
     ),
     (
         "On the shelf",
@@ -454,6 +461,7 @@ fn SupplyForm(at: usize) -> impl IntoView {
                     }
                 />
             </div>
+            <ChartFields at=at/>
         </section>
     }
 }
