@@ -31,6 +31,8 @@ pub struct Workup {
     pub left_over: Vec<LeftOverWork>,
     /// Supplies of the book that this job cannot use, with the reasons.
     pub refused: Vec<Refused>,
+    /// What is said of the leads of all circuits, gravest first.
+    pub wiring: Vec<Finding>,
     /// What feeds the supplies.
     pub feed: FeedWork,
     /// The first sum.
@@ -205,7 +207,9 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         &off,
         (&task, &planned, &profiles),
     );
-    findings.extend(wired.findings);
+    let mut wiring = wired.findings;
+    gravest_first(&mut wiring);
+    findings.extend(wiring.iter().cloned());
     let circuits: Vec<CircuitWork> = planned
         .circuits
         .into_iter()
@@ -298,6 +302,7 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
         circuits,
         left_over,
         refused,
+        wiring,
         feed,
         quote,
         rules,

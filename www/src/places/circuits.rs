@@ -9,7 +9,9 @@ use tubewright::workup::CircuitWork;
 
 use super::fields::Figure;
 use super::findings::{chip, line, many};
+use super::leads::CircuitLeadsPanel;
 use super::profile::{AlongString, UnseenKey, bands, shares_of};
+use super::wiring_fields::LeadsAndFeed;
 use crate::desk::{Results, desk};
 use crate::pictures::{LoadingBar, SignPicture};
 
@@ -117,7 +119,7 @@ pub fn Circuits() -> impl IntoView {
         <UnseenKey/>
         <p class="quiet">
             {aim}
-            " Worked with an ideal supply: no winding resistance, no stray capacitance of leads and tubes, no reignition peak. Measure the current before the sign goes up."
+            " Worked with an ideal supply: no winding resistance, no stray capacitance of tubes, no reignition peak; what leads leak stands beside it. Measure the current before the sign goes up."
         </p>
         <Show when=move || desk.results.with(|results| results.circuits.is_empty() && results.left_over.is_empty())>
             <p class="quiet">"No circuits yet: the sign has no glass, or its tube types are not in the shop book."</p>
@@ -125,8 +127,12 @@ pub fn Circuits() -> impl IntoView {
         <div class="circuit-columns">
             // Equal order keeps the order of writing: left over first, a card, then its detail.
             <div class="circuit-cards">{left_over}{cards}</div>
-            <div class="circuit-detail">{detail}</div>
+            <div class="circuit-detail">
+                {detail}
+                <CircuitLeadsPanel open=open/>
+            </div>
         </div>
+        <LeadsAndFeed/>
         {refused}
     }
 }

@@ -2,12 +2,14 @@
 
 mod chart_fields;
 mod circuits;
+mod feed;
 mod fields;
 mod files;
 mod findings;
 mod frame;
 mod glass;
 mod layout;
+mod leads;
 mod outline_fields;
 mod piece_fields;
 mod price;
@@ -16,6 +18,7 @@ mod rows;
 mod shape_fields;
 mod shop_book;
 mod sign;
+mod wiring_fields;
 
 pub use circuits::Circuits;
 pub use findings::FindingsList;

@@ -12,3 +12,4 @@ mod picture;
 mod pieces;
 mod shop_book;
 mod sign;
+mod wiring;
