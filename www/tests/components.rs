@@ -570,3 +570,74 @@ async fn records_are_there_when_the_store_is_opened_again() {
     );
     assert_eq!(kept.get("test-b"), None, "what was removed is gone");
 }
+
+#[wasm_bindgen_test]
+async fn every_joint_of_a_circuit_is_reached_by_buttons_and_keys_and_marked_on_the_sign() {
+    let circuits = mount(|| view! { <Circuits/> });
+    let worked = circuits.desk.results.get_untracked();
+    let plot = circuits.all(".plot")[0].clone();
+    let titled = plot.query_selector("svg").ok().flatten();
+    let title = titled.and_then(|svg| svg.get_attribute("aria-label"));
+    assert!(
+        title.as_ref().is_some_and(|title| {
+            title.starts_with("Along the string from lead A to lead B, 9 pieces")
+        }),
+        "got: {title:?}"
+    );
+    let said = || {
+        let said = circuits.all(".joint-said")[0].text_content();
+        said.unwrap_or_default().replace('\u{202f}', " ")
+    };
+    let rings = || circuits.all(".picture-joint circle:not(.under)").len();
+    assert!(said().starts_with("No joint is marked"), "{}", said());
+    assert_eq!(rings(), 0, "none on the sign");
+    circuits.click("Next joint").await;
+    assert!(said().starts_with("Lead A, at “Q”: "), "{}", said());
+    assert_eq!(rings(), 1, "an electrode alone");
+    circuits.click("Next joint").await;
+    assert!(
+        said().starts_with("Joint 1, between “Q” and “U”: "),
+        "{}",
+        said()
+    );
+    assert_eq!(rings(), 2, "the electrodes that meet there");
+    for joint in 2..=9 {
+        press_key(&plot, "ArrowRight").await;
+        let marked = circuits.desk.joint.get_untracked();
+        assert_eq!(marked, Some((0, joint)));
+    }
+    assert!(said().starts_with("Lead B, at “R”: "), "{}", said());
+    press_key(&plot, "ArrowRight").await;
+    let marked = circuits.desk.joint.get_untracked();
+    assert_eq!(marked, Some((0, 9)), "there is no further");
+    press_key(&plot, "Home").await;
+    assert!(said().starts_with("Lead A"), "{}", said());
+
+    // A tap near a dot marks its joint.
+    let dot = circuits.all(".plot-joint")[4].get_bounding_client_rect();
+    #[allow(clippy::cast_possible_truncation, reason = "pixels of a window")]
+    let near = (dot.left() as i32 + 3, dot.top() as i32 - 20);
+    pointer(&plot, "click", near);
+    settled().await;
+    assert_eq!(circuits.desk.joint.get_untracked(), Some((0, 4)));
+
+    // Another circuit has joints of its own.
+    circuits.desk.circuit.set(1);
+    settled().await;
+    assert!(said().starts_with("No joint is marked"), "{}", said());
+    assert_eq!(
+        circuits.all(".joints tbody tr").len(),
+        worked.circuits[1].pieces.len() + 1,
+        "each is in the table"
+    );
+}
+
+async fn press_key(on: &Element, key: &str) {
+    let init = web_sys::KeyboardEventInit::new();
+    init.set_bubbles(true);
+    init.set_key(key);
+    let event = web_sys::KeyboardEvent::new_with_keyboard_event_init_dict("keydown", &init);
+    on.dispatch_event(&event.expect("an event"))
+        .expect("it is heard");
+    settled().await;
+}

@@ -282,7 +282,7 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
             .iter()
             .map(|(caption, says)| view! { <dt>{caption.clone()}</dt><dd>{says.clone()}</dd> })
             .collect();
-        let band = bands(&worked.halves, None).map(|says| view! { <dt>"Current"</dt><dd>{says}</dd> });
+        let band = bands(&results, circuit).map(|says| view! { <dt>"Current"</dt><dd>{says}</dd> });
         let said: Vec<_> = circuit.findings.iter().map(line).collect();
         let other = |caption: &'static str, other: &Option<(String, String)>| {
             other.clone().map(|(name, says)| {

@@ -195,34 +195,89 @@ pub(super) fn shares_of(operating: &Operating, circuit: &CircuitWork) -> String 
     }
 }
 
-/// Where each string runs if its tubes take less or more than they are known to; None where that is
-/// not known. `percent` is by how much they may be off.
-pub(super) fn bands(halves: &[Half], percent: Option<f64>) -> Option<String> {
+/// A circuit's current with where it runs if its tubes take less or more than their volts are known
+/// to; None where nobody said how well they are known.
+pub(super) fn bands(results: &Results, circuit: &CircuitWork) -> Option<String> {
+    let percents = || {
+        let pieces = pieces(results, circuit).into_iter();
+        pieces.filter_map(|piece| {
+            let total = results
+                .tubes
+                .iter()
+                .find(|total| total.name == piece.tube)?;
+            total.tube.as_ref()?.uncertainty_percent()
+        })
+    };
+    let least = percents().fold(f64::INFINITY, f64::min);
+    let most = percents().fold(0.0, f64::max);
+    let by = if least < most {
+        format!("±{least} to {most} %")
+    } else {
+        format!("±{most} %")
+    };
+    let says: Vec<String> = circuit
+        .assessment
+        .halves
+        .iter()
+        .filter_map(|half| band(half, &by))
+        .collect();
+    (!says.is_empty()).then(|| says.join(". Second string ") + ".")
+}
+
+fn band(half: &Half, by: &str) -> Option<String> {
     let current = |operating: &Operating| match *operating {
         Operating::Runs { current, .. } => Some(current),
         Operating::Overloaded { .. } => None,
     };
-    let by = percent.map_or_else(String::new, |percent| format!(" ±{percent} %"));
-    let says: Vec<String> = halves
-        .iter()
-        .filter_map(|half| {
-            let (less, more) = half.band?;
-            let now = current(&half.operating)?;
-            // Tubes that take fewer volts carry more current.
-            let ends = match (current(&more), current(&less)) {
-                (Some(low), Some(high)) => {
-                    format!("{:.1} to {}", low.ma(), milliamps_shown(high))
-                }
-                (None, Some(high)) => {
-                    format!("at most {}, or it does not run", milliamps_shown(high))
-                }
-                _ => "it does not run".to_owned(),
+    let (less, more) = half.band?;
+    let now = milliamps_shown(current(&half.operating)?);
+    // Tubes that take fewer volts carry more current.
+    let ends = match (current(&more), current(&less)) {
+        (Some(low), Some(high)) => format!("{:.1} to {}", low.ma(), milliamps_shown(high)),
+        (None, Some(high)) => format!("none to {}", milliamps_shown(high)),
+        (_, None) => "none".to_owned(),
+    };
+    Some(format!("{now} ({ends} with the tubes' volts {by})"))
+}
+
+#[cfg(test)]
+mod tests {
+    use tubewright::measure::Milliamps;
+    use tubewright::workup;
+
+    use super::*;
+    use crate::files::demo;
+
+    #[test]
+    fn a_band_of_currents_has_its_smaller_end_where_tubes_take_more_volts() {
+        let worked = workup(&demo::jobs().remove(0), &demo::book());
+        let runs = |ma: f64| Operating::Runs {
+            current: Milliamps::from_ma(ma),
+            running: Volts::from_volts(3_000.0),
+            watts: 50.0,
+            gaps: false,
+        };
+        let dead = Operating::Overloaded {
+            wanted: Volts::from_volts(9_000.0),
+            given: Volts::from_volts(8_000.0),
+        };
+        let said = |now, ends: Option<(Operating, Operating)>| {
+            let half = Half {
+                operating: now,
+                band: ends,
+                ..worked.circuits[0].assessment.halves[0].clone()
             };
-            Some(format!(
-                "{} ({ends} with the tubes’ volts{by})",
-                milliamps_shown(now)
-            ))
-        })
-        .collect();
-    (!says.is_empty()).then(|| says.join(". Second string ") + ".")
+            band(&half, "±15 %")
+        };
+        assert_eq!(
+            said(runs(23.1), Some((runs(23.9), runs(22.4)))).as_deref(),
+            Some("23.1 mA (22.4 to 23.9 mA with the tubes' volts ±15 %)")
+        );
+        assert_eq!(
+            said(runs(23.1), Some((runs(23.9), dead))).as_deref(),
+            Some("23.1 mA (none to 23.9 mA with the tubes' volts ±15 %)")
+        );
+        assert_eq!(said(runs(23.1), None), None, "nobody said");
+        assert_eq!(said(dead, Some((runs(9.0), dead))), None, "it does not run");
+    }
 }

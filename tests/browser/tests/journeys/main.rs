@@ -3,6 +3,7 @@
 mod artwork;
 mod bad_files;
 mod care;
+mod circuits;
 mod demo;
 mod fonts;
 mod layout;
