@@ -83,7 +83,7 @@ pub fn ProfilePlot(
         let scale = volts_scale(&ground, &circuit.profile, limit(&results));
         let (x, y) = (
             ground.x(joint.share),
-            dot_y(&scale, &circuit.profile, joint.running),
+            dot_y(&ground, &scale, &circuit.profile, joint.running),
         );
         let bottom = ground
             .current
@@ -151,9 +151,13 @@ fn volts_scale(ground: &Ground, profile: &Profile, limit: Option<f64>) -> Scale 
     }
 }
 
-/// Where the dot of a joint lies: on earth where nobody knows its volts.
-fn dot_y(scale: &Scale, profile: &Profile, running: Volts) -> f64 {
-    scale.y(if profile.held { running.volts() } else { 0.0 })
+/// How high the dot of a joint lies: among the pieces where nobody knows its volts.
+fn dot_y(ground: &Ground, scale: &Scale, profile: &Profile, running: Volts) -> f64 {
+    if profile.held {
+        scale.y(running.volts())
+    } else {
+        f64::midpoint(ground.strip.0, ground.strip.1)
+    }
 }
 
 fn draw(results: &Results, circuit: &CircuitWork, ground: &Ground) -> impl IntoView + use<> {
@@ -161,8 +165,8 @@ fn draw(results: &Results, circuit: &CircuitWork, ground: &Ground) -> impl IntoV
     view! {
         {no_load(results, circuit, ground)}
         {map.map(|map| bands(map, ground))}
-        {volts(results, circuit, ground)}
         {strip(results, circuit, ground)}
+        {volts(results, circuit, ground)}
         {map.zip(ground.current).map(|(map, edges)| current(map, ground, edges))}
     }
 }
@@ -257,7 +261,12 @@ fn volts(results: &Results, circuit: &CircuitWork, ground: &Ground) -> impl Into
     let places: Vec<(f64, f64)> = profile
         .joints
         .iter()
-        .map(|joint| (ground.x(joint.share), dot_y(&scale, profile, joint.running)))
+        .map(|joint| {
+            (
+                ground.x(joint.share),
+                dot_y(ground, &scale, profile, joint.running),
+            )
+        })
         .collect();
     let line = profile.held.then(|| {
         let line = line(places.iter().copied());

@@ -46,6 +46,17 @@ pub(super) fn AlongString(
         let joint = beside(marked.get_untracked(), last, after);
         desk.joint.set(Some((number, joint)));
     };
+    let key = results.circuits.get(number).and_then(|circuit| {
+        let earth = results.earth_word().word();
+        let map = circuit.protection.map.as_ref()?;
+        map.unseen.as_ref()?;
+        let widest = if map.widest.is_some() {
+            "; in the lighter hatching too, as mains and the volts of the tubes may be off"
+        } else {
+            ""
+        };
+        Some(view! { <p class="quiet">{format!("Hatched: a fault to {earth} there is not sensed{widest}.")}</p> })
+    });
     let show = || {
         if let Ok(Some(picture)) = document().query_selector(".picture") {
             picture.scroll_into_view();
@@ -55,6 +66,7 @@ pub(super) fn AlongString(
         <section class="along" aria-label=format!("Circuit {} along its string", number + 1)>
             <h3>"Along the string"</h3>
             <ProfilePlot number=number results=results.clone()/>
+            {key}
             <p class="joint-said" aria-live="polite">{words}</p>
             <div class="buttons" role="group" aria-label="Joints">
                 <button aria-label="Previous joint" disabled=move || marked.get() == Some(0)
