@@ -395,6 +395,7 @@ pub(crate) fn blanks(set: &RuleSet) -> Vec<Finding> {
                     rule.limits
                         .caption(set.earth_word)
                         .trim_end_matches(", at most")
+                        .trim_end_matches(", at least")
                 ),
                 set.source(rule),
             )

@@ -116,38 +116,56 @@ pub(super) fn jumpers_not_given() -> Finding {
     )
 }
 
-pub(super) fn no_such_circuit(first: &str) -> Finding {
-    found(
-        Grade::Note,
-        format!(
-            "Leads are typed for the circuit that begins with {}, and no circuit does now: they are \
-             not used.",
-            quoted(first)
-        ),
-        typed(),
-    )
+/// Pieces by name, as many as can be read in a sentence; None where there are none.
+fn named(pieces: &[&str]) -> Option<String> {
+    const MOST_NAMED: usize = 3;
+    let mut named: Vec<String> = pieces
+        .iter()
+        .take(MOST_NAMED)
+        .map(|name| quoted(name))
+        .collect();
+    if pieces.len() > MOST_NAMED {
+        named.push(format!("{} more", pieces.len() - MOST_NAMED));
+    }
+    let last = named.pop()?;
+    Some(if named.is_empty() {
+        last
+    } else {
+        format!("{} and {last}", named.join(", "))
+    })
 }
 
-pub(super) fn several_circuits(first: &str, count: usize) -> Finding {
-    found(
+pub(super) fn no_such_circuits(first: &[&str]) -> Option<Finding> {
+    Some(found(
         Grade::Note,
         format!(
-            "{count} circuits begin with a piece called {}: the leads typed for it count for each.",
-            quoted(first)
+            "Leads are typed for a circuit that begins with {}, and none does now: they are not used.",
+            named(first)?
         ),
         typed(),
-    )
+    ))
 }
 
-pub(super) fn typed_twice(first: &str) -> Finding {
-    found(
+pub(super) fn several_circuits(first: &[&str]) -> Option<Finding> {
+    Some(found(
         Grade::Note,
+        format!(
+            "Several circuits begin with a piece called {}: the leads typed for it count for each.",
+            named(first)?
+        ),
+        typed(),
+    ))
+}
+
+pub(super) fn typed_twice(first: &[&str]) -> Option<Finding> {
+    Some(found(
+        Grade::Look,
         format!(
             "Leads are typed twice for the circuit that begins with {}: the first are used.",
-            quoted(first)
+            named(first)?
         ),
         typed(),
-    )
+    ))
 }
 
 // ---- the cable ----

@@ -1,10 +1,12 @@
 //! How long each section is: typed for its circuit, typed for all, or taken from the drawing.
 
+use std::collections::{BTreeMap, BTreeSet};
+
 use super::path::{Counts, Straight, shortest};
 use super::setup::{Setup, Typed};
 use super::{LengthFrom, Strung, finding};
 use crate::book::OutputEarthing;
-use crate::job::{Job, Row, Wiring};
+use crate::job::{CircuitLeads, Job, Row, Wiring};
 use crate::measure::{self, Length};
 use crate::rules::{Finding, Place};
 use crate::takeoff::Piece;
@@ -45,8 +47,10 @@ pub(super) fn measured(
     findings: &mut Vec<Finding>,
 ) -> Vec<Measured> {
     let label = first_label(circuit);
-    let own = setup.wiring.circuits.iter().find(|own| own.first == label);
-    let mut own = |of: fn(&crate::job::CircuitLeads) -> &str, called: &str| {
+    let own = typed_for(setup.wiring)
+        .iter()
+        .find(|own| own.first == label);
+    let mut own = |of: fn(&CircuitLeads) -> &str, called: &str| {
         let text = own.map_or("", of);
         let place = Place::Circuit(number);
         Typed::read(text, &measure::LEAD_MM, called, &place, findings)
@@ -114,27 +118,38 @@ fn first_label<'a>(circuit: &Strung<'a>) -> &'a str {
         .map_or("", |(piece, _)| piece.label.as_str())
 }
 
-/// What is typed for a circuit there is not, for several alike, or twice.
+/// What is typed for single circuits: no more of it than a job may have pieces.
+fn typed_for(wiring: &Wiring) -> &[CircuitLeads] {
+    #[allow(
+        clippy::cast_possible_truncation,
+        clippy::cast_sign_loss,
+        reason = "a whole number of the table of limits"
+    )]
+    let most = measure::PIECES.most as usize;
+    &wiring.circuits[..wiring.circuits.len().min(most)]
+}
+
+/// What is typed for circuits there are not, for several alike, or twice.
 pub(super) fn unmatched(wiring: &Wiring, circuits: &[Strung], findings: &mut Vec<Finding>) {
-    for (at, own) in wiring.circuits.iter().enumerate() {
+    let mut beginning: BTreeMap<&str, usize> = BTreeMap::new();
+    for circuit in circuits {
+        *beginning.entry(first_label(circuit)).or_default() += 1;
+    }
+    let (mut gone, mut twice, mut several) = (Vec::new(), Vec::new(), Vec::new());
+    let mut seen = BTreeSet::new();
+    for own in typed_for(wiring) {
         if own.a.trim().is_empty() && own.b.trim().is_empty() {
             continue;
         }
-        if wiring.circuits[..at]
-            .iter()
-            .any(|before| before.first == own.first)
-        {
-            findings.push(finding::typed_twice(&own.first));
-            continue;
-        }
-        let count = circuits
-            .iter()
-            .filter(|circuit| first_label(circuit) == own.first)
-            .count();
-        match count {
-            0 => findings.push(finding::no_such_circuit(&own.first)),
-            1 => {}
-            _ => findings.push(finding::several_circuits(&own.first, count)),
+        let first = own.first.as_str();
+        match (seen.insert(first), beginning.get(first)) {
+            (false, _) => twice.push(first),
+            (true, None) => gone.push(first),
+            (true, Some(1)) => {}
+            (true, Some(_)) => several.push(first),
         }
     }
+    findings.extend(finding::no_such_circuits(&gone));
+    findings.extend(finding::typed_twice(&twice));
+    findings.extend(finding::several_circuits(&several));
 }

@@ -357,9 +357,49 @@ fn what_is_typed_for_a_circuit_goes_before_what_is_typed_for_all() {
     ");
     let gone = bars("500 mm; 500 mm", own("no such", "3 m", ""));
     assert_snapshot!(said(&gone, &book), @r"
-    note: Leads are typed for the circuit that begins with “no such”, and no circuit does now: they are not used.
+    note: Leads are typed for a circuit that begins with “no such”, and none does now: they are not used.
     note: What leads leak is worked out for a sine. The volts of tubes on an iron transformer are nearer to a square wave, whose steep sides drive spikes through a capacitance: more leaks than is shown.
     ");
+}
+
+#[test]
+fn what_is_typed_twice_or_for_several_circuits_is_told_of() {
+    // 1 400 V each, too much together for 3 000 V no-load: a circuit each, of bars called alike.
+    let lead = |first: &str, a: &str| CircuitLeads {
+        first: first.to_owned(),
+        a: a.to_owned(),
+        b: String::new(),
+    };
+    let wiring = Wiring {
+        circuits: vec![
+            lead("bar", "3 m"),
+            lead("bar", "4 m"),
+            lead("x", "1 m"),
+            lead("", ""),
+        ],
+        ..typed()
+    };
+    let mut job = bars("2 m", wiring);
+    job.rows.push(job.rows[0].clone());
+    let book = shop(supply(OutputEarthing::MidPoint));
+    let work = workup(&job, &book);
+    assert_eq!(work.circuits.len(), 2, "{:?}", work.findings);
+    for circuit in &work.circuits {
+        let lead = circuit.leads.section(What::LeadA).expect("there");
+        assert_eq!(
+            lead.length.map(Length::mm),
+            Some(3_000.0),
+            "the first of both"
+        );
+    }
+    let says = said(&job, &book);
+    for wanted in [
+        "look: Leads are typed twice for the circuit that begins with “bar”",
+        "note: Several circuits begin with a piece called “bar”",
+        "note: Leads are typed for a circuit that begins with “x”, and none does now",
+    ] {
+        assert!(says.contains(wanted), "{says}");
+    }
 }
 
 /// A polyline of an electrode at the lower left and one 1500 mm right of it and 500 mm up.

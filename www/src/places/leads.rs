@@ -129,7 +129,7 @@ fn Sections(leads: Leads, pieces: Vec<String>, word: &'static str) -> impl IntoV
             };
             let ma = section
                 .ma
-                .map_or_else(|| "–".to_owned(), |ma| format!("{ma:.2}"));
+                .map_or_else(|| "–".to_owned(), |ma| format!("{ma:.3}"));
             view! {
                 <tr>
                     <th scope="row">{what}<small>{from}</small></th>
@@ -158,7 +158,7 @@ fn Sections(leads: Leads, pieces: Vec<String>, word: &'static str) -> impl IntoV
                 <td>{long}</td>
                 <td>{pf.map_or_else(|| "–".to_owned(), |pf| format!("{pf:.0}"))}</td>
                 <td>"–"</td>
-                <td>{ma.map_or_else(|| "–".to_owned(), |ma| format!("{ma:.2}"))}</td>
+                <td>{ma.map_or_else(|| "–".to_owned(), |ma| format!("{ma:.3}"))}</td>
             </tr>
         }
     });

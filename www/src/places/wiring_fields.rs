@@ -67,7 +67,7 @@ fn LeadFields() -> impl IntoView {
                 commit=move |name: String| desk.edit_job("cable", "Cable", |job| job.wiring.cable = name)
             />
             <Choice
-                label="Leads run"
+                label="Leads run in"
                 value=Signal::derive(move || run_word(desk.job.with(|job| job.wiring.run)).to_owned())
                 options=Signal::stored(run_options())
                 commit=move |word: String| desk.edit_job("lead run", "What leads run in", |job| {
@@ -108,7 +108,7 @@ fn FeedFields() -> impl IntoView {
                 let name = conductor.name.to_owned();
                 (
                     name,
-                    format!("{} ({})", conductor.name, conductor.table.words()),
+                    format!("{}, at {} °C", conductor.name, conductor.table.celsius()),
                 )
             }))
             .collect();
@@ -240,9 +240,9 @@ fn run(word: &str) -> LeadRun {
 
 fn run_options() -> Vec<(String, String)> {
     [
-        ("metal", "in earthed metal conduit (the default)"),
-        ("plastic", "in conduit that is not metal"),
-        ("air", "in free air"),
+        ("metal", "metal conduit (default)"),
+        ("plastic", "plastic conduit"),
+        ("air", "free air"),
     ]
     .into_iter()
     .map(|(value, words)| (value.to_owned(), words.to_owned()))
