@@ -3,6 +3,7 @@
 //! Entries are as typed, possibly incomplete or contradictory; the rooms [`crate::supply`] and
 //! [`crate::tube`] check them. A figure that is not known is absent, never zero.
 
+mod cells;
 mod parts;
 mod sheet;
 mod starter;

@@ -9,6 +9,7 @@ use std::collections::HashSet;
 
 use rust_decimal::Decimal;
 
+use super::cells::{chart_cell, chart_of, readings_cell, readings_of};
 use super::{Dampness, Gas, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry};
 use crate::measure::{self, quoted};
 
@@ -180,6 +181,13 @@ macro_rules! column {
             set: |entry, cell| cell.figure($unit).map(|value| entry.$name = value),
         }
     };
+    ($name:ident by $write:ident, $read:ident) => {
+        Column {
+            name: stringify!($name),
+            get: |entry| $write(&entry.$name),
+            set: |entry, cell| $read(cell.text).map(|value| entry.$name = value),
+        }
+    };
     ($name:ident as $kind:ident) => {
         Column {
             name: stringify!($name),
@@ -211,6 +219,8 @@ const SUPPLY: &[Column<SupplyEntry>] = &[
     column!(price as money),
     column!(stock as count),
     column!(note as text),
+    column!(longest_lead_mm in "mm"),
+    column!(chart by chart_cell, chart_of),
 ];
 
 const TUBE: &[Column<TubeEntry>] = &[
@@ -228,6 +238,9 @@ const TUBE: &[Column<TubeEntry>] = &[
     column!(cold_factor in ""),
     column!(price_per_m as money),
     column!(source as text),
+    column!(electrode as text),
+    column!(measured_on as text),
+    column!(readings by readings_cell, readings_of),
 ];
 
 fn write<T>(entries: &[T], columns: &[Column<T>]) -> String {

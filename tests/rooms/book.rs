@@ -4,8 +4,8 @@ use insta::assert_snapshot;
 use proptest::prelude::*;
 use rust_decimal::Decimal;
 use tubewright::book::{
-    self, Book, Dampness, Gas, OutputEarthing, Sheet, SupplyEntry, SupplyKind, TubeEntry,
-    read_supplies, read_tubes, starter, write_supplies, write_tubes,
+    self, Book, ChartLength, Dampness, Gas, OutputEarthing, Reading, Sheet, SupplyEntry,
+    SupplyKind, TubeEntry, read_supplies, read_tubes, starter, write_supplies, write_tubes,
 };
 
 fn supplies(text: &str) -> Sheet<SupplyEntry> {
@@ -65,8 +65,8 @@ fn columns_in_any_order_missing_or_unknown() {
     T
     Column “colour” is not known and was left out.
     ");
-    assert_snapshot!(refused(b"title,volts\nT,9000\n"), @"This is not a list of supplies: its first line has no column “name”. The columns are: name, kind, input_volts, input_hertz, input_va, no_load_volts, short_circuit_ma, rated_ma, rated_load_volts, earthing, earth_fault_protection, trip_ma, trip_seconds, open_circuit_protection, output_hertz, least_load_percent, most_load_percent, place, price, stock, note.");
-    assert_snapshot!(refused(b"9000,30\n"), @"This is not a list of supplies: its first line has no column “name”. The columns are: name, kind, input_volts, input_hertz, input_va, no_load_volts, short_circuit_ma, rated_ma, rated_load_volts, earthing, earth_fault_protection, trip_ma, trip_seconds, open_circuit_protection, output_hertz, least_load_percent, most_load_percent, place, price, stock, note.");
+    assert_snapshot!(refused(b"title,volts\nT,9000\n"), @"This is not a list of supplies: its first line has no column “name”. The columns are: name, kind, input_volts, input_hertz, input_va, no_load_volts, short_circuit_ma, rated_ma, rated_load_volts, earthing, earth_fault_protection, trip_ma, trip_seconds, open_circuit_protection, output_hertz, least_load_percent, most_load_percent, place, price, stock, note, longest_lead_mm, chart.");
+    assert_snapshot!(refused(b"9000,30\n"), @"This is not a list of supplies: its first line has no column “name”. The columns are: name, kind, input_volts, input_hertz, input_va, no_load_volts, short_circuit_ma, rated_ma, rated_load_volts, earthing, earth_fault_protection, trip_ma, trip_seconds, open_circuit_protection, output_hertz, least_load_percent, most_load_percent, place, price, stock, note, longest_lead_mm, chart.");
     let missing = supplies("name\nT\n");
     let entry = &missing.entries[0];
     assert_eq!(
@@ -170,6 +170,53 @@ fn cells_that_are_no_figure() {
     Line 11 was left out: it has no name.
     "
     );
+}
+
+#[test]
+fn lists_in_a_cell() {
+    let readings = |cell: &str| {
+        let sheet =
+            read_tubes(format!("name;readings\nT;\"{cell}\"\n").as_bytes()).expect("a list");
+        let read = sheet.entries.into_iter().flat_map(|tube| tube.readings);
+        let read: Vec<_> = read.map(|r| (r.length_mm, r.ma, r.volts)).collect();
+        (read, sheet.trouble.join(" "))
+    };
+    let (read, trouble) = readings("600 mm 25 mA 596 V; 1000mm 25,5mA 0.83 kV;");
+    assert_eq!(read, [(600.0, 25.0, 596.0), (1_000.0, 25.5, 830.0)]);
+    assert_eq!(trouble, "");
+    assert_snapshot!(readings("600 mm 25 mA").1, @"Line 2 was left out: column readings, expected readings such as 600 mm 25 mA 596 V, parted by semicolons, but found “600 mm 25 mA”.");
+    assert_snapshot!(readings("600 mm; 25 mA; 596 V").1, @"Line 2 was left out: column readings, expected readings such as 600 mm 25 mA 596 V, parted by semicolons, but found “600 mm”.");
+    assert_snapshot!(readings("600 mm five mA 596 V").1, @"Line 2 was left out: column readings, expected a number such as 450, but found “five” at character 1 of “five”.");
+    let chart = |cell: &str| {
+        let cell = cell.replace('"', "\"\"");
+        let sheet = supplies(&format!("name,chart\nS,\"{cell}\"\n"));
+        let read = sheet.entries.into_iter().flat_map(|supply| supply.chart);
+        let read: Vec<_> = read.map(|l| (l.tube, l.longest_mm, l.pair_mm)).collect();
+        (read, sheet.trouble.join(" "))
+    };
+    let (read, trouble) = chart(r#"15 mm neon: 9000 mm, pair 300 mm; "a; ""b"": c" : 8,5 mm"#);
+    assert_eq!(
+        read,
+        [
+            ("15 mm neon".to_owned(), 9_000.0, Some(300.0)),
+            ("a; \"b\": c".to_owned(), 8.5, None)
+        ]
+    );
+    assert_eq!(trouble, "");
+    for cell in [
+        "15 mm neon",
+        ": 9000 mm",
+        "\"open: 9000 mm",
+        "a; b: 9000 mm",
+        "a: 9000 mm pair 300 mm",
+    ] {
+        let (read, trouble) = chart(cell);
+        assert!(
+            read.is_empty() && trouble.contains("expected lengths such as"),
+            "{cell}: {trouble}"
+        );
+    }
+    assert_snapshot!(chart("a: 9000 mm, pair none").1, @"Line 2 was left out: column chart, expected a number such as 450, but found “none” at character 1 of “none”.");
 }
 
 #[test]
@@ -316,7 +363,7 @@ fn tubes_are_read_alike() {
     };
     assert_eq!(sheet.entries, [expect]);
     assert_snapshot!(sheet.trouble.join("\n"), @"Line 3 was left out: column gas, expected neon or argon-mercury, but found “helium”.");
-    assert_snapshot!(read_tubes(b"price\n1\n").expect_err("no names"), @"This is not a list of tube types: its first line has no column “name”. The columns are: name, gas, outer_mm, wall_mm, colour, least_ma, most_ma, volts_per_m, at_ma, exponent, pair_volts, cold_factor, price_per_m, source.");
+    assert_snapshot!(read_tubes(b"price\n1\n").expect_err("no names"), @"This is not a list of tube types: its first line has no column “name”. The columns are: name, gas, outer_mm, wall_mm, colour, least_ma, most_ma, volts_per_m, at_ma, exponent, pair_volts, cold_factor, price_per_m, source, electrode, measured_on, readings.");
 }
 
 /// Text a cell gives back: csv trims around it, and only a name may not be empty.
@@ -349,6 +396,23 @@ fn price() -> impl Strategy<Value = Option<Decimal>> {
     )
 }
 
+fn chart_length() -> impl Strategy<Value = ChartLength> {
+    let name = prop_oneof![text(), "[;:\", a]{0,6}"];
+    (name, 0.0..1e5, figure()).prop_map(|(tube, longest_mm, pair_mm)| ChartLength {
+        tube,
+        longest_mm,
+        pair_mm,
+    })
+}
+
+fn bench_reading() -> impl Strategy<Value = Reading> {
+    (0.0..1e5, 0.0..1e5, 0.001..1e9).prop_map(|(length_mm, ma, volts)| Reading {
+        length_mm,
+        ma,
+        volts,
+    })
+}
+
 fn supply() -> impl Strategy<Value = SupplyEntry> {
     use prop::sample::select;
     (
@@ -371,9 +435,16 @@ fn supply() -> impl Strategy<Value = SupplyEntry> {
         prop::collection::vec(figure(), 12),
         (any::<bool>(), any::<bool>()),
         (price(), any::<Option<u32>>(), text()),
+        (figure(), prop::collection::vec(chart_length(), 0..4)),
     )
         .prop_map(
-            |((name, kind, earthing, place), figures, (earth, open), (price, stock, note))| {
+            |(
+                (name, kind, earthing, place),
+                figures,
+                (earth, open),
+                (price, stock, note),
+                (longest_lead_mm, chart),
+            )| {
                 SupplyEntry {
                     name,
                     kind,
@@ -396,7 +467,8 @@ fn supply() -> impl Strategy<Value = SupplyEntry> {
                     price,
                     stock,
                     note,
-                    ..SupplyEntry::default()
+                    longest_lead_mm,
+                    chart,
                 }
             },
         )
@@ -409,10 +481,19 @@ fn tube() -> impl Strategy<Value = TubeEntry> {
         prop::collection::vec(figure(), 9),
         text(),
         price(),
-        text(),
+        (text(), text(), text()),
+        prop::collection::vec(bench_reading(), 0..5),
     )
         .prop_map(
-            |(name, neon, figures, colour, price_per_m, source)| TubeEntry {
+            |(
+                name,
+                neon,
+                figures,
+                colour,
+                price_per_m,
+                (source, electrode, measured_on),
+                readings,
+            )| TubeEntry {
                 name,
                 gas: if neon { Gas::Neon } else { Gas::ArgonMercury },
                 outer_mm: figures[0],
@@ -427,7 +508,9 @@ fn tube() -> impl Strategy<Value = TubeEntry> {
                 cold_factor: figures[8],
                 price_per_m,
                 source,
-                ..TubeEntry::default()
+                electrode,
+                readings,
+                measured_on,
             },
         )
 }
