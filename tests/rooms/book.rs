@@ -675,6 +675,24 @@ fn the_demonstration_book_comes_back_to_the_byte() {
     let text = include_str!("../../catalog-demo/book.json");
     let book = book::read(text).expect("a book");
     assert_eq!(book::write(&book).trim_end(), text.trim_end());
+    assert_eq!(
+        book.rule_sets,
+        starter().rule_sets,
+        "as the program ships them"
+    );
+    let sheets = [
+        (
+            write_supplies(&book.supplies),
+            include_str!("../../catalog-demo/supplies.csv"),
+        ),
+        (
+            write_tubes(&book.tubes),
+            include_str!("../../catalog-demo/tubes.csv"),
+        ),
+    ];
+    for (written, stands) in sheets {
+        assert_eq!(written.replace("\r\n", "\n"), stands.replace("\r\n", "\n"));
+    }
 }
 
 #[test]
