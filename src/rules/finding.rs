@@ -93,6 +93,11 @@ impl Source {
         }
     }
 
+    /// Readings at the shop's own bench.
+    pub fn bench() -> Self {
+        Self::entry("bench readings")
+    }
+
     /// What was entered itself, in a word for which entry it is: "as typed in the row", "the supply's
     /// entry".
     pub fn entry(which: &'static str) -> Self {

@@ -352,6 +352,6 @@ fn of_readings(grade: Grade, entry: &TubeEntry, says: String) -> Finding {
         grade,
         Place::Tube(entry.name.clone()),
         says,
-        Source::entry("bench readings"),
+        Source::bench(),
     )
 }

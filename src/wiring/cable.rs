@@ -6,7 +6,7 @@ use crate::job::LeadRun;
 use crate::measure::Length;
 
 /// What cannot be of a cable's entry, as clauses; empty where it can be worked with.
-pub(super) fn contradictions(cable: &CableEntry) -> Vec<String> {
+pub fn contradictions(cable: &CableEntry) -> Vec<String> {
     let mut wrong = Vec::new();
     for (name, value, least, most, unit) in [
         ("its rated volts", cable.rated_volts, 100.0, 100_000.0, "V"),

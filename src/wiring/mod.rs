@@ -32,6 +32,7 @@ use crate::supply::Rating;
 use crate::takeoff::Piece;
 use crate::tube::TubeType;
 
+pub use cable::contradictions as cable_contradictions;
 use lengths::Measured;
 use setup::Setup;
 

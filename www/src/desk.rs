@@ -76,6 +76,10 @@ pub enum BookPart {
     Supplies,
     /// Tube types.
     Tubes,
+    /// Electrodes.
+    Electrodes,
+    /// High-voltage cables.
+    Cables,
     /// Rule sets.
     Rules,
     /// Rates and allowances.
@@ -149,7 +153,7 @@ pub struct Desk {
     pub joint: RwSignal<Option<(usize, usize)>>,
     /// The part of the shop book in sight.
     pub book_part: RwSignal<BookPart>,
-    /// The supply or tube type opened there, by name.
+    /// The supply, tube type, electrode or cable opened there, by name.
     pub entry: RwSignal<Option<String>>,
     /// Whether all findings are listed.
     pub findings_open: RwSignal<bool>,

@@ -1,4 +1,4 @@
-//! Pictures: the sign to scale, the loading bar, and the plot of a circuit along its string. Where
+//! Pictures: the sign to scale, the loading bar, the plot of a circuit along its string, and bench readings. Where
 //! things lie is plain arithmetic, tested natively; the components only draw it.
 
 mod eye;
@@ -9,6 +9,7 @@ mod loading;
 mod paint;
 mod plot;
 mod profile;
+mod readings;
 mod scale;
 mod scene;
 mod sign;
@@ -18,5 +19,6 @@ mod window;
 pub use loading::LoadingBar;
 pub use plot::beside;
 pub use profile::ProfilePlot;
+pub use readings::ReadingsPicture;
 pub use sign::SignPicture;
 pub use tap::part_marked;

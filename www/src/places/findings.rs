@@ -73,6 +73,7 @@ pub(super) fn go(desk: Desk, place: &Place) {
             ".entries .open".to_owned()
         }
         Place::Electrode(name) => {
+            desk.book_part.set(BookPart::Electrodes);
             desk.entry.set(Some(name.clone()));
             desk.place.set(Where::ShopBook);
             ".entries .open".to_owned()

@@ -1,7 +1,10 @@
 //! The places of the page, one file each, and the frame around them.
 
+mod cable_form;
 mod chart_fields;
 mod circuits;
+mod electrode_form;
+mod entries;
 mod feed;
 mod fields;
 mod files;
@@ -10,6 +13,7 @@ mod frame;
 mod glass;
 mod layout;
 mod leads;
+mod measured;
 mod outline_fields;
 mod piece_fields;
 mod price;

@@ -4,13 +4,16 @@ use leptos::prelude::*;
 use rust_decimal::Decimal;
 use tubewright::Book;
 use tubewright::book::{Bending, Gas, OutputEarthing, Rates, SupplyEntry, SupplyKind, TubeEntry};
-use tubewright::rules::Finding;
+use tubewright::rules::Source;
 use tubewright::supply::Rating;
 use tubewright::tube::TubeType;
 
+use super::cable_form::Cables;
 use super::chart_fields::ChartFields;
+use super::electrode_form::Electrodes;
+use super::entries::{EntryLine, Figure, edit, figures, head, lines, list, name_field, read};
 use super::fields::{Choice, Field, Tick, always, figure, money, optional_figure, typed};
-use super::findings::line;
+use super::measured::BenchReadings;
 use super::sign::{damp, damp_options, damp_word};
 use crate::desk::{BookPart, Desk, desk};
 
@@ -37,6 +40,8 @@ pub fn ShopBook() -> impl IntoView {
             <div class="pair tabs" role="group" aria-label="Part of the book">
                 {tab(BookPart::Supplies, "Supplies")}
                 {tab(BookPart::Tubes, "Tube types")}
+                {tab(BookPart::Electrodes, "Electrodes")}
+                {tab(BookPart::Cables, "Cables")}
                 {tab(BookPart::Rules, "Rules")}
                 {tab(BookPart::Rates, "Rates")}
             </div>
@@ -44,196 +49,59 @@ pub fn ShopBook() -> impl IntoView {
         {move || match part.get() {
             BookPart::Supplies => view! { <Supplies/> }.into_any(),
             BookPart::Tubes => view! { <Tubes/> }.into_any(),
+            BookPart::Electrodes => view! { <Electrodes/> }.into_any(),
+            BookPart::Cables => view! { <Cables/> }.into_any(),
             BookPart::Rules => view! { <RuleSets/> }.into_any(),
             BookPart::Rates => view! { <RatesForm/> }.into_any(),
         }}
     }
 }
 
-/// A name no entry of a list has yet.
-fn free_name(wanted: &str, taken: &[&str]) -> String {
-    let mut name = wanted.to_owned();
-    let mut number = 2;
-    while taken.contains(&name.as_str()) {
-        name = format!("{wanted} ({number})");
-        number += 1;
-    }
-    name
-}
-
-/// The entry that is open, by its place in a list of names. By name, so that undo or a removal
-/// elsewhere never puts another entry under one's hands.
-fn opened(desk: Desk, names: fn(&Book) -> Vec<&str>) -> Memo<Option<usize>> {
-    Memo::new(move |_| {
-        let name = desk.entry.get()?;
-        desk.book
-            .with(|book| names(book).into_iter().position(|known| known == name))
-    })
-}
-
-fn supply_names(book: &Book) -> Vec<&str> {
-    book.supplies
-        .iter()
-        .map(|supply| supply.name.as_str())
-        .collect()
-}
-
-fn tube_names(book: &Book) -> Vec<&str> {
-    book.tubes.iter().map(|tube| tube.name.as_str()).collect()
-}
-
-/// A list of entries; the open one has its form right under it.
-#[component]
-fn Entries(
-    /// Lines of the list: name, what stands beside it, colour if it has one, whether it is usable.
-    #[prop(into)]
-    lines: Signal<Vec<EntryLine>>,
-    /// Place of the open entry.
-    open: Memo<Option<usize>>,
-    /// The form of an entry.
-    form: Callback<usize, AnyView>,
-) -> impl IntoView {
-    let desk = desk();
-    let count = Memo::new(move |_| lines.with(Vec::len));
-    let line = move |at: usize| {
-        Memo::new(move |_| lines.with(|lines| lines.get(at).cloned().unwrap_or_default()))
-    };
-    view! {
-        <ul class="entries">
-            <For each=move || 0..count.get() key=|at| *at let:at>
-                {
-                    let line = line(at);
-                    view! {
-                        <li class:open=move || open.get() == Some(at)>
-                            <button
-                                class="entry"
-                                aria-expanded=move || (open.get() == Some(at)).to_string()
-                                on:click=move |_| {
-                                    let name = line.get_untracked().name;
-                                    desk.settle();
-                                    desk.entry.update(|now| {
-                                        *now = if now.as_ref() == Some(&name) { None } else { Some(name) };
-                                    });
-                                }
-                            >
-                                <b>
-                                    {move || line.get().colour.map(|colour| view! { <span class="dot" style:background=colour></span> })}
-                                    {move || line.get().name}
-                                </b>
-                                <span>{move || line.get().beside}</span>
-                                {move || line.get().wrong.then(|| view! { <span class="chip stop">"cannot be used"</span> })}
-                            </button>
-                            {move || (open.get() == Some(at)).then(|| form.run(at))}
-                        </li>
-                    }
-                }
-            </For>
-        </ul>
-    }
-}
-
-#[derive(Debug, Clone, Default, PartialEq)]
-struct EntryLine {
-    name: String,
-    beside: String,
-    colour: Option<String>,
-    wrong: bool,
-}
-
-/// A new or copied entry is opened and brought into sight.
-fn open_new(desk: Desk, name: String) {
-    desk.entry.set(Some(name));
-    desk.turn();
-    request_animation_frame(|| {
-        if let Ok(Some(found)) = document().query_selector(".entries .open") {
-            found.scroll_into_view();
-        }
-    });
-}
-
 #[component]
 fn Supplies() -> impl IntoView {
     let desk = desk();
-    let lines = Signal::derive(move || {
-        desk.book.with(|book| {
-            book.supplies
-                .iter()
-                .map(|supply| {
-                    let figures = [
-                        supply.no_load_volts.map(|volts| {
-                            tubewright::measure::volts_shown(
-                                tubewright::measure::Volts::from_volts(volts),
-                            )
-                        }),
-                        supply
-                            .short_circuit_ma
-                            .or(supply.rated_ma)
-                            .map(|ma| format!("{ma} mA")),
-                        supply.earthing.map(|earthing| {
-                            tubewright::supply::earthing_words(
-                                earthing,
-                                desk.results.with(|work| work.earth_word()),
-                            )
-                            .to_owned()
-                        }),
-                        supply.input_volts.map(|volts| format!("for {volts} V")),
-                        supply.price.map(super::price::amount),
-                    ];
-                    EntryLine {
-                        name: supply.name.clone(),
-                        beside: figures.into_iter().flatten().collect::<Vec<_>>().join(", "),
-                        colour: None,
-                        wrong: Rating::read(supply).is_err(),
-                    }
-                })
-                .collect()
-        })
-    });
-    view! {
-        <section class="panel" aria-label="Supplies">
-            <header class="panel-head">
-                <h2>"Supplies"</h2>
-                <button on:click=move |_| {
-                    desk.settle();
-                    let name = desk.book.with_untracked(|book| free_name("New supply", &supply_names(book)));
-                    desk.edit_book("add supply", "Add a supply", |book| {
-                        book.supplies.insert(0, SupplyEntry { name: name.clone(), ..SupplyEntry::default() });
-                    });
-                    desk.settle();
-                    open_new(desk, name);
-                }>"Add"</button>
-            </header>
-            <p class="quiet">"As their nameplates say. A figure that is not on the plate is left empty; nothing is invented for it."</p>
-            <Entries
-                lines=lines
-                open=opened(desk, supply_names)
-                form=Callback::new(|at| view! { <SupplyForm at=at/> }.into_any())
-            />
-        </section>
-    }
+    let lines = move |book: &Book| {
+        book.supplies
+            .iter()
+            .map(|supply| {
+                let figures = [
+                    supply.no_load_volts.map(|volts| {
+                        tubewright::measure::volts_shown(tubewright::measure::Volts::from_volts(
+                            volts,
+                        ))
+                    }),
+                    supply
+                        .short_circuit_ma
+                        .or(supply.rated_ma)
+                        .map(|ma| format!("{ma} mA")),
+                    supply.earthing.map(|earthing| {
+                        tubewright::supply::earthing_words(
+                            earthing,
+                            desk.results.with(|work| work.earth_word()),
+                        )
+                        .to_owned()
+                    }),
+                    supply.input_volts.map(|volts| format!("for {volts} V")),
+                    supply.price.map(super::price::amount),
+                ];
+                EntryLine {
+                    name: supply.name.clone(),
+                    beside: figures.into_iter().flatten().collect::<Vec<_>>().join(", "),
+                    colour: None,
+                    wrong: Rating::read(supply).is_err(),
+                }
+            })
+            .collect()
+    };
+    list::<SupplyEntry>(
+        "Supplies",
+        "As their nameplates say. A figure that is not on the plate is left empty; nothing is invented for it.",
+        lines,
+        |at| view! { <SupplyForm at=at/> }.into_any(),
+    )
 }
 
-fn supply_edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut SupplyEntry)) {
-    desk.edit_book(
-        &format!("supply {at} {field}"),
-        &format!("Supply: {field}"),
-        |book| {
-            if let Some(entry) = book.supplies.get_mut(at) {
-                edit(entry);
-            }
-        },
-    );
-}
-
-/// A figure of an entry: caption, unit, how it is read and written.
-type Figure<T> = (
-    &'static str,
-    &'static str,
-    fn(&T) -> Option<f64>,
-    fn(&mut T, Option<f64>),
-);
-
-const SUPPLY_FIGURES: [Figure<SupplyEntry>; 14] = [
+const SUPPLY_FIGURES: &[Figure<SupplyEntry>] = &[
     (
         "No-load volts, V",
         "V",
@@ -318,31 +186,7 @@ const SUPPLY_FIGURES: [Figure<SupplyEntry>; 14] = [
 #[component]
 fn SupplyForm(at: usize) -> impl IntoView {
     let desk = desk();
-    let read = move |get: fn(&SupplyEntry) -> String| {
-        Signal::derive(move || {
-            desk.book
-                .with(|book| book.supplies.get(at).map(get).unwrap_or_default())
-        })
-    };
-    let figures: Vec<_> = SUPPLY_FIGURES
-        .into_iter()
-        .map(|(label, unit, get, set)| {
-            view! {
-                <Field
-                    label=label
-                    number=true
-                    value=Signal::derive(move || {
-                        typed(desk.book.with(|book| book.supplies.get(at).and_then(get)))
-                    })
-                    commit=move |text: String| {
-                        let figure = optional_figure(&text, unit)?;
-                        supply_edit(desk, at, label, |entry| set(entry, figure));
-                        Ok(())
-                    }
-                />
-            }
-        })
-        .collect();
+    let figures = figures::<SupplyEntry>(desk, at, SUPPLY_FIGURES);
     let said = move || {
         desk.book
             .with(|book| match book.supplies.get(at).map(Rating::read) {
@@ -352,101 +196,55 @@ fn SupplyForm(at: usize) -> impl IntoView {
     };
     view! {
         <section class="form" aria-label="Supply">
-            <header class="panel-head">
-                <h2>{read(|s| s.name.clone())}</h2>
-                <button on:click=move |_| {
-                    desk.settle();
-                    let name = desk.book.with_untracked(|book| {
-                        let names = supply_names(book);
-                        names.get(at).map(|name| free_name(name, &names))
-                    });
-                    if let Some(name) = name {
-                        desk.edit_book("copy supply", "Copy a supply", |book| {
-                            if let Some(mut entry) = book.supplies.get(at).cloned() {
-                                entry.name.clone_from(&name);
-                                book.supplies.insert(at + 1, entry);
-                            }
-                        });
-                        desk.settle();
-                        open_new(desk, name);
-                    }
-                }>"Copy"</button>
-                <button on:click=move |_| {
-                    desk.entry.set(None);
-                    desk.settle();
-                    desk.edit_book("remove supply", "Remove a supply", |book| {
-                        if at < book.supplies.len() {
-                            book.supplies.remove(at);
-                        }
-                    });
-                    desk.settle();
-                    desk.turn();
-                }>"Remove"</button>
-            </header>
+            {head::<SupplyEntry>(desk, at)}
             {said}
             <div class="form-fields">
-                <Field
-                    label="Name"
-                    class="wide"
-                    value=read(|s| s.name.clone())
-                    commit=move |text: String| {
-                        let name = text.trim().to_owned();
-                        let taken = desk.book.with_untracked(|book| {
-                            book.supplies.iter().enumerate().any(|(other, s)| other != at && s.name == name)
-                        });
-                        if name.is_empty() || taken {
-                            return Err("Each supply needs a name of its own.".to_owned());
-                        }
-                        supply_edit(desk, at, "name", |entry| entry.name.clone_from(&name));
-                        desk.entry.set(Some(name));
-                        Ok(())
-                    }
-                />
+                {name_field::<SupplyEntry>(desk, at)}
                 <Choice
                     label="Kind"
-                    value=read(|s| match s.kind { None => "", Some(SupplyKind::Iron) => "iron", Some(SupplyKind::Electronic) => "electronic" }.to_owned())
+                    value=read(desk, at, |s: &SupplyEntry| match s.kind { None => "", Some(SupplyKind::Iron) => "iron", Some(SupplyKind::Electronic) => "electronic" }.to_owned())
                     options=Signal::stored(pairs(&[("iron", "iron transformer"), ("electronic", "electronic")]))
-                    commit=move |word: String| supply_edit(desk, at, "kind", |entry| {
+                    commit=move |word: String| { edit::<SupplyEntry>(desk, at, "kind", |entry| {
                         entry.kind = match word.as_str() { "iron" => Some(SupplyKind::Iron), "electronic" => Some(SupplyKind::Electronic), _ => None };
-                    })
+                    }); }
                 />
                 <Choice
                     label="Output"
-                    value=read(|s| s.earthing.map_or("", earthing_key).to_owned())
+                    value=read(desk, at, |s: &SupplyEntry| s.earthing.map_or("", earthing_key).to_owned())
                     options=Signal::derive(move || {
                         let word = desk.results.with(|work| work.earth_word());
                         EARTHINGS.iter().map(|&earthing| {
                             (earthing_key(earthing).to_owned(), tubewright::supply::earthing_words(earthing, word).to_owned())
                         }).collect::<Vec<_>>()
                     })
-                    commit=move |word: String| supply_edit(desk, at, "output", |entry| {
+                    commit=move |word: String| { edit::<SupplyEntry>(desk, at, "output", |entry| {
                         entry.earthing = EARTHINGS.iter().copied().find(|&e| earthing_key(e) == word);
-                    })
+                    }); }
                 />
                 <Choice
                     label="Made for"
-                    value=read(|s| damp_word(s.place).to_owned())
+                    value=read(desk, at, |s: &SupplyEntry| damp_word(s.place).to_owned())
                     options=Signal::stored(damp_options())
-                    commit=move |word: String| supply_edit(desk, at, "place", |entry| entry.place = damp(&word))
+                    commit=move |word: String| { edit::<SupplyEntry>(desk, at, "place", |entry| entry.place = damp(&word)) }
                 />
                 <Tick
                     label="Earth-fault protection"
                     value=Signal::derive(move || desk.book.with(|book| book.supplies.get(at).is_some_and(|s| s.earth_fault_protection)))
-                    commit=move |yes: bool| supply_edit(desk, at, "earth-fault protection", |entry| entry.earth_fault_protection = yes)
+                    commit=move |yes: bool| { edit::<SupplyEntry>(desk, at, "earth-fault protection", |entry| entry.earth_fault_protection = yes) }
                 />
                 <Tick
                     label="Open-circuit protection"
                     value=Signal::derive(move || desk.book.with(|book| book.supplies.get(at).is_some_and(|s| s.open_circuit_protection)))
-                    commit=move |yes: bool| supply_edit(desk, at, "open-circuit protection", |entry| entry.open_circuit_protection = yes)
+                    commit=move |yes: bool| { edit::<SupplyEntry>(desk, at, "open-circuit protection", |entry| entry.open_circuit_protection = yes) }
                 />
                 {figures}
                 <Field
                     label="Price"
                     number=true
-                    value=read(|s| s.price.map_or_else(String::new, |price| price.to_string()))
+                    value=read(desk, at, |s: &SupplyEntry| s.price.map_or_else(String::new, |price| price.to_string()))
                     commit=move |text: String| {
                         let price = optional_money(&text)?;
-                        supply_edit(desk, at, "price", |entry| entry.price = price);
+                        edit::<SupplyEntry>(desk, at, "price", |entry| entry.price = price);
                         Ok(())
                     }
                 />
@@ -454,9 +252,9 @@ fn SupplyForm(at: usize) -> impl IntoView {
                     label="Note"
                     class="wide"
                     live=always()
-                    value=read(|s| s.note.clone())
+                    value=read(desk, at, |s: &SupplyEntry| s.note.clone())
                     commit=move |text: String| {
-                        supply_edit(desk, at, "note", |entry| entry.note = text);
+                        edit::<SupplyEntry>(desk, at, "note", |entry| entry.note = text);
                         Ok(())
                     }
                 />
@@ -489,10 +287,6 @@ fn pairs(words: &[(&str, &str)]) -> Vec<(String, String)> {
         .collect()
 }
 
-fn lines(findings: &[Finding]) -> Vec<impl IntoView + use<>> {
-    findings.iter().map(line).collect()
-}
-
 fn optional_money(text: &str) -> Result<Option<Decimal>, String> {
     if text.trim().is_empty() {
         Ok(None)
@@ -503,69 +297,38 @@ fn optional_money(text: &str) -> Result<Option<Decimal>, String> {
 
 #[component]
 fn Tubes() -> impl IntoView {
-    let desk = desk();
-    let lines = Signal::derive(move || {
-        desk.book.with(|book| {
-            book.tubes
-                .iter()
-                .map(|entry| match TubeType::read(entry) {
-                    Ok(tube) => EntryLine {
-                        name: tube.name.clone(),
-                        beside: format!(
-                            "{:.0} V/m at {} mA, {}",
-                            tube.volts_per_m,
-                            tube.at_ma,
-                            tube.known_words()
-                        ),
-                        colour: Some(tube.colour),
-                        wrong: false,
-                    },
-                    Err(_) => EntryLine {
-                        name: entry.name.clone(),
-                        wrong: true,
-                        ..EntryLine::default()
-                    },
-                })
-                .collect()
-        })
-    });
-    view! {
-        <section class="panel" aria-label="Tube types">
-            <header class="panel-head">
-                <h2>"Tube types"</h2>
-                <button on:click=move |_| {
-                    desk.settle();
-                    let name = desk.book.with_untracked(|book| free_name("New tube type", &tube_names(book)));
-                    desk.edit_book("add tube", "Add a tube type", |book| {
-                        book.tubes.insert(0, TubeEntry { name: name.clone(), ..TubeEntry::default() });
-                    });
-                    desk.settle();
-                    open_new(desk, name);
-                }>"Add"</button>
-            </header>
-            <p class="quiet">"Electrical figures left empty come from the default model, ±15 to ±25 %, and say so wherever they are used."</p>
-            <Entries
-                lines=lines
-                open=opened(desk, tube_names)
-                form=Callback::new(|at| view! { <TubeForm at=at/> }.into_any())
-            />
-        </section>
-    }
+    let lines = |book: &Book| {
+        book.tubes
+            .iter()
+            .map(|entry| match TubeType::of_book(entry, &book.electrodes) {
+                Ok(tube) => EntryLine {
+                    name: tube.name.clone(),
+                    beside: format!(
+                        "{:.0} V/m at {} mA, {}",
+                        tube.volts_per_m,
+                        tube.at_ma,
+                        tube.known_words()
+                    ),
+                    colour: Some(tube.colour),
+                    wrong: false,
+                },
+                Err(_) => EntryLine {
+                    name: entry.name.clone(),
+                    wrong: true,
+                    ..EntryLine::default()
+                },
+            })
+            .collect()
+    };
+    list::<TubeEntry>(
+        "Tube types",
+        "Electrical figures left empty come from the default model, ±15 to ±25 %, and say so wherever they are used. Bench readings of your own tubes are better.",
+        lines,
+        |at| view! { <TubeForm at=at/> }.into_any(),
+    )
 }
 
-fn tube_edit(desk: Desk, at: usize, field: &str, edit: impl FnOnce(&mut TubeEntry)) {
-    desk.edit_book(
-        &format!("tube {at} {field}"),
-        &format!("Tube type: {field}"),
-        |book| {
-            if let Some(entry) = book.tubes.get_mut(at) {
-                edit(entry);
-            }
-        },
-    );
-}
-
-const TUBE_FIGURES: [Figure<TubeEntry>; 9] = [
+const TUBE_FIGURES: &[Figure<TubeEntry>] = &[
     (
         "Outer diameter, mm",
         "mm",
@@ -625,97 +388,45 @@ const TUBE_FIGURES: [Figure<TubeEntry>; 9] = [
 #[component]
 fn TubeForm(at: usize) -> impl IntoView {
     let desk = desk();
-    let read = move |get: fn(&TubeEntry) -> String| {
-        Signal::derive(move || {
-            desk.book
-                .with(|book| book.tubes.get(at).map(get).unwrap_or_default())
-        })
-    };
-    let figures: Vec<_> = TUBE_FIGURES
-        .into_iter()
-        .map(|(label, unit, get, set)| {
-            view! {
-                <Field
-                    label=label
-                    number=true
-                    value=Signal::derive(move || {
-                        typed(desk.book.with(|book| book.tubes.get(at).and_then(get)))
-                    })
-                    commit=move |text: String| {
-                        let figure = optional_figure(&text, unit)?;
-                        tube_edit(desk, at, label, |entry| set(entry, figure));
-                        Ok(())
-                    }
-                />
-            }
-        })
-        .collect();
+    let figures = figures::<TubeEntry>(desk, at, TUBE_FIGURES);
     let said = move || {
-        desk.book
-            .with(|book| match book.tubes.get(at).map(TubeType::read) {
-                Some(Err(wrong)) => Some(lines(&wrong)),
-                _ => None,
-            })
+        desk.book.with(
+            |book| match TubeType::of_book(book.tubes.get(at)?, &book.electrodes) {
+                Err(wrong) => Some(lines(&wrong)),
+                // What is said of bench readings stands beside them.
+                Ok(mut tube) => {
+                    tube.findings
+                        .retain(|finding| finding.source != Source::bench());
+                    Some(lines(&tube.findings))
+                }
+            },
+        )
     };
     view! {
         <section class="form" aria-label="Tube type">
-            <header class="panel-head">
-                <h2>{read(|t| t.name.clone())}</h2>
-                <button on:click=move |_| {
-                    desk.settle();
-                    let name = desk.book.with_untracked(|book| {
-                        let names = tube_names(book);
-                        names.get(at).map(|name| free_name(name, &names))
-                    });
-                    if let Some(name) = name {
-                        desk.edit_book("copy tube", "Copy a tube type", |book| {
-                            if let Some(mut entry) = book.tubes.get(at).cloned() {
-                                entry.name.clone_from(&name);
-                                book.tubes.insert(at + 1, entry);
-                            }
-                        });
-                        desk.settle();
-                        open_new(desk, name);
-                    }
-                }>"Copy"</button>
-                <button on:click=move |_| {
-                    desk.entry.set(None);
-                    desk.settle();
-                    desk.edit_book("remove tube", "Remove a tube type", |book| {
-                        if at < book.tubes.len() {
-                            book.tubes.remove(at);
-                        }
-                    });
-                    desk.settle();
-                    desk.turn();
-                }>"Remove"</button>
-            </header>
+            {head::<TubeEntry>(desk, at)}
             {said}
             <div class="form-fields">
-                <Field
-                    label="Name"
-                    class="wide"
-                    value=read(|t| t.name.clone())
-                    commit=move |text: String| {
-                        let name = text.trim().to_owned();
-                        let taken = desk.book.with_untracked(|book| {
-                            book.tubes.iter().enumerate().any(|(other, t)| other != at && t.name == name)
-                        });
-                        if name.is_empty() || taken {
-                            return Err("Each tube type needs a name of its own.".to_owned());
-                        }
-                        tube_edit(desk, at, "name", |entry| entry.name.clone_from(&name));
-                        desk.entry.set(Some(name));
-                        Ok(())
-                    }
-                />
+                {name_field::<TubeEntry>(desk, at)}
                 <Choice
                     label="Gas"
-                    value=read(|t| match t.gas { Gas::Neon => "neon", Gas::ArgonMercury => "argon-mercury" }.to_owned())
+                    value=read(desk, at, |t: &TubeEntry| match t.gas { Gas::Neon => "neon", Gas::ArgonMercury => "argon-mercury" }.to_owned())
                     options=Signal::stored(pairs(&[("neon", "neon"), ("argon-mercury", "argon-mercury")]))
-                    commit=move |word: String| tube_edit(desk, at, "gas", |entry| {
+                    commit=move |word: String| { edit::<TubeEntry>(desk, at, "gas", |entry| {
                         entry.gas = if word == "neon" { Gas::Neon } else { Gas::ArgonMercury };
+                    }); }
+                />
+                <Choice
+                    label="Electrodes"
+                    value=read(desk, at, |t: &TubeEntry| t.electrode.clone())
+                    options=Signal::derive(move || {
+                        let none = (String::new(), "not given".to_owned());
+                        desk.book.with(|book| {
+                            let names = book.electrodes.iter().map(|e| (e.name.clone(), e.name.clone()));
+                            std::iter::once(none).chain(names).collect::<Vec<_>>()
+                        })
                     })
+                    commit=move |name: String| { edit::<TubeEntry>(desk, at, "electrodes", |entry| entry.electrode = name) }
                 />
                 <label class="field">
                     <span class="caption">"Colour on the picture"</span>
@@ -726,7 +437,7 @@ fn TubeForm(at: usize) -> impl IntoView {
                         })
                         on:change:target=move |event| {
                             let colour = event.target().value();
-                            tube_edit(desk, at, "colour", |entry| entry.colour = colour);
+                            edit::<TubeEntry>(desk, at, "colour", |entry| entry.colour = colour);
                             desk.settle();
                         }
                     />
@@ -735,10 +446,10 @@ fn TubeForm(at: usize) -> impl IntoView {
                 <Field
                     label="Price of a metre"
                     number=true
-                    value=read(|t| t.price_per_m.map_or_else(String::new, |price| price.to_string()))
+                    value=read(desk, at, |t: &TubeEntry| t.price_per_m.map_or_else(String::new, |price| price.to_string()))
                     commit=move |text: String| {
                         let price = optional_money(&text)?;
-                        tube_edit(desk, at, "price", |entry| entry.price_per_m = price);
+                        edit::<TubeEntry>(desk, at, "price", |entry| entry.price_per_m = price);
                         Ok(())
                     }
                 />
@@ -746,13 +457,14 @@ fn TubeForm(at: usize) -> impl IntoView {
                     label="Where the figures came from"
                     class="wide"
                     live=always()
-                    value=read(|t| t.source.clone())
+                    value=read(desk, at, |t: &TubeEntry| t.source.clone())
                     commit=move |text: String| {
-                        tube_edit(desk, at, "source", |entry| entry.source = text);
+                        edit::<TubeEntry>(desk, at, "source", |entry| entry.source = text);
                         Ok(())
                     }
                 />
             </div>
+            <BenchReadings at=at/>
         </section>
     }
 }
@@ -974,16 +686,5 @@ fn bending(
                 Ok(())
             }
         />
-    }
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    #[test]
-    fn a_new_entry_gets_a_name_of_its_own() {
-        assert_eq!(free_name("A", &["B"]), "A");
-        assert_eq!(free_name("A", &["A", "A (2)"]), "A (3)");
     }
 }
