@@ -181,6 +181,15 @@ fn within(figure: Interval, decimals: usize) -> String {
     format!("{:.decimals$} ± {:.decimals$}", figure.value, figure.half).replace('-', "\u{2212}")
 }
 
+/// Volts off the fit, with their sign; nothing has none.
+fn off(volts: f64) -> String {
+    let whole = volts.round();
+    if whole == 0.0 {
+        return "0 V".to_owned();
+    }
+    format!("{whole:+.0} V").replace('-', "\u{2212}")
+}
+
 /// One reading: its three fields and how it lies.
 #[component]
 fn ReadingRow(
@@ -272,12 +281,24 @@ fn ReadingRow(
             </td>
             <td>{move || lies.get().map(|point| format!("{:.0} V", point.fitted))}</td>
             <td>
-                {move || lies.get().map(|point| format!("{:+.0} V", point.residual).replace('-', "\u{2212}"))}
+                {move || lies.get().map(|point| off(point.residual))}
                 {move || lies.get().is_some_and(|point| point.odd).then(|| view! { <span class="chip look">"odd"</span> })}
             </td>
             <td>
                 <button aria-label=format!("Remove reading {number}") on:click=remove>"×"</button>
             </td>
         </tr>
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn volts_off_have_a_sign_unless_there_are_none() {
+        assert_eq!(off(3.6), "+4 V");
+        assert_eq!(off(-12.4), "\u{2212}12 V");
+        assert_eq!((off(-0.4), off(0.4)), ("0 V".to_owned(), "0 V".to_owned()));
     }
 }
