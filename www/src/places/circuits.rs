@@ -322,8 +322,8 @@ fn Detail(number: usize, results: Results) -> impl IntoView {
                     <dd>{mains(&circuit.assessment.halves)}</dd>
                     {protection}
                 </dl>
-                <details class="assumed">
-                    <summary>"What is taken by default"</summary>
+                <details class="layout assumed">
+                    <summary><span>"What is taken by default"</span></summary>
                     <ul>{circuit.assumed.iter().map(|says| view! { <li>{says.clone()}</li> }).collect::<Vec<_>>()}</ul>
                 </details>
                 {said}

@@ -170,7 +170,8 @@ pub(super) fn UnseenKey() -> impl IntoView {
             let circuit = results.circuits.get(open)?;
             let unseen = unseen(circuit)?;
             Some(format!(
-                "Hatched: a fault to {} here is not sensed, {:.0} % of the string of circuit {}.",
+                "Hatched: a fault to {} here is not sensed, where the pieces are joined as the \
+                 dotted lines run; {:.0} % of the string of circuit {}.",
                 results.earth_word().word(),
                 unseen.share() * 100.0,
                 open + 1
