@@ -11,7 +11,7 @@ use tubewright::book::{
 use tubewright::circuit::{Curve, Load, Operating, assess, operate, profile, protect};
 use tubewright::drawing::svg;
 use tubewright::job::{Job, Row, StrokesRow, TextRow, Wish};
-use tubewright::measure::{LengthUnit, Milliamps, length};
+use tubewright::measure::{Length, LengthUnit, Milliamps, length};
 use tubewright::plan::{Candidate, Task, plan};
 use tubewright::rules::EarthWord;
 use tubewright::supply::Rating;
@@ -220,6 +220,25 @@ fn circuit(c: &mut Criterion) {
         assert!(
             matches!(operate(&load, &curve), Operating::Runs { gaps: false, .. }),
             "it runs steadily"
+        );
+        c.bench_function(&format!("operating point, {name}"), |b| {
+            b.iter(|| operate(black_box(&load), black_box(&curve)));
+        });
+    }
+    // Strings too long for it: with gaps, and so long that they do not run at all.
+    for (name, metres, gaps) in [("gaps", 40.0, true), ("overloaded", 60.0, false)] {
+        let load = Load {
+            columns: vec![(
+                tubes[0].exponent,
+                tubes[0].column(Length::from_mm(1000.0 * metres), false),
+            )],
+            ..Load::new()
+        };
+        let found = operate(&load, &curve);
+        assert_eq!(
+            matches!(found, Operating::Runs { gaps: true, .. }),
+            gaps,
+            "{found:?}"
         );
         c.bench_function(&format!("operating point, {name}"), |b| {
             b.iter(|| operate(black_box(&load), black_box(&curve)));

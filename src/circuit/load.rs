@@ -163,21 +163,44 @@ pub fn operate(load: &Load, curve: &Curve) -> Operating {
         return runs(load, curve, current, false);
     }
     if let Curve::Iron { no_load, short_ma } = *curve {
-        // With gaps: step down from the edge current; the first crossing is the largest.
-        const STEPS: u32 = 400;
-        let excess = |current: f64| iron(load.volts(current) / no_load).rms * short_ma - current;
-        let at = |step: u32| edge_current.ma() * f64::from(STEPS - step) / f64::from(STEPS);
-        for step in 1..STEPS {
-            if excess(at(step)) >= 0.0 {
-                let current = crossing(excess, at(step), at(step - 1));
-                return runs(load, curve, current, true);
-            }
+        if let Some(current) = with_gaps(load, no_load, short_ma, edge_current.ma()) {
+            return runs(load, curve, current, true);
         }
     }
     Operating::Overloaded {
         wanted: Volts::from_volts(wanted),
         given: edge_volts,
     }
+}
+
+/// The largest current below the edge's at which a string runs with gaps; None where there is none.
+///
+/// What the supply gives at the string's volts at some current only falls as that current does, so from
+/// above the largest crossing, giving what was given the step before leads down to it and never past
+/// it. A guess from the last two steps goes ahead; once it has the crossing behind it, both bracket it.
+fn with_gaps(load: &Load, no_load: f64, short_ma: f64, edge_ma: f64) -> Option<f64> {
+    let given = |current: f64| iron(load.volts(current) / no_load).rms * short_ma;
+    let excess = |current: f64| given(current) - current;
+    let nothing = 1e-9 * short_ma;
+    let mut from = edge_ma;
+    for _ in 0..500 {
+        let next = given(from);
+        if next <= nothing {
+            return None;
+        }
+        if from - next <= 1e-13 * short_ma {
+            return Some(next);
+        }
+        let after = given(next);
+        let slope = (next - after) / (from - next);
+        let guess = next - 1.05 * (next - after) / (1.0 - slope);
+        if slope < 1.0 && guess > nothing && excess(guess) >= 0.0 {
+            return Some(crossing(excess, guess, next));
+        }
+        from = after;
+    }
+    // So slow only where string and supply all but touch: it is taken not to run.
+    None
 }
 
 /// Where `excess` passes from not below zero at `low` to below zero at `high`: false position with the

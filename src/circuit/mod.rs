@@ -4,8 +4,10 @@
 //! droop from short-circuit current to rated current at the rated load volts. Running volts and
 //! current are where the string's falling volts meet the supply's curve.
 //!
-//! First cut: no winding resistance, no stray capacitance, no reignition peak (see
-//! DEVELOPERS.md, "Why not").
+//! Beside it: volts to earth joint by joint, where a fault to earth goes unseen, what a plate's length
+//! chart allows, and every default that the figures lean on. Left out: winding resistance, stray
+//! capacitance of tubes, reignition peak (see DEVELOPERS.md, "Why not"); leads are
+//! [`crate::wiring`]'s.
 
 mod assess;
 mod assumed;
