@@ -224,9 +224,7 @@ pub fn workup(job: &Job, book: &Book) -> Workup {
                 &circuit.assessment,
                 &profile,
                 &rating,
-                leads
-                    .difference_ma
-                    .map_or(Milliamps::ZERO, Milliamps::from_ma),
+                leads.difference_ma.map(Milliamps::from_ma),
                 rules
                     .as_ref()
                     .map_or_else(EarthWord::default, |rules| rules.earth_word),

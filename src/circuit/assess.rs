@@ -227,6 +227,7 @@ fn half_findings(
                 findings.push(finding::overdriven_at_high_mains(at_high, most, name));
             }
         }
+        findings.extend(finding::no_greatest_current(&load.unbounded));
         if let Some((rated, name)) = &load.electrode
             && current <= *rated
             && rating.short_circuit > *rated

@@ -3,8 +3,9 @@
 use std::collections::BTreeSet;
 
 use super::assess::{Assessment, MAINS_SPREAD};
+use super::fault::MidPoint;
 use super::window::Basis;
-use crate::book::{Gas, Loading, SupplyKind};
+use crate::book::{ChartLength, Gas, Loading, SupplyKind};
 use crate::supply::Rating;
 use crate::tube::{Known, TubeType};
 
@@ -60,6 +61,13 @@ pub fn assumed(
             "Mains: the output is taken not to follow them; the plate knows better.".to_owned()
         }
     });
+    if rating.earth_fault_protection && MidPoint::of(rating, 1.0).is_some() {
+        says.push(
+            "Faults: without resistance, the tubes at the volts they ran at, both halves of the winding \
+             leaking magnetically each for itself."
+                .to_owned(),
+        );
+    }
     if rating.kind == SupplyKind::Electronic && rating.short_circuit == rating.rated {
         says.push(
             "Short-circuit current: none above the rated one is known, so the supply is taken to hold \
@@ -92,5 +100,27 @@ pub fn assumed(
         .map(|tube| format!("Volts of {}: {}.", tube.name, tube.known_words()))
         .collect();
     says.extend(modelled);
+    let filled: BTreeSet<String> = tubes
+        .iter()
+        .filter(|tube| !tube.filled_in.is_empty())
+        .map(|tube| {
+            format!(
+                "Of {} not given, so taken from the default: {}.",
+                tube.name,
+                tube.filled_in.join(", ")
+            )
+        })
+        .collect();
+    says.extend(filled);
+    let unpaired = |line: &&ChartLength| {
+        line.pair_mm.is_none() && tubes.iter().any(|tube| tube.name == line.tube)
+    };
+    if rating.chart.iter().any(|line| unpaired(&line)) {
+        says.push(
+            "Length chart: a pair of electrodes counts as the length of its tube that takes as many \
+             volts; the plate gives none."
+                .to_owned(),
+        );
+    }
     says
 }

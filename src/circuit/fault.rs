@@ -11,6 +11,7 @@
 //! (`tests/reference/midpoint_fault`, `tests/spice.rs`). A fault is taken to have no resistance and the
 //! tubes to keep the volts they ran at.
 
+use std::cmp::Ordering;
 use std::f64::consts::{PI, SQRT_2};
 
 use super::curve::{Curve, conduction};
@@ -152,12 +153,10 @@ impl MidPoint {
         Milliamps::from_ma(match self.rated {
             None => difference(a.volts() / self.no_load, b.volts() / self.no_load) * self.short_ma,
             Some((rated_ma, rated_volts)) => {
-                // The droop line, carried on up to the no-load volts and not beyond: the smallest
-                // difference it can be, since what is not certain to be sensed is called unseen.
+                // Each half on its droop line, carried on beyond the rated load: what a half does there
+                // is not known, and this is the smallest difference, so nothing is called seen that
+                // may not be.
                 let half = |volts: f64| {
-                    if volts >= self.no_load {
-                        return 0.0;
-                    }
                     (self.short_ma - (self.short_ma - rated_ma) * volts / rated_volts).max(0.0)
                 };
                 (half(a.volts()) - half(b.volts())).abs()
@@ -205,7 +204,13 @@ impl Strings {
     /// from there to lead B.
     pub fn unseen(&self, mid_point: &MidPoint, trip: Milliamps) -> Option<(f64, f64)> {
         let least = self.least();
-        let under = |share: f64| self.at(mid_point, share) < trip;
+        // What is no number is not seen.
+        let under = |share: f64| {
+            !matches!(
+                self.at(mid_point, share).partial_cmp(&trip),
+                Some(Ordering::Greater | Ordering::Equal)
+            )
+        };
         if !under(least) {
             return None;
         }

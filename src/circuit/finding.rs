@@ -8,7 +8,7 @@ use super::protection::{FaultMap, Unseen};
 use super::window::{Window, Zone};
 use crate::book::{OutputEarthing, SupplyKind};
 use crate::measure::{
-    Milliamps, Volts, milliamps_shown, quoted, small_first, told_from, volts_shown,
+    Milliamps, Volts, large_first, milliamps_shown, quoted, small_first, told_from, volts_shown,
 };
 use crate::rules::{EarthWord, Finding, Grade, Place, Source};
 use crate::supply::Rating;
@@ -166,16 +166,53 @@ pub(super) fn chart_full(used: &ChartUse) -> Finding {
 pub(super) fn not_in_chart(used: &ChartUse) -> Option<Finding> {
     let names: Vec<String> = used.not_in_chart.iter().map(|name| quoted(name)).collect();
     (!names.is_empty()).then(|| {
+        let rest = if used.share > 0.0 {
+            format!(
+                "; without it the string uses up {:.0} % of the supply",
+                used.share * 100.0
+            )
+        } else {
+            String::new()
+        };
         found(
-            Grade::Note,
+            Grade::Look,
             format!(
                 "The length chart of the plate has no length for {}: of that only the volts are \
-                 checked.",
+                 checked{rest}.",
                 names.join(", ")
             ),
             Source::entry("the supply's entry"),
         )
     })
+}
+
+/// Tubes whose greatest current nobody gave.
+pub(super) fn no_greatest_current(names: &[String]) -> Option<Finding> {
+    let names: Vec<String> = names.iter().map(|name| quoted(name)).collect();
+    (!names.is_empty()).then(|| {
+        found(
+            Grade::Note,
+            format!(
+                "What current {} and its electrodes stand is not in the shop book, so it is not \
+                 checked.",
+                names.join(", ")
+            ),
+            Source::entry("the tube's entry"),
+        )
+    })
+}
+
+/// A current that the readings of a tube do not reach, where its volts are carried on beyond them.
+pub(crate) fn beyond_readings(current: Milliamps, from_ma: f64, to_ma: f64, tube: &str) -> Finding {
+    found(
+        Grade::Look,
+        format!(
+            "It runs at {}; the bench readings of {tube} reach from {from_ma} to {to_ma} mA, and say \
+             little of its volts there.",
+            milliamps_shown(current)
+        ),
+        Source::own_choice(),
+    )
 }
 
 pub(super) fn too_little_current(current: Milliamps, least: Milliamps, tube: &str) -> Finding {
@@ -332,50 +369,76 @@ pub(super) fn stretch_words(unseen: &Unseen, pieces: &[(&Piece, &TubeType)]) -> 
 /// source.
 const UNSEEN_LOOK: f64 = 0.5;
 
-pub(super) fn unseen(unseen: &Unseen, pieces: &[(&Piece, &TubeType)], word: EarthWord) -> Finding {
+pub(super) fn unseen(
+    map: &FaultMap,
+    pieces: &[(&Piece, &TubeType)],
+    word: EarthWord,
+) -> Option<Finding> {
+    let unseen = map.unseen.as_ref()?;
     let percent = unseen.share() * 100.0;
-    let grade = if unseen.share() >= UNSEEN_LOOK {
+    let at_most = map.share_at_most();
+    // A verdict that may flip within what is known is a look.
+    let grade = if at_most >= UNSEEN_LOOK {
         Grade::Look
     } else {
         Grade::Note
     };
-    found(
-        grade,
-        format!(
-            "Sensing cannot see a fault to {} {} ({percent:.0} % of the string): insulate and \
-             inspect there.",
-            word.word(),
-            stretch_words(unseen, pieces)
-        ),
-        Source::model(),
+    let up_to = if map.widest.is_some() {
+        format!(", up to {:.0} % within what is known", at_most * 100.0)
+    } else {
+        String::new()
+    };
+    Some(
+        found(
+            grade,
+            format!(
+                "{} a fault to {} {} ({percent:.0} % of the string{up_to}): insulate and inspect there.",
+                if map.estimate {
+                    "By a careful estimate sensing may not see"
+                } else {
+                    "Sensing cannot see"
+                },
+                word.word(),
+                stretch_words(unseen, pieces)
+            ),
+            Source::own_choice(),
+        )
+        .with(at_most * 100.0, UNSEEN_LOOK * 100.0, "%"),
     )
-    .with(percent, UNSEEN_LOOK * 100.0, "%")
 }
 
 /// Two unequal strings: what the mid-point carries with no fault, against the trip current.
 pub(super) fn standing(map: &FaultMap, word: EarthWord) -> Option<Finding> {
     let trip = map.trip?;
     let standing = map.standing + map.taken_off;
-    (map.standing.ma() > 0.0 && standing >= trip * 0.5).then(|| {
+    // Where the leads make more of it than the strings, the leads are spoken of elsewhere.
+    if map.standing <= map.taken_off || standing < trip * 0.5 {
+        return None;
+    }
+    let leads = if map.taken_off.ma() > 0.0 {
+        ", the leads' leakage counted in,"
+    } else {
+        ""
+    };
+    let may = if standing >= trip {
+        "A supply that senses there switches a sound sign off"
+    } else {
+        "A supply that senses there may switch a sound sign off"
+    };
+    Some(
         found(
             Grade::Look,
             format!(
                 "The two strings are unequal: with no fault the mid-point of the winding carries {} \
-                 mA{} of the {} mA at which {}-fault sensing trips. It may switch off a sound sign; \
-                 balance the strings.",
+                 mA{leads} of the {} mA at which {}-fault sensing trips. {may}; balance the strings.",
                 told_from(standing.ma(), trip.ma(), 1),
-                if map.taken_off.ma() > 0.0 {
-                    ", the leads' leakage counted in,"
-                } else {
-                    ""
-                },
                 trip.ma(),
                 word.word()
             ),
-            Source::model(),
+            Source::own_choice(),
         )
-        .with(standing.ma(), trip.ma(), "mA")
-    })
+        .with(standing.ma(), trip.ma(), "mA"),
+    )
 }
 
 pub(super) fn no_trip(word: EarthWord) -> Finding {
@@ -404,6 +467,10 @@ pub(super) fn earth_fault_says(
     };
     let short = milliamps_shown(rating.short_circuit);
     let trips = match (rating.earth_fault_protection, rating.trip) {
+        (true, _) if rating.earthing == OutputEarthing::Isolated => format!(
+            "Its plate says that it has {earth}-fault protection; how that senses a fault of an output \
+             that nothing holds to {earth} is for the plate to say."
+        ),
         (true, Some(trip)) => {
             let time = rating
                 .trip_seconds
@@ -421,6 +488,10 @@ pub(super) fn earth_fault_says(
     let what = match rating.earthing {
         OutputEarthing::MidPoint | OutputEarthing::MidPointReturn => match map {
             Some(map) => mid_point_says(rating, map, pieces, word),
+            None if rating.earthing == OutputEarthing::MidPointReturn => format!(
+                "A fault to {earth} shorts the tubes between it and the return; those between its \
+                 lead and the fault go on burning with up to {short}."
+            ),
             None => format!(
                 "A fault to {earth} at a lead drives up to the short-circuit current, {short}, \
                  through it; one in the middle of the string next to nothing."
@@ -466,12 +537,26 @@ fn mid_point_says(
                     widest.share() * 100.0
                 ));
             }
-            says.push(format!(
-                "A lighter string widens it ({:.0} % at four fifths of these volts), a lower trip \
-                 current narrows it ({:.0} % at half).",
-                map.share_if_lighter * 100.0,
-                map.share_if_half_trip * 100.0
-            ));
+            let moved = |share: f64| (share - unseen.share()).abs() >= 0.005;
+            let mut moves = Vec::new();
+            if moved(map.share_if_lighter) {
+                moves.push(format!(
+                    "a lighter string widens it ({:.0} % at four fifths of these volts)",
+                    map.share_if_lighter * 100.0
+                ));
+            }
+            if moved(map.share_if_half_trip) {
+                moves.push(format!(
+                    "a lower trip current narrows it ({:.0} % at half)",
+                    map.share_if_half_trip * 100.0
+                ));
+            }
+            if rating.earthing == OutputEarthing::MidPointReturn {
+                moves.push("the string of more volts draws it to its side".to_owned());
+            }
+            if !moves.is_empty() {
+                says.push(large_first(&format!("{}.", moves.join(", "))));
+            }
             if map.taken_off.ma() > 0.0 {
                 says.push(format!(
                     "The leads leak {} unlike each other, which may work against the fault's \
@@ -481,11 +566,7 @@ fn mid_point_says(
                 ));
             }
         }
-        (None, Some(_)) => says.push(format!(
-            "A fault to {earth} anywhere on the string gives the mid-point more than that, as far as \
-             the model goes."
-        )),
-        (None, None) => says.push(
+        (None, _) => says.push(
             "One near the middle of the string gives the mid-point next to nothing: no trip current \
              sees it there."
                 .to_owned(),
@@ -498,12 +579,18 @@ fn mid_point_says(
                 .to_owned(),
         );
     }
-    if map.estimate {
+    if !map.leads_known && map.trip.is_some() {
         says.push(
-            "An estimate: the halves of an electronic supply are taken to follow its droop line, in \
-             phase."
+            "What the leads leak is not known and not taken off: the stretch may be wider."
                 .to_owned(),
         );
+    }
+    if map.estimate {
+        says.push(format!(
+            "An estimate, on the careful side: both halves of an electronic supply are taken to follow \
+             its droop line, in phase. Common practice (no source) has it that a fault to {earth} at \
+             either end of a loaded string is seen and one near the middle may not be."
+        ));
     }
     says.join(" ")
 }
@@ -518,6 +605,22 @@ pub(super) fn open_tube_says(rating: &Rating, word: EarthWord) -> (String, Strin
         OutputEarthing::OneEnd => "on the side of the live lead",
         OutputEarthing::Isolated => "from either side",
     };
+    if rating.earthing == OutputEarthing::MidPointReturn {
+        // Each string has a half of the output to itself.
+        let says = if rating.open_circuit_protection {
+            format!(
+                "Switches off when a tube is open or broken. Until it does, and where it fails, its \
+                 string is dark with up to {to_earth} across the break and to {earth}, while the other \
+                 burns on."
+            )
+        } else {
+            format!(
+                "No open-circuit protection: the string of an open or broken tube is dark with up to \
+                 {to_earth} across the break and to {earth}, while the other burns on."
+            )
+        };
+        return ("Open tube".to_owned(), says);
+    }
     let volts = format!("{between} between the leads and {to_earth} to {earth} {where_from}");
     let says = match (rating.open_circuit_protection, rating.kind) {
         (true, _) => format!(
@@ -530,7 +633,7 @@ pub(super) fn open_tube_says(rating: &Rating, word: EarthWord) -> (String, Strin
         ),
         (false, SupplyKind::Electronic) => format!(
             "No open-circuit protection: with an open or broken tube the output may rise above its \
-             plate volts; count on at least {volts} of a dark sign."
+             plate volts; count on at least {volts}."
         ),
     };
     ("Open tube".to_owned(), says)
@@ -540,6 +643,15 @@ pub(super) fn open_tube_says(rating: &Rating, word: EarthWord) -> (String, Strin
 pub(super) fn bench_test_says(rating: &Rating, word: EarthWord) -> Option<(String, String)> {
     let earth = word.word();
     let (leads, sides) = match rating.earthing {
+        OutputEarthing::Isolated if rating.earth_fault_protection => {
+            return Some((
+                "Bench test".to_owned(),
+                format!(
+                    "A fault to {earth} at one lead of an isolated output drives no current to sense: \
+                     how its protection is tested is for the plate to say."
+                ),
+            ));
+        }
         OutputEarthing::OneEnd => ("on the live lead", "there"),
         _ => ("on lead A and on lead B", "on both sides"),
     };

@@ -1,7 +1,7 @@
 //! The joints of a string in words, and what their insulation must stand.
 
 use super::profile::{Profile, insulation_class};
-use super::protection::Unseen;
+use super::protection::{FaultMap, Sensed};
 use crate::measure::{Volts, quoted, volts_shown};
 use crate::rules::EarthWord;
 use crate::takeoff::Piece;
@@ -36,7 +36,7 @@ impl Profile {
         &self,
         at: usize,
         pieces: &[&Piece],
-        unseen: Option<&Unseen>,
+        map: Option<&FaultMap>,
         word: EarthWord,
     ) -> Option<String> {
         let joint = self.joints.get(at)?;
@@ -55,10 +55,12 @@ impl Profile {
                 "up to {no_load} to {earth} at any time, since nothing holds the output to {earth}"
             ),
         };
-        let not_seen = if unseen.is_some_and(|unseen| unseen.holds(joint.share)) {
-            format!(" A fault to {earth} here is not sensed.")
-        } else {
-            String::new()
+        let not_seen = match map.map(|map| map.sensed(joint.share)) {
+            Some(sensed @ (Sensed::No | Sensed::MaybeNot)) => {
+                let verb = if sensed == Sensed::No { "is " } else { "" };
+                format!(" A fault to {earth} here {verb}{}.", sensed.words())
+            }
+            _ => String::new(),
         };
         Some(format!(
             "{named}: {volts}: {}.{not_seen}",
@@ -94,8 +96,10 @@ pub(super) fn insulation_says(no_load: Volts, word: EarthWord) -> (String, Strin
 #[cfg(test)]
 mod tests {
     use super::super::profile::{Joint, Span, Spot};
+    use super::super::protection::Unseen;
     use super::*;
     use crate::job::{Job, Row, StrokesRow};
+    use crate::measure::Milliamps;
 
     /// Two pieces of 1 kV each on an output with its mid-point earthed.
     fn two() -> (Vec<Piece>, Profile) {
@@ -130,9 +134,9 @@ mod tests {
         (pieces, profile)
     }
 
-    fn says(profile: &Profile, pieces: &[Piece], at: usize, unseen: Option<&Unseen>) -> String {
+    fn says(profile: &Profile, pieces: &[Piece], at: usize, map: Option<&FaultMap>) -> String {
         let pieces: Vec<&Piece> = pieces.iter().collect();
-        let says = profile.joint_says(at, &pieces, unseen, EarthWord::Ground);
+        let says = profile.joint_says(at, &pieces, map, EarthWord::Ground);
         says.unwrap_or_default().replace('\u{202f}', " ")
     }
 
@@ -148,21 +152,48 @@ mod tests {
             piece: 0,
             along: 0.5,
         };
-        let unseen = Unseen {
-            from: 0.4,
-            to: 0.6,
-            from_spot: spot,
-            to_spot: spot,
+        let stretch = |from: f64, to: f64| {
+            Some(Unseen {
+                from,
+                to,
+                from_spot: spot,
+                to_spot: spot,
+            })
+        };
+        let mut map = FaultMap {
+            points: Vec::new(),
+            trip: Some(Milliamps::from_ma(15.0)),
+            taken_off: Milliamps::ZERO,
+            leads_known: true,
+            standing: Milliamps::ZERO,
+            unseen: stretch(0.4, 0.6),
+            unseen_says: None,
+            widest: None,
+            share_if_lighter: 0.3,
+            share_if_half_trip: 0.1,
+            share_if_even_leads: 0.2,
+            estimate: false,
         };
         assert_eq!(
-            says(&profile, &pieces, 1, Some(&unseen)),
+            says(&profile, &pieces, 1, Some(&map)),
             "Joint 1, between “a (1 of 2)” and “a (2 of 2)”: 0 V to ground running, 5 001 V with a broken tube: \
              insulation of the 10 kV class at least. A fault to ground here is not sensed."
         );
         assert!(
-            !says(&profile, &pieces, 2, Some(&unseen)).contains("not sensed"),
+            !says(&profile, &pieces, 2, Some(&map)).contains("not sensed"),
             "lead B lies outside"
         );
+        assert_eq!(map.sensed(1.0), Sensed::Yes);
+        map.widest = stretch(0.0, 1.0);
+        assert!(
+            says(&profile, &pieces, 2, Some(&map))
+                .ends_with("A fault to ground here may not be sensed.")
+        );
+        map.leads_known = false;
+        map.widest = None;
+        assert_eq!(map.sensed(1.0), Sensed::YesWithoutLeads);
+        map.trip = None;
+        assert_eq!(map.sensed(0.5), Sensed::NotKnown);
         assert_eq!(says(&profile, &pieces, 3, None), "", "no such joint");
     }
 

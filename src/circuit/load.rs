@@ -26,6 +26,8 @@ pub struct Load {
     pub electrode: Option<(Milliamps, String)>,
     /// Its glass by tube type.
     pub glass: Vec<Glass>,
+    /// Its tube types of which neither glass nor electrodes have a greatest current, by name.
+    pub unbounded: Vec<String>,
 }
 
 /// Glass of one tube type in a string.
@@ -70,6 +72,10 @@ impl Load {
                 pairs: 1,
                 pair: pair_as_length(tube),
             }),
+        }
+        let rated = tube.electrode.as_ref().and_then(|kind| kind.rated);
+        if tube.most.or(rated).is_none() && !self.unbounded.contains(&tube.name) {
+            self.unbounded.push(tube.name.clone());
         }
         if let Some(most) = tube.most
             && self.most.as_ref().is_none_or(|(known, _)| most < *known)

@@ -37,6 +37,9 @@ pub struct FaultMap {
     pub trip: Option<Milliamps>,
     /// Leakage of the leads that may work against the fault's current, and is taken off it.
     pub taken_off: Milliamps,
+    /// Whether that leakage is known; where it is not, nothing is taken off and the stretch may be
+    /// wider.
+    pub leads_known: bool,
     /// The mid-point's current with no fault, of two unequal strings.
     pub standing: Milliamps,
     /// The stretch in which a fault gives less than the trip current; None where there is none, or
@@ -55,6 +58,34 @@ pub struct FaultMap {
     pub share_if_even_leads: f64,
     /// Whether the figures are an estimate only.
     pub estimate: bool,
+}
+
+/// Whether a fault to earth at some place is sensed.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Sensed {
+    /// The trip current is not known.
+    NotKnown,
+    /// It is not.
+    No,
+    /// Within what is known of mains and tubes it may not be.
+    MaybeNot,
+    /// It is, as far as the model goes; what the leads leak is not counted.
+    YesWithoutLeads,
+    /// It is, as far as the model goes.
+    Yes,
+}
+
+impl Sensed {
+    /// The same in words.
+    pub const fn words(self) -> &'static str {
+        match self {
+            Self::NotKnown => "not known",
+            Self::No => "not sensed",
+            Self::MaybeNot => "may not be sensed",
+            Self::YesWithoutLeads => "sensed, leads not counted",
+            Self::Yes => "sensed",
+        }
+    }
 }
 
 /// A stretch of the string.
@@ -82,13 +113,38 @@ impl Unseen {
     }
 }
 
-/// Works out what protection sees. `uneven` is the difference of what the leads of the two sides leak.
+impl FaultMap {
+    /// Whether a fault at a place, a share of all running volts from lead A, is sensed.
+    pub fn sensed(&self, share: f64) -> Sensed {
+        let in_it = |stretch: Option<Unseen>| stretch.is_some_and(|stretch| stretch.holds(share));
+        if self.trip.is_none() {
+            Sensed::NotKnown
+        } else if in_it(self.unseen) {
+            Sensed::No
+        } else if in_it(self.widest) {
+            Sensed::MaybeNot
+        } else if self.leads_known {
+            Sensed::Yes
+        } else {
+            Sensed::YesWithoutLeads
+        }
+    }
+
+    /// The share of the string unseen at its widest.
+    pub fn share_at_most(&self) -> f64 {
+        let share = |stretch: Option<Unseen>| stretch.map_or(0.0, |stretch| stretch.share());
+        share(self.unseen).max(share(self.widest))
+    }
+}
+
+/// Works out what protection sees. `uneven` is the difference of what the leads of the two sides leak;
+/// None where that is not known.
 pub fn protect(
     pieces: &[(&Piece, &TubeType)],
     assessment: &Assessment,
     profile: &Profile,
     rating: &Rating,
-    uneven: Milliamps,
+    uneven: Option<Milliamps>,
     word: EarthWord,
 ) -> Protection {
     let map = rating
@@ -97,9 +153,7 @@ pub fn protect(
         .flatten();
     let mut findings = Vec::new();
     if let Some(map) = &map {
-        if let Some(unseen) = &map.unseen {
-            findings.push(finding::unseen(unseen, pieces, word));
-        }
+        findings.extend(finding::unseen(map, pieces, word));
         findings.extend(finding::standing(map, word));
         if map.trip.is_none() {
             findings.push(finding::no_trip(word));
@@ -123,7 +177,7 @@ fn fault_map(
     assessment: &Assessment,
     profile: &Profile,
     rating: &Rating,
-    uneven: Milliamps,
+    uneven: Option<Milliamps>,
 ) -> Option<FaultMap> {
     let mid_point = MidPoint::of(rating, 1.0)?;
     let returned = rating.earthing == OutputEarthing::MidPointReturn;
@@ -134,7 +188,8 @@ fn fault_map(
     let each =
         |of: &dyn Fn(usize) -> Volts| strings(of(0), (assessment.halves.len() > 1).then(|| of(1)));
     let now = each(&|half| assessment.halves[half].operating.volts());
-    let threshold = |trip: Milliamps| trip + Milliamps::from_ma(uneven.ma().abs());
+    let taken_off = Milliamps::from_ma(uneven.map_or(0.0, |uneven| uneven.ma().abs()));
+    let threshold = |trip: Milliamps| trip + taken_off;
     let unseen = |strings: Strings, mid_point: &MidPoint, trip: Milliamps| {
         let (from, to) = strings.unseen(mid_point, trip)?;
         Some(Unseen {
@@ -191,7 +246,8 @@ fn fault_map(
             })
             .collect(),
         trip,
-        taken_off: Milliamps::from_ma(uneven.ma().abs()),
+        taken_off,
+        leads_known: uneven.is_some(),
         standing: now.second.map_or(Milliamps::ZERO, |second| {
             mid_point.current(now.first, second)
         }),

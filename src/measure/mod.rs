@@ -24,8 +24,8 @@ pub use quantity::{Length, Milliamps, Volts};
 pub use read::{
     ExactLength, LengthUnit, ReadError, figure, length, money, quoted, repeated, with_units,
 };
-pub(crate) use show::small_first;
 pub use show::{
     Units, glass, grouped, length_exact, length_shown, milliamps_shown, told_from, volts_shown,
 };
+pub(crate) use show::{large_first, small_first};
 pub use within::length_within;

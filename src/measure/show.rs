@@ -90,6 +90,14 @@ pub fn told_from(value: f64, limit: f64, decimals: usize) -> String {
         .unwrap_or_else(|| format!("{value:.MOST$}"))
 }
 
+/// A sentence begun small as it begins on its own.
+pub(crate) fn large_first(text: &str) -> String {
+    let mut chars = text.chars();
+    chars.next().map_or_else(String::new, |first| {
+        first.to_uppercase().chain(chars).collect()
+    })
+}
+
 /// A sentence as it stands after a colon.
 pub(crate) fn small_first(text: &str) -> String {
     let mut chars = text.chars();

@@ -11,7 +11,7 @@ use std::ops::Range;
 
 use super::split::Fit;
 use super::{Task, two_strings};
-use crate::book::{Gas, SupplyKind};
+use crate::book::{ChartLength, Gas, SupplyKind};
 use crate::circuit::{
     Basis, CHART_FULL, CONTINUOUS_TO, Curve, Window, chart_share, pair_as_length,
 };
@@ -67,6 +67,8 @@ struct SupplyGates {
     least: Vec<CurrentGate>,
     /// Share of the plate's length chart that the first i pieces use up; none: it has no chart.
     chart: Option<Vec<f64>>,
+    /// By tube type of the task, whether the plate has a length chart without it.
+    not_in_chart: Vec<bool>,
 }
 
 /// All gates of a task.
@@ -209,6 +211,13 @@ impl Gates {
                                 kind.least.map(crate::measure::Milliamps::ma),
                                 false,
                             )
+                        })
+                        .collect(),
+                    not_in_chart: distinct
+                        .iter()
+                        .map(|kind| {
+                            let named = |line: &ChartLength| line.tube == kind.name;
+                            !rating.chart.is_empty() && !rating.chart.iter().any(named)
                         })
                         .collect(),
                     chart: (!rating.chart.is_empty()).then(|| {
@@ -396,7 +405,9 @@ impl Gates {
         // Each tube type of the string is asked, by whichever list is shorter.
         let mut ask = |tube: usize| {
             let [nominal, high] = &gates.most[tube];
-            look |= !self.holds(pieces, high) || self.breaks(pieces, &gates.least[tube]);
+            look |= !self.holds(pieces, high)
+                || self.breaks(pieces, &gates.least[tube])
+                || gates.not_in_chart[tube];
             self.holds(pieces, nominal)
         };
         let fits = if self.of_tube.len() <= pieces.len() {
@@ -445,7 +456,7 @@ mod tests {
 
     use super::super::{Candidate, on};
     use super::*;
-    use crate::book::{ChartLength, Loading, OutputEarthing, SupplyEntry, TubeEntry};
+    use crate::book::{Loading, OutputEarthing, SupplyEntry, TubeEntry};
     use crate::circuit::Load;
     use crate::job::Wish;
     use crate::measure::{Length, Milliamps};

@@ -12,7 +12,7 @@ mod why;
 use std::ops::Range;
 
 use crate::book::{Loading, OutputEarthing};
-use crate::circuit::{Assessment, Load, assess, volts_off};
+use crate::circuit::{Assessment, Load, Operating, assess, beyond_readings, volts_off};
 use crate::job::Wish;
 use crate::rules::{Finding, Grade, RuleSet};
 use crate::supply::Rating;
@@ -230,6 +230,7 @@ fn unsure(
     for (half, (less, more)) in nominal.halves.iter_mut().zip(ends) {
         half.band = Some((less.operating, more.operating));
     }
+    beyond(task, pieces, second_from, nominal);
     if nominal.grade() == Some(Grade::Stop) {
         return;
     }
@@ -258,6 +259,30 @@ fn unsure(
         })
         .collect();
     nominal.findings.extend(found);
+}
+
+/// How far beyond the currents that were read a measured tube may run before a person has to look, as a
+/// share. Our own choice, no source.
+const BEYOND_READINGS: f64 = 0.10;
+
+/// Tells of measured tubes that run at a current their readings do not reach.
+fn beyond(task: &Task, pieces: &Range<usize>, second_from: Option<usize>, worked: &mut Assessment) {
+    let mut told: Vec<&str> = Vec::new();
+    for at in pieces.clone() {
+        let tube = task.pieces[at].1;
+        let string = usize::from(second_from.is_some_and(|from| at >= from));
+        let operating = worked.halves.get(string).map(|half| half.operating);
+        if let Known::Measured { from_ma, to_ma, .. } = tube.known
+            && let Some(Operating::Runs { current, .. }) = operating
+            && !(from_ma * (1.0 - BEYOND_READINGS)..=to_ma * (1.0 + BEYOND_READINGS))
+                .contains(&current.ma())
+            && !told.contains(&tube.name.as_str())
+        {
+            told.push(&tube.name);
+            let found = beyond_readings(current, from_ma, to_ma, &tube.name);
+            worked.findings.push(found);
+        }
+    }
 }
 
 /// Some pieces on a rating, worked up in full.

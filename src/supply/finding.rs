@@ -3,7 +3,7 @@
 use super::{Rating, earthing_words};
 use crate::book::{Dampness, SupplyEntry, SupplyKind};
 use crate::job::Site;
-use crate::measure::{grouped, quoted, volts_shown};
+use crate::measure::{grouped, large_first, quoted, volts_shown};
 use crate::rules::{Finding, Grade, Limits, Place, RuleSet, Source, Standing};
 
 /// Mains volts may lie this far from the plate's, either way (common supply tolerance, shop's to
@@ -53,7 +53,16 @@ pub(super) fn contradictions(entry: &SupplyEntry) -> Vec<Finding> {
             ));
         }
     }
-    for length in &entry.chart {
+    for (at, length) in entry.chart.iter().enumerate() {
+        if entry.chart[..at]
+            .iter()
+            .any(|other| other.tube == length.tube)
+        {
+            stop(format!(
+                "Its length chart names {} twice: one tube type has one longest length.",
+                quoted(&length.tube)
+            ));
+        }
         for (name, value) in [
             ("longest length", Some(length.longest_mm)),
             ("length of a pair of electrodes", length.pair_mm),
@@ -316,7 +325,7 @@ fn earth_fault(rating: &Rating, set: &RuleSet, exempt_to: Option<f64>) -> Option
             };
             let says =
                 format!("{earth}-fault protection is required and this supply has none{why}.");
-            Some(Finding::new(Grade::Stop, place, capital(&says), Source::shop()))
+            Some(Finding::new(Grade::Stop, place, large_first(&says), Source::shop()))
         }
     }
 }
@@ -409,11 +418,4 @@ const fn damp_words(place: Dampness) -> &'static str {
         Dampness::Damp => "damp",
         Dampness::Wet => "wet",
     }
-}
-
-fn capital(text: &str) -> String {
-    let mut chars = text.chars();
-    chars.next().map_or_else(String::new, |first| {
-        first.to_uppercase().chain(chars).collect()
-    })
 }

@@ -5,7 +5,8 @@ use super::drawn::Drawn;
 use crate::drawing::outline::Inset;
 use crate::drawing::{ArtGroup, Face, NoArc, Unread, faces};
 use crate::measure::{
-    INSET_MM, Length, Limit, PIECE_LENGTH_MM, ReadError, Units, length_exact, length_shown, quoted,
+    INSET_MM, Length, Limit, PIECE_LENGTH_MM, ReadError, Units, large_first, length_exact,
+    length_shown, quoted,
 };
 use crate::rules::{Finding, Grade, Place, Source};
 
@@ -32,7 +33,7 @@ pub(super) fn outside(at: usize, field: Option<&str>, limit: &Limit, value: f64)
     row(
         Grade::Stop,
         at,
-        capital(&format!(
+        large_first(&format!(
             "{}{limit}, but is {}{unit}.",
             field.map_or_else(String::new, |field| format!("{field}: ")),
             figure(value)
@@ -57,13 +58,6 @@ fn figure(value: f64) -> String {
     }
     let text = format!("{value:.3}");
     text.trim_end_matches('0').trim_end_matches('.').to_owned()
-}
-
-fn capital(text: &str) -> String {
-    let mut chars = text.chars();
-    chars.next().map_or_else(String::new, |first| {
-        first.to_uppercase().chain(chars).collect()
-    })
 }
 
 pub(super) fn no_text(at: usize) -> Finding {
@@ -248,7 +242,7 @@ pub(super) fn too_many(limit: &Limit, value: usize) -> Finding {
     Finding::new(
         Grade::Stop,
         Place::Job,
-        capital(&format!(
+        large_first(&format!(
             "{limit}, but there are {value}: the rest is left out."
         )),
         Source::entry("the rows of the job"),

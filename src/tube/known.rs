@@ -20,6 +20,10 @@ pub enum Known {
         readings: usize,
         /// How far off the volts of a typical piece may be, percent either way, 95 times in 100.
         percent: f64,
+        /// Least current that was read, milliamperes.
+        from_ma: f64,
+        /// Greatest current that was read, milliamperes.
+        to_ma: f64,
     },
 }
 
@@ -33,6 +37,7 @@ impl Known {
                 on,
                 readings,
                 percent,
+                ..
             } => {
                 let on = day(on);
                 format!("measured here{on}, {readings} readings, ±{percent} %")
@@ -111,6 +116,8 @@ mod tests {
             on: on.to_owned(),
             readings: 7,
             percent,
+            from_ma: 15.0,
+            to_ma: 30.0,
         };
         assert_eq!(
             measured("2026-05-03", 2.0).words(),

@@ -100,6 +100,9 @@ pub struct TubeType {
     pub most: Option<Milliamps>,
     /// How the volts are known.
     pub known: Known,
+    /// What of its volts the entry leaves to the default, each in a few words; what of them readings
+    /// give is not among it.
+    pub filled_in: Vec<String>,
     /// Its electrodes, where the entry names some of the book.
     pub electrode: Option<Electrode>,
     /// What is to be said of it though its volts can be worked out.
@@ -220,6 +223,7 @@ impl TubeType {
                     percent: figures.uncertainty_percent,
                 },
             },
+            filled_in: filled_in(entry, &figures),
             electrode: None,
             findings: Vec::new(),
         };
@@ -241,7 +245,18 @@ impl TubeType {
             on: entry.measured_on.clone(),
             readings: entry.readings.len(),
             percent: measured.percent,
+            from_ma: entry
+                .readings
+                .iter()
+                .map(|read| read.ma)
+                .fold(f64::INFINITY, f64::min),
+            to_ma: entry
+                .readings
+                .iter()
+                .map(|read| read.ma)
+                .fold(0.0, f64::max),
         };
+        self.filled_in.clear();
         self.findings = measured.findings;
     }
 
@@ -286,6 +301,29 @@ impl TubeType {
             self.pair_volts + self.column(length, cold) * current.ma().powf(-self.exponent),
         )
     }
+}
+
+/// What of the volts of an entry is left to the default.
+fn filled_in(entry: &TubeEntry, figures: &ModelFigures) -> Vec<String> {
+    let mut filled = Vec::new();
+    if entry.pair_volts.is_none() {
+        filled.push(format!("{} V for a pair of electrodes", figures.pair_volts));
+    }
+    if entry.exponent.is_none() {
+        filled.push(format!(
+            "volts that go as the current to the power of -{}",
+            figures.exponent
+        ));
+    }
+    if entry.volts_per_m.is_some() && entry.at_ma.is_none() {
+        filled.push(format!(
+            "{MODEL_MA} mA as the current of its volts per metre"
+        ));
+    }
+    if entry.volts_per_m.is_none() && entry.wall_mm.is_none() {
+        filled.push("a wall of 1 mm".to_owned());
+    }
+    filled
 }
 
 /// The entry's colour if it is `#rrggbb`, else a colour of the gas.

@@ -4,9 +4,9 @@
 use insta::assert_snapshot;
 use proptest::prelude::*;
 use tubewright::Book;
-use tubewright::book::{OutputEarthing, SupplyEntry, SupplyKind, TubeEntry};
+use tubewright::book::{Loading, OutputEarthing, SupplyEntry, SupplyKind, TubeEntry};
 use tubewright::circuit::{
-    CONTINUOUS_TO, Curve, Load, MidPoint, Operating, Strings, difference, iron, operate,
+    CONTINUOUS_TO, Curve, Load, MidPoint, Operating, Strings, assess, difference, iron, operate,
 };
 use tubewright::job::{Job, Pieces, Row, StrokesRow};
 use tubewright::measure::{Milliamps, Volts};
@@ -186,38 +186,54 @@ fn a_short_tube_on_an_electronic_supply_takes_a_little_more_than_the_plate_says(
 }
 
 // Common practice of the trade, no source: an open string drops an iron supply's input to its own
-// losses. Here the supply is ideal, so to nothing.
+// losses. Here the supply is ideal, so to nothing: the longer the string, the less it draws, until
+// nothing flows and it counts as overloaded.
 #[test]
-fn an_open_string_draws_nothing() {
-    let open = iron(std::f64::consts::SQRT_2);
-    assert_eq!((open.rms, open.mean), (0.0, 0.0));
+fn the_nearer_a_string_is_to_open_the_less_it_draws() {
+    let supply = rating(&iron_entry(6_000.0, OutputEarthing::MidPoint, None));
+    let drawn = |volts: f64| {
+        let load = Load {
+            pair_volts: volts,
+            ..Load::new()
+        };
+        assess(&[&load], &supply, &Loading::default()).input_va
+    };
+    let steps = [3_000.0, 4_000.0, 5_000.0, 6_000.0, 7_000.0, 8_000.0];
+    let drawn_va: Vec<f64> = steps.into_iter().filter_map(drawn).collect();
+    assert_eq!(drawn_va.len(), steps.len(), "it runs, at last with gaps");
+    assert!(drawn_va.is_sorted_by(|a, b| a > b), "{drawn_va:?}");
+    assert!(drawn_va[5] < 0.02 * drawn_va[0], "{drawn_va:?}");
+    // √2 x 6000 V is the peak of the no-load volts.
+    assert_eq!(drawn(8_486.0), None);
 }
 
 #[test]
-fn electronic_ends_are_seen_where_the_string_is_more_than_a_half_can_drive() {
-    let supply = |no_load: f64| {
-        mid_point(&SupplyEntry {
-            kind: Some(SupplyKind::Electronic),
-            no_load_volts: Some(no_load),
-            rated_load_volts: Some(6_000.0),
-            rated_ma: Some(30.0),
-            short_circuit_ma: Some(33.0),
-            earthing: Some(OutputEarthing::MidPoint),
-            ..SupplyEntry::default()
-        })
-    };
-    // Worked by hand: at the end half B would have to drive all 5400 V, more than its 4000 V no-load
-    // volts, so the mid-point carries the other half's 33 mA.
+fn the_halves_of_an_electronic_supply_follow_its_droop_line() {
+    let supply = mid_point(&SupplyEntry {
+        kind: Some(SupplyKind::Electronic),
+        no_load_volts: Some(8_000.0),
+        rated_load_volts: Some(6_000.0),
+        rated_ma: Some(30.0),
+        short_circuit_ma: Some(33.0),
+        earthing: Some(OutputEarthing::MidPoint),
+        ..SupplyEntry::default()
+    });
+    // Worked by hand: each half loses 3 mA over its 3000 V, so at the end of a string of 5400 V the
+    // mid-point carries 5.4 mA, a quarter in half of that, in the middle nothing.
     let full = string(5_400.0);
-    assert!((full.at(&supply(8_000.0), 0.0).ma() - 33.0).abs() < 1e-9);
-    // In the middle both halves carry alike; a quarter in, half A drives 1350 V and carries
-    // 33 - 3 x 1350 / 3000 = 31.65 mA, half B would have to drive 4050 V.
-    assert!(full.at(&supply(8_000.0), 0.5).ma() < 1e-9);
-    assert!((full.at(&supply(8_000.0), 0.25).ma() - 31.65).abs() < 1e-9);
-    // Of a short tube each half drives all: only the droop tells the ends apart, 3 mA x 1000 / 3000.
-    let short = string(1_000.0);
-    assert!((short.at(&supply(8_000.0), 0.0).ma() - 1.0).abs() < 1e-9);
-    assert!((unseen_share(short, &supply(8_000.0), 15.0) - 1.0).abs() < 1e-9);
+    for (at, ma) in [(0.0, 5.4), (0.25, 2.7), (0.5, 0.0), (1.0, 5.4)] {
+        let here = full.at(&supply, at).ma();
+        assert!((here - ma).abs() < 1e-9, "at {at}: {here}");
+    }
+    // 4 mA are reached at (1 - 4 / 5.4) / 2 from either end.
+    let share = unseen_share(full, &supply, 4.0);
+    assert!((share - 4.0 / 5.4).abs() < 1e-9, "{share}");
+    assert_eq!(
+        unseen_share(full, &supply, 15.0),
+        1.0,
+        "not certain anywhere"
+    );
+    assert!(supply.estimate());
 }
 
 proptest! {
@@ -450,10 +466,10 @@ fn what_is_said_of_a_mid_point_output() {
         iron_entry(8_000.0, OutputEarthing::MidPoint, Some(15.0)),
     );
     assert_snapshot!(words(&worked), @r"
-    Earth fault: Switches off on a fault to earth from 15 mA. A fault from 1 % into “bar 2” (piece 2) to 99 % into “bar 3” (piece 3), counted from lead A gives the mid-point too little: 45 % of the string is unseen. With mains 10 % low or high, or tubes at the ends of what is known of their volts, it is up to 49 %. A lighter string widens it (62 % at four fifths of these volts), a lower trip current narrows it (22 % at half).
+    Earth fault: Switches off on a fault to earth from 15 mA. A fault from 1 % into “bar 2” (piece 2) to 99 % into “bar 3” (piece 3), counted from lead A gives the mid-point too little: 45 % of the string is unseen. With mains 10 % low or high, or tubes at the ends of what is known of their volts, it is up to 49 %. A lighter string widens it (62 % at four fifths of these volts), a lower trip current narrows it (22 % at half). What the leads leak is not known and not taken off: the stretch may be wider.
     Open tube: No open-circuit protection: an open or broken tube leaves a dark sign with up to 8 000 V between the leads and 4 000 V to earth on either side of it. The input falls to the transformer's own losses, so no fuse tells.
     Bench test: The test of the supply alone (a fault to earth on lead A and on lead B) shows that its sensing and its switching-off work on both sides (common practice, no source). It cannot show that a fault on the string is seen: at the leads it is at its largest, in the unseen stretch it stays unseen on a sound supply.
-    note: Sensing cannot see a fault to earth from 1 % into “bar 2” (piece 2) to 99 % into “bar 3” (piece 3), counted from lead A (45 % of the string): insulate and inspect there.
+    note: Sensing cannot see a fault to earth from 1 % into “bar 2” (piece 2) to 99 % into “bar 3” (piece 3), counted from lead A (45 % of the string, up to 49 % within what is known): insulate and inspect there.
     ");
     let unprotected = circuit(
         "1.5 m; 1.5 m; 1.5 m; 1.5 m",
@@ -476,10 +492,10 @@ fn what_is_said_of_a_lightly_loaded_output() {
         Some(Grade::Look)
     );
     assert_snapshot!(words(&worked), @r"
-    Earth fault: Switches off on a fault to earth from 15 mA. A fault from 21 % into “bar 1” (piece 1) to 73 % into “bar 2” (piece 2), counted from lead A gives the mid-point too little: 71 % of the string is unseen. With mains 10 % low or high, or tubes at the ends of what is known of their volts, it is up to 73 %. A lighter string widens it (92 % at four fifths of these volts), a lower trip current narrows it (34 % at half).
+    Earth fault: Switches off on a fault to earth from 15 mA. A fault from 21 % into “bar 1” (piece 1) to 73 % into “bar 2” (piece 2), counted from lead A gives the mid-point too little: 71 % of the string is unseen. With mains 10 % low or high, or tubes at the ends of what is known of their volts, it is up to 73 %. A lighter string widens it (92 % at four fifths of these volts), a lower trip current narrows it (34 % at half). What the leads leak is not known and not taken off: the stretch may be wider.
     Open tube: No open-circuit protection: an open or broken tube leaves a dark sign with up to 5 000 V between the leads and 2 500 V to earth on either side of it. The input falls to the transformer's own losses, so no fuse tells.
     Bench test: The test of the supply alone (a fault to earth on lead A and on lead B) shows that its sensing and its switching-off work on both sides (common practice, no source). It cannot show that a fault on the string is seen: at the leads it is at its largest, in the unseen stretch it stays unseen on a sound supply.
-    look: Sensing cannot see a fault to earth from 21 % into “bar 1” (piece 1) to 73 % into “bar 2” (piece 2), counted from lead A (71 % of the string): insulate and inspect there.
+    look: Sensing cannot see a fault to earth from 21 % into “bar 1” (piece 1) to 73 % into “bar 2” (piece 2), counted from lead A (71 % of the string, up to 73 % within what is known): insulate and inspect there.
     ");
 }
 
@@ -494,11 +510,52 @@ fn what_is_said_of_unequal_strings_with_a_return() {
         },
     );
     assert_snapshot!(words(&worked), @r"
-    Earth fault: Switches off on a fault to earth from 5 mA within 0.5 s. A fault from 41 % into “bar 1” (piece 1) to the start of “bar 2” (piece 2), counted from lead A gives the mid-point too little: 35 % of the string is unseen. With mains 10 % low or high, or tubes at the ends of what is known of their volts, it is up to 38 %. A lighter string widens it (47 % at four fifths of these volts), a lower trip current narrows it (17 % at half). Taken as sensed in the mid-point of the winding. A supply that senses what flows to its case apart from the return sees more; its plate must say so.
-    Open tube: Switches off when a tube is open or broken. Until it does, and where it fails, up to 7 000 V between the leads and 3 500 V to earth on either side of it.
+    Earth fault: Switches off on a fault to earth from 5 mA within 0.5 s. A fault from 41 % into “bar 1” (piece 1) to the start of “bar 2” (piece 2), counted from lead A gives the mid-point too little: 35 % of the string is unseen. With mains 10 % low or high, or tubes at the ends of what is known of their volts, it is up to 38 %. A lighter string widens it (47 % at four fifths of these volts), a lower trip current narrows it (17 % at half), the string of more volts draws it to its side. Taken as sensed in the mid-point of the winding. A supply that senses what flows to its case apart from the return sees more; its plate must say so. What the leads leak is not known and not taken off: the stretch may be wider.
+    Open tube: Switches off when a tube is open or broken. Until it does, and where it fails, its string is dark with up to 3 500 V across the break and to earth, while the other burns on.
     Bench test: The test of the supply alone (a fault to earth and an open string, each on lead A and on lead B) shows that its sensing and its switching-off work on both sides (common practice, no source). It cannot show that a fault on the string is seen: at the leads it is at its largest, in the unseen stretch it stays unseen on a sound supply.
-    note: Sensing cannot see a fault to earth from 41 % into “bar 1” (piece 1) to the start of “bar 2” (piece 2), counted from lead A (35 % of the string): insulate and inspect there.
-    look: The two strings are unequal: with no fault the mid-point of the winding carries 4.4 mA of the 5 mA at which earth-fault sensing trips. It may switch off a sound sign; balance the strings.
+    note: Sensing cannot see a fault to earth from 41 % into “bar 1” (piece 1) to the start of “bar 2” (piece 2), counted from lead A (35 % of the string, up to 38 % within what is known): insulate and inspect there.
+    look: The two strings are unequal: with no fault the mid-point of the winding carries 4.4 mA of the 5 mA at which earth-fault sensing trips. A supply that senses there may switch a sound sign off; balance the strings.
+    ");
+}
+
+#[test]
+fn what_is_said_of_an_electronic_output() {
+    let worked = circuit(
+        "1.5 m; 1.5 m; 1.5 m; 1.5 m",
+        SupplyEntry {
+            kind: Some(SupplyKind::Electronic),
+            rated_ma: Some(30.0),
+            short_circuit_ma: Some(33.0),
+            rated_load_volts: Some(5_000.0),
+            ..iron_entry(8_000.0, OutputEarthing::MidPoint, Some(15.0))
+        },
+    );
+    assert_snapshot!(words(&worked), @r"
+    Earth fault: Switches off on a fault to earth from 15 mA. A fault from the start of “bar 1” (piece 1) to the end of “bar 4” (piece 4), counted from lead A gives the mid-point too little: 100 % of the string is unseen. What the leads leak is not known and not taken off: the stretch may be wider. An estimate, on the careful side: both halves of an electronic supply are taken to follow its droop line, in phase. Common practice (no source) has it that a fault to earth at either end of a loaded string is seen and one near the middle may not be.
+    Open tube: No open-circuit protection: with an open or broken tube the output may rise above its plate volts; count on at least 8 000 V between the leads and 4 000 V to earth on either side of it.
+    Bench test: The test of the supply alone (a fault to earth on lead A and on lead B) shows that its sensing and its switching-off work on both sides (common practice, no source). It cannot show that a fault on the string is seen: at the leads it is at its largest, in the unseen stretch it stays unseen on a sound supply.
+    look: By a careful estimate sensing may not see a fault to earth from the start of “bar 1” (piece 1) to the end of “bar 4” (piece 4), counted from lead A (100 % of the string): insulate and inspect there.
+    ");
+}
+
+#[test]
+fn what_is_said_of_a_return_and_of_an_isolated_output_that_claims_protection() {
+    let returned = circuit(
+        "3 m; 2.8 m",
+        iron_entry(7_000.0, OutputEarthing::MidPointReturn, None),
+    );
+    assert_snapshot!(words(&returned), @r"
+    Earth fault: No earth-fault protection: nothing switches off. A fault to earth shorts the tubes between it and the return; those between its lead and the fault go on burning with up to 30.0 mA.
+    Open tube: No open-circuit protection: the string of an open or broken tube is dark with up to 3 500 V across the break and to earth, while the other burns on.
+    ");
+    let isolated = circuit(
+        "1.5 m; 1.5 m; 1.5 m",
+        iron_entry(6_000.0, OutputEarthing::Isolated, Some(15.0)),
+    );
+    assert_snapshot!(words(&isolated), @r"
+    Earth fault: Its plate says that it has earth-fault protection; how that senses a fault of an output that nothing holds to earth is for the plate to say. A first fault to earth drives only the leakage of leads and winding: the sign burns on, nothing in a mid-point can see it, and the far lead then stands at up to 6 000 V to earth. A second one shorts the tubes between the two.
+    Open tube: No open-circuit protection: an open or broken tube leaves a dark sign with up to 6 000 V between the leads and 6 000 V to earth from either side. The input falls to the transformer's own losses, so no fuse tells.
+    Bench test: A fault to earth at one lead of an isolated output drives no current to sense: how its protection is tested is for the plate to say.
     ");
 }
 
@@ -546,6 +603,8 @@ fn what_nobody_gave_is_said_to_be_taken_by_default() {
     Loading window, target 50 to 65 % of the no-load volts: the default, from the model of the supply and how the gases strike again each half cycle; the plate gives none.
     Striking: 1.5 times the running volts, the default, from a weak source.
     Mains: 10 % low and high, a common tolerance; the output is taken to follow them.
+    Faults: without resistance, the tubes at the volts they ran at, both halves of the winding leaking magnetically each for itself.
+    Of t not given, so taken from the default: volts that go as the current to the power of -0.25, 25 mA as the current of its volts per metre.
     ");
     let plate = circuit(
         "1.5 m; 1.5 m; 1.5 m; 1.5 m",
@@ -573,7 +632,9 @@ fn what_nobody_gave_is_said_to_be_taken_by_default() {
     Loading window, 60 to 95 % of the rated load volts: our own choice, no source; the plate gives none.
     Striking: 1.5 times the running volts, the default, from a weak source.
     Mains: the output is taken not to follow them; the plate knows better.
+    Faults: without resistance, the tubes at the volts they ran at, both halves of the winding leaking magnetically each for itself.
     Short-circuit current: none above the rated one is known, so the supply is taken to hold it.
+    Of t not given, so taken from the default: volts that go as the current to the power of -0.25, 25 mA as the current of its volts per metre.
     ");
     // Mercury in frost, volts from the model.
     let mut job = Job {
@@ -600,12 +661,12 @@ fn what_nobody_gave_is_said_to_be_taken_by_default() {
         said[said.len() - 2..].join("\n")
     };
     assert_snapshot!(last(&job), @r"
-    Warm: mercury tubes are worked out at room temperature. Outdoors in frost they need more: say so at the site.
     Volts of blue: model, ±15 %.
+    Of blue not given, so taken from the default: 210 V for a pair of electrodes, volts that go as the current to the power of -0.3, a wall of 1 mm.
     ");
     job.site.cold = true;
     assert_snapshot!(last(&job), @r"
-    Cold: below 0 °C mercury tubes are taken to need 15 % more for each metre, the default, with little confidence (from memory).
     Volts of blue: model, ±15 %.
+    Of blue not given, so taken from the default: 210 V for a pair of electrodes, volts that go as the current to the power of -0.3, a wall of 1 mm.
     ");
 }

@@ -31,7 +31,7 @@ pub(super) fn AlongString(
             circuit.profile.joint_says(
                 marked.get()?,
                 &pieces,
-                unseen(circuit),
+                circuit.protection.map.as_ref(),
                 results.earth_word(),
             )
         }
@@ -115,10 +115,9 @@ fn table(number: usize, results: &Results, circuit: &CircuitWork) -> impl IntoVi
             } else {
                 "not held".to_owned()
             };
-            let sensed = told.then(|| {
-                let not = unseen(circuit).is_some_and(|unseen| unseen.holds(joint.share));
-                view! { <td>{if not { "not sensed" } else { "sensed" }}</td> }
-            });
+            let sensed = map
+                .filter(|_| told)
+                .map(|map| view! { <td>{map.sensed(joint.share).words()}</td> });
             view! {
                 <tr class:marked=move || desk.joint_on(number) == Some(at)>
                     <th scope="row">{named}</th>
