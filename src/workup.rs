@@ -356,7 +356,10 @@ fn gravest_first(findings: &mut [Finding]) {
 fn rule_set(job: &Job, book: &Book, findings: &mut Vec<Finding>) -> Option<RuleSet> {
     let found = book.rule_sets.iter().find(|set| set.name == job.rules);
     match found {
-        Some(set) => findings.extend(supply::blanks(set)),
+        Some(set) => {
+            findings.extend(supply::blanks(set));
+            findings.extend(without_wiring(set));
+        }
         None if job.rules.is_empty() => findings.push(Finding::new(
             Grade::Look,
             Place::Job,
@@ -374,6 +377,20 @@ fn rule_set(job: &Job, book: &Book, findings: &mut Vec<Finding>) -> Option<RuleS
         )),
     }
     found.cloned()
+}
+
+/// A code's rule set with no rule of leads and feeds, as books had before such rules were known.
+fn without_wiring(set: &RuleSet) -> Option<Finding> {
+    let any = set.rules.iter().any(|rule| rule.limits.of_wiring());
+    (!set.edition.is_empty() && !any).then(|| {
+        Finding::new(
+            Grade::Look,
+            Place::Rules(set.name.clone()),
+            "Not checked: leads, distances and branch circuits. The set has no limits on them; one kept \
+             from an older book does not.",
+            Source::entry("the rule set's entry"),
+        )
+    })
 }
 
 /// The book's windows, or the defaults where they contradict themselves.

@@ -168,10 +168,10 @@ pub fn operate(load: &Load, curve: &Curve) -> Operating {
         );
         return runs(load, curve, current, false);
     }
-    if let Curve::Iron { no_load, short_ma } = *curve {
-        if let Some(current) = with_gaps(load, no_load, short_ma, edge_current.ma()) {
-            return runs(load, curve, current, true);
-        }
+    if let Curve::Iron { no_load, short_ma } = *curve
+        && let Some(current) = with_gaps(load, no_load, short_ma, edge_current.ma())
+    {
+        return runs(load, curve, current, true);
     }
     Operating::Overloaded {
         wanted: Volts::from_volts(wanted),

@@ -123,6 +123,15 @@ pub(super) fn circuit_too_large(
     .with(amps, most, "A")
 }
 
+pub(super) fn outlet_shared(source: Source) -> Finding {
+    found(
+        Grade::Look,
+        "The branch circuit of a required sign outlet feeds nothing else, and other loads are said to \
+         hang on it.",
+        source,
+    )
+}
+
 pub(super) fn outlet_circuit(amps: f64, least: f64, source: Source) -> Finding {
     found(
         Grade::Stop,

@@ -259,6 +259,12 @@ fn branch(work: &mut FeedWork, feed: &Feed, rules: Option<&RuleSet>, loads: &[Lo
         ));
     }
     if feed.required_outlet
+        && feed.other_loads
+        && let Some((_, source)) = rule(Limits::OutletCircuit)
+    {
+        work.findings.push(finding::outlet_shared(source));
+    }
+    if feed.required_outlet
         && let Some((least, source)) = rule(Limits::OutletCircuit)
         && amps < least
     {

@@ -352,9 +352,27 @@ pub(super) fn from_conduit_wall(limit: f64, word: EarthWord, source: Source) -> 
     )
 }
 
+pub(super) fn no_width(source: Source) -> Finding {
+    found(
+        Grade::Look,
+        "The outer diameter of the cable is not in the shop book: the leads are nearer by half of it \
+         than the distance typed.",
+        source,
+    )
+}
+
+pub(super) fn no_slack() -> Finding {
+    found(
+        Grade::Look,
+        "Lengths of leads are taken straight from the drawing with no slack and nothing for the ends: \
+         as they are run they are longer.",
+        typed(),
+    )
+}
+
 pub(super) fn free_air_not_limited() -> Finding {
     found(
-        Grade::Note,
+        Grade::Look,
         "The rule set limits the length of leads in conduit only: of leads in free air no length was \
          checked. See whether it allows them at all.",
         typed(),
@@ -373,8 +391,8 @@ pub(super) fn lost(grade: Grade, sum: f64, share: f64, limit: f64, word: EarthWo
     found(
         grade,
         format!(
-            "Leads and jumpers leak {sum:.2} mA to {}, {} % of the current of the tubes, above {most} \
-             %: {then}.",
+            "Leads and jumpers leak {sum:.2} mA to {} in all, at worst {} % of the current of a string, \
+             above {most} %: {then}.",
             word.word(),
             told_from(percent, most, 1)
         ),

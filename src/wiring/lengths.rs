@@ -38,14 +38,15 @@ fn second_from(circuit: &Strung) -> Option<usize> {
     (with_return && inside).then_some(circuit.first_string)
 }
 
-/// Lead A, the jumpers, lead B and, with a mid-point return, the return.
+/// Lead A, the jumpers, lead B and, with a mid-point return, the return; and of each piece whether its
+/// drawn end is the one nearer lead A.
 pub(super) fn measured(
     setup: &Setup,
     job: &Job,
     circuit: &Strung,
     number: usize,
     findings: &mut Vec<Finding>,
-) -> Vec<Measured> {
+) -> (Vec<Measured>, Vec<bool>) {
     let label = first_label(circuit);
     let own = typed_for(setup.wiring)
         .iter()
@@ -101,7 +102,7 @@ pub(super) fn measured(
     if second_from(circuit).is_some() {
         sections.push(drawn(way.back));
     }
-    sections
+    (sections, way.turned)
 }
 
 /// Whether a piece lies on the drawing where it will hang. Pieces given by the lengths of their strokes

@@ -136,6 +136,12 @@ pub(super) fn circuit(
         && let Some((set, rule)) = distance_rule(rules, setup.wiring.run, rating)
         && let Some(limit) = rule.value
     {
+        if setup
+            .cable
+            .is_some_and(|cable| cable.insulation_mm.is_none())
+        {
+            leads.findings.push(finding::no_width(set.source(rule)));
+        }
         let clear = distance.mm() - half_width(setup).mm();
         if clear < limit {
             let plastic = setup.wiring.run == LeadRun::PlasticConduit;
@@ -225,6 +231,17 @@ pub(super) fn all(
     });
     if jumper_unknown {
         findings.push(finding::jumpers_not_given());
+    }
+    let drawn = |leads: &Leads| {
+        let mut sections = leads.sections.iter();
+        sections.any(|section| section.from == LengthFrom::Drawing)
+    };
+    if setup
+        .drawn
+        .is_some_and(|drawn| drawn.slack == 0.0 && drawn.ends_mm == 0.0)
+        && leads.iter().any(drawn)
+    {
+        findings.push(finding::no_slack());
     }
     if run == LeadRun::FreeAir && rules.is_some_and(only_in_conduit) {
         findings.push(finding::free_air_not_limited());

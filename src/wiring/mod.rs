@@ -72,6 +72,9 @@ pub struct Wired {
 pub struct Leads {
     /// Lead A, the jumpers in the order of the pieces, lead B, and the return where there is one.
     pub sections: Vec<Section>,
+    /// Of each piece, whether its second electrode is the one nearer lead A, as the shortest jumpers
+    /// have it; empty where nothing was taken from the drawing, and pieces are wired as drawn.
+    pub turned: Vec<bool>,
     /// Capacitance of a metre of its cable as it is run, picofarads; None: not known.
     pub pf_per_m: Option<f64>,
     /// Output frequency of its supply.
@@ -137,6 +140,11 @@ pub enum LengthFrom {
 }
 
 impl Leads {
+    /// Whether a piece, counted along the string, has its second electrode nearer lead A.
+    pub fn is_turned(&self, piece: usize) -> bool {
+        self.turned.get(piece).copied().unwrap_or_default()
+    }
+
     /// One of its sections.
     pub fn section(&self, what: What) -> Option<&Section> {
         self.sections.iter().find(|section| section.what == what)
@@ -177,8 +185,9 @@ pub fn wire(
     let setup = Setup::read(job, book, bounds, &mut wired.findings);
     for (number, circuit) in circuits.iter().enumerate() {
         let mut findings = Vec::new();
-        let measured = lengths::measured(&setup, job, circuit, number, &mut findings);
+        let (measured, turned) = lengths::measured(&setup, job, circuit, number, &mut findings);
         let mut leads = leaks(circuit, &measured, setup.pf_per_m);
+        leads.turned = turned;
         leads.findings = findings;
         limits::leakage(&mut leads, circuit.rating, word);
         limits::circuit(&mut leads, &setup, circuit.rating, rules, word);

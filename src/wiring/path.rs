@@ -14,6 +14,8 @@ pub(super) struct Straight {
     pub(super) b: Option<f64>,
     /// From the joint between both strings back to the supply.
     pub(super) back: Option<f64>,
+    /// Of each piece, whether it is entered at the end it is drawn to.
+    pub(super) turned: Vec<bool>,
 }
 
 /// What of a way is measured on the drawing and so has a say in which way is shortest.
@@ -75,6 +77,7 @@ pub(super) fn shortest(
     let mut way = Straight {
         a: far(supply, electrode(0, entered[0])),
         b: far(supply, electrode(last, 1 - entered[last])),
+        turned: entered.iter().map(|&enter| enter == 1).collect(),
         ..Straight::default()
     };
     for piece in 0..last {
@@ -170,6 +173,7 @@ mod tests {
         };
         let way = shortest(&pieces, None, None, only);
         assert_eq!((way.a, way.jumpers, way.b), (None, vec![Some(100.0)], None));
+        assert_eq!(way.turned, [false, true]);
         let way = shortest(&[pieces[0], None], Some(Point::ZERO), Some(1), ALL);
         assert_eq!(way.jumpers, [None]);
         assert_eq!((way.a, way.b), (Some(0.0), None));

@@ -674,7 +674,7 @@ fn leads_that_take_much_of_the_current_or_trip_the_supply_are_found() {
         "sum",
     );
     assert!(even.difference_ma.expect("known") < 1e-9, "they cancel");
-    assert_snapshot!(says, @"Leads and jumpers leak 4.83 mA to ground, 16.1 % of the current of the tubes, above 15 %: what is worked out of this circuit does not hold.");
+    assert_snapshot!(says, @"Leads and jumpers leak 4.83 mA to ground in all, at worst 16.1 % of the current of a string, above 15 %: what is worked out of this circuit does not hold.");
     assert_snapshot!(even.advice.join("\n"), @r"
     Make the leads shorter: what they leak goes with their length.
     Run them with more air around: wider conduit, conduit that is not metal, or further from earthed parts, as far as the rules allow.

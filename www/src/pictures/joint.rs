@@ -18,9 +18,14 @@ pub(super) const TOUCH_PX: f64 = 18.0;
 const BESIDE_PX: f64 = 16.0;
 
 /// The two electrode ends of a circuit's piece by its place on the string, that nearer lead A first.
-fn ends(workup: &Workup, circuit: &CircuitWork, place: usize) -> Option<[Point; 2]> {
+pub(super) fn ends(workup: &Workup, circuit: &CircuitWork, place: usize) -> Option<[Point; 2]> {
     let piece = workup.takeoff.pieces.get(*circuit.pieces.get(place)?)?;
-    Some(piece.electrodes)
+    let [first, second] = piece.electrodes;
+    Some(if circuit.leads.is_turned(place) {
+        [second, first]
+    } else {
+        [first, second]
+    })
 }
 
 /// The electrode ends that meet in a joint: two, or one at a lead. None where there is no such joint.
@@ -57,6 +62,11 @@ fn stretch(workup: &Workup, circuit: &CircuitWork, unseen: &Unseen) -> String {
             let piece = workup.takeoff.pieces.get(*circuit.pieces.get(place)?)?;
             let begins = if place == from.piece { from.along } else { 0.0 };
             let ends = if place == to.piece { to.along } else { 1.0 };
+            let (begins, ends) = if circuit.leads.is_turned(place) {
+                (1.0 - ends, 1.0 - begins)
+            } else {
+                (begins, ends)
+            };
             Some(drawn(&piece.stretch(begins, ends)))
         })
         .collect()

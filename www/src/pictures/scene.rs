@@ -6,6 +6,8 @@ use core::ops::Range;
 use kurbo::{BezPath, PathEl, Point, Rect, Shape};
 use tubewright::Workup;
 
+use super::joint::ends;
+
 /// One tube colour of the picture.
 #[derive(Debug, Clone, PartialEq)]
 pub(super) struct Layer {
@@ -108,13 +110,13 @@ pub(super) fn scene(workup: &Workup, focus: Option<usize>) -> Scene {
     }
     let mut badges = Vec::new();
     for (number, circuit) in workup.circuits.iter().enumerate() {
-        for (place, pair) in circuit.pieces.windows(2).enumerate() {
+        for place in 0..circuit.pieces.len().saturating_sub(1) {
             // With a mid-point return the two strings meet at the supply, not at each other.
             if place + 1 == circuit.first_string {
                 continue;
             }
-            if let [Some(from), Some(to)] = [pair[0], pair[1]].map(|at| pieces.get(at)) {
-                let (a, b) = (from.electrodes[1], to.electrodes[0]);
+            let [from, to] = [place, place + 1].map(|place| ends(workup, circuit, place));
+            if let (Some([_, a]), Some([b, _])) = (from, to) {
                 let _ = write!(jumpers, "M{:.1} {:.1}L{:.1} {:.1}", a.x, a.y, b.x, b.y);
             }
         }

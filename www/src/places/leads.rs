@@ -68,14 +68,20 @@ fn Sums(leads: Leads, word: &'static str) -> impl IntoView {
         view! { <Figure figure=ma(sum) caption=format!("leaked to {word}{share}")/> }
     });
     let difference = leads.difference_ma.map(|difference| {
-        let margin = leads.trip_margin_ma.map_or_else(String::new, |margin| {
-            format!("; it trips at {:.2} mA more", margin.max(0.0))
-        });
-        view! { <Figure figure=ma(difference) caption=format!("seen by protection with no fault{margin}")/> }
+        let caption = leads.trip_margin_ma.map_or_else(
+            || "more on one side than on the other".to_owned(),
+            |margin| {
+                format!(
+                    "seen by protection with no fault; it trips at {:.2} mA more",
+                    margin.max(0.0)
+                )
+            },
+        );
+        view! { <Figure figure=ma(difference) caption=caption/> }
     });
     let tube = (!leads.tube.is_empty()).then(|| {
         let strings: Vec<String> = leads.tube.iter().copied().map(milliamps_shown).collect();
-        view! { <Figure figure=strings.join(" and ") caption="left for the tubes, at least"/> }
+        view! { <Figure figure=strings.join(" and ") caption="left for the tubes, about"/> }
     });
     if sum.is_none() && difference.is_none() {
         return view! { <p class="quiet">"What these leads leak is not known: it takes their cable, their lengths and the output frequency."</p> }.into_any();
