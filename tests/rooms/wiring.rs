@@ -681,7 +681,7 @@ fn leads_that_take_much_of_the_current_or_trip_the_supply_are_found() {
     ");
     let (uneven, says) = with("0.6 m", "0.1 m", Some(5.0));
     assert_snapshot!(says, @r"
-    Leads and jumpers leak 4.22 mA to ground, 14.1 % of the current of the tubes, above 5 %: measure the current of the tubes.
+    Leads and jumpers leak 4.22 mA to ground in all, at worst 14.1 % of the current of a string, above 5 %: measure the current of the tubes.
     With no fault, leads and jumpers drive 3.02 mA through the ground-fault protection, which trips at 5 mA: it may switch off with no fault.
     ");
     assert_snapshot!(uneven.advice.join("\n").replace('\u{202f}', "_"), @r"
@@ -691,12 +691,12 @@ fn leads_that_take_much_of_the_current_or_trip_the_supply_are_found() {
     ");
     let (_, says) = with("1.5 m", "0.1 m", Some(5.0));
     assert_snapshot!(says, @r"
-    Leads and jumpers leak 9.65 mA to ground, 32.2 % of the current of the tubes, above 15 %: what is worked out of this circuit does not hold.
+    Leads and jumpers leak 9.65 mA to ground in all, at worst 32.2 % of the current of a string, above 15 %: what is worked out of this circuit does not hold.
     With no fault, leads and jumpers drive 8.44 mA through the ground-fault protection, which trips at 5 mA: it would switch off with no fault.
     ");
     let (_, says) = with("0.2 m", "0.1 m", None);
     assert_snapshot!(says, @r"
-    Leads and jumpers leak 1.81 mA to ground, 6.0 % of the current of the tubes, above 5 %: measure the current of the tubes.
+    Leads and jumpers leak 1.81 mA to ground in all, at worst 6.0 % of the current of a string, above 5 %: measure the current of the tubes.
     With no fault, leads and jumpers drive 0.60 mA through the ground-fault protection; its trip current is not in the shop book, so it was not held against it.
     ");
 }
