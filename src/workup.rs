@@ -358,7 +358,7 @@ fn rule_set(job: &Job, book: &Book, findings: &mut Vec<Finding>) -> Option<RuleS
     match found {
         Some(set) => {
             findings.extend(supply::blanks(set));
-            findings.extend(without_wiring(set));
+            findings.extend(without_rules(set));
         }
         None if job.rules.is_empty() => findings.push(Finding::new(
             Grade::Look,
@@ -379,18 +379,33 @@ fn rule_set(job: &Job, book: &Book, findings: &mut Vec<Finding>) -> Option<RuleS
     found.cloned()
 }
 
-/// A code's rule set with no rule of leads and feeds, as books had before such rules were known.
-fn without_wiring(set: &RuleSet) -> Option<Finding> {
-    let any = set.rules.iter().any(|rule| rule.limits.of_wiring());
-    (!set.edition.is_empty() && !any).then(|| {
-        Finding::new(
-            Grade::Look,
-            Place::Rules(set.name.clone()),
-            "Not checked: leads, distances and branch circuits. The set has no limits on them; one kept \
-             from an older book does not.",
-            Source::entry("the rule set's entry"),
-        )
-    })
+/// A code's rule set that lacks limits, as one kept in an older book does: what is not in it is not
+/// checked, and nothing may count as meeting it.
+fn without_rules(set: &RuleSet) -> Option<Finding> {
+    let says = match set.lacks().len() {
+        0 if set.edition.is_empty() || set.rules.iter().any(|rule| rule.limits.of_wiring()) => {
+            return None;
+        }
+        0 => {
+            "Not checked: leads, distances and branch circuits. The set has no limits on them."
+                .to_owned()
+        }
+        1 => {
+            "Not checked: a limit that this set has by now and the one in the shop book has not. Add \
+              it there, under Rules."
+                .to_owned()
+        }
+        count => format!(
+            "Not checked: {count} limits that this set has by now and the one in the shop book has not. \
+             Add them there, under Rules."
+        ),
+    };
+    Some(Finding::new(
+        Grade::Look,
+        Place::Rules(set.name.clone()),
+        says,
+        Source::entry("the rule set's entry"),
+    ))
 }
 
 /// The book's windows, or the defaults where they contradict themselves.

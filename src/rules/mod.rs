@@ -266,6 +266,17 @@ impl RuleSet {
         self.rules.iter().find(|rule| rule.limits == limits)
     }
 
+    /// The rules that the shipped set of this name has and this one has not: a set kept in an older
+    /// book does not have those that came later.
+    pub fn lacks(&self) -> Vec<Rule> {
+        [nec(), iec_en(), shop()]
+            .into_iter()
+            .filter(|shipped| shipped.name == self.name)
+            .flat_map(|shipped| shipped.rules)
+            .filter(|rule| self.rule(rule.limits).is_none())
+            .collect()
+    }
+
     /// A rule as the source of a finding.
     pub fn source(&self, rule: &Rule) -> Source {
         Source {

@@ -102,6 +102,9 @@ pub(super) fn bends(drawn: &Drawn) -> Vec<Bend> {
     found
 }
 
+/// The finest length of an arc that is asked for, millimetres.
+const FINEST: f64 = 1e-9;
+
 /// A part of the run without a jump.
 #[derive(Default)]
 struct Chain {
@@ -161,7 +164,9 @@ impl Chain {
             };
             let part = segment.subsegment(t..next);
             let long = if next < 1.0 {
-                part.arclen(1e-6 * length)
+                // A share of the length, but never finer than what a float can tell of a place on the
+                // sign: on a curve shorter than that the library would halve it for hours.
+                part.arclen((1e-6 * length).max(FINEST))
             } else {
                 length - done
             };

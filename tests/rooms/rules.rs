@@ -7,6 +7,7 @@ use insta::assert_snapshot;
 use tubewright::book::{OutputEarthing, SupplyEntry, SupplyKind};
 use tubewright::rules::{EarthWord, Finding, Grade, Limits, RuleSet, iec_en, nec, shop};
 use tubewright::supply::Rating;
+use tubewright::{Book, Job, workup};
 
 /// An iron supply with earth-fault protection and open-circuit protection.
 pub(super) fn entry(no_load_volts: f64, ma: f64, earthing: OutputEarthing) -> SupplyEntry {
@@ -127,4 +128,42 @@ fn an_empty_shop_set_stops_nothing() {
         stops(&entry(20_000.0, 500.0, OutputEarthing::Isolated), &shop()),
         ""
     );
+}
+
+#[test]
+fn a_set_kept_from_an_older_book_is_told_what_it_lacks() {
+    // As books of version 1 and 2 had it: nothing of leads and feeds.
+    let mut old = nec();
+    old.rules.truncate(5);
+    let lacks: Vec<Limits> = old.lacks().iter().map(|rule| rule.limits).collect();
+    assert!(lacks.contains(&Limits::LeadInMetal) && lacks.contains(&Limits::ContinuousLoad));
+    assert_eq!(lacks.len() + 5, nec().rules.len());
+    let book = Book {
+        rule_sets: vec![old.clone()],
+        ..Book::default()
+    };
+    let job = Job {
+        rules: old.name.clone(),
+        ..Job::default()
+    };
+    let told = |book: &Book| {
+        let found = workup(&job, book).findings;
+        found
+            .into_iter()
+            .find(|found| found.says.contains("limits that this set has by now"))
+    };
+    assert_eq!(told(&book).map(|found| found.grade), Some(Grade::Look));
+    // Added, nothing is missing, and what the shop changed stays as it is.
+    let mut whole = book;
+    whole.rule_sets[0].rules[0].value = Some(9_000.0);
+    let missing = whole.rule_sets[0].lacks();
+    whole.rule_sets[0].rules.extend(missing);
+    assert_eq!(told(&whole), None);
+    assert_eq!(whole.rule_sets[0].rules[0].value, Some(9_000.0));
+    for shipped in [nec(), iec_en(), shop()] {
+        assert_eq!(shipped.lacks(), []);
+    }
+    // A set of a name of its own is the shop's to fill.
+    old.name = "Ours".to_owned();
+    assert_eq!(old.lacks(), []);
 }

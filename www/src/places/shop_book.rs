@@ -4,6 +4,7 @@ use leptos::prelude::*;
 use rust_decimal::Decimal;
 use tubewright::Book;
 use tubewright::book::{Bending, Gas, OutputEarthing, Rates, SupplyEntry, SupplyKind, TubeEntry};
+use tubewright::rules::RuleSet;
 use tubewright::rules::Source;
 use tubewright::supply::Rating;
 use tubewright::tube::TubeType;
@@ -528,6 +529,7 @@ fn RuleSets() -> impl IntoView {
                             <h2>{set.name.clone()}</h2>
                             <p><b>{heading}</b></p>
                             <p class="quiet">{set.note.clone()}</p>
+                            {lacking(desk, at, set)}
                             <ul class="rules">{rules}</ul>
                         </section>
                     }
@@ -539,6 +541,29 @@ fn RuleSets() -> impl IntoView {
         <p class="danger">"The official text of the code and the local authority govern, not these figures. A blank is not known here: fill it in from the official text."</p>
         <div class="rule-sets">{sets}</div>
     }
+}
+
+/// What a set kept from an older book lacks, and how it comes in.
+fn lacking(desk: Desk, at: usize, set: &RuleSet) -> Option<impl IntoView + use<>> {
+    let lacks = set.lacks();
+    let words = match lacks.len() {
+        0 => return None,
+        1 => "Add the limit that is missing".to_owned(),
+        count => format!("Add the {count} limits that are missing"),
+    };
+    Some(view! {
+        <p>"This set was kept before the program knew all of its limits; those missing are not checked."</p>
+        <button on:click=move |_| {
+            desk.settle();
+            desk.edit_book("missing rules", "Add missing limits to a rule set", |book| {
+                if let Some(set) = book.rule_sets.get_mut(at) {
+                    let lacks = set.lacks();
+                    set.rules.extend(lacks);
+                }
+            });
+            desk.settle();
+        }>{words}</button>
+    })
 }
 
 type Rate = (&'static str, fn(&Rates) -> Decimal, fn(&mut Rates, Decimal));
