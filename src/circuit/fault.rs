@@ -11,7 +11,6 @@
 //! (`tests/reference/midpoint_fault`, `tests/spice.rs`). A fault is taken to have no resistance and the
 //! tubes to keep the volts they ran at.
 
-use std::cmp::Ordering;
 use std::f64::consts::{PI, SQRT_2};
 
 use super::curve::{Curve, conduction};
@@ -197,6 +196,25 @@ impl Strings {
         }
     }
 
+    /// The mid-point's current at `count` + 1 places, evenly from lead A to lead B.
+    pub fn along(&self, mid_point: &MidPoint, count: u32) -> Vec<(f64, Milliamps)> {
+        let share = |at: u32| f64::from(at) / f64::from(count);
+        let mut found: Vec<(f64, Milliamps)> = Vec::new();
+        for at in 0..=count {
+            // Of one string the far half mirrors the near one.
+            let mirrored = self
+                .second
+                .is_none()
+                .then(|| found.get((count - at) as usize));
+            let here = match mirrored.flatten() {
+                Some(&(_, current)) => current,
+                None => self.at(mid_point, share(at)),
+            };
+            found.push((share(at), here));
+        }
+        found
+    }
+
     /// The stretch, as shares of all volts from lead A, where a fault gives the mid-point less than
     /// `trip`; None where it gives so much everywhere.
     ///
@@ -204,32 +222,64 @@ impl Strings {
     /// from there to lead B.
     pub fn unseen(&self, mid_point: &MidPoint, trip: Milliamps) -> Option<(f64, f64)> {
         let least = self.least();
-        // What is no number is not seen.
-        let under = |share: f64| {
-            !matches!(
-                self.at(mid_point, share).partial_cmp(&trip),
-                Some(Ordering::Greater | Ordering::Equal)
-            )
-        };
-        if !under(least) {
+        if self.beyond(mid_point, trip, least) >= 0.0 {
             return None;
         }
-        let edge = |end: f64| {
-            if under(end) {
-                return end;
-            }
-            let (mut seen, mut unseen) = (end, least);
-            for _ in 0..50 {
-                let middle = f64::midpoint(seen, unseen);
-                if under(middle) {
-                    unseen = middle;
-                } else {
-                    seen = middle;
-                }
-            }
-            unseen
+        let from = self.edge(mid_point, trip, least, 0.0);
+        let to = match self.second {
+            None => 1.0 - from,
+            Some(_) => self.edge(mid_point, trip, least, 1.0),
         };
-        Some((edge(0.0), edge(1.0)))
+        Some((from, to))
+    }
+
+    /// How much more than `trip` the mid-point carries, milliamperes. What is no number is not seen.
+    fn beyond(&self, mid_point: &MidPoint, trip: Milliamps, share: f64) -> f64 {
+        let beyond = (self.at(mid_point, share) - trip).ma();
+        if beyond.is_nan() {
+            f64::NEG_INFINITY
+        } else {
+            beyond
+        }
+    }
+
+    /// Where the stretch around `least` ends on the side of `end`, a hair wide of it rather than short:
+    /// false position with the halving of the end that stays.
+    fn edge(&self, mid_point: &MidPoint, trip: Milliamps, least: f64, end: f64) -> f64 {
+        let beyond = |share: f64| self.beyond(mid_point, trip, share);
+        let (mut seen, mut unseen) = (end, least);
+        let (mut above, mut below) = (beyond(seen), beyond(unseen));
+        if above < 0.0 {
+            return end;
+        }
+        let mut stayed = 0_i8;
+        for _ in 0..100 {
+            if (seen - unseen).abs() <= 1e-9 {
+                break;
+            }
+            let mut at = unseen + (seen - unseen) * below / (below - above);
+            if !(seen.min(unseen) < at && at < seen.max(unseen)) {
+                at = f64::midpoint(seen, unseen);
+            }
+            let here = beyond(at);
+            if here >= 0.0 {
+                (seen, above) = (at, here);
+                if here <= 1e-9 * trip.ma() {
+                    break;
+                }
+                if stayed == 1 {
+                    below /= 2.0;
+                }
+                stayed = 1;
+            } else {
+                (unseen, below) = (at, here);
+                if stayed == -1 {
+                    above /= 2.0;
+                }
+                stayed = -1;
+            }
+        }
+        seen
     }
 
     /// Where the mid-point's current is least: in the middle of one string; with a return, where the

@@ -239,12 +239,7 @@ fn fault_map(
         now.second.map(|second| second * LIGHTER),
     );
     Some(FaultMap {
-        points: (0..=POINTS)
-            .map(|at| {
-                let share = f64::from(at) / f64::from(POINTS);
-                (share, now.at(&mid_point, share))
-            })
-            .collect(),
+        points: now.along(&mid_point, POINTS),
         trip,
         taken_off,
         leads_known: uneven.is_some(),
